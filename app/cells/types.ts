@@ -1,0 +1,107 @@
+import type { Figure, TableData } from "../figures/types.ts";
+import type { Formula, Quantity, Value } from "../formulas/types.ts";
+import type { Cell, Problem } from "../paper/types.ts";
+
+/**
+ * A paper planned: which cells there are, in dependency order, each with its key.
+ * Pure function of the paper's text (and of overrides of parameters); nothing is computed yet.
+ */
+export interface Plan {
+  readonly parameters: readonly PlannedParameter[];
+  /** In dependency order; cells with problems have `key` null. */
+  readonly cells: readonly PlannedCell[];
+  readonly byId: ReadonlyMap<string, PlannedCell>;
+  readonly problems: readonly Problem[];
+}
+
+export interface PlannedParameter {
+  readonly name: string;
+  /** Source of its formula, and where it stands in the text (what the rule edits). */
+  readonly source: string;
+  readonly from: number;
+  readonly to: number;
+  readonly line: number;
+  readonly value: Value;
+  readonly min: number | null;
+  readonly max: number | null;
+  readonly step: number | null;
+  /** TeX; the name itself, Greek where it is a Greek letter, when none is given. */
+  readonly symbol: string;
+  readonly unit: string;
+  readonly note: string;
+  /** Overridden for a preview or by --set. */
+  readonly overridden: boolean;
+}
+
+export interface PlannedCell {
+  readonly cell: Cell;
+  readonly id: string;
+  readonly slot: string;
+  readonly kind: string;
+  readonly line: number;
+  /** SHA-256, hex. null: the body has problems, the cell cannot compute ("failed"). */
+  readonly key: string | null;
+  /** First problem's message when key is null. */
+  readonly failure: { readonly line: number; readonly message: string } | null;
+  /** Ids of the cells it reads directly. */
+  readonly needs: readonly string[];
+  /** Parameters it reads, itself or through the cells it needs, in declaration order (strands). */
+  readonly parameters: readonly string[];
+  /** Values of those parameters at planning, for the cause ("set with μ = 1.90; μ is now 2.00"). */
+  readonly parameterValues: Readonly<Record<string, string>>;
+  /** SHA-256 of what enters the key apart from parameters: tells "its working was changed" from a parameter's change. */
+  readonly workingKey: string | null;
+  /** Checked body, JSON-safe: what a worker needs, with the parameters' values. null when key is null. */
+  readonly task: CellTask | null;
+  /** Which parts appear: "figure", "table", "points". Empty: prints nothing. */
+  readonly show: readonly string[];
+  /** True for kinds that take milliseconds: their results may be previewed in the page. */
+  readonly quick: boolean;
+}
+
+/** Plain JSON; can be posted to a worker thread. */
+export interface CellTask {
+  readonly id: string;
+  readonly kind: string;
+  /** The kind's checked model: formulas as trees, choices as strings. */
+  readonly model: unknown;
+  readonly parameters: Readonly<Record<string, Quantity>>;
+  /** id → key, of the cells it reads. */
+  readonly needs: Readonly<Record<string, string>>;
+}
+
+/** What a computed cell is, plain JSON, kept in the database under its key. Equal key, equal result. */
+export interface CellResult {
+  readonly key: string;
+  readonly kind: string;
+  /** Named values in the order of the language's table (refused ones with their reason). */
+  readonly values: Readonly<Record<string, Value>>;
+  /** The kind's own data, from which its callables, figure and table are made. */
+  readonly data: unknown;
+  /** "Saddle contour, 256 nodes; D = 1/2, …": the method that ran, for the provenance line. */
+  readonly method: string;
+  readonly solver: string;
+  /** The solver's own seconds. */
+  readonly seconds: number;
+}
+
+/** A cell that could not compute, or waits on one that could not. */
+export interface CellFailure {
+  readonly key: string;
+  /** Line within the paper, of the body's entry at fault where known. */
+  readonly line: number;
+  readonly message: string;
+}
+
+export type Outcome =
+  | { readonly status: "computed"; readonly result: CellResult }
+  | { readonly status: "failed"; readonly failure: CellFailure }
+  | { readonly status: "waiting"; readonly needs: readonly string[] };
+
+/** What `print` makes of a result for the page, the galley and the export alike. */
+export interface CellView {
+  readonly figure: Figure | null;
+  readonly table: TableData | null;
+  /** The data table behind the figure. */
+  readonly points: TableData | null;
+}
