@@ -1,6 +1,6 @@
-import type { Figure, TableData } from "../figures/types.ts";
-import type { Formula, Quantity, Value } from "../formulas/types.ts";
-import type { Cell, Problem } from "../paper/types.ts";
+import type { Figure, TableData } from "../figures/index.ts";
+import type { Quantity, Value } from "../formulas/index.ts";
+import type { Cell, Problem } from "../paper/index.ts";
 
 /**
  * A paper planned: which cells there are, in dependency order, each with its key.
@@ -104,4 +104,58 @@ export interface CellView {
   readonly table: TableData | null;
   /** The data table behind the figure. */
   readonly points: TableData | null;
+}
+
+/**
+ * What a paper shows: a second Y.Doc of the paper, which only the server writes.
+ * Y.Map "cells": slot → ShownCell. Y.Map "work": slot → CellWork. Y.Map "changes": parameter name → ParameterChange.
+ */
+export interface ShownCell {
+  readonly key: string;
+  /** ISO time and display name of who computed it, written by the server. */
+  readonly at: string;
+  readonly by: string;
+  readonly seconds: number;
+  readonly solver: string;
+  readonly parameterValues: Readonly<Record<string, string>>;
+  readonly workingKey: string;
+  /** Left standing on purpose although out of date. */
+  readonly stands?: { readonly by: string; readonly at: string };
+}
+
+/**
+ * Work on a cell:  (none) ──asked──▶ waiting ──its needs are met──▶ computing ──▶ (none, and `cells` has the new key)
+ *                                        │                              ├──▶ failed     (kept until the cell's key changes)
+ *                                        └──────────────────────────────┴──▶ cancelled  (kept until asked again)
+ */
+export type CellWork =
+  | {
+      readonly state: "waiting";
+      readonly key: string;
+      readonly by: string;
+      readonly begun: string;
+      readonly needs: readonly string[];
+    }
+  | {
+      readonly state: "computing";
+      readonly key: string;
+      readonly by: string;
+      readonly begun: string;
+      readonly done: number;
+      readonly total: number;
+    }
+  | {
+      readonly state: "failed";
+      readonly key: string;
+      readonly by: string;
+      readonly at: string;
+      readonly line: number;
+      readonly message: string;
+    }
+  | { readonly state: "cancelled"; readonly key: string; readonly by: string; readonly at: string };
+
+export interface ParameterChange {
+  readonly by: string;
+  readonly at: string;
+  readonly was: string;
 }
