@@ -1,0 +1,48 @@
+/**
+ * `npm start`: the private database, then the application in demo mode. Ctrl-C, or the end of either, ends both.
+ * With --dev the application is served from its sources and reloads as they change.
+ */
+import { spawn, spawnSync } from "node:child_process";
+import { existsSync } from "node:fs";
+import { dirname, join, resolve } from "node:path";
+import { fileURLToPath } from "node:url";
+
+const root = resolve(dirname(fileURLToPath(import.meta.url)), "..");
+const dev = process.argv.includes("--dev");
+
+// npm skips prestart where ignore-scripts is set; then the set-up is done here.
+if (
+  !existsSync(join(root, "node_modules/.halfline-lock")) ||
+  (!dev && !existsSync(join(root, "build/.halfline-sources")))
+) {
+  const done = spawnSync("sh", ["scripts/bootstrap.sh", "start"], { cwd: root, stdio: "inherit" });
+  if (done.status !== 0) process.exit(done.status ?? 1);
+}
+
+const { startPostgres, ensureDatabase } = await import("./private-postgres.mjs");
+const cluster = await startPostgres("postgres").catch((error) => {
+  process.stderr.write(`${error.message}\n`);
+  process.exit(1);
+});
+const databaseUrl = await ensureDatabase(cluster, "halfline");
+
+const command = dev ? ["--import", "tsx", "server/index.ts"] : ["build/index.js"];
+const server = spawn(process.execPath, command, {
+  cwd: root,
+  stdio: "inherit",
+  env: {
+    ...process.env,
+    HALFLINE_MODE: "demo",
+    DATABASE_URL: databaseUrl,
+    NODE_ENV: dev ? "development" : "production",
+  },
+});
+
+// The terminal sends Ctrl-C to the whole group; a signal sent to this process alone is handed on.
+for (const signal of ["SIGINT", "SIGTERM", "SIGHUP"])
+  process.on(signal, () => server.kill(signal === "SIGINT" ? "SIGTERM" : signal));
+
+server.on("exit", async (code, signal) => {
+  await cluster.stop();
+  process.exit(code ?? (signal === "SIGTERM" ? 0 : 1));
+});
