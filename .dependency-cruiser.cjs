@@ -1,0 +1,103 @@
+/**
+ * Who may import whom. The layers are the folders; what a folder may import stands in MAY_IMPORT and nowhere else.
+ * A folder is imported through its index alone.
+ */
+const MAY_IMPORT = {
+  "app/solvers": [],
+  "app/formulas": [],
+  "app/figures": [],
+  "app/ui": [],
+  "app/paper": [],
+  "app/cells": ["app/paper", "app/formulas", "app/solvers", "app/figures"],
+  "app/export": ["app/paper", "app/cells", "app/figures", "app/formulas"],
+  "app/galley": ["app/paper", "app/cells", "app/figures", "app/formulas", "app/ui"],
+  "app/editor": ["app/paper", "app/cells", "app/figures", "app/formulas", "app/ui"],
+  "app/access": ["app/context", "db"],
+  "app/routes": [
+    "app/context",
+    "app/access",
+    "app/editor",
+    "app/galley",
+    "app/export",
+    "app/cells",
+    "app/paper",
+    "app/ui",
+  ],
+  db: [],
+  server: ["db", "app/paper", "app/cells", "app/export", "app/access", "app/context", "app/editor"],
+};
+
+const folder = (name) => `^${name}(/|\\.tsx?$)`;
+
+const layers = Object.entries(MAY_IMPORT).map(([name, allowed]) => ({
+  name: `${name.replace("/", "-")}-imports`,
+  comment: `${name} may import ${allowed.length === 0 ? "nothing of ours" : allowed.join(", ")}.`,
+  severity: "error",
+  from: { path: `^${name}/` },
+  to: {
+    path: "^(app|server|db|scripts|tests|bench)/",
+    pathNot: [folder(name), ...allowed.map(folder)],
+  },
+}));
+
+/** Reached by its index (or, for the server's own parts, its folder's index). */
+const indexed = [
+  "app/solvers",
+  "app/formulas",
+  "app/figures",
+  "app/paper",
+  "app/cells",
+  "app/export",
+  "app/galley",
+  "app/editor",
+  "app/access",
+].map((name) => ({
+  name: `${name.replace("/", "-")}-through-index`,
+  comment: `Import ${name} through its index.`,
+  severity: "error",
+  from: { pathNot: `^(${name}|tests)/` },
+  to: {
+    path: `^${name}/`,
+    pathNot: [`^${name}/(index|protocol)(\\.server|\\.client)?\\.tsx?$`, "\\.css$", "\\.worker\\.ts$"],
+  },
+}));
+
+module.exports = {
+  forbidden: [
+    {
+      name: "no-cycles",
+      severity: "error",
+      from: {},
+      to: { circular: true, viaOnly: { dependencyTypesNot: ["type-only"] } },
+    },
+    {
+      name: "no-orphans-of-npm",
+      comment: "A package must be in package.json.",
+      severity: "error",
+      from: { path: "^(app|server|db)/" },
+      to: { dependencyTypes: ["npm-no-pkg", "npm-unknown"] },
+    },
+    {
+      name: "no-dev-packages-shipped",
+      severity: "error",
+      from: { path: "^(app|db)/" },
+      to: {
+        dependencyTypes: ["npm-dev"],
+        dependencyTypesNot: ["type-only", "npm-peer"],
+        pathNot: "@react-router/dev|^node_modules/@types/",
+      },
+    },
+    ...layers,
+    ...indexed,
+  ],
+  options: {
+    doNotFollow: { path: "node_modules" },
+    exclude: { path: "\\+types/" },
+    tsConfig: { fileName: "tsconfig.json" },
+    tsPreCompilationDeps: true,
+    enhancedResolveOptions: {
+      extensions: [".ts", ".tsx", ".mjs", ".js", ".json"],
+      conditionNames: ["import", "node", "default"],
+    },
+  },
+};
