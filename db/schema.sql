@@ -88,7 +88,7 @@ CREATE TABLE public.results (
     key text NOT NULL,
     kind text NOT NULL,
     solver text NOT NULL,
-    result jsonb NOT NULL,
+    result json NOT NULL,
     seconds double precision NOT NULL,
     created_at timestamp with time zone DEFAULT CURRENT_TIMESTAMP NOT NULL
 );
