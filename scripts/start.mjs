@@ -19,11 +19,16 @@ if (
   if (done.status !== 0) process.exit(done.status ?? 1);
 }
 
+const { alreadyRunning, portIsFree } = await import("./one-at-a-time.mjs");
+const port = Number(process.env.PORT ?? 4180);
+const other = alreadyRunning(root);
+if (other !== null)
+  fail(`Halfline already runs from this folder (process ${other}). Stop that one first, with Ctrl-C in its window.`);
+if (!(await portIsFree(port)))
+  fail(`Port ${port} is in use by another program. Take another one:  PORT=${port + 1} npm start`);
+
 const { startPostgres, ensureDatabase } = await import("./private-postgres.mjs");
-const cluster = await startPostgres("postgres").catch((error) => {
-  process.stderr.write(`${error.message}\n`);
-  process.exit(1);
-});
+const cluster = await startPostgres("postgres").catch((error) => fail(error.message));
 const databaseUrl = await ensureDatabase(cluster, "halfline");
 
 const command = dev ? ["--import", "tsx", "server/index.ts"] : ["build/index.js"];
@@ -46,3 +51,8 @@ server.on("exit", async (code, signal) => {
   await cluster.stop();
   process.exit(code ?? (signal === "SIGTERM" ? 0 : 1));
 });
+
+function fail(message) {
+  process.stderr.write(`${message}\n`);
+  process.exit(1);
+}
