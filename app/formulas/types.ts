@@ -15,7 +15,11 @@ export interface Quantity {
   readonly error: number;
   /** Standard error where data or chance enter; else 0. */
   readonly se: number;
-  /** Unknowns of one fit whose sampling errors hang together: name of unknown → ∂(this)/∂(unknown). Absent elsewhere. */
+  /**
+   * Independent sources of chance: name → the signed standard error that it contributes, in units of `2^exponent`;
+   * `se` is the root of the sum of their squares. So x - x has se 0, and the unknowns of one fit keep their covariance
+   * (a fit gives each unknown its row of the covariance matrix's Cholesky factor). Absent where `se` is 0.
+   */
   readonly sources?: Readonly<Record<string, number>>;
 }
 
@@ -90,8 +94,13 @@ export interface PrintedNumber {
   readonly siunitx: string;
   /** Digits asked for but not supported: shown grey on the sheet, printed nowhere. "" when all are. */
   readonly unsupported: string;
-  /** How many significant digits the error supports (Infinity for exact numbers). */
+  /** How many significant digits the error supports (Infinity for exact numbers, 0: "no digit known"). */
   readonly supported: number;
+  /**
+   * What the sheet shows: `known` in ink, `unknown` (= `unsupported`) grey, then `rest` ("×10⁻⁵", " %", "(3)").
+   * `known` is not rounded where `unknown` follows, so that all of it together is the number to the digits asked.
+   */
+  readonly sheet: { readonly known: string; readonly unknown: string; readonly rest: string };
 }
 
 /** How a number is to be printed: the attributes of `:value`. */
