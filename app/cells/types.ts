@@ -1,5 +1,5 @@
 import type { Figure, TableData } from "../figures/index.ts";
-import type { Quantity, Value } from "../formulas/index.ts";
+import type { Formula, Quantity, Value } from "../formulas/index.ts";
 import type { Cell, Problem } from "../paper/index.ts";
 
 /**
@@ -39,9 +39,9 @@ export interface PlannedCell {
   readonly slot: string;
   readonly kind: string;
   readonly line: number;
-  /** SHA-256, hex. null: the body has problems, the cell cannot compute ("failed"). */
+  /** SHA-256, hex. null: the body has problems ("failed"), or that of a cell it reads has ("waiting"). */
   readonly key: string | null;
-  /** First problem's message when key is null. */
+  /** First problem's message when the body is at fault; null with `key` null: it waits for a cell (of `needs`) that is. */
   readonly failure: { readonly line: number; readonly message: string } | null;
   /** Ids of the cells it reads directly. */
   readonly needs: readonly string[];
@@ -68,6 +68,13 @@ export interface CellTask {
   readonly parameters: Readonly<Record<string, Quantity>>;
   /** id → key, of the cells it reads. */
   readonly needs: Readonly<Record<string, string>>;
+  /** Lines within the paper of the body's entries ("drift", "columns.ratio"; "" the cell itself): for failures, never in the key. */
+  readonly lines: Readonly<Record<string, number>>;
+  /** Where the cell varies parameters: what is computed again for each of their values, in order. */
+  readonly recomputed?: {
+    readonly parameters: readonly { readonly name: string; readonly formula: Formula }[];
+    readonly cells: readonly CellTask[];
+  };
 }
 
 /** What a computed cell is, plain JSON, kept in the database under its key. Equal key, equal result. */
@@ -158,4 +165,43 @@ export interface ParameterChange {
   readonly by: string;
   readonly at: string;
   readonly was: string;
+}
+
+/** The whole of what a paper shows, as read from its second document. Keys of `cells` and `work` are slots. */
+export interface ShownPaper {
+  readonly cells: ReadonlyMap<string, ShownCell>;
+  readonly work: ReadonlyMap<string, CellWork>;
+  /** By parameter. */
+  readonly changes: ReadonlyMap<string, ParameterChange>;
+}
+
+/** Why a result is out of date. Parameter values are as printed. */
+export type Cause =
+  | {
+      readonly cause: "parameter";
+      readonly name: string;
+      /** TeX */
+      readonly symbol: string;
+      readonly was: string;
+      readonly now: string;
+      readonly by: string | null;
+      /** ISO time, or null when not known. */
+      readonly at: string | null;
+    }
+  | { readonly cause: "working" }
+  | { readonly cause: "solver"; readonly was: string; readonly now: string }
+  /** A cell it reads was changed otherwise than by a parameter. */
+  | { readonly cause: "needs"; readonly id: string };
+
+/** State of a cell as a page shows it; the words are design's. */
+export interface CellState {
+  readonly state: "current" | "outOfDate" | "stands" | "computing" | "waiting" | "failed" | "cancelled" | "empty";
+  /** For outOfDate and stands. */
+  readonly causes: readonly Cause[];
+  /** For failed: where and what. */
+  readonly failure: { readonly line: number; readonly message: string } | null;
+  /** For waiting: ids of the cells it waits for. */
+  readonly waitsFor: readonly string[];
+  /** True when a result (perhaps an older one) is shown. */
+  readonly hasResult: boolean;
 }
