@@ -3,7 +3,10 @@ import { type Bound, bind } from "./bind.server.ts";
 import * as members from "./members.server.ts";
 import * as papers from "./papers.server.ts";
 import * as people from "./people.server.ts";
+import * as results from "./results.server.ts";
 import * as sessions from "./sessions.server.ts";
+import { type Signal, send } from "./signals.server.ts";
+import * as texts from "./texts.server.ts";
 
 export type { Bound } from "./bind.server.ts";
 export { bind } from "./bind.server.ts";
@@ -12,6 +15,10 @@ export type { MemberRefusal, MemberRow, Role } from "./members.server.ts";
 export { migrateToLatest } from "./migrate.server.ts";
 export type { PaperRow, ShelfRow } from "./papers.server.ts";
 export type { Identity, PersonRow } from "./people.server.ts";
+export type { StoredResult } from "./results.server.ts";
+export type { Signal, SignalHandlers } from "./signals.server.ts";
+export { SignalLine } from "./signals.server.ts";
+export type { Appended, DocumentName, NewUpdate, StoredUpdate } from "./texts.server.ts";
 
 /** All aggregates, bound to one connection pool. */
 export interface Database {
@@ -19,6 +26,10 @@ export interface Database {
   readonly sessions: Bound<typeof sessions>;
   readonly papers: Bound<typeof papers>;
   readonly members: Bound<typeof members>;
+  readonly texts: Bound<typeof texts>;
+  readonly results: Bound<typeof results>;
+  /** Tells every process that serves papers. */
+  send(signal: Signal): Promise<void>;
   /** Resolves when the database answers. */
   answers(): Promise<void>;
 }
@@ -29,6 +40,9 @@ export function openDatabase(knex: Knex): Database {
     sessions: bind(knex, sessions),
     papers: bind(knex, papers),
     members: bind(knex, members),
+    texts: bind(knex, texts),
+    results: bind(knex, results),
+    send: (signal) => send(knex, signal),
     answers: async () => {
       await knex.raw("select 1");
     },
