@@ -1,0 +1,83 @@
+import { markdownLineEnding, markdownSpace } from "micromark-util-character";
+import type { Code, Construct, Effects, State, TokenizeContext } from "micromark-util-types";
+
+const opening = [60, 33, 45, 45]; // <!--
+const dash = 45;
+const greater = 62;
+
+declare module "micromark-util-types" {
+  interface TokenTypeMap {
+    paperComment: "paperComment";
+  }
+}
+
+/**
+ * Comments `<!-- … -->`: among words, and in lines of their own (there they may hold blank lines). A comment that is
+ * not closed is text. Made anew for each reading, since each remembers where no closing is left: else a text of many
+ * openings would take quadratic time.
+ */
+export function comments(): { amongWords: Construct; inLines: Construct } {
+  return { amongWords: commentConstruct(false), inLines: commentConstruct(true) };
+}
+
+function commentConstruct(inLines: boolean): Construct {
+  /** No comment that opens between these offsets is closed. */
+  let unclosed = { from: -1, to: -1 };
+
+  function tokenize(this: TokenizeContext, effects: Effects, ok: State, nok: State): State {
+    const parser = this.parser;
+    const now = () => this.now();
+    const start = now().offset;
+    let matched = 0;
+    let dashes = 0;
+
+    return (code) => {
+      if (start >= unclosed.from && start <= unclosed.to) return nok(code);
+      effects.enter("paperComment");
+      return inOpening(code);
+    };
+
+    function inOpening(code: Code): State | undefined {
+      if (code !== opening[matched]) return nok(code);
+      effects.consume(code);
+      matched++;
+      return matched === opening.length ? inside : inOpening;
+    }
+
+    function inside(code: Code): State | undefined {
+      if (code === null) {
+        unclosed = { from: start, to: now().offset };
+        return nok(code);
+      }
+      if (code === greater && dashes >= 2) {
+        effects.consume(code);
+        effects.exit("paperComment");
+        return inLines ? end : ok;
+      }
+      dashes = code === dash ? dashes + 1 : 0;
+      if (markdownLineEnding(code)) {
+        effects.enter("lineEnding");
+        effects.consume(code);
+        effects.exit("lineEnding");
+        return inLines ? lineStart : inside;
+      }
+      effects.consume(code);
+      return inside;
+    }
+
+    function lineStart(code: Code): State | undefined {
+      return parser.lazy[now().line] ? nok(code) : inside(code);
+    }
+
+    function end(code: Code): State | undefined {
+      if (code === null || markdownLineEnding(code)) return ok(code);
+      if (!markdownSpace(code)) return nok(code);
+      effects.enter("whitespace");
+      effects.consume(code);
+      effects.exit("whitespace");
+      return end;
+    }
+  }
+
+  return { name: "paperComment", tokenize, concrete: inLines };
+}

@@ -1,0 +1,170 @@
+import { markdownLineEnding, markdownSpace } from "micromark-util-character";
+import type { Code, Construct, Effects, State, TokenizeContext, Tokenizer } from "micromark-util-types";
+
+const dollar = 36;
+const backslash = 92;
+
+declare module "micromark-util-types" {
+  interface TokenTypeMap {
+    paperMath: "paperMath";
+    paperDisplay: "paperDisplay";
+  }
+}
+
+/**
+ * Math among words: `$…$`, and `$$…$$` that does not stand in lines of its own.
+ *
+ *   opened ──▶ inside ──dollar──▶ closing ──▶ ok, or inside again when the dollars do not match
+ *
+ * One dollar is a mere dollar when the next dollar cannot close it: before a digit, a closing dollar has no space before
+ * and no digit after it ("$5 and $6"); after a space it must have a space before it ("US$ and CA$").
+ */
+export const mathAmongWords: Construct = { name: "paperMath", tokenize: tokenizeMath, previous: notAfterDollar };
+
+function notAfterDollar(this: TokenizeContext, code: Code): boolean {
+  return code !== dollar || this.events.at(-1)?.[1].type === "characterEscape";
+}
+
+function tokenizeMath(this: TokenizeContext, effects: Effects, ok: State, nok: State): State {
+  let opening = 0;
+  let closing = 0;
+  let beforeDigit = false;
+  let beforeSpace = false;
+  let afterSpace = false;
+
+  return (code) => {
+    effects.enter("paperMath");
+    return opened(code);
+  };
+
+  function opened(code: Code): State | undefined {
+    if (code === dollar && opening < 3) {
+      opening++;
+      effects.consume(code);
+      return opened;
+    }
+    if (opening > 2) return nok(code);
+    beforeDigit = opening === 1 && isDigit(code);
+    beforeSpace = opening === 1 && isSpace(code);
+    return inside(code);
+  }
+
+  function inside(code: Code): State | undefined {
+    if (code === null) return nok(code);
+    if (code === dollar) {
+      closing = 0;
+      return atClosing(code);
+    }
+    if (markdownLineEnding(code)) {
+      afterSpace = true;
+      effects.enter("lineEnding");
+      effects.consume(code);
+      effects.exit("lineEnding");
+      return inside;
+    }
+    afterSpace = isSpace(code);
+    effects.consume(code);
+    return code === backslash ? escaped : inside;
+  }
+
+  function escaped(code: Code): State | undefined {
+    if (code !== dollar && code !== backslash) return inside(code);
+    afterSpace = false;
+    effects.consume(code);
+    return inside;
+  }
+
+  function atClosing(code: Code): State | undefined {
+    if (code === dollar) {
+      closing++;
+      effects.consume(code);
+      return atClosing;
+    }
+    const closes =
+      closing === opening && !(beforeDigit && (afterSpace || isDigit(code))) && !(beforeSpace && !afterSpace);
+    if (closes) {
+      effects.exit("paperMath");
+      return ok(code);
+    }
+    if (beforeDigit || beforeSpace) return nok(code);
+    afterSpace = false;
+    return inside(code);
+  }
+}
+
+/**
+ * A display in lines of its own: `$$…$$`, on one line or several, begun at the start of a line and with nothing after
+ * its end. A blank line ends the attempt, so that a display being typed does not swallow the paper.
+ */
+export const display: Construct = { name: "paperDisplay", tokenize: tokenizeDisplay as Tokenizer, concrete: true };
+
+function tokenizeDisplay(this: TokenizeContext, effects: Effects, ok: State, nok: State): State {
+  const parser = this.parser;
+  const now = () => this.now().line;
+  let dollars = 0;
+  let blank = false;
+
+  return (code) => {
+    effects.enter("paperDisplay");
+    return opening(code);
+  };
+
+  function opening(code: Code): State | undefined {
+    if (code === dollar && dollars < 3) {
+      dollars++;
+      effects.consume(code);
+      return opening;
+    }
+    return dollars === 2 ? inside(code) : nok(code);
+  }
+
+  function inside(code: Code): State | undefined {
+    if (code === null) return nok(code);
+    if (markdownLineEnding(code)) {
+      if (blank) return nok(code);
+      blank = true;
+      effects.enter("lineEnding");
+      effects.consume(code);
+      effects.exit("lineEnding");
+      return lineStart;
+    }
+    if (!markdownSpace(code)) blank = false;
+    effects.consume(code);
+    if (code === backslash) return escaped;
+    return code === dollar ? secondDollar : inside;
+  }
+
+  function lineStart(code: Code): State | undefined {
+    return parser.lazy[now()] ? nok(code) : inside(code);
+  }
+
+  function escaped(code: Code): State | undefined {
+    if (code !== dollar && code !== backslash) return inside(code);
+    effects.consume(code);
+    return inside;
+  }
+
+  function secondDollar(code: Code): State | undefined {
+    if (code !== dollar) return inside(code);
+    effects.consume(code);
+    effects.exit("paperDisplay");
+    return end;
+  }
+
+  function end(code: Code): State | undefined {
+    if (code === null || markdownLineEnding(code)) return ok(code);
+    if (!markdownSpace(code)) return nok(code);
+    effects.enter("whitespace");
+    effects.consume(code);
+    effects.exit("whitespace");
+    return end;
+  }
+}
+
+function isDigit(code: Code): boolean {
+  return code !== null && code >= 48 && code <= 57;
+}
+
+function isSpace(code: Code): boolean {
+  return code !== null && (markdownSpace(code) || markdownLineEnding(code));
+}
