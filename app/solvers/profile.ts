@@ -1,18 +1,119 @@
 import { SolverError } from "./errors.ts";
-import type { Answer, Estimate, ProfileConstants, Trajectory } from "./types.ts";
+import { pointValue } from "./expansion.ts";
+import { toNumber } from "./pairs.ts";
+import { type Place, ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
+import type { Answer, Estimate, Pair, ProfileConstants, Refusal, Trajectory } from "./types.ts";
 
-/** w(x, s) */
-export function profileAt(_t: Trajectory, _x: number, _s: number): Answer<Estimate> {
-  throw new SolverError("not_converged", "profileAt is being written");
+/** w(x, s) = E_x[s^K], a pure number.
+ *  Source: the flow of the trajectory, w(x, s) = W(B_s e^{−decay x}); G. Koenigs, Ann. Sci. Éc. Norm. Sup. 1 (1884), for W.
+ *  @param x start [length], ≥ 0   @param s between −1 and s0; s equal to the double next to s0 means s0 itself
+ *  @throws SolverError "bad_parameter" where x < 0 or an argument is not finite. */
+export function profileAt(t: Trajectory, x: number, s: number): Answer<Estimate> {
+  const read = readProfile(t, x, s);
+  if ("refused" in read) return read;
+  const value = 1 - read.u;
+  return { value, error: read.error + ROUNDING * Math.abs(value) };
 }
-/** 1 − w(x, s), to full relative accuracy */
-export function profileComplementAt(_t: Trajectory, _x: number, _s: number): Answer<Estimate> {
-  throw new SolverError("not_converged", "profileComplementAt is being written");
+
+/** 1 − w(x, s), a pure number, with full relative accuracy however small it is.
+ *  Source: as profileAt.
+ *  @throws SolverError "bad_parameter" where x < 0 or an argument is not finite. */
+export function profileComplementAt(t: Trajectory, x: number, s: number): Answer<Estimate> {
+  const read = readProfile(t, x, s);
+  return "refused" in read ? read : { value: read.u, error: read.error };
 }
-/** ∂w/∂x */
-export function profileSlopeAt(_t: Trajectory, _x: number, _s: number): Answer<Estimate> {
-  throw new SolverError("not_converged", "profileSlopeAt is being written");
+
+/** ∂w(x, s)/∂x [1/length].
+ *  Source: as profileAt.
+ *  @throws SolverError "bad_parameter" where x < 0 or an argument is not finite. */
+export function profileSlopeAt(t: Trajectory, x: number, s: number): Answer<Estimate> {
+  const read = readProfile(t, x, s);
+  return "refused" in read ? read : { value: read.slope, error: read.slopeError };
 }
-export function profileConstants(_t: Trajectory): ProfileConstants {
-  throw new SolverError("not_converged", "profileConstants is being written");
+
+/** s0 (pure number), ∂w/∂x at x = 0, s = 0 [1/length], amplitude B_0 = lim e^{decay x} (1 − w(x, 0)) (pure number), decay [1/length].
+ *  Source: J. Berestycki, É. Brunet, S. C. Harris, P. Miłoś, J. Funct. Anal. 273 (2017) 2107–2143. */
+export function profileConstants(t: Trajectory): ProfileConstants {
+  return {
+    s0: "refused" in t.turning ? t.turning : radius(t.turning),
+    slopeAtBarrier: constant(t.slopeAtBarrier, t.slopeSpread),
+    amplitude: constant(t.amplitude, t.amplitudeSpread),
+    decay: constant(t.decay, t.decaySpread),
+  };
+}
+
+/** s0 with its error. */
+export function radius(turning: { readonly s0: Pair; readonly excess: Pair; readonly excessSpread: number }): Estimate {
+  const value = toNumber(turning.s0);
+  return { value, error: ROUNDING * value + turning.excessSpread * turning.excess[0] };
+}
+
+/** A pair read as a double: its rounding, and the spread of the inputs. */
+function constant(x: Pair, spread: number): Estimate {
+  const value = toNumber(x);
+  return { value, error: Math.abs(value) * (ROUNDING + spread) };
+}
+
+interface Reading {
+  readonly u: number;
+  readonly error: number;
+  readonly slope: number;
+  readonly slopeError: number;
+}
+
+function readProfile(t: Trajectory, x: number, s: number): Reading | Refusal {
+  if (!(Number.isFinite(x) && x >= 0))
+    throw new SolverError("bad_parameter", `The start is x = ${x}; it must be a finite number, at least 0.`);
+  if (!Number.isFinite(s)) throw new SolverError("bad_parameter", `s is ${s}; it must be a finite number.`);
+  const reader = readerOf(t);
+  if (s < -1) return { refused: `w(x, s) is given for s from −1 up to s0; s = ${s} is below −1.` };
+  if (s === 1) return { u: 0, error: 0, slope: 0, slopeError: 0 };
+  if (reader.turning !== null && s > toNumber(reader.turning.s0) * (1 + 2 * Number.EPSILON))
+    return {
+      refused: `The series in s diverges beyond s0 = ${toNumber(reader.turning.s0)}: E[s^K] is infinite at s = ${s}. Take s up to s0.`,
+    };
+  if (reader.turning === null) return withoutBranching(t, x, s);
+  return shifted(t, reader, reader.locate(s), x, s);
+}
+
+/** Reads u at the place of s, moved by decay·x. */
+function shifted(t: Trajectory, reader: TrajectoryReader, place: Place, x: number, s: number): Reading {
+  const way = reader.decay * x;
+  const xi = place.xi + way;
+  const at = pointValue();
+  const rounding = reader.evaluateAt(place.side, xi, at);
+  const amplitudeSpread = s > 1 && reader.turning !== null ? reader.turning.amplitudeSpread : t.amplitudeSpread;
+  const known = place.error + ROUNDING * (2 * way + Math.abs(xi));
+  const inputs = way * t.decaySpread + Math.min(1, way) * amplitudeSpread;
+  const error = rounding + Math.abs(at.slopeRe) * (known + inputs);
+  const slope = -reader.decay * at.slopeRe;
+  const second = Math.abs(secondDerivative(reader, xi, place.side));
+  const slopeError =
+    reader.decay * (rounding * SLOPE_AMPLIFICATION + second * (known + inputs)) +
+    Math.abs(slope) * (t.decaySpread + 4 * ROUNDING);
+  return { u: at.re, error, slope, slopeError };
+}
+
+/** Derivatives of a Taylor polynomial lose this factor over its values, on steps of a fifth of the radius. */
+const SLOPE_AMPLIFICATION = 8;
+
+function secondDerivative(reader: TrajectoryReader, xi: number, side: Place["side"]): number {
+  const at = pointValue();
+  reader.evaluateAt(side, xi, at);
+  const c = reader.expander.create();
+  reader.expander.expand(xi, 0, at, c);
+  return 2 * (c.re[2] as number);
+}
+
+/** Without branching u = z exactly, so 1 − w = (1 − s) e^{−decay x} for every s. */
+function withoutBranching(t: Trajectory, x: number, s: number): Reading {
+  const decay = toNumber(t.decay);
+  const u = (1 - s) * Math.exp(-decay * x);
+  const error = Math.abs(u) * (decay * x * (t.decaySpread + 2 * ROUNDING) + 4 * ROUNDING);
+  return {
+    u,
+    error,
+    slope: decay * u,
+    slopeError: decay * error + Math.abs(decay * u) * (t.decaySpread + 2 * ROUNDING),
+  };
 }

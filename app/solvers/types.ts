@@ -97,8 +97,9 @@ export interface Trajectory {
   readonly ratio: Pair;
   /** rate/(D decay²) */
   readonly strength: Pair;
-  /** coefficients of u = Σ series[k] z^k; series[0] = 0, series[1] = 1 */
+  /** u = Σ series[k] (z/seriesScale)^k near z = 0 */
   readonly series: readonly number[];
+  readonly seriesScale: number;
   /** largest |z| at which `series` is used */
   readonly seriesReach: number;
   /** knots of decreasing ξ on z = e^{−ξ} > 0, beyond w = −1 */

@@ -1,0 +1,165 @@
+import { SolverError } from "./errors.ts";
+import type { Normalised } from "./linear.ts";
+import { PairSeries, pairComposer } from "./pair-series.ts";
+import { add, divide, multiply, negate, ONE, pair, scale, subtract, toNumber, ZERO } from "./pairs.ts";
+import type { Pair } from "./types.ts";
+
+/** The trajectory in double-doubles: its power series at the far end, and Taylor steps towards the barrier.
+ *  In ξ = decay·x, u = 1 − w: u″ + (1 + ratio) u′ + ratio u = strength·M(u); see numerics of types.ts. */
+
+/** How finely the trajectory is walked. */
+export interface WalkSettings {
+  /** terms of each Taylor expansion */
+  readonly order: number;
+  /** local relative error of each step */
+  readonly tolerance: number;
+}
+
+/** Fine enough that s0^{−100000} keeps 15 digits. */
+export const FULL_WALK: WalkSettings = { order: 36, tolerance: 2 ** -80 };
+
+/** State (ξ, u, du/dξ) carried in double-doubles. */
+export interface PairKnot {
+  readonly xi: Pair;
+  readonly u: Pair;
+  readonly slope: Pair;
+}
+
+/** u = Σ c_k (z/scale)^k near z = 0, used for |z| ≤ reach. */
+export interface OriginSeries {
+  readonly scale: number;
+  readonly series: PairSeries;
+  readonly reach: number;
+}
+
+/** Largest |z| at which the series hands over to the steps, below B_0 and B_{s0} whenever the law hardly branches. */
+const REACH_CAP = 1 / 8;
+
+/** Series of u at z = 0. The bracket (k − 1)(k − ratio) > 0 for k ≥ 2, so no drift ≥ critical is resonant.
+ *  Source: substitution of the power series into the equation; Koenigs' linearisation of the flow at w = 1. */
+export function originSeries(n: Normalised, settings: WalkSettings): OriginSeries {
+  const { order, tolerance } = settings;
+  // The curvature of M sets the radius of convergence; scaling by it keeps the coefficients within the double's range.
+  const unit = 2 ** -Math.round(Math.log2(1 + n.strength[0] * n.law.mean[0] ** 2));
+  const series = new PairSeries(order + 1);
+  const compose = pairComposer(n.law, series);
+  compose(0);
+  series.set(1, pair(unit));
+  compose(1);
+  for (let k = 2; k <= order; k += 1) {
+    const source = multiply(n.strength, compose(k));
+    series.set(k, divide(source, scale(subtract(pair(k), n.ratio), k - 1)));
+    compose(k);
+  }
+  let largest = 0;
+  for (let k = order - 3; k <= order; k += 1)
+    largest = Math.max(largest, (Math.abs(series.high[k] as number) / unit) ** (1 / (k - 1)));
+  let reach = Math.min(
+    REACH_CAP,
+    unit * tolerance ** (1 / order) * (largest > 0 ? 1 / largest : Number.POSITIVE_INFINITY),
+  );
+  // On both sides the hand-over must come well before u = 1 and before the turning point.
+  const slopeAt = (z: number) => toNumber(series.evaluate(pair(z / unit), order).derivative) / unit;
+  while (!(slopeAt(reach) < 2 && slopeAt(-reach) > 1 / 2 && slopeAt(reach) > 1 / 2)) reach /= 2;
+  return { scale: unit, series, reach: 2 ** Math.floor(Math.log2(reach)) };
+}
+
+/** The knot at z = sign·reach, where ξ = −ln reach. */
+export function firstKnot(origin: OriginSeries, sign: 1 | -1, order: number, minusLog: Pair): PairKnot {
+  const z = pair((sign * origin.reach) / origin.scale);
+  const { value, derivative } = origin.series.evaluate(z, order);
+  // du/dξ = −z du/dz
+  return { xi: minusLog, u: value, slope: negate(multiply(z, derivative)) };
+}
+
+/** Taylor coefficients of u about a knot, by the equation itself. */
+export function expand(n: Normalised, knot: PairKnot, order: number): PairSeries {
+  const c = new PairSeries(order + 1);
+  c.set(0, knot.u);
+  c.set(1, knot.slope);
+  const compose = pairComposer(n.law, c);
+  const damping = add(ONE, n.ratio);
+  for (let k = 0; k + 2 <= order; k += 1) {
+    const pull = add(multiply(n.ratio, c.at(k)), scale(multiply(damping, c.at(k + 1)), k + 1));
+    c.set(k + 2, divide(subtract(multiply(n.strength, compose(k)), pull), pair((k + 1) * (k + 2))));
+  }
+  return c;
+}
+
+/** Length of the step over which the expansion's last terms stay below the tolerance relative to u, and the fast damping is resolved. */
+export function stepLength(c: PairSeries, n: Normalised, settings: WalkSettings): number {
+  const { order, tolerance } = settings;
+  const size = Math.abs(c.high[0] as number);
+  let length = order / (4 * (1 + Math.abs(n.ratio[0])));
+  for (const k of [order - 1, order]) {
+    const last = Math.abs(c.high[k] as number);
+    if (last > 0) length = Math.min(length, ((tolerance * size) / last) ** (1 / k));
+  }
+  return length;
+}
+
+/** u and du/dξ at ξ + h. */
+export function moved(knot: PairKnot, c: PairSeries, h: Pair, order: number): PairKnot {
+  const { value, derivative } = c.evaluate(h, order);
+  return { xi: add(knot.xi, h), u: value, slope: derivative };
+}
+
+/** More steps than any trajectory needs; reached only if the equation runs away. */
+const MOST_STEPS = 5000;
+
+/** Walks from `start` towards the barrier (ξ decreasing) until `passed`, giving each knot with its expansion to `visit`. */
+export function walk(
+  n: Normalised,
+  start: PairKnot,
+  settings: WalkSettings,
+  passed: (knot: PairKnot) => boolean,
+  visit: (from: PairKnot, expansion: PairSeries, to: PairKnot) => void,
+): void {
+  let knot = start;
+  for (let step = 0; step < MOST_STEPS; step += 1) {
+    const c = expand(n, knot, settings.order);
+    const next = moved(knot, c, pair(-stepLength(c, n, settings)), settings.order);
+    if (!Number.isFinite(next.u[0])) break;
+    visit(knot, c, next);
+    if (passed(next)) return;
+    knot = next;
+  }
+  throw new SolverError(
+    "not_converged",
+    `The trajectory did not reach its end within ${MOST_STEPS} steps (it stood at w = ${1 - toNumber(knot.u)}). The parameters may be too far apart in size.`,
+  );
+}
+
+/** Where within a step the quantity (value, or slope) crosses `target`: Newton's method in double-doubles from a bracketed double root. */
+export function crossing(c: PairSeries, order: number, h: number, what: "value" | "slope", target: Pair): Pair {
+  const series = what === "value" ? c : differentiated(c, order);
+  const top = what === "value" ? order : order - 1;
+  const residual = (at: Pair) => {
+    const { value, derivative } = series.evaluate(at, top);
+    return { gap: subtract(value, target), derivative };
+  };
+  let near = 0;
+  let far = -h;
+  const signNear = Math.sign(residual(ZERO).gap[0]);
+  for (let round = 0; round < BISECTIONS; round += 1) {
+    const middle = (near + far) / 2;
+    if (Math.sign(residual(pair(middle)).gap[0]) === signNear) near = middle;
+    else far = middle;
+  }
+  let root: Pair = pair((near + far) / 2);
+  for (let round = 0; round < NEWTON_STEPS; round += 1) {
+    const { gap, derivative } = residual(root);
+    root = subtract(root, divide(gap, derivative));
+  }
+  return root;
+}
+
+/** From a bracket of one step to 2^−12 of it, then Newton doubles the digits four times: past 2^−104. */
+const BISECTIONS = 12;
+const NEWTON_STEPS = 5;
+
+function differentiated(c: PairSeries, order: number): PairSeries {
+  const d = new PairSeries(order + 1);
+  for (let k = 1; k <= order; k += 1) d.set(k - 1, scale(c.at(k), k));
+  return d;
+}
