@@ -14,8 +14,8 @@ export type RunShift = "base" | "sub" | "sup";
 
 export interface LabelRun {
   readonly text: string;
-  /** `variable`: math italic. `upright`: the interface face. */
-  readonly style: "variable" | "upright";
+  /** `variable`: math italic. `upright`: the interface face. `blackboard`: double-struck capitals, as Unicode. */
+  readonly style: "variable" | "upright" | "blackboard";
   readonly shift: RunShift;
 }
 
@@ -61,7 +61,22 @@ function joinRuns(runs: readonly LabelRun[]): LabelRun[] {
       joined[joined.length - 1] = { ...last, text: last.text + run.text };
     else joined.push(run);
   }
-  return joined;
+  return joined.map((run) => ({ ...run, text: withFractions(run) }));
+}
+
+const VULGAR = new Map([
+  ["1/2", "½"],
+  ["1/4", "¼"],
+  ["3/4", "¾"],
+  ["1/3", "⅓"],
+  ["2/3", "⅔"],
+]);
+
+/** A number that is a common fraction is set as one; `n/2` and `11/2` are not. */
+function withFractions(run: LabelRun): string {
+  return run.shift === "base"
+    ? run.text.replace(/(?<![\p{L}\d).])\d\/\d(?![\d.])/gu, (text) => VULGAR.get(text) ?? text)
+    : run.text;
 }
 
 /** One pass over the source; a method returns null where the source leaves the subset. */
@@ -148,7 +163,9 @@ class LabelReader {
     if (name === "mathit" || name === "textit" || name === "mathcal")
       return this.mapVerbatim((text) => [{ text, style: "variable", shift }]);
     if (name === "mathbb")
-      return this.mapVerbatim((text) => upright([...text].map((c) => BLACKBOARD.get(c) ?? c).join("")));
+      return this.mapVerbatim((text) => [
+        { text: [...text].map((c) => BLACKBOARD.get(c) ?? c).join(""), style: "blackboard", shift },
+      ]);
     const accent = ACCENTS.get(name);
     if (accent !== undefined) return this.readAccent(accent, shift);
     if (name === "frac" || name === "tfrac" || name === "dfrac") return this.readFraction(shift);

@@ -56,9 +56,7 @@ function placeSide(labels: readonly SideLabel[], side: "start" | "end", at: Labe
     const from: Point = { x: at.toX(label.x), y: wanted[i] ?? 0 };
     const y = placed[i] ?? from.y;
     const moved = Math.abs(y - from.y) > LEADER_FROM * unit;
-    const edge = side === "start" ? at.frame.left : at.frame.right;
-    const far = Math.abs(from.x - edge) > 30 * unit;
-    const x = (far && !moved ? from.x : edge) + outward * (moved ? 16 : 9) * unit;
+    const x = from.x + outward * (moved ? 16 : 9) * unit;
     return {
       runs: label.runs,
       tex: label.tex,
@@ -66,10 +64,7 @@ function placeSide(labels: readonly SideLabel[], side: "start" | "end", at: Labe
       x,
       y,
       anchor: side === "start" ? "end" : "start",
-      leader:
-        moved || (far && x !== from.x + outward * 9 * unit)
-          ? leaderPath(from, { x: x - outward * 3 * unit, y }, outward, unit)
-          : null,
+      leader: moved ? leaderPath(from, { x: x - outward * 3 * unit, y }, outward, unit) : null,
     };
   });
 }

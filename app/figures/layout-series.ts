@@ -31,6 +31,9 @@ export interface PlacedSeries {
   readonly start: Point | null;
 }
 
+/** Stems nearer than this would run into one area: their heads alone are drawn. */
+const CLOSEST_STEMS = 3;
+
 /** What a series needs to know of the plate it is put on. */
 export interface Placing {
   readonly toX: (at: number) => number;
@@ -80,7 +83,7 @@ export function placeSeries(series: Series, colour: Colour, figure: Figure, plac
     marks,
     radius: Math.max(1, Math.min(3.3, spacing * 0.4)) * unit,
     ring: series.mark === "points" && series.low !== undefined,
-    foot: series.mark === "stems" ? inner.bottom : null,
+    foot: series.mark === "stems" && spacing >= CLOSEST_STEMS * unit ? inner.bottom : null,
     start:
       lined && placing.labelsAreTicks && series.labelAt === "start" && inside(first ?? null) ? (first ?? null) : null,
   };

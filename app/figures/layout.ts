@@ -48,9 +48,11 @@ export interface FigureLayout {
 }
 
 const FONT_SIZE = 12.5;
-/** A tick label needs about this many font sizes of the axis. */
-const X_TICK_ROOM = 6;
-const Y_TICK_ROOM = 3.2;
+/** Lengths of axis, in font sizes, for one tick. */
+const X_TICK_ROOM = 6.5;
+const Y_TICK_ROOM = 3.4;
+/** Numbers of the vertical axis stand at least this many font sizes apart. */
+const Y_TICK_GAP = 1.4;
 
 /**
  * Lays out a figure: axis ends, ticks, paths and labels. Pure, and the same for the page, print and the server.
@@ -64,29 +66,22 @@ export function layoutFigure(figure: Figure, size: PlateSize): FigureLayout {
   const y = yEnds(figure);
   const labelsAreTicks = startLabelsGiveScale(figure, x);
   const sides = sideLabels(figure, x, labelsAreTicks);
-  const yTicksWanted = labelsAreTicks ? [] : ticksOf(figure.y, y, 5);
   const height =
     size.height ?? chosenHeight(size.width, fontSize, Math.max(sides.left.length, sides.right.length), !labelsAreTicks);
+  const yTicksWanted = labelsAreTicks
+    ? []
+    : ticksOf(figure.y, y, Math.max(2, Math.round((height - 4 * fontSize) / (Y_TICK_ROOM * fontSize))));
   const yLabelRuns = labelsAreTicks ? [] : labelRuns(figure.y.label);
   const tickWidth = widest(
     yTicksWanted.map((tick) => tick.runs),
     fontSize,
   );
-  const startWidth = widest(
-    sides.left.map((label) => label.runs),
-    fontSize,
-  );
-  const endWidth = widest(
-    sides.right.map((label) => label.runs),
-    fontSize,
-  );
+  const startRoom = sideRoom(sides.left, x, "start", size.width, fontSize);
+  const endRoom = sideRoom(sides.right, x, "end", size.width, fontSize);
   const room = size.width * 0.42;
   const frame: Frame = {
-    left: Math.min(
-      room,
-      (tickWidth > 0 ? tickWidth + 12 * unit : 4 * unit) + (startWidth > 0 ? startWidth + 18 * unit : 0),
-    ),
-    right: size.width - Math.min(room, endWidth > 0 ? endWidth + 20 * unit : 6 * unit),
+    left: Math.min(room, (tickWidth > 0 ? tickWidth + 12 * unit : 4 * unit) + startRoom),
+    right: size.width - Math.min(room, Math.max(6 * unit, endRoom)),
     top: yLabelRuns.length > 0 ? 32 * unit : 12 * unit,
     bottom: height - 30 * unit,
   };
@@ -112,7 +107,7 @@ export function layoutFigure(figure: Figure, size: PlateSize): FigureLayout {
   const xTicksWanted = ticksOf(
     figure.x,
     x,
-    Math.max(2, Math.round((frame.right - frame.left) / (X_TICK_ROOM * fontSize * 1.5))),
+    Math.max(2, Math.round((frame.right - frame.left) / (X_TICK_ROOM * fontSize))),
   );
   const xLabel = placeXLabel(labelRuns(figure.x.label), figure.x.label, xTicksWanted, frame, toX, size.width, fontSize);
   return {
@@ -124,12 +119,12 @@ export function layoutFigure(figure: Figure, size: PlateSize): FigureLayout {
     x,
     y,
     xTicks: xTicksWanted.map((tick) => placedTick(tick, toX(tick.at), xLabel, fontSize)),
-    yTicks: thinned(yTicksWanted, toY, Y_TICK_ROOM * 0.45 * fontSize).map((tick) => ({
+    yTicks: thinned(yTicksWanted, toY, Y_TICK_GAP * fontSize).map((tick) => ({
       ...tick,
       position: toY(tick.at),
       shown: true,
     })),
-    tickEnd: startWidth > 0 ? tickWidth + 2 * unit : frame.left - 10 * unit,
+    tickEnd: startRoom > 0 ? tickWidth + 2 * unit : frame.left - 10 * unit,
     xLabel: xLabel?.label ?? null,
     yLabel: placeYLabel(yLabelRuns, figure.y.label, frame, fontSize),
     series,
@@ -153,6 +148,23 @@ function chosenHeight(width: number, fontSize: number, labels: number, hasScale:
 
 const widest = (labels: readonly (readonly LabelRun[])[], fontSize: number) =>
   labels.reduce((width, runs) => Math.max(width, runsWidth(runs, fontSize)), 0);
+
+/** Between the plot and the text beside it. */
+const LABEL_DISTANCE = 1.5;
+
+/** Room beside the plot for labels of curves; one whose curve begins or ends within the plot stands there and needs less. */
+function sideRoom(
+  labels: readonly SideLabel[],
+  x: Ends,
+  side: "start" | "end",
+  width: number,
+  fontSize: number,
+): number {
+  return labels.reduce((room, label) => {
+    const inward = (side === "start" ? label.x - x.low : x.high - label.x) / (x.high - x.low);
+    return Math.max(room, runsWidth(label.runs, fontSize) + LABEL_DISTANCE * fontSize - inward * 0.6 * width);
+  }, 0);
+}
 
 /**
  * Labels at the start of curves are the ticks of the vertical axis when every curve starts there and its label ends in the

@@ -1,4 +1,4 @@
-import { isWords, labelText } from "./label.ts";
+import { isWords } from "./label.ts";
 import type { PlacedLabel } from "./labels.ts";
 import { type FigureLayout, layoutFigure } from "./layout.ts";
 import { type Colour, DASHES, PALETTES, seriesDashes } from "./palette.ts";
@@ -11,8 +11,9 @@ export interface PgfplotsOptions {
   readonly dataFile: string;
   /** Width of the plate in millimetres: 120 or 76. */
   readonly widthMm: number;
-  /** Turns a label's TeX into TeX that may be set; a document with an allow-list passes its own. Plain text when left out. */
-  readonly setTex?: (tex: string) => string;
+  /** How the document sets labels: it vouches that what comes back is safe TeX, in math mode and in text mode. */
+  readonly setMath: (tex: string) => string;
+  readonly setText: (text: string) => string;
 }
 
 export interface PgfplotsFigure {
@@ -35,7 +36,6 @@ export function figureToPgfplots(figure: Figure, options: PgfplotsOptions): Pgfp
   if (!/^[\w./-]+$/.test(options.dataFile))
     throw new RangeError(`"${options.dataFile}" cannot name a data file: letters, digits, ".", "-", "_" and "/" only.`);
   const layout = layoutFigure(figure, { width: options.widthMm * POINTS_PER_MM, fontSize: PRINT_FONT_PT });
-  const setTex = options.setTex ?? plainLabel;
   const table = dataTable(figure);
   const plots = layout.series.flatMap((placed, i) => {
     const columns = table.columns[i];
@@ -44,24 +44,21 @@ export function figureToPgfplots(figure: Figure, options: PgfplotsOptions): Pgfp
   const tex = [
     "\\begin{tikzpicture}",
     ...colourDefinitions(layout),
-    `\\begin{axis}[${axisOptions(figure, layout, setTex)}]`,
+    `\\begin{axis}[${axisOptions(figure, layout)}]`,
     ...levelLines(layout, figure),
     ...plots,
-    ...layout.labels.flatMap((label) => labelLines(label, layout, setTex)),
-    ...[layout.xLabel, layout.yLabel].flatMap((label) => (label ? [node(label, layout, setTex, "base")] : [])),
+    ...layout.yTicks.map((tick) => tickNode(tick.tex, tick.position, layout)),
+    ...layout.labels.flatMap((label) => labelLines(label, layout, options)),
+    ...[layout.xLabel, layout.yLabel].flatMap((label) => (label ? [node(label, layout, options, "base")] : [])),
     "\\end{axis}",
     "\\end{tikzpicture}",
   ].join("\n");
   return { tex, data: table.text };
 }
 
-function plainLabel(tex: string): string {
-  return `\\text{${labelText(tex).replace(/[\\{}$&#^_~%]/g, (c) => (c === "\\" ? "/" : `\\${c}${c === "^" || c === "~" ? "{}" : ""}`))}}`;
-}
-
 const number = (value: number) => String(Number(value.toFixed(4)));
 
-function axisOptions(figure: Figure, layout: FigureLayout, setTex: (tex: string) => string): string {
+function axisOptions(figure: Figure, layout: FigureLayout): string {
   const { frame } = layout;
   const shown = layout.xTicks.filter((tick) => tick.shown);
   const blank = layout.xTicks.filter((tick) => !tick.shown);
@@ -79,7 +76,7 @@ function axisOptions(figure: Figure, layout: FigureLayout, setTex: (tex: string)
     "axis line style={black, line width=0.5pt}",
     "ticklabel style={font=\\fontsize{8}{9.6}\\selectfont}",
     `xtick=${list(xs.map((tick) => number0(tick.at)))}`,
-    `xticklabels=${list([...shown.map((tick) => `{$${setTex(tick.tex)}$}`), ...blank.map(() => "{}")])}`,
+    `xticklabels=${list([...shown.map((tick) => `{$${tick.tex}$}`), ...blank.map(() => "{}")])}`,
     "scaled ticks=false, unbounded coords=jump",
   ].join(",\n  ");
 }
@@ -176,7 +173,7 @@ function dashPattern(pattern: readonly number[]): string {
   return `, dash pattern=${pattern.map((length, i) => `${i % 2 === 0 ? "on" : "off"} ${number(length * 0.7)}pt`).join(" ")}`;
 }
 
-function labelLines(label: PlacedLabel, layout: FigureLayout, setTex: (tex: string) => string): string[] {
+function labelLines(label: PlacedLabel, layout: FigureLayout, options: PgfplotsOptions): string[] {
   const leader = label.leader ? /^M(\S+) (\S+)L(\S+) (\S+)$/.exec(label.leader) : null;
   const lines: string[] = [];
   if (leader) {
@@ -188,23 +185,23 @@ function labelLines(label: PlacedLabel, layout: FigureLayout, setTex: (tex: stri
       `\\draw[${colourName(label)}, line width=0.4pt] (axis description cs:${from}) -- (axis description cs:${to});`,
     );
   }
-  lines.push(node(label, layout, setTex, "mid"));
+  lines.push(node(label, layout, options, "mid"));
   return lines;
 }
 
 const colourName = (label: PlacedLabel) =>
   label.colour === "quiet" ? "black" : label.colour === "ink" ? "black" : `plate-${label.colour}`;
 
-function node(
-  label: PlacedLabel,
-  layout: FigureLayout,
-  setTex: (tex: string) => string,
-  height: "mid" | "base",
-): string {
+function node(label: PlacedLabel, layout: FigureLayout, options: PgfplotsOptions, height: "mid" | "base"): string {
   const side = label.anchor === "end" ? "east" : "west";
   const anchor = height === "mid" ? side : `base ${side}`;
-  const set = isWords(label.tex) ? plainLabel(label.tex) : setTex(label.tex);
-  return `\\node[anchor=${anchor}, inner sep=0pt, text=${colourName(label)}, font=\\fontsize{8}{9.6}\\selectfont] at (axis description cs:${place(label.x, label.y, layout)}) {$${set}$};`;
+  const set = isWords(label.tex) ? options.setText(label.tex) : `$${options.setMath(label.tex)}$`;
+  return `\\node[anchor=${anchor}, inner sep=0pt, text=${colourName(label)}, font=\\fontsize{8}{9.6}\\selectfont] at (axis description cs:${place(label.x, label.y, layout)}) {${set}};`;
+}
+
+/** A number of the vertical axis, which has no line of its own. */
+function tickNode(tex: string, height: number, layout: FigureLayout): string {
+  return `\\node[anchor=east, inner sep=0pt, font=\\fontsize{8}{9.6}\\selectfont] at (axis description cs:${place(layout.tickEnd, height, layout)}) {$${tex}$};`;
 }
 
 /** Coordinates relative to the frame: (0,0) its lower left corner, (1,1) its upper right one. */

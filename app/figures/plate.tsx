@@ -20,6 +20,9 @@ export interface FigurePlateProps {
 
 const TEXT_FACE = "var(--ui, Commissioner, system-ui, sans-serif)";
 const VARIABLE_FACE = "KaTeX_Math, Lora, Georgia, serif";
+const BLACKBOARD_FACE = "KaTeX_AMS, serif";
+/** KaTeX's double-struck capitals stand at the plain letters' places. */
+const BLACKBOARD_LETTERS = new Map([..."ℂC𝔼EℍHℕNℙPℚQℝRℤZ"].map((c, i, all) => [c, all[i + 1] ?? c]));
 const FILE_FACE = "Commissioner, Helvetica, Arial, sans-serif";
 
 /** One plate as SVG: axis lines only under the data, direct labels, no legend, no box, no grid. Says its finding to a screen reader. */
@@ -225,10 +228,10 @@ function Runs({ runs, fontSize }: { readonly runs: readonly LabelRun[]; readonly
         key={place}
         dy={shift === height ? undefined : (shift - height).toFixed(2)}
         fontSize={size === fontSize ? undefined : size.toFixed(2)}
-        fontFamily={variable ? VARIABLE_FACE : undefined}
+        fontFamily={variable ? VARIABLE_FACE : run.style === "blackboard" ? BLACKBOARD_FACE : undefined}
         fontStyle={variable ? "italic" : undefined}
       >
-        {run.text}
+        {run.style === "blackboard" ? [...run.text].map((c) => BLACKBOARD_LETTERS.get(c) ?? c).join("") : run.text}
       </tspan>,
     );
     height = shift;

@@ -113,6 +113,7 @@ function numberTick(at: number, text: string): Tick {
 
 /** Thousands are parted by a thin space from five digits on; the minus is a minus. */
 function plainNumber(value: number, decimals: number): string {
+  if (Math.abs(value) < 0.5 * 10 ** -decimals) return "0";
   const [whole = "", part] = Math.abs(value).toFixed(decimals).split(".");
   const grouped = whole.length > 4 ? whole.replace(/\B(?=(\d{3})+$)/g, "\u2009") : whole;
   const text = part === undefined ? grouped : `${grouped}.${part}`;
