@@ -51,4 +51,3 @@ export function watchKept(provider: WebsocketProvider, onChange: (kept: Kept) =>
     provider.doc.off("update", onUpdate);
   };
 }
-
