@@ -103,7 +103,7 @@ export function nonlinearity(law: Branching, u: number): { value: number; deriva
     const one = 1 + q;
     return { value: (q * q) / one, derivative: (mean * q * (2 + q)) / (one * one) };
   }
-  if (law.law === "poisson") return { value: exponentialRest(q), derivative: -mean * Math.expm1(-q) };
+  if (law.law !== "finite") return { value: exponentialRest(q), derivative: -mean * Math.expm1(-q) };
   if (1 + Math.abs(u) < FORM_FACTOR * Math.max(1, Math.abs(1 - u))) return horner(law.aboutOne, u);
   const g = horner(law.aboutZero, 1 - u);
   return { value: g.value - 1 + q, derivative: mean - g.derivative };

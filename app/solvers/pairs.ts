@@ -87,7 +87,7 @@ export function squareRoot(a: Pair): Pair {
 }
 
 /** ln 2 to 32 digits. */
-export const LN2: Pair = [0.6931471805599453, 2.3190468138462996e-17];
+export const LN2: Pair = [Math.LN2, 2.3190468138462996e-17];
 
 /** Halvings of the argument before the series of e^x. */
 const HALVINGS = 8;

@@ -1,0 +1,100 @@
+import { type Expansion, evaluate, type PointValue, pointValue } from "./expansion.ts";
+import type { Side, TrajectoryReader } from "./reader.ts";
+
+/** Analytic continuation of u along a path in the complex ξ-plane, by Taylor expansions one after another.
+ *  Each call moves from where the last one ended; z = ∓e^{−ξ} leaves the real axis with ξ. */
+
+/** Share of an expansion's reach within which it is trusted. */
+const TRUSTED = 0.9;
+/** More expansions than any move between neighbouring nodes needs. */
+const MOST_MOVES = 200;
+const NEWTON_ROUNDS = 20;
+
+export class Continuation {
+  private readonly reader: TrajectoryReader;
+  private readonly sign: 1 | -1;
+  private current: Expansion;
+  private spare: Expansion;
+  private readonly scratch: PointValue = pointValue();
+  private readonly found: PointValue = pointValue();
+  /** the last ξ solved for */
+  xiRe: number;
+  xiIm: number;
+
+  /** Starts on the real trajectory at ξ on one side. */
+  constructor(reader: TrajectoryReader, side: Side, xi: number) {
+    this.reader = reader;
+    this.sign = side === "below" ? 1 : -1;
+    this.current = reader.expander.create();
+    this.spare = reader.expander.create();
+    this.xiRe = xi;
+    this.xiIm = 0;
+    this.restart(reader.expansionNear(side, xi));
+  }
+
+  private restart(from: Expansion): void {
+    this.current.re.set(from.re);
+    this.current.im.set(from.im);
+    this.current.xiRe = from.xiRe;
+    this.current.xiIm = from.xiIm;
+    this.current.reach = from.reach;
+  }
+
+  /** out = u and du/dξ at ξ. @returns false where the path could not be followed. */
+  evaluate(xiRe: number, xiIm: number, out: PointValue): boolean {
+    const size = Math.exp(-xiRe);
+    if (size <= this.reader.seriesReach) {
+      this.reader.evaluateSeries(this.sign * size * Math.cos(xiIm), -this.sign * size * Math.sin(xiIm), out);
+      return true;
+    }
+    if (!this.moveTo(xiRe, xiIm)) return false;
+    evaluate(this.current, xiRe - this.current.xiRe, xiIm - this.current.xiIm, out);
+    return true;
+  }
+
+  /** Re-expands along the straight line towards ξ until it lies within the trusted reach. */
+  private moveTo(xiRe: number, xiIm: number): boolean {
+    for (let move = 0; move < MOST_MOVES; move += 1) {
+      const gapRe = xiRe - this.current.xiRe;
+      const gapIm = xiIm - this.current.xiIm;
+      const distance = Math.hypot(gapRe, gapIm);
+      const trusted = TRUSTED * this.current.reach;
+      if (distance <= trusted) return true;
+      if (!(trusted > 0) || !Number.isFinite(distance)) return false;
+      const share = trusted / distance;
+      const re = gapRe * share;
+      const im = gapIm * share;
+      evaluate(this.current, re, im, this.scratch);
+      this.reader.expander.expand(this.current.xiRe + re, this.current.xiIm + im, this.scratch, this.spare);
+      [this.current, this.spare] = [this.spare, this.current];
+    }
+    return false;
+  }
+
+  /** Moves to the ξ near the last one where u has the given value: Newton's method. @returns false where it does not converge. */
+  solve(uRe: number, uIm: number): boolean {
+    const at = this.found;
+    for (let round = 0; round < NEWTON_ROUNDS; round += 1) {
+      if (!this.evaluate(this.xiRe, this.xiIm, at)) return false;
+      const gapRe = uRe - at.re;
+      const gapIm = uIm - at.im;
+      const size = at.slopeRe * at.slopeRe + at.slopeIm * at.slopeIm;
+      const stepRe = (gapRe * at.slopeRe + gapIm * at.slopeIm) / size;
+      const stepIm = (gapIm * at.slopeRe - gapRe * at.slopeIm) / size;
+      this.xiRe += stepRe;
+      this.xiIm += stepIm;
+      if (!Number.isFinite(this.xiRe + this.xiIm)) return false;
+      if (Math.hypot(stepRe, stepIm) <= SOLVED * (1 + Math.hypot(this.xiRe, this.xiIm))) return true;
+    }
+    return false;
+  }
+
+  /** Places the continuation at a ξ found otherwise (near the turning point, where Newton's method in u is ill conditioned). */
+  place(xiRe: number, xiIm: number): void {
+    this.xiRe = xiRe;
+    this.xiIm = xiIm;
+  }
+}
+
+/** A Newton step this small, relative to ξ, is the last: the next would be of its square. */
+const SOLVED = 1e-11;

@@ -1,0 +1,107 @@
+import { type Contour, traceContour } from "./contour.ts";
+import { SolverError } from "./errors.ts";
+import type { TrajectoryReader } from "./reader.ts";
+import { nodeValues } from "./sources.ts";
+import { sumRange, sumsOf } from "./sums.ts";
+import type { Trajectory, Turning } from "./types.ts";
+
+/** Two contours of different width for the same law: their difference measures the error of either. */
+export interface ContourPair {
+  readonly fine: Contour;
+  readonly check: Contour;
+}
+
+/** Widths tried, widest first: a wider arc needs fewer nodes, but must not meet another singularity of w(x, ·). */
+const WIDTHS = [0.3, 0.12, 0.05, 0.02, 0.008];
+/** Width of the check relative to the other. */
+const CHECK_SHARE = 0.75;
+/** The arc matters up to n = REACH/ln(1 + width); Gauss–Legendre needs a little more than π/4 nodes for each of these n. */
+const REACH = 40;
+const NODES_PER_N = 0.8;
+const ARC_NODES = 64;
+/** Rounds of half as many nodes again before a narrower arc is tried. */
+const REFINEMENTS = 2;
+const PANEL_NODES = 16;
+const CHECK_PANEL_NODES = 20;
+/** Relative agreement asked of the two contours, and of their total with 1. */
+const ACCEPTED = 1e-12;
+/** What is still accepted from the best attempt, with its error stated. */
+const TOLERATED = 1e-6;
+
+const cache = new WeakMap<Trajectory, Map<number, ContourPair>>();
+
+/** The contours for n up to `n`, accepted by three tests on the limit law from far away, whose total and mean are known:
+ *  both contours agree at sampled n, the total is 1, and ξ closes with the period of z.
+ *  @throws SolverError "not_converged" where no width passes. */
+export function contoursFor(t: Trajectory, reader: TrajectoryReader, turning: Turning, n: number): ContourPair {
+  const level = Math.ceil(Math.log10(Math.max(n, 1000)));
+  const known = cache.get(t) ?? new Map<number, ContourPair>();
+  cache.set(t, known);
+  const found = known.get(level);
+  if (found !== undefined) return found;
+  const made = searchWidths(t, reader, turning, level);
+  known.set(level, made);
+  return made;
+}
+
+function searchWidths(t: Trajectory, reader: TrajectoryReader, turning: Turning, level: number): ContourPair {
+  // the leg must resolve both the Gaussian e^{−nτ²} and the scale s0 − 1 on which w(x, ·) itself varies
+  const finest = Math.min(1 / (2 * Math.sqrt(10 ** level)), Math.sqrt(turning.excess[0] / turning.s0[0]) / 4);
+  let best: ContourPair | null = null;
+  let smallest = TOLERATED;
+  for (const width of WIDTHS) {
+    for (let round = 0, nodes = arcNodes(width); round <= REFINEMENTS; round += 1, nodes = Math.ceil(1.5 * nodes)) {
+      const fine = traceContour(reader, turning, { width, panelNodes: PANEL_NODES, finest, arcNodes: nodes });
+      if (fine === null) break;
+      const checkWidth = width * CHECK_SHARE;
+      const check = traceContour(reader, turning, {
+        width: checkWidth,
+        panelNodes: CHECK_PANEL_NODES,
+        finest,
+        arcNodes: Math.ceil((nodes * arcNodes(checkWidth)) / arcNodes(width)),
+      });
+      if (check === null) break;
+      const pair = { fine, check };
+      const disagreement = compare(t, reader, turning, pair);
+      if (disagreement < ACCEPTED) return pair;
+      if (disagreement < smallest) {
+        smallest = disagreement;
+        best = pair;
+      }
+    }
+  }
+  if (best !== null) return best;
+  throw new SolverError(
+    "not_converged",
+    "No contour around the saddle s0 passed its tests; the probabilities of this law cannot be vouched for.",
+  );
+}
+
+function arcNodes(width: number): number {
+  return Math.ceil((NODES_PER_N * REACH) / Math.log1p(width)) + ARC_NODES;
+}
+
+/** n at which the two contours are compared. */
+const SAMPLES = [0, 1, 2, 3, 5, 8, 13, 21, 34, 55, 89, 144, 233, 377, 610];
+
+/** Largest relative difference of the two contours on the limit law, its total against 1 included. */
+function compare(t: Trajectory, reader: TrajectoryReader, turning: Turning, pair: ContourPair): number {
+  const sums = [pair.fine, pair.check].map((contour) => {
+    const u = nodeValues(t, reader, contour, "far");
+    return u === null ? null : sumsOf(contour, turning, u, "each");
+  });
+  const [fine, check] = sums;
+  if (!fine || !check) return Number.POSITIVE_INFINITY;
+  let worst = 0;
+  for (const n of SAMPLES) {
+    const a = sumRange(fine, n, n);
+    const b = sumRange(check, n, n);
+    const value = a.values[0] as number;
+    const gap = Math.abs(value - (b.values[0] as number));
+    const excused = (a.rounding[0] as number) + (b.rounding[0] as number);
+    worst = Math.max(worst, Math.max(0, gap - excused) / Math.abs(value));
+    // the formula without its constant gives −1 at n = 0
+    if (n === 0) worst = Math.max(worst, Math.abs(value + 1) - excused);
+  }
+  return Number.isFinite(worst) ? worst : Number.POSITIVE_INFINITY;
+}

@@ -1,0 +1,141 @@
+import { contoursFor } from "./contours.ts";
+import { SolverError } from "./errors.ts";
+import { divide, LN2, logarithm } from "./pairs.ts";
+import { profileComplementAt } from "./profile.ts";
+import { ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
+import { scaledByPower } from "./scaled.ts";
+import { differenceValues, nodeValues } from "./sources.ts";
+import { type Sums, sumRange, sumsOf, type Wanted } from "./sums.ts";
+import type { Pair, ScaledEstimate, Start, Starts, Trajectory, Turning } from "./types.ts";
+
+/** A law made ready for reading at any n up to some bound. */
+export interface PreparedLaw {
+  readonly fine: Sums;
+  readonly check: Sums;
+  /** added to the power of two of every value: the size of a start too far away for doubles */
+  readonly extra: number;
+  readonly log2s0: Pair;
+  /** relative spread of s0 and of what multiplies s0^−n, under half a unit in each input */
+  readonly radiusSpread: number;
+  readonly factorSpread: number;
+  /** the first n for which the sums are the law itself: 2 where a multiple of s was taken out of E[s^K] */
+  readonly first: number;
+  readonly method: string;
+}
+
+/** Beyond decay·x = FAR a start's law is the limit law times its size: the correction is of the relative size e^−FAR. */
+const FAR = 600;
+/** Below this decay·x, w(x, s) − s is read off as one difference, since P(K = n) ~ x for every n ≠ 1. */
+const NEAR = 0.25;
+
+/** Traces the law of K for particles at positions > 0, or of the limit law.
+ *  @throws SolverError "not_converged" where no contour passes its tests. */
+export function prepareLaw(t: Trajectory, turning: Turning, starts: Starts, n: number, wanted: Wanted): PreparedLaw {
+  const reader = readerOf(t);
+  const contours = contoursFor(t, reader, turning, n);
+  const nearest = starts === "far" ? 0 : reader.decay * (starts[0] as Start).position;
+  const distant = starts !== "far" && nearest > FAR;
+  const source: Starts = distant ? "far" : starts;
+  const close = source !== "far" && isSingle(source) && nearest < NEAR;
+  const read = (contour: typeof contours.fine) => {
+    const values =
+      (close ? differenceValues(reader, contour, nearest) : null) ?? nodeValues(t, reader, contour, source);
+    if (values === null)
+      throw new SolverError("not_converged", "The law could not be continued along its contour from this start.");
+    return sumsOf(contour, turning, values, wanted);
+  };
+  const { legNodes, arcNodes } = contours.fine;
+  return {
+    fine: read(contours.fine),
+    check: read(contours.check),
+    extra: distant ? farSize(t, reader, starts) : 0,
+    log2s0: divide(logarithm(turning.s0), LN2),
+    radiusSpread: (turning.excessSpread * turning.excess[0]) / turning.s0[0],
+    factorSpread: factorSpread(t, turning, reader, starts),
+    first: close ? 2 : 1,
+    method: `Cauchy's integral along the slit from s0, ${legNodes} + ${arcNodes} nodes`,
+  };
+}
+
+function isSingle(starts: readonly Start[]): boolean {
+  return starts.length === 1 && starts[0]?.particles === 1;
+}
+
+/** log2 of Σ particles·B_0 e^{−decay x}. */
+function farSize(t: Trajectory, reader: TrajectoryReader, starts: readonly Start[]): number {
+  const nearest = (starts[0] as Start).position;
+  const total = starts.reduce((sum, s) => sum + s.particles * Math.exp(-reader.decay * (s.position - nearest)), 0);
+  return (Math.log(total * t.amplitude[0]) - reader.decay * nearest) / Math.LN2;
+}
+
+/** What half a unit in each input does to the factor of s0^−n. */
+function factorSpread(t: Trajectory, turning: Turning, reader: TrajectoryReader, starts: Starts): number {
+  const base = turning.excessSpread + turning.amplitudeSpread + t.amplitudeSpread;
+  if (starts === "far") return base;
+  const perParticle = starts.reduce(
+    (sum, s) => sum + s.particles * (base + reader.decay * s.position * (t.decaySpread + 2 * ROUNDING)),
+    0,
+  );
+  return base + perParticle;
+}
+
+/** Values at from, …, to with all errors: rounding, difference of the two contours, spread of the inputs. */
+export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstimate[] {
+  const { values, rounding } = sumRange(law.fine, from, to);
+  const methodError = differences(law, from, to);
+  const read: ScaledEstimate[] = [];
+  for (let i = 0; i < values.length; i += 1) {
+    const n = from + i;
+    const value = values[i] as number;
+    const spread = Math.abs(value) * (n * law.radiusSpread + law.factorSpread + 8 * ROUNDING);
+    const error = (rounding[i] as number) + Math.abs(value) * (methodError[i] as number) + spread;
+    read.push(scaledByPower(value, error, law.log2s0, n, law.extra));
+  }
+  return read;
+}
+
+/** Values of n between which the relative difference of the contours is carried over, as a share of n. */
+const SAMPLE_STEP = 1.3;
+/** The check contour is no better than the other: their difference counts double. */
+const DIFFERENCE_FACTOR = 2;
+
+/** Relative difference of the two contours for n = from, …, to, sampled on a geometric grid. */
+function differences(law: PreparedLaw, from: number, to: number): Float64Array {
+  const relative = new Float64Array(to - from + 1);
+  let previous = differenceAt(law, from);
+  let n = from;
+  while (n <= to) {
+    const next = Math.min(to, Math.max(n + 1, Math.ceil(n * SAMPLE_STEP)));
+    const at = differenceAt(law, next);
+    const larger = DIFFERENCE_FACTOR * Math.max(previous, at);
+    for (let m = n; m <= next; m += 1) relative[m - from] = Math.max(relative[m - from] as number, larger);
+    previous = at;
+    if (next === to) break;
+    n = next;
+  }
+  return relative;
+}
+
+function differenceAt(law: PreparedLaw, n: number): number {
+  const a = sumRange(law.fine, n, n).values[0] as number;
+  const b = sumRange(law.check, n, n).values[0] as number;
+  return a === b ? 0 : Math.abs(a - b) / Math.max(Math.abs(a), Number.MIN_VALUE);
+}
+
+/** P(K = 0) and 1 − P(K = 0) for particles at given positions, to full relative accuracy each. */
+export function zeroOf(t: Trajectory, starts: readonly Start[]): { zero: ScaledEstimate; complement: ScaledEstimate } {
+  let log = 0;
+  let error = 0;
+  for (const { position, particles } of starts) {
+    const u = profileComplementAt(t, position, 0);
+    if ("refused" in u) throw new SolverError("not_converged", u.refused);
+    log += particles * Math.log1p(-u.value);
+    error += (particles * u.error) / Math.max(1 - u.value, Number.MIN_VALUE) + ROUNDING * Math.abs(log);
+  }
+  const power = log / Math.LN2;
+  const survivors = -Math.expm1(log);
+  return {
+    zero: scaledByPower(1, error + 4 * ROUNDING * (1 + Math.abs(log)), [0, 0], 0, power),
+    complement: scaledByPower(survivors, Math.exp(log) * error + 4 * ROUNDING * survivors, [0, 0], 0),
+  };
+}
