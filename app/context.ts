@@ -116,5 +116,7 @@ export const databaseContext = createContext<Database>();
 export const servicesContext = createContext<Services>();
 /** null: nobody is signed in. */
 export const personContext = createContext<Person | null>(null);
+/** True for pages and for the data of pages; false for what scripts and programs ask for. */
+export const pageRequestContext = createContext<boolean>(false);
 /** Of this response's content security policy. */
 export const nonceContext = createContext<string>("");

@@ -8,7 +8,7 @@ export default [
   route("sign-out", "routes/sign-out.ts"),
   route("shelf", "routes/shelf.tsx"),
   route("settings", "routes/settings.tsx"),
-  route("specimen", "routes/specimen.tsx"),
+  route("specimen", "routes/specimen.ts"),
 
   route("papers/:paperId", "routes/paper.tsx"),
   route("papers/:paperId/title-page", "routes/paper.title-page.tsx"),

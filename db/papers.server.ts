@@ -48,9 +48,7 @@ export async function findFor(
   personId: string | null,
 ): Promise<(PaperRow & { readonly role: Role | null }) | undefined> {
   return knex("papers")
-    .leftJoin("members", (on) =>
-      on.on("members.paper_id", "papers.id").andOnVal("members.person_id", personId as unknown as string),
-    )
+    .joinRaw("left join members on members.paper_id = papers.id and members.person_id = ?::uuid", [personId])
     .where("papers.id", id)
     .first({ ...PAPER, role: "members.role" });
 }

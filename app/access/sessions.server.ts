@@ -1,0 +1,53 @@
+import { createHash, randomBytes } from "node:crypto";
+import type { Database } from "../../db/index.server.ts";
+import type { AppConfig, Person } from "../context.ts";
+import { SESSION_LIFETIME_DAYS, sessionCookie } from "./cookies.server.ts";
+
+const SECRET_BYTES = 32;
+
+export interface Session {
+  readonly person: Person;
+  /** SHA-256 of the cookie's secret, hex: names the session without opening it. */
+  readonly hash: string;
+}
+
+/** The live session of a `Cookie` header, or null. Also for sockets, which have no request of ours. */
+export async function readSession(
+  config: AppConfig,
+  database: Database,
+  cookieHeader: string | null | undefined,
+): Promise<Session | null> {
+  const hash = await sessionHash(config, cookieHeader);
+  if (hash === null) return null;
+  const person = await database.sessions.findPerson(hash);
+  return person ? { person, hash } : null;
+}
+
+/** Begins a session, ends the one the browser had, and returns the `Set-Cookie` header. */
+export async function beginSession(
+  config: AppConfig,
+  database: Database,
+  personId: string,
+  cookieHeader: string | null,
+): Promise<string> {
+  const former = await sessionHash(config, cookieHeader);
+  if (former !== null) await database.sessions.end(former);
+  const secret = randomBytes(SECRET_BYTES).toString("base64url");
+  await database.sessions.begin(hashOf(secret), personId, SESSION_LIFETIME_DAYS);
+  return sessionCookie(config).serialize(secret);
+}
+
+/** The `Set-Cookie` header that takes the session's cookie away. */
+export async function forgetSession(config: AppConfig): Promise<string> {
+  return sessionCookie(config).serialize("", { maxAge: 0 });
+}
+
+/** Hash of the session named by a `Cookie` header, live or not; null when it names none. */
+export async function sessionHash(config: AppConfig, cookieHeader: string | null | undefined): Promise<string | null> {
+  const secret: unknown = await sessionCookie(config).parse(cookieHeader ?? null);
+  return typeof secret === "string" && secret !== "" ? hashOf(secret) : null;
+}
+
+function hashOf(secret: string): string {
+  return createHash("sha256").update(secret).digest("hex");
+}

@@ -1,0 +1,34 @@
+import { isMap, isScalar, parseDocument } from "yaml";
+
+export const UNTITLED = "Untitled paper";
+
+/** The text of an empty paper: a title, its author, one parameter, and a sentence to begin from. */
+export function emptyPaper(author: string): string {
+  // A JSON string is a YAML string, whatever is in the name.
+  return `---
+title: ${UNTITLED}
+authors:
+  - name: ${JSON.stringify(author)}
+---
+
+\`\`\`parameters
+beta: {value: 1, min: 0, max: 4, step: 0.05, symbol: \\beta, note: branching rate}
+\`\`\`
+
+Write here. A number in a sentence, such as $\\beta = \\value{beta}$, follows its parameter above.
+`;
+}
+
+/** The text of a copy: the same but for its title, "Copy of …". A text without a title in its front matter is left as it is. */
+export function copyOf(text: string): { text: string; title: string | null } {
+  const front = /^---[ \t]*\r?\n([\s\S]*?)\r?\n---[ \t]*(?:\r?\n|$)/.exec(text);
+  const source = front?.[1];
+  if (source === undefined) return { text, title: null };
+  const { contents } = parseDocument(source, { schema: "failsafe" });
+  const title = isMap(contents) ? contents.get("title", true) : null;
+  if (!isScalar(title) || !title.range) return { text, title: null };
+  const copied = `Copy of ${String(title.value).trim()}`;
+  const offset = text.indexOf(source);
+  const [from, to] = title.range;
+  return { text: text.slice(0, offset + from) + JSON.stringify(copied) + text.slice(offset + to), title: copied };
+}

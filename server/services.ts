@@ -1,0 +1,80 @@
+import { randomBytes } from "node:crypto";
+import type { Server } from "node:http";
+import type { Knex } from "knex";
+import type { Logger } from "pino";
+import { readSession } from "../app/access/index.server.ts";
+import type { AppConfig, Services } from "../app/context.ts";
+import type { Database } from "../db/index.server.ts";
+import type { Environment } from "./env.server.ts";
+import type { StandIn, StandInClient } from "./fakes/index.ts";
+import { attachSockets, type Identify, LiveTexts, type SocketsOptions } from "./sync/index.ts";
+
+export interface ServiceParts {
+  readonly knex: Knex;
+  readonly database: Database;
+  readonly environment: Environment;
+  readonly config: AppConfig;
+  readonly log: Logger;
+}
+
+/** The services, with their sockets and the way to end them. */
+export interface RunningServices extends Services {
+  attachSockets(server: Server, options: Pick<SocketsOptions, "isOwnOrigin" | "sharesPort">): void;
+  /** Closes the sockets, and waits for what is being committed. */
+  close(): Promise<void>;
+}
+
+const GITHUB = { signInBase: "https://github.com", apiBase: "https://api.github.com" };
+
+/** Id and secret that this process's stand-in accepts. */
+export function drawStandInClient(): StandInClient {
+  return { clientId: "halfline-demo", clientSecret: randomBytes(16).toString("hex") };
+}
+
+/** @param publicOrigin where people reach this program */
+export function appConfig(
+  environment: Environment,
+  publicOrigin: string,
+  standIn: { server: StandIn; client: StandInClient } | null,
+): AppConfig {
+  const github = standIn
+    ? { ...standIn.client, signInBase: standIn.server.origin, apiBase: standIn.server.origin }
+    : environment.github && { ...environment.github, ...GITHUB };
+  if (!github) throw new Error("There is neither an id for GitHub nor a stand-in. readEnvironment refuses that.");
+  return {
+    standIn: standIn !== null,
+    publicOrigin,
+    secureCookies: publicOrigin.startsWith("https:"),
+    // Without one, attempts to sign in do not outlive the process; sessions do, they are rows of the database.
+    sessionSecret: environment.sessionSecret ?? randomBytes(32).toString("hex"),
+    github,
+  };
+}
+
+/** Texts with their live sockets, computations, and the making of PDFs. */
+export async function createServices(parts: ServiceParts): Promise<RunningServices> {
+  const { database, environment, config, log } = parts;
+  const identify: Identify = async (cookieHeader) => {
+    const session = await readSession(config, database, cookieHeader);
+    return session && { id: session.person.id, name: session.person.name, sessionHash: session.hash };
+  };
+  const onProblem = (error: unknown, where: string) => log.error({ err: error, where }, "live texts");
+  const texts = await LiveTexts.open({ database, databaseUrl: environment.databaseUrl, identify, onProblem });
+  return {
+    texts,
+    compute: absent("compute"),
+    pdf: absent("pdf"),
+    config,
+    log,
+    attachSockets: (server, options) => attachSockets(server, { ...options, texts, database, identify, onProblem }),
+    close: () => texts.close(),
+  };
+}
+
+/** Stands where a service is being fitted: every use of it fails with its name. */
+function absent<Service extends object>(name: string): Service {
+  return new Proxy({} as Service, {
+    get: (_target, member) => () =>
+      Promise.reject(new Error(`The service "${name}" is not fitted; ${String(member)} was asked of it.`)),
+  });
+}
