@@ -4,30 +4,33 @@ import { gaussLegendre } from "./quadrature.ts";
 import type { TrajectoryReader } from "./reader.ts";
 import type { Turning } from "./types.ts";
 
-/** The contour of Cauchy's formula for P(K = n): in from and out along the slit [s0, s0 (1 + width)], and once round on |s| = s0 (1 + width).
+/** The contour of Cauchy's formula for P(K = n), in L = ln(s/s0): out from s0 beside the slit [s0, ∞), then round on a circle.
  *
- *      upper half:   s = s0 (1 + τ²),  τ from 0 to √width          "leg", just above the slit
- *                    s = s0 (1 + width) e^{iθ},  θ from 0 to π     "arc"
+ *      upper half:   L = τ² e^{i tilt},  τ from 0 up to where Re L = width     "leg"
+ *                    L = width + iθ,     θ from width·tan(tilt) up to π        "arc"
  *
- *  s0 is the saddle of s^{−n} for every n, and on the leg s^{−n} is real and falls: no cancellation, at any n. On the arc it is
- *  smaller by (1 + width)^{−n}, so that the arc needs to resolve e^{−inθ} only for small n. s is known exactly at every node;
- *  what is found by continuation is ξ(s), with w(ξ) = s.
+ *  s0 is the saddle of s^{−n} for every n. On the leg s^{−n} falls (and is real without tilt): no cancellation, at any n.
+ *  On the arc it is smaller by e^{−n width}, so that the arc needs to resolve e^{−inθ} only for small n. L is known exactly
+ *  at every node; what is found by continuation is ξ(s), with w(ξ) = s. A tilt keeps clear of further singularities on the slit.
  *
- *  Layout: the arrays hold the nodes of the leg in order of τ, then those of the arc in order of θ. */
+ *  Layout: node 0 is s0 itself, with weight 0; then the nodes of the leg in order of τ; then those of the arc in order of θ. */
 export interface Contour {
-  readonly width: number;
   readonly legNodes: number;
   readonly arcNodes: number;
-  /** τ on the leg, θ on the arc */
-  readonly parameter: Float64Array;
-  /** quadrature weight in that parameter */
-  readonly weight: Float64Array;
+  readonly logRe: Float64Array;
+  readonly logIm: Float64Array;
+  /** dL at the node: quadrature weight times dL/dτ or dL/dθ */
+  readonly weightRe: Float64Array;
+  readonly weightIm: Float64Array;
   readonly xiRe: Float64Array;
   readonly xiIm: Float64Array;
 }
 
 export interface ContourShape {
+  /** ln of the circle's radius over s0 */
   readonly width: number;
+  /** angle [rad] of the leg with the slit, in [0, π/2) */
+  readonly tilt: number;
   /** nodes on each panel of the leg */
   readonly panelNodes: number;
   /** the innermost panel ends at or below this τ */
@@ -43,48 +46,65 @@ const CLOSING_TOLERANCE = 1e-9;
 
 /** Finds ξ at all nodes. @returns null where the continuation fails or does not close: the circle meets a singularity. */
 export function traceContour(reader: TrajectoryReader, turning: Turning, shape: ContourShape): Contour | null {
-  const leg = legRule(shape);
-  const arc = gaussLegendre(shape.arcNodes);
-  const legNodes = leg.tau.length;
-  const count = legNodes + shape.arcNodes;
-  const contour: Contour = {
-    width: shape.width,
-    legNodes,
-    arcNodes: shape.arcNodes,
-    parameter: new Float64Array(count),
-    weight: new Float64Array(count),
-    xiRe: new Float64Array(count),
-    xiIm: new Float64Array(count),
-  };
+  const contour = layNodes(shape);
+  const { logRe, logIm, legNodes } = contour;
   const s0 = turning.s0[0];
   const top = reader.topExpansion();
   const path = new Continuation(reader, "above", top.xiRe);
-  for (let j = 0; j < legNodes; j += 1) {
-    const tau = leg.tau[j] as number;
-    const solved = solveNearTop(top, s0 * tau * tau, path) || path.solve(-(turning.excess[0] + s0 * tau * tau), 0);
+  contour.xiRe[0] = top.xiRe;
+  for (let j = 1; j < logRe.length; j += 1) {
+    // s − s0 = s0 (e^L − 1), so that u must fall by as much below its value at the turning point
+    const a = logRe[j] as number;
+    const b = logIm[j] as number;
+    const riseRe = s0 * (Math.expm1(a) * Math.cos(b) - 2 * Math.sin(b / 2) ** 2);
+    const riseIm = s0 * Math.exp(a) * Math.sin(b);
+    const solved =
+      (j <= legNodes && solveNearTop(top, riseRe, riseIm, path)) || path.solve(-(turning.excess[0] + riseRe), -riseIm);
     if (!solved) return null;
-    record(contour, j, tau, leg.weight[j] as number, path);
+    contour.xiRe[j] = path.xiRe;
+    contour.xiIm[j] = path.xiIm;
   }
-  const radius = s0 * (1 + shape.width);
-  for (let j = 0; j < shape.arcNodes; j += 1) {
-    const theta = (Math.PI / 2) * (1 + (arc.nodes[j] as number));
-    if (!path.solve(1 - radius * Math.cos(theta), -radius * Math.sin(theta))) return null;
-    record(contour, legNodes + j, theta, (Math.PI / 2) * (arc.weights[j] as number), path);
-  }
-  if (!path.solve(1 + radius, 0)) return null;
+  if (!path.solve(1 + s0 * Math.exp(shape.width), 0)) return null;
   return Math.abs(path.xiIm + Math.PI) < CLOSING_TOLERANCE ? contour : null;
 }
 
-function record(contour: Contour, j: number, parameter: number, weight: number, path: Continuation): void {
-  contour.parameter[j] = parameter;
-  contour.weight[j] = weight;
-  contour.xiRe[j] = path.xiRe;
-  contour.xiIm[j] = path.xiIm;
+function layNodes(shape: ContourShape): Contour {
+  const { width, tilt } = shape;
+  const leg = legRule(shape);
+  const arc = gaussLegendre(shape.arcNodes);
+  const count = 1 + leg.tau.length + shape.arcNodes;
+  const make = () => new Float64Array(count);
+  const c: Contour = {
+    legNodes: leg.tau.length,
+    arcNodes: shape.arcNodes,
+    logRe: make(),
+    logIm: make(),
+    weightRe: make(),
+    weightIm: make(),
+    xiRe: make(),
+    xiIm: make(),
+  };
+  leg.tau.forEach((tau, i) => {
+    const weight = 2 * tau * (leg.weight[i] as number);
+    c.logRe[i + 1] = tau * tau * Math.cos(tilt);
+    c.logIm[i + 1] = tau * tau * Math.sin(tilt);
+    c.weightRe[i + 1] = weight * Math.cos(tilt);
+    c.weightIm[i + 1] = weight * Math.sin(tilt);
+  });
+  const from = width * Math.tan(tilt);
+  const half = (Math.PI - from) / 2;
+  arc.nodes.forEach((node, i) => {
+    const j = 1 + c.legNodes + i;
+    c.logRe[j] = width;
+    c.logIm[j] = from + half * (1 + node);
+    c.weightIm[j] = half * (arc.weights[i] as number);
+  });
+  return c;
 }
 
 /** Gauss–Legendre panels on the leg, each half as long as the next one out: a Gaussian of any width ≥ `finest` is resolved. */
 function legRule(shape: ContourShape): { tau: Float64Array; weight: Float64Array } {
-  const end = Math.sqrt(shape.width);
+  const end = Math.sqrt(shape.width / Math.cos(shape.tilt));
   const halvings = Math.max(1, Math.ceil(Math.log2(end / shape.finest)));
   const rule = gaussLegendre(shape.panelNodes);
   const count = (halvings + 1) * shape.panelNodes;
@@ -102,18 +122,20 @@ function legRule(shape: ContourShape): { tau: Float64Array; weight: Float64Array
 }
 
 /** Solves u(ξ0 + y) − u(ξ0) = −rise for y near −i √(rise/c_2), keeping all digits of small y. @returns false beyond the expansion's reach. */
-function solveNearTop(top: Expansion, rise: number, path: Continuation): boolean {
+function solveNearTop(top: Expansion, riseRe: number, riseIm: number, path: Continuation): boolean {
   const at = pointValue();
-  let yRe = 0;
-  let yIm = -Math.sqrt(rise / (top.re[2] as number));
+  const size = Math.sqrt(Math.hypot(riseRe, riseIm) / (top.re[2] as number));
+  const angle = Math.atan2(riseIm, riseRe) / 2;
+  let yRe = size * Math.sin(angle);
+  let yIm = -size * Math.cos(angle);
   for (let round = 0; round < NEWTON_ROUNDS; round += 1) {
     if (!(Math.hypot(yRe, yIm) < TRUSTED * top.reach)) return false;
     evaluate(top, yRe, yIm, at, true);
-    const gapRe = -rise - at.re;
-    const gapIm = -at.im;
-    const size = at.slopeRe * at.slopeRe + at.slopeIm * at.slopeIm;
-    const stepRe = (gapRe * at.slopeRe + gapIm * at.slopeIm) / size;
-    const stepIm = (gapIm * at.slopeRe - gapRe * at.slopeIm) / size;
+    const gapRe = -riseRe - at.re;
+    const gapIm = -riseIm - at.im;
+    const square = at.slopeRe * at.slopeRe + at.slopeIm * at.slopeIm;
+    const stepRe = (gapRe * at.slopeRe + gapIm * at.slopeIm) / square;
+    const stepIm = (gapIm * at.slopeRe - gapRe * at.slopeIm) / square;
     yRe += stepRe;
     yIm += stepIm;
     if (Math.hypot(stepRe, stepIm) <= Number.EPSILON * Math.hypot(yRe, yIm)) {

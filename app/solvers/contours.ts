@@ -11,11 +11,15 @@ export interface ContourPair {
   readonly check: Contour;
 }
 
-/** Widths tried, widest first: a wider arc needs fewer nodes, but must not meet another singularity of w(x, ·). */
+/** Shapes tried, those with fewest nodes first: a wider arc must not meet another singularity of w(x, ·), and a tilt avoids
+ *  those on the slit, where a geometric law has its pole. The tilted one serves as the check, on a narrower arc. */
 const WIDTHS = [0.3, 0.12, 0.05, 0.02, 0.008];
-/** Width of the check relative to the other. */
+const PLAIN_TILT = 0;
+const POLE_TILT = 0.6;
+/** What the check changes. */
 const CHECK_SHARE = 0.75;
-/** The arc matters up to n = REACH/ln(1 + width); Gauss–Legendre needs a little more than π/4 nodes for each of these n. */
+const CHECK_TILT = 0.3;
+/** The arc matters up to n = REACH/width; Gauss–Legendre needs a little more than π/4 nodes for each of these n. */
 const REACH = 40;
 const NODES_PER_N = 0.8;
 const ARC_NODES = 64;
@@ -45,17 +49,18 @@ export function contoursFor(t: Trajectory, reader: TrajectoryReader, turning: Tu
 }
 
 function searchWidths(t: Trajectory, reader: TrajectoryReader, turning: Turning, level: number): ContourPair {
-  // the leg must resolve both the Gaussian e^{−nτ²} and the scale s0 − 1 on which w(x, ·) itself varies
-  const finest = Math.min(1 / (2 * Math.sqrt(10 ** level)), Math.sqrt(turning.excess[0] / turning.s0[0]) / 4);
+  const finest = finestScale(reader, turning, level);
+  const tilt = reader.law.law === "geometric" ? POLE_TILT : PLAIN_TILT;
   let best: ContourPair | null = null;
   let smallest = TOLERATED;
   for (const width of WIDTHS) {
     for (let round = 0, nodes = arcNodes(width); round <= REFINEMENTS; round += 1, nodes = Math.ceil(1.5 * nodes)) {
-      const fine = traceContour(reader, turning, { width, panelNodes: PANEL_NODES, finest, arcNodes: nodes });
+      const fine = traceContour(reader, turning, { width, tilt, panelNodes: PANEL_NODES, finest, arcNodes: nodes });
       if (fine === null) break;
       const checkWidth = width * CHECK_SHARE;
       const check = traceContour(reader, turning, {
         width: checkWidth,
+        tilt: tilt + CHECK_TILT,
         panelNodes: CHECK_PANEL_NODES,
         finest,
         arcNodes: Math.ceil((nodes * arcNodes(checkWidth)) / arcNodes(width)),
@@ -77,8 +82,18 @@ function searchWidths(t: Trajectory, reader: TrajectoryReader, turning: Turning,
   );
 }
 
+/** The leg must resolve the Gaussian e^{−nτ²}, the scale s0 − 1 on which w(x, ·) itself varies, and the distance to a pole of G. */
+function finestScale(reader: TrajectoryReader, turning: Turning, level: number): number {
+  const gaussian = 1 / (2 * Math.sqrt(10 ** level));
+  const variation = Math.sqrt(turning.excess[0] / turning.s0[0]) / 4;
+  const mean = reader.law.mean[0];
+  const pole =
+    reader.law.law === "geometric" ? (1 / mean - turning.excess[0]) / turning.s0[0] : Number.POSITIVE_INFINITY;
+  return Math.min(gaussian, variation, Math.sqrt(Math.max(pole, Number.EPSILON)) / 2);
+}
+
 function arcNodes(width: number): number {
-  return Math.ceil((NODES_PER_N * REACH) / Math.log1p(width)) + ARC_NODES;
+  return Math.ceil((NODES_PER_N * REACH) / width) + ARC_NODES;
 }
 
 /** n at which the two contours are compared. */
@@ -86,12 +101,12 @@ const SAMPLES = [0, 1, 2, 3, 5, 8, 13, 21, 34, 55, 89, 144, 233, 377, 610];
 
 /** Largest relative difference of the two contours on the limit law, its total against 1 included. */
 function compare(t: Trajectory, reader: TrajectoryReader, turning: Turning, pair: ContourPair): number {
-  const sums = [pair.fine, pair.check].map((contour) => {
-    const u = nodeValues(t, reader, contour, "far");
-    return u === null ? null : sumsOf(contour, turning, u, "each");
-  });
-  const [fine, check] = sums;
-  if (!fine || !check) return Number.POSITIVE_INFINITY;
+  const u = nodeValues(t, reader, pair.fine, "far");
+  const v = nodeValues(t, reader, pair.check, "far");
+  if (u === null || v === null) return Number.POSITIVE_INFINITY;
+  const fine = sumsOf(pair.fine, turning, u, "each");
+  const check = sumsOf(pair.check, turning, v, "each");
+  const atTop = u.re[0] as number;
   let worst = 0;
   for (const n of SAMPLES) {
     const a = sumRange(fine, n, n);
@@ -100,8 +115,8 @@ function compare(t: Trajectory, reader: TrajectoryReader, turning: Turning, pair
     const gap = Math.abs(value - (b.values[0] as number));
     const excused = (a.rounding[0] as number) + (b.rounding[0] as number);
     worst = Math.max(worst, Math.max(0, gap - excused) / Math.abs(value));
-    // the formula without its constant gives −1 at n = 0
-    if (n === 0) worst = Math.max(worst, Math.abs(value + 1) - excused);
+    // at n = 0 the formula gives u(s0) − u(0), and u(0) = 1
+    if (n === 0) worst = Math.max(worst, Math.abs(value - (atTop - 1)) / Math.abs(value) - excused);
   }
   return Number.isFinite(worst) ? worst : Number.POSITIVE_INFINITY;
 }

@@ -113,14 +113,18 @@ function single(t: Trajectory, turning: Turning, rest: Starts, n: number, wanted
   const law = prepareLaw(t, turning, rest, n, wanted);
   const value = readLaw(law, n, n)[0] as ScaledEstimate;
   const read = wanted === "each" && n < law.first ? plusOne(value) : value;
-  if (wanted === "above" || !isCancelled(read) || n > CONVOLVED_UP_TO) return read;
-  return better(read, convolvedLaw(t, turning, rest as readonly Start[], n)[n] as ScaledEstimate);
+  if (wanted === "above" || !isSeveral(rest) || !isCancelled(read) || n > CONVOLVED_UP_TO) return read;
+  return better(read, convolvedLaw(t, turning, rest, n)[n] as ScaledEstimate);
 }
 
 /** Up to here a law of many particles is convolved from that of one where its contour cancels. */
 const CONVOLVED_UP_TO = 4000;
 /** Relative error beyond which another method is tried. */
 const CANCELLED = 1e-11;
+
+function isSeveral(rest: Starts): rest is readonly Start[] {
+  return rest !== "far" && (rest.length > 1 || (rest[0] as Start).particles > 1);
+}
 
 function isCancelled(value: ScaledEstimate): boolean {
   return value.error > CANCELLED * Math.abs(value.mantissa);
@@ -141,10 +145,9 @@ function wholeLaw(
   const values = [atZero(t, rest)];
   if (last >= 1) values.push(...readLaw(law, 1, last));
   if (law.first > 1 && last >= 1) values[1] = plusOne(values[1] as ScaledEstimate);
-  const several = rest !== "far" && (rest.length > 1 || (rest[0] as Start).particles > 1);
   const lastCancelled = values.findLastIndex((v, n) => n > 0 && n <= CONVOLVED_UP_TO && isCancelled(v));
   const { turning } = readerOf(t);
-  if (!several || lastCancelled < 1 || turning === null) return { values, method: law.method };
+  if (!isSeveral(rest) || lastCancelled < 1 || turning === null) return { values, method: law.method };
   const convolved = convolvedLaw(t, turning, rest, lastCancelled);
   return {
     values: values.map((v, n) => (n > 0 && n <= lastCancelled ? better(v, convolved[n] as ScaledEstimate) : v)),
