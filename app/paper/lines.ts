@@ -40,20 +40,17 @@ export function lineAt(text: string, offset: number): number {
 }
 
 /**
- * Where a position of `value` stands in `source`, when `value` is `source` with indentation, quote marks or the like
+ * Where the indices of `value` stand in `source`, when `value` is `source` with indentation, quote marks or the like
  * left out. Exact where the two are equal; otherwise found by matching characters in order.
  */
-export function indexInSource(value: string, source: string, index: number): number {
-  if (value === source) return index;
+export function sourceMap(value: string, source: string): (index: number) => number {
+  if (value === source) return (index) => index;
+  const places: number[] = [];
   let at = 0;
-  for (let i = 0; i < index && i < value.length; i++) at = afterMatch(source, value.charAt(i), at);
-  const next = value.charAt(index);
-  const found = next.trim() === "" ? at : source.indexOf(next, at);
-  return found < 0 ? Math.min(at, source.length) : found;
-}
-
-function afterMatch(source: string, character: string, at: number): number {
-  if (character.trim() === "") return at;
-  const found = source.indexOf(character, at);
-  return found < 0 ? at : found + 1;
+  for (const character of value.split("")) {
+    const found = character.trim() === "" ? -1 : source.indexOf(character, at);
+    places.push(found < 0 ? at : found);
+    if (found >= 0) at = found + 1;
+  }
+  return (index) => places[index] ?? at;
 }

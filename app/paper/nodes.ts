@@ -1,5 +1,5 @@
 import type { Node, Parent, PhrasingContent, RootContent } from "mdast";
-import type { InlineMath, Math as DisplayMath } from "mdast-util-math";
+import type { Math as DisplayMath, InlineMath } from "mdast-util-math";
 import type { BibliographyEntry, BoundNumber, Cell, Target } from "./types.ts";
 
 /** Theorem-like surroundings, all counted together within a section; a proof is not counted. */

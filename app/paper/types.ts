@@ -1,4 +1,4 @@
-import type { Root } from "mdast";
+import type { PhrasingContent, Root, RootContent } from "mdast";
 
 /** Offsets in UTF-16 units of the paper's text; lines count from 1. */
 export interface Span {
@@ -15,6 +15,8 @@ export interface Problem {
   readonly line: number;
   readonly severity: "error" | "warning";
   readonly message: string;
+  /** Offsets and line are the bibliography's, not the paper's text's. */
+  readonly where?: "bibliography";
   /** The cell (by id) whose working this is about, if any. */
   readonly cell?: string;
   readonly fix?: { readonly label: string; readonly from: number; readonly to: number; readonly insert: string };
@@ -35,6 +37,9 @@ export interface FrontMatter {
   readonly msc: readonly string[];
   readonly macros: Readonly<Record<string, string>>;
   readonly span: Span | null;
+  /** Title and abstract read as Markdown: their math, references, citations and numbers are the paper's. */
+  readonly titleNodes: readonly PhrasingContent[];
+  readonly abstractNodes: readonly RootContent[];
 }
 
 /** A node of a cell's YAML body, read by the failsafe schema: every scalar is its source text. Offsets are the paper's. */
@@ -72,7 +77,7 @@ export interface YamlEntry {
 
 /** A fenced block whose info string is a kind and a name, with its body read but not yet checked. */
 export interface Cell {
-  /** The name, or `kind@line` for an unnamed cell. */
+  /** The name, or `kind@line` for an unnamed cell and for one whose name an earlier cell has. */
   readonly id: string;
   /** The name, or `kind#k` (k-th unnamed cell of its kind): stays while lines are inserted above. */
   readonly slot: string;
@@ -128,7 +133,10 @@ export interface Target {
 export interface BibliographyEntry {
   readonly key: string;
   readonly type: string;
+  /** Lower-case names; values in TeX as written, their pieces joined. */
   readonly fields: Readonly<Record<string, string>>;
+  /** Where the entry stands in the bibliography. */
+  readonly span: Span;
   /** Number in the printed list (cited entries, by first author's name then year), or null when not cited. */
   readonly number: number | null;
 }

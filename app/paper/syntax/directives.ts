@@ -1,5 +1,4 @@
-import { asciiAlpha } from "micromark-util-character";
-import { markdownLineEnding, markdownSpace } from "micromark-util-character";
+import { asciiAlpha, markdownLineEnding, markdownSpace } from "micromark-util-character";
 import type { Code, Construct, Effects, State, TokenizeContext } from "micromark-util-types";
 
 const colon = 58;
@@ -95,10 +94,10 @@ function tokenizeAttributes(this: TokenizeContext, effects: Effects, ok: State, 
 
 /** Line endings are tokens of their own, so that line counts and prefixes of quotes and lists stay right. */
 function consume(effects: Effects, code: Code): void {
-  if (!markdownLineEnding(code)) return effects.consume(code);
-  effects.enter("lineEnding");
+  const ending = markdownLineEnding(code);
+  if (ending) effects.enter("lineEnding");
   effects.consume(code);
-  effects.exit("lineEnding");
+  if (ending) effects.exit("lineEnding");
 }
 
 /**

@@ -1,6 +1,6 @@
 import type { Nodes, Root } from "mdast";
-import { fromMarkdown } from "mdast-util-from-markdown";
 import type { CompileContext, Extension, Token } from "mdast-util-from-markdown";
+import { fromMarkdown } from "mdast-util-from-markdown";
 import { frontmatterFromMarkdown } from "mdast-util-frontmatter";
 import { gfmFootnoteFromMarkdown } from "mdast-util-gfm-footnote";
 import { gfmTableFromMarkdown } from "mdast-util-gfm-table";

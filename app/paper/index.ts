@@ -1,0 +1,34 @@
+export type { ItemRun } from "./bibliography/index.ts";
+export { bibliographyItem, citationText } from "./bibliography/index.ts";
+export { ENVIRONMENTS } from "./environments.ts";
+export { readInline } from "./inline.ts";
+export { Lines, lineAt } from "./lines.ts";
+export { mathTex } from "./math.ts";
+export type {
+  BoundNumberNode,
+  CellNode,
+  CitationNode,
+  EnvironmentName,
+  EnvironmentNode,
+  NumberInMath,
+  PrintedPart,
+  ReferenceNode,
+} from "./nodes.ts";
+export { PRINTED_PARTS, printedParts } from "./printed.ts";
+export { readPaper } from "./read.ts";
+export { didYouMean, nearestSpelling } from "./spelling.ts";
+export type {
+  Author,
+  BibliographyEntry,
+  BoundNumber,
+  Cell,
+  FrontMatter,
+  Paper,
+  Problem,
+  Span,
+  Target,
+  Yaml,
+  YamlEntry,
+} from "./types.ts";
+export type { PaperNode } from "./walk.ts";
+export { walk } from "./walk.ts";
