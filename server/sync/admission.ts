@@ -43,12 +43,16 @@ export function readSocketPath(url: string | undefined): { doc: DocumentName; pa
 /** The door of the sockets: the page's origin, then the session, then the paper and the role on it. */
 export async function admit(
   request: IncomingMessage,
-  door: { readonly origins: readonly string[]; readonly identify: Identify; readonly papers: Database["papers"] },
+  door: {
+    readonly isOwnOrigin: (origin: string | undefined) => boolean;
+    readonly identify: Identify;
+    readonly papers: Database["papers"];
+  },
 ): Promise<Admission | Refusal> {
   const asked = readSocketPath(request.url);
   if (!asked) return refusal(CLOSE.noSuchPaper, "The address names no paper.");
   const { origin, cookie } = request.headers;
-  if (!origin || !door.origins.includes(origin)) {
+  if (!door.isOwnOrigin(origin)) {
     return refusal(CLOSE.noAccess, "A page of another address asked. Open the paper from this program's own pages.");
   }
   return admitVisitor(asked, await door.identify(cookie), door.papers);

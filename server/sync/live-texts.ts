@@ -21,6 +21,8 @@ export interface LiveTextsOptions {
 }
 
 export type SignalListener = (signal: Signal) => void;
+/** Called when a paper's "shown" document has been loaded by this process. */
+export type ShownListener = (paperId: string) => void;
 
 /** The live texts of all papers, as this process holds them, and the sockets that are open to them. */
 export class LiveTexts implements TextService {
@@ -31,6 +33,7 @@ export class LiveTexts implements TextService {
   readonly connections = new Set<Connection>();
   readonly #options: LiveTextsOptions;
   readonly #listeners = new Set<SignalListener>();
+  readonly #shownListeners = new Set<ShownListener>();
   readonly #recheck: NodeJS.Timeout;
 
   private constructor(options: LiveTextsOptions) {
@@ -44,7 +47,10 @@ export class LiveTexts implements TextService {
     this.rooms = new Rooms({
       store: database.texts,
       sender: this.processName,
-      onLoad: (room) => watch.begin(room),
+      onLoad: (room) => {
+        watch.begin(room);
+        if (room.name === "shown") for (const listener of this.#shownListeners) listener(room.paperId);
+      },
       onCommit: (commit, room) => watch.committed(commit, room),
       onUnload: (room) => watch.end(room),
       onProblem,
@@ -109,6 +115,11 @@ export class LiveTexts implements TextService {
   /** Hears what other processes tell, from now on. */
   listen(listener: SignalListener): void {
     this.#listeners.add(listener);
+  }
+
+  /** Is told of every "shown" document that this process loads from now on. */
+  onShownLoaded(listener: ShownListener): void {
+    this.#shownListeners.add(listener);
   }
 
   /** Closes the sockets, waits for what is being committed, and ends. */

@@ -16,8 +16,8 @@ export interface SocketsOptions {
   readonly texts: LiveTexts;
   readonly database: Database;
   readonly identify: Identify;
-  /** Origins of our own pages, "https://halfline.example". */
-  readonly origins: readonly string[];
+  /** Says whether an `Origin` header is that of our own pages. */
+  readonly isOwnOrigin: (origin: string | undefined) => boolean;
   /** Leave upgrades to other addresses alone, for a development server that shares the port. Otherwise they are cut off. */
   readonly sharesPort?: boolean;
   readonly onProblem: (error: unknown, where: string) => void;

@@ -1,0 +1,2 @@
+export type { ComputeOptions } from "./service.ts";
+export { Computations } from "./service.ts";

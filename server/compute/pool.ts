@@ -1,0 +1,165 @@
+import { createRequire } from "node:module";
+import { fileURLToPath, pathToFileURL } from "node:url";
+import { MessageChannel } from "node:worker_threads";
+import { Piscina } from "piscina";
+import type { CellResult, CellTask, Outcome } from "../../app/cells/types.ts";
+import type { PaperText } from "../../app/context.ts";
+import type { ComputeJob, PlannedWork } from "./worker.ts";
+
+/** Memory of a thread's JavaScript heap. Typed arrays are not counted: kinds bound the size of their problems. */
+const HEAP_MB = 512;
+const PLAN_LIMIT_MS = 20_000;
+const IDLE_MS = 60_000;
+
+export interface PoolOptions {
+  /** Threads for cells: cores − 1, and at least 1. */
+  readonly threads: number;
+  /** Longest that one cell may compute. */
+  readonly cellLimitMs: number;
+}
+
+/** A cell that was stopped or whose thread died; `message` is for the author of the cell. */
+export class StoppedError extends Error {
+  readonly reason: "cancelled" | "stopped";
+  constructor(reason: "cancelled" | "stopped", message: string, options?: ErrorOptions) {
+    super(message, options);
+    this.name = "StoppedError";
+    this.reason = reason;
+  }
+}
+
+/**
+ * Worker threads: some for cells, one for reading and planning, which must not wait behind a long cell.
+ * A thread that is stopped is replaced; the rest of the process does not notice.
+ */
+export class Pool {
+  readonly #options: PoolOptions;
+  readonly #cells: Piscina<ComputeJob, Outcome>;
+  readonly #plans: Piscina<PaperText, PlannedWork[]>;
+  readonly #waiting: (() => void)[] = [];
+  #free: number;
+
+  constructor(options: PoolOptions) {
+    this.#options = options;
+    this.#free = options.threads;
+    const shared = {
+      ...workerFile(),
+      idleTimeout: IDLE_MS,
+      minThreads: 1,
+      resourceLimits: { maxOldGenerationSizeMb: HEAP_MB },
+    };
+    this.#cells = new Piscina({ ...shared, maxThreads: options.threads });
+    this.#plans = new Piscina({ ...shared, maxThreads: 1 });
+  }
+
+  /** Reads and plans a text. @throws StoppedError when it takes too long */
+  async plan(text: PaperText): Promise<PlannedWork[]> {
+    const signal = AbortSignal.timeout(PLAN_LIMIT_MS);
+    try {
+      return await this.#plans.run({ text: text.text, bibliography: text.bibliography }, { name: "plan", signal });
+    } catch (error) {
+      if (!signal.aborted) throw error;
+      throw new StoppedError("stopped", `The text could not be read within ${PLAN_LIMIT_MS / 1000} s.`, {
+        cause: error,
+      });
+    }
+  }
+
+  /**
+   * Computes a cell as soon as a thread is free.
+   * @param hooks.begun called when it has a thread; may refuse by throwing
+   * @throws StoppedError when it is cancelled, takes too long or too much memory
+   */
+  async compute(
+    task: CellTask,
+    results: ReadonlyMap<string, CellResult>,
+    hooks: { begun(): void | Promise<void>; progress(done: number, total: number): void },
+    cancel: AbortSignal,
+  ): Promise<Outcome> {
+    await this.#thread(cancel);
+    try {
+      await hooks.begun();
+      return await this.#run(task, results, hooks.progress, cancel);
+    } finally {
+      const next = this.#waiting.shift();
+      // The thread goes from hand to hand while somebody waits for it.
+      if (next) next();
+      else this.#free += 1;
+    }
+  }
+
+  async close(): Promise<void> {
+    await Promise.all([this.#cells.destroy(), this.#plans.destroy()]);
+  }
+
+  async #run(
+    task: CellTask,
+    results: ReadonlyMap<string, CellResult>,
+    onProgress: (done: number, total: number) => void,
+    cancel: AbortSignal,
+  ): Promise<Outcome> {
+    const { cellLimitMs } = this.#options;
+    const { port1, port2 } = new MessageChannel();
+    port1.on("message", ([done, total]: [number, number]) => onProgress(done, total));
+    port1.unref();
+    const limit = AbortSignal.timeout(cellLimitMs);
+    try {
+      return await this.#cells.run(
+        { task, results: [...results], progress: port2 },
+        { name: "compute", transferList: [port2], signal: AbortSignal.any([cancel, limit]) },
+      );
+    } catch (error) {
+      if (cancel.aborted) throw cancelled(error);
+      if (limit.aborted) {
+        throw new StoppedError("stopped", `Stopped after ${cellLimitMs / 1000} s, the limit for a cell.`, {
+          cause: error,
+        });
+      }
+      throw new StoppedError("stopped", wordsOfDeath(error), { cause: error });
+    } finally {
+      port1.close();
+    }
+  }
+
+  /** Resolves when this caller has a thread. */
+  async #thread(cancel: AbortSignal): Promise<void> {
+    if (cancel.aborted) throw cancelled(cancel.reason);
+    if (this.#free > 0) {
+      this.#free -= 1;
+      return;
+    }
+    await new Promise<void>((go, stop) => {
+      const onAbort = () => {
+        this.#waiting.splice(this.#waiting.indexOf(next), 1);
+        stop(cancelled(cancel.reason));
+      };
+      const next = () => {
+        cancel.removeEventListener("abort", onAbort);
+        go();
+      };
+      cancel.addEventListener("abort", onAbort, { once: true });
+      this.#waiting.push(next);
+    });
+  }
+}
+
+function cancelled(cause: unknown): StoppedError {
+  return new StoppedError("cancelled", "Cancelled.", { cause });
+}
+
+function wordsOfDeath(error: unknown): string {
+  const code = error instanceof Error && "code" in error ? error.code : "";
+  if (code === "ERR_WORKER_OUT_OF_MEMORY") {
+    return `Stopped: it needed more than ${HEAP_MB} MB of memory, the limit for a cell. A smaller problem would do.`;
+  }
+  return "Its worker ended before it was done. Recompute tries again.";
+}
+
+/** Beside this file when run from the sources, and then with their loader; beside the bundle otherwise. */
+function workerFile(): { filename: string; execArgv?: string[] } {
+  if (!import.meta.url.endsWith(".ts")) {
+    return { filename: fileURLToPath(new URL("./compute/worker.js", import.meta.url)) };
+  }
+  const loader = pathToFileURL(createRequire(import.meta.url).resolve("tsx")).href;
+  return { filename: fileURLToPath(new URL("./worker.ts", import.meta.url)), execArgv: ["--import", loader] };
+}
