@@ -49,9 +49,10 @@ const RELATIVE = 24 * ROUNDOFF;
 /** erfc of an exact x >= 1/2, far beyond where a double underflows. */
 function tail(x: number): Computed {
   const square = x * x;
+  const decay = exponential(exact(-square));
   // exp(-x²) needs the part of x² that the rounding of the square drops.
-  const decay = exponential(negate(add(exact(square), exact(productRest(x, x, square)))));
-  const factor = scaledTail(x);
+  const rest = Math.exp(-productRest(x, x, square));
+  const factor = scaledTail(x) * rest;
   return typeof decay === "string" ? decay : multiply(decay, approximate(factor, factor * RELATIVE));
 }
 

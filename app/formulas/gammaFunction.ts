@@ -13,10 +13,10 @@ const STIRLING_FROM = 14;
 
 /**
  * zeta(k) - 1 for k >= 2, by direct summation and Euler-Maclaurin's remainder.
- * Source: DLMF 25.2.9 with N = 12 and three correction terms.
+ * Source: DLMF 25.2.9 with N = 50 and three correction terms.
  */
 function zetaMinusOne(k: number): number {
-  const n = 12;
+  const n = 50;
   const last = n ** -k;
   let sum = last * (n / (k - 1) - 0.5);
   sum += last * (k / (12 * n) - (k * (k + 1) * (k + 2)) / (720 * n ** 3));
@@ -219,10 +219,20 @@ export function choose(n: Quantity, k: Quantity): Computed {
   let result: Quantity = exact(1);
   for (let i = 1; i <= count; i++) {
     // For whole n in this order every partial result is itself a binomial coefficient, so that it stays whole.
-    const factor = isWhole(n) ? exact(n.mantissa - count + i) : subtract(n, exact(i - 1));
-    const next = divide(multiply(result, factor), exact(i));
+    const next = isWhole(n)
+      ? wholeStep(result, n.mantissa - count + i, i)
+      : divide(multiply(result, subtract(n, exact(i - 1))), exact(i));
     if (typeof next === "string") return next;
     result = next;
   }
   return result;
+}
+
+/** result·factor/divisor, which is whole; exact as long as it is below 2^53, even where the product is not. */
+function wholeStep(result: Quantity, factor: number, divisor: number): Computed {
+  if (isWhole(result)) {
+    const next = (BigInt(result.mantissa) * BigInt(factor)) / BigInt(divisor);
+    if (next <= 2n ** 53n) return exact(Number(next));
+  }
+  return divide(multiply(result, exact(factor)), exact(divisor));
 }

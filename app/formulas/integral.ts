@@ -20,6 +20,11 @@ const FIRST_PANELS = 8;
 const MOST_PANELS = 400;
 /** Panels are halved until the estimated error is below this part of the integral of |F|. */
 const TOLERANCE = 1e-13;
+/** Where that cannot be reached, the integral is still given, with its error, up to this part; then it is refused. */
+const WORST = 1e-8;
+
+/** Misses within this many powers of ten of the largest count as near it. */
+const NEAR_LARGEST = 0.5;
 
 interface Panel {
   readonly from: number;
@@ -28,6 +33,8 @@ interface Panel {
   readonly size: Quantity;
   /** |Kronrod - Gauss|: far above the true error where F is smooth. */
   readonly miss: Quantity;
+  /** log10 of the miss. */
+  readonly rank: number;
 }
 
 /** What was learnt of F beyond its integral, and where F gave no number. */
@@ -57,6 +64,8 @@ export function integrate(body: Body, args: readonly Quantity[], variable: strin
     const panels = refine(value, a.mantissa, b.mantissa);
     const total = panels.reduce((sum, panel) => add(sum, panel.integral), exact(0));
     const miss = panels.reduce((sum, panel) => add(sum, panel.miss), exact(0));
+    if (!isWithin(panels, WORST))
+      return refuse(`the integral over ${variable} does not settle; its integrand may be unbounded or too rough`);
     const ends = add(edge(value, a), edge(value, b));
     const widening = add(miss, ends);
     const bound = roundedUp(widening.mantissa + widening.error);
@@ -79,25 +88,35 @@ function refine(value: (x: number) => Quantity, from: number, to: number): Panel
     const right = i === FIRST_PANELS - 1 ? to : from + ((to - from) * (i + 1)) / FIRST_PANELS;
     panels.push(panelOn(value, left, right));
   }
-  while (panels.length < MOST_PANELS && !isFine(panels)) {
-    panels.sort((p, q) => log10Of(p.miss) - log10Of(q.miss));
-    const worst = panels.pop() as Panel;
-    const middle = (worst.from + worst.to) / 2;
-    const isTooNarrow =
-      Math.abs(worst.to - worst.from) <= 64 * ROUNDOFF * Math.max(Math.abs(worst.from), Math.abs(worst.to));
-    if (isTooNarrow) {
-      panels.push(worst);
-      return panels;
+  while (panels.length < MOST_PANELS && !isWithin(panels, TOLERANCE)) {
+    // One round halves the panels whose misses are near the largest: one at a singularity, all where F oscillates.
+    panels.sort((p, q) => q.rank - p.rank);
+    const threshold = (panels[0] as Panel).rank - NEAR_LARGEST;
+    const worst = panels.splice(0, panels.filter(({ rank }) => rank >= threshold).length);
+    if (worst.some(isTooNarrow)) return [...panels, ...worst];
+    for (const { from: left, to: right } of worst) {
+      const middle = (left + right) / 2;
+      panels.push(panelOn(value, left, middle), panelOn(value, middle, right));
     }
-    panels.push(panelOn(value, worst.from, middle), panelOn(value, middle, worst.to));
   }
   return panels;
 }
 
-function isFine(panels: readonly Panel[]): boolean {
-  const miss = panels.reduce((sum, panel) => add(sum, panel.miss), exact(0));
-  const size = panels.reduce((sum, panel) => add(sum, panel.size), exact(0));
-  return miss.mantissa === 0 || log10Of(miss) <= log10Of(size) + Math.log10(TOLERANCE);
+function isTooNarrow({ from, to }: Panel): boolean {
+  return Math.abs(to - from) <= 64 * ROUNDOFF * Math.max(Math.abs(from), Math.abs(to));
+}
+
+/** Whether the panels' misses together are below that part of the integral of |F|, or below what the errors of F bring. */
+function isWithin(panels: readonly Panel[], part: number): boolean {
+  let miss = exact(0);
+  let size = exact(0);
+  let noise = exact(0);
+  for (const panel of panels) {
+    miss = add(miss, panel.miss);
+    size = add(size, panel.size);
+    noise = add(noise, { mantissa: panel.integral.error, exponent: panel.integral.exponent, error: 0, se: 0 });
+  }
+  return miss.mantissa === 0 || log10Of(miss) <= Math.max(log10Of(size) + Math.log10(part), log10Of(noise));
 }
 
 function panelOn(value: (x: number) => Quantity, from: number, to: number): Panel {
@@ -124,7 +143,7 @@ function panelOn(value: (x: number) => Quantity, from: number, to: number): Pane
   // The nodes are rounded: each value may be one at a place beside, over which F varies as it does between nodes.
   const nodes = multiply(variation, exact(2 * ROUNDOFF * Math.max(Math.abs(from), Math.abs(to))));
   const widened = add(kronrod, { mantissa: 0, exponent: nodes.exponent, error: Math.abs(nodes.mantissa), se: 0 });
-  return { from, to, integral: widened, size: exactly(size), miss: exactly(miss) };
+  return { from, to, integral: widened, size: exactly(size), miss: exactly(miss), rank: log10Of(miss) };
 }
 
 function exactly(q: Quantity): Quantity {

@@ -7,7 +7,7 @@ import type { Quantity } from "./types.ts";
 const LIBRARY = 4 * ROUNDOFF;
 
 /** ln 2 as the sum of two doubles, the first with 32 bits, so that its products with exponents below 2^21 are exact. */
-const LN2_HIGH = 6.9314718036912381649e-1;
+const LN2_HIGH = 0.6931471803691238;
 const LN2_LOW = 1.9082149292705877e-10;
 
 /** sqrt(x). The rounding error is known exactly. */
@@ -38,8 +38,9 @@ export function exponential(x: Quantity): Computed {
   const high = m - k * LN2_HIGH;
   const low = k * LN2_LOW;
   const value = Math.exp(high - low);
-  // Rounding of k·LN2_LOW, of the difference, and of LN2_LOW itself; then of the library's exponential.
-  const relative = ROUNDOFF * (Math.abs(low) + 1) + Math.abs(k) * 2 ** -86 + LIBRARY;
+  // Rounding of k·LN2_LOW, of the difference, and of LN2_LOW itself; from |k| = 2^21 on also of k·LN2_HIGH.
+  const product = Math.abs(k) < 2 ** 21 ? 0 : 2 * ROUNDOFF * Math.abs(m);
+  const relative = ROUNDOFF * (Math.abs(low) + 1) + product + Math.abs(k) * 2 ** -86 + LIBRARY;
   const spread = Math.expm1(error);
   const bound = roundedUp(value * (relative + spread + relative * spread));
   return withChance(value, k, bound, plain, value);

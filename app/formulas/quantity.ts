@@ -45,10 +45,14 @@ export function inUnit(q: Quantity, exponent: number): Quantity {
   return build(mantissa, exponent, error, q.se === 0 ? 0 : scaleUp(q.se, shift), sources);
 }
 
-/** Scales a bound; a positive one never becomes 0. */
+/** Below this size doubles are rounded to multiples of the smallest one. */
+const SMALLEST_NORMAL = 2 ** -1022;
+
+/** Scales a bound; where it falls among the subnormal numbers it is rounded up, so that none becomes 0. */
 function scaleUp(bound: number, shift: number): number {
   if (bound === 0) return 0;
-  return Math.max(scaleByPower(bound, shift), Number.MIN_VALUE);
+  const result = scaleByPower(bound, shift);
+  return result < SMALLEST_NORMAL ? result + Number.MIN_VALUE : result;
 }
 
 function build(mantissa: number, exponent: number, error: number, se: number, sources?: Sources): Quantity {
