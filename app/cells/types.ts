@@ -62,6 +62,7 @@ export interface PlannedCell {
 /** Plain JSON; can be posted to a worker thread. */
 export interface CellTask {
   readonly id: string;
+  readonly key: string;
   readonly kind: string;
   /** The kind's checked model: formulas as trees, choices as strings. */
   readonly model: unknown;
@@ -72,6 +73,7 @@ export interface CellTask {
   readonly lines: Readonly<Record<string, number>>;
   /** Where the cell varies parameters: what is computed again for each of their values, in order. */
   readonly recomputed?: {
+    readonly varied: readonly string[];
     readonly parameters: readonly { readonly name: string; readonly formula: Formula }[];
     readonly cells: readonly CellTask[];
   };

@@ -1,0 +1,36 @@
+import type { KindDocumentation } from "../kind.ts";
+
+export const COUNTS_DOCUMENTATION: KindDocumentation = {
+  name: "counts",
+  label: "Counts",
+  summary: "The law of K, the number of particles ever absorbed at the barrier.",
+  keys: [
+    { name: "of", meaning: "a process", required: true, fallback: null },
+    {
+      name: "start",
+      meaning: "where the first particle starts, or a map of positions to numbers of particles: {1: 3, 2: 2}",
+      required: true,
+      fallback: null,
+    },
+    { name: "up_to", meaning: "largest n of the law, at most 100000", required: false, fallback: "100" },
+  ],
+  ownKeys: false,
+  values: [
+    { name: "zero", meaning: "P(K = 0)" },
+    { name: "mean", meaning: "E K" },
+    { name: "variance", meaning: "Var K" },
+    { name: "median", meaning: "smallest n with P(K ≤ n) ≥ 1/2" },
+    { name: "mode", meaning: "the most probable n" },
+    { name: "s0", meaning: "radius of convergence of E s^K" },
+    { name: "infinite", meaning: "P(K = ∞)" },
+  ],
+  callables: [
+    { member: "", args: ["n"], least: 1, meaning: "P(K = n), also beyond up_to" },
+    { member: "above", args: ["n"], least: 1, meaning: "P(K > n)" },
+    { member: "quantile", args: ["p"], least: 1, meaning: "smallest n with P(K ≤ n) ≥ p" },
+    { member: "moment", args: ["j"], least: 1, meaning: "factorial moment E K(K−1)…(K−j+1)" },
+  ],
+  parts: ["figure", "table", "points"],
+  shows: ["figure"],
+  example: "of: larvae\nstart: 1\nup_to: 200",
+};

@@ -1,0 +1,89 @@
+import type { Figure, Series, TableData } from "../../figures/index.ts";
+import { labelledAxis } from "../figure-parts.ts";
+import type { Presentation } from "../presentation.ts";
+import { startWords } from "../process/start.ts";
+import { plottedCounts, tabulatedCounts } from "../process/thinning.ts";
+import { tableEntry } from "../table-parts.ts";
+import type { CellView } from "../types.ts";
+import { exactValue, refusedValue, scaledValue, shortNumber } from "../values.ts";
+import { callCounts } from "./callables.ts";
+import { doubleProbability, log10Probability, probabilityAt } from "./law.ts";
+import type { CountsData } from "./model.ts";
+
+/** The law as stems over n, on a logarithmic axis unless `axes` says otherwise; the table has thinned rows. */
+export function viewCounts(data: CountsData, presentation: Presentation): CellView {
+  const plotted = plottedCounts(data.law.upTo);
+  const remarks = plotted.length > data.law.upTo ? [] : [`Of n = 0 to ${data.law.upTo}, ${plotted.length} are drawn.`];
+  const name = presentation.name ?? "K";
+  const figure: Figure = {
+    alternative: alternative(data),
+    x: labelledAxis("n", "linear", presentation.x),
+    y: labelledAxis("P(K=n)", "log", presentation.y),
+    series: [stems(data, plotted, name)],
+    levels: [],
+    remarks,
+  };
+  return {
+    figure,
+    table: countsTable(data, tabulatedCounts(data.law.upTo), true),
+    points: countsTable(data, plotted, false),
+  };
+}
+
+function stems(data: CountsData, plotted: readonly number[], name: string): Series {
+  const kept = plotted.flatMap((n) => {
+    const probability = probabilityAt(data.law, n);
+    return probability === undefined ? [] : [{ n, probability }];
+  });
+  const bound = (sign: 1 | -1) =>
+    kept.map(({ probability: { mantissa, exponent, error } }) => (mantissa + sign * error) * 2 ** exponent);
+  return {
+    name: `${name}(n)`,
+    label: "",
+    labelAt: "end",
+    mark: "stems",
+    role: "ordinary",
+    x: kept.map(({ n }) => n),
+    y: kept.map(({ probability }) => doubleProbability(probability)),
+    log10y: kept.map(({ probability }) => log10Probability(probability)),
+    low: bound(-1),
+    high: bound(1),
+  };
+}
+
+function countsTable(data: CountsData, rows: readonly number[], withAbove: boolean): TableData {
+  const columns = [
+    { name: "n", head: "n", tex: true },
+    { name: "P(K=n)", head: "P(K=n)", tex: true },
+    { name: "P(K>n)", head: "P(K>n)", tex: true },
+  ];
+  const entries = rows.map((n) => {
+    const probability = probabilityAt(data.law, n);
+    const first = [
+      tableEntry(exactValue(n)),
+      tableEntry(probability === undefined ? refusedValue("") : scaledValue(probability)),
+    ];
+    return withAbove ? [...first, tableEntry(aboveValue(data, n))] : first;
+  });
+  return { columns: withAbove ? columns : columns.slice(0, 2), rows: entries, remarks: [] };
+}
+
+function aboveValue(data: CountsData, n: number) {
+  return callCounts(data, "above", [{ mantissa: n, exponent: 0, error: 0, se: 0 }]) ?? refusedValue("");
+}
+
+/** Says the finding: how likely none is, and how fast the law falls at its end. */
+function alternative(data: CountsData): string {
+  const { law } = data;
+  const none = probabilityAt(law, 0);
+  const beforeLast = probabilityAt(law, law.upTo - 1);
+  const last = probabilityAt(law, law.upTo);
+  const zero = none === undefined ? "" : ` P(K = 0) = ${shortNumber(doubleProbability(none))}.`;
+  const a = beforeLast === undefined ? null : log10Probability(beforeLast);
+  const b = last === undefined ? null : log10Probability(last);
+  const fall =
+    a === null || b === null
+      ? ""
+      : ` At n = ${law.upTo} it has fallen to about 10^${shortNumber(b)}, by a factor of ${shortNumber(10 ** (a - b))} from one n to the next.`;
+  return `The law of K for ${startWords(data.starts)}, n = 0 to ${law.upTo}.${zero}${fall}`;
+}

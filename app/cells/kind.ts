@@ -1,0 +1,111 @@
+import type { Quantity, Value } from "../formulas/index.ts";
+import type { Body } from "./body.ts";
+import type { ComputeContext } from "./context.ts";
+import type { Presentation } from "./presentation.ts";
+import type { CellView } from "./types.ts";
+
+/** What the manual and completion say of a kind. */
+export interface KindDocumentation {
+  /** The word of the fence: "profile". */
+  readonly name: string;
+  /** The word of the interface: "Profile". */
+  readonly label: string;
+  readonly summary: string;
+  /** In the order they are best written. `caption`, `show`, … that every kind has are not among them. */
+  readonly keys: readonly KeyDocumentation[];
+  /** True where the body's keys are names of the author's own. */
+  readonly ownKeys: boolean;
+  readonly values: readonly { readonly name: string; readonly meaning: string }[];
+  readonly callables: readonly CallableDocumentation[];
+  /** Parts that `show` may name. */
+  readonly parts: readonly string[];
+  /** Parts that appear when `show` is not given. */
+  readonly shows: readonly string[];
+  /** A body that computes, given a process `larvae`. */
+  readonly example: string;
+}
+
+export interface KeyDocumentation {
+  readonly name: string;
+  readonly meaning: string;
+  readonly required: boolean;
+  /** As it would be written; null when there is none. */
+  readonly fallback: string | null;
+}
+
+export interface CallableDocumentation {
+  /** "" for the cell itself. */
+  readonly member: string;
+  readonly args: readonly string[];
+  /** How many of `args` must be given. */
+  readonly least: number;
+  readonly meaning: string;
+}
+
+/** What formulas may read of a cell. */
+export interface Members {
+  readonly values: readonly string[];
+  readonly callables: readonly { readonly member: string; readonly least: number; readonly most: number }[];
+}
+
+/** What a kind's solver call gives. */
+export interface Computed<Data> {
+  /** In the order of the documentation. */
+  readonly values: Readonly<Record<string, Value>>;
+  /** Plain JSON, whole in itself: callables, figure and table are made from it alone. */
+  readonly data: Data;
+  /** The method that ran, D among its parameters: "Saddle contour, 256 nodes; D = 0.5". */
+  readonly method: string;
+}
+
+/**
+ * A kind of cell. One is a folder with model.ts and view.ts, and a line in registry.ts; nothing else branches on kinds.
+ *
+ * Life: `read` (planning, on each keystroke) → `inspect` (planning, when no other cell's value enters) → `compute` (in a
+ * worker) → `call` and `view` (wherever the result is shown, from its data alone). All are pure; `read` notes problems in
+ * the body and never throws; `inspect` and `compute` throw CellFault; `call` and `view` never throw.
+ */
+export interface KindOf<Model, Data> {
+  readonly documentation: KindDocumentation;
+  /** Name and version of what computes it: part of the key. */
+  readonly solver: string;
+  /** True where all values are known at planning (parameters): such a cell is never out of date. */
+  readonly knownAtPlanning: boolean;
+  /** Model: plain JSON of what enters the computation, formulas as trees, defaults filled in; all of it enters the key. */
+  read(body: Body): Model;
+  members(model: Model): Members;
+  /** Refuses inputs out of range. False: it takes longer than some milliseconds. */
+  inspect(model: Model, context: ComputeContext): boolean;
+  compute(model: Model, context: ComputeContext): Computed<Data>;
+  /** `K(3)`: member is "" for the cell itself. undefined when it has no such callable. */
+  call(data: Data, member: string, args: readonly Quantity[]): Value | undefined;
+  view(data: Data, presentation: Presentation): CellView;
+}
+
+export type Kind = KindOf<unknown, unknown>;
+
+/**
+ * Forgets a kind's own types, for the registry. Sound because a model only ever comes from the same kind's `read`, and
+ * data from its `compute`: both travel with the kind's name.
+ */
+export function defineKind<Model, Data>(kind: KindOf<Model, Data>): Kind {
+  return {
+    documentation: kind.documentation,
+    solver: kind.solver,
+    knownAtPlanning: kind.knownAtPlanning,
+    read: (body) => kind.read(body),
+    members: (model) => kind.members(model as Model),
+    inspect: (model, context) => kind.inspect(model as Model, context),
+    compute: (model, context) => kind.compute(model as Model, context),
+    call: (data, member, args) => kind.call(data as Data, member, args),
+    view: (data, presentation) => kind.view(data as Data, presentation),
+  };
+}
+
+/** The members of a kind that are the same for every cell of it. */
+export function documentedMembers(documentation: KindDocumentation): Members {
+  return {
+    values: documentation.values.map((value) => value.name),
+    callables: documentation.callables.map(({ member, least, args }) => ({ member, least, most: args.length })),
+  };
+}

@@ -1,0 +1,152 @@
+import type { Formula, Scope } from "../formulas/index.ts";
+import { toDouble } from "../formulas/index.ts";
+import type { Cell, Yaml } from "../paper/index.ts";
+import type { Body } from "./body.ts";
+import { parsedFormula } from "./body.ts";
+import { evaluated } from "./context.ts";
+import type { KindDocumentation } from "./kind.ts";
+import { didYouMean, listOfNames } from "./names.ts";
+
+type YamlMap = Extract<Yaml, { yaml: "map" }>;
+type AxisName = "x" | "y";
+
+export interface AxisLook {
+  readonly range: readonly [number, number] | null;
+  /** null: as the kind has it. */
+  readonly scale: "linear" | "log" | null;
+  /** TeX; null: as the kind has it. */
+  readonly label: string | null;
+}
+
+/** How a result is to look: what a body says beside its computation. None of it enters a key. */
+export interface Presentation {
+  readonly name: string | null;
+  readonly x: AxisLook;
+  readonly y: AxisLook;
+  /** The body as it is now, for heads and digits of columns. */
+  readonly body: YamlMap | null;
+}
+
+/** Keys that every kind has, and those of kinds with a figure. */
+export function presentationKeys(documentation: KindDocumentation): readonly string[] {
+  return documentation.parts.includes("figure") ? ["caption", "show", "axes", "labels"] : ["caption", "show"];
+}
+
+/** Which parts appear. Notes problems in `show`. */
+export function readShow(body: Body, documentation: KindDocumentation): readonly string[] {
+  const node = body.node("show");
+  if (node === null) return documentation.shows;
+  const items = node.yaml === "list" ? node.items : [node];
+  const words = items.flatMap((item) =>
+    (body.scalar(item, "the name of a part") ?? "")
+      .split(/[\s,]+/)
+      .filter((word) => word !== "")
+      .map((part) => ({ part, item })),
+  );
+  const shown: string[] = [];
+  for (const { part, item } of words) {
+    if (documentation.parts.includes(part)) shown.push(part);
+    else if (part !== "none") {
+      const choices = [...documentation.parts, "none"];
+      body.problem(
+        item,
+        `\`${part}\` is not a part of a ${documentation.name} cell: \`show\` takes ${listOfNames(choices, "or")}.${didYouMean(part, choices)}`,
+      );
+    }
+  }
+  return shown;
+}
+
+/** Notes problems in `caption`, `axes` and `labels`; their formulas are noted in the body, and may read parameters only. */
+export function checkPresentation(body: Body): void {
+  const caption = body.node("caption");
+  if (caption !== null) body.scalar(caption, "the words of a caption");
+  checkAxes(body);
+  checkLabels(body);
+}
+
+/** The presentation of a cell as its body has it now; what is not right there is left as the kind has it. */
+export function presentationOf(cell: Cell, parameters: Scope): Presentation {
+  const axes = entriesOf(cell.body, "axes");
+  const labels = entriesOf(cell.body, "labels");
+  const look = (axis: AxisName): AxisLook => ({
+    range: rangeOf(axes.get(axis), parameters),
+    scale: scaleOf(axes, axis),
+    label: scalarText(labels.get(axis)),
+  });
+  return { name: cell.name, x: look("x"), y: look("y"), body: cell.body };
+}
+
+/** A cell's caption, Markdown with math and values, and where it stands in the paper; null when it has none. */
+export function captionOf(planned: { readonly cell: Cell }): { readonly text: string; readonly offset: number } | null {
+  const node = planned.cell.body?.entries.find((entry) => entry.key === "caption")?.value;
+  if (node?.yaml !== "scalar" || node.text.trim() === "") return null;
+  return { text: node.text, offset: node.from + (node.quoted ? 1 : 0) };
+}
+
+function checkAxes(body: Body): void {
+  const node = body.node("axes");
+  if (node === null) return;
+  const entries = body.mapAt(node, "a map of axes such as {x: 0 to 4, log: y}");
+  if (entries === null) return;
+  body.onlyKeys(entries, ["x", "y", "log", "linear"], "`axes`");
+  for (const entry of entries) {
+    if (entry.key === "x" || entry.key === "y") {
+      const interval = body.intervalAt(entry.value, `axes.${entry.key}`);
+      if (interval === null)
+        body.problem(entry.value, `The range of an axis is an interval: \`${entry.key}: 0 to 4\`.`);
+    } else if (entry.key === "log" || entry.key === "linear") {
+      for (const item of entry.value.yaml === "list" ? entry.value.items : [entry.value]) {
+        const axis = body.scalar(item, "`x` or `y`");
+        if (axis !== null && axis !== "x" && axis !== "y")
+          body.problem(item, `\`${axis}\` is not an axis: there are \`x\` and \`y\`.`);
+      }
+    }
+  }
+}
+
+function checkLabels(body: Body): void {
+  const node = body.node("labels");
+  if (node === null) return;
+  const entries = body.mapAt(node, "a map of labels such as {x: x, y: w_s(x)}");
+  if (entries === null) return;
+  body.onlyKeys(entries, ["x", "y"], "`labels`");
+  for (const entry of entries) body.scalar(entry.value, "a label in TeX");
+}
+
+function entriesOf(map: YamlMap | null, key: string): ReadonlyMap<string, Yaml> {
+  const node = map?.entries.find((entry) => entry.key === key)?.value;
+  return new Map(node?.yaml === "map" ? node.entries.map((entry) => [entry.key, entry.value]) : []);
+}
+
+function rangeOf(node: Yaml | undefined, parameters: Scope): readonly [number, number] | null {
+  if (node?.yaml !== "scalar") return null;
+  const ends = node.text.split(/\s+to\s+/);
+  const [from, to] = ends.map((source) => numberIn(source, parameters));
+  if (ends.length !== 2 || typeof from !== "number" || typeof to !== "number") return null;
+  return from < to ? [from, to] : null;
+}
+
+function numberIn(source: string, parameters: Scope): number | null {
+  const parsed = parsedFormula(source);
+  if (!parsed.ok) return null;
+  const formula: Formula = parsed.formula;
+  const value = evaluated(formula, parameters);
+  const x = value.type === "number" ? toDouble(value.quantity) : Number.NaN;
+  return Number.isFinite(x) ? x : null;
+}
+
+function scaleOf(axes: ReadonlyMap<string, Yaml>, axis: AxisName): "linear" | "log" | null {
+  const named = (key: string): boolean => {
+    const node = axes.get(key);
+    if (node === undefined) return false;
+    const items = node.yaml === "list" ? node.items : [node];
+    return items.some((item) => item.yaml === "scalar" && item.text === axis);
+  };
+  if (named("log")) return "log";
+  return named("linear") ? "linear" : null;
+}
+
+function scalarText(node: Yaml | undefined): string | null {
+  return node?.yaml === "scalar" ? node.text : null;
+}

@@ -1,0 +1,56 @@
+import type { Figure, Series } from "../../figures/index.ts";
+import { labelledAxis } from "../figure-parts.ts";
+import type { Presentation } from "../presentation.ts";
+import { pointsTable } from "../table-parts.ts";
+import type { CellView } from "../types.ts";
+import { shortNumber, shortTex } from "../values.ts";
+import type { ProfileCurve, ProfileData } from "./model.ts";
+
+/** Curves of w(x, s), labelled by their starting values; the one from s0 is the principal, the limit 1 a dotted level. */
+export function viewProfile(data: ProfileData, presentation: Presentation): CellView {
+  const series = data.curves.map((curve, index) => seriesOf(curve, index, data.x));
+  const drawsOne = data.curves.some((curve) => curve.s === 1);
+  const figure: Figure = {
+    alternative: alternative(data),
+    x: labelledAxis("x", "linear", presentation.x),
+    y: labelledAxis("w", "linear", presentation.y),
+    series,
+    levels: drawsOne ? [] : [{ label: "1", y: 1 }],
+    remarks: data.left,
+  };
+  return { figure, table: null, points: pointsTable("x", figure) };
+}
+
+function seriesOf(curve: ProfileCurve, index: number, x: readonly number[]): Series {
+  const start = shortNumber(curve.s);
+  const tex = shortTex(curve.s);
+  const label = curve.turning ? `s_0=${tex}` : index === 0 ? `s=${tex}` : tex;
+  const bound = (sign: 1 | -1) => curve.w.map((w, i) => (w === null ? null : w + sign * (curve.error[i] ?? 0)));
+  return {
+    name: `w(x, ${curve.turning ? "s0" : start})`,
+    label,
+    labelAt: x[0] === 0 ? "start" : "end",
+    mark: "line",
+    role: curve.turning ? "principal" : curve.s === 1 ? "reference" : "ordinary",
+    x,
+    y: curve.w,
+    low: bound(-1),
+    high: bound(1),
+  };
+}
+
+/** Says the finding: where the curves begin, that they tend to 1, and how the last one leaves the barrier. */
+function alternative(data: ProfileData): string {
+  const range = `for x from ${shortNumber(data.x[0] ?? 0)} to ${shortNumber(data.x.at(-1) ?? 0)}`;
+  const starts = data.curves.map((curve) => shortNumber(curve.s));
+  const curves =
+    starts.length === 1
+      ? `One curve w(x, s) ${range}, s = ${starts[0]}`
+      : `${starts.length} curves w(x, s) ${range}, s = ${starts.join(", ")}`;
+  const turning = data.curves.find((curve) => curve.turning);
+  const last =
+    turning === undefined
+      ? ""
+      : ` The one from s0 = ${shortNumber(turning.s)} leaves the barrier without slope; beyond it there are none.`;
+  return `${curves}. All tend to 1 as x grows.${last}`;
+}

@@ -1,0 +1,22 @@
+import { COUNTS } from "./counts/model.ts";
+import { FORMULA } from "./formula/model.ts";
+import type { Kind } from "./kind.ts";
+import { defineKind } from "./kind.ts";
+import { PARAMETERS } from "./parameters/model.ts";
+import { PROCESS } from "./process/model.ts";
+import { PROFILE } from "./profile/model.ts";
+import { TABLE } from "./table/model.ts";
+import { TAIL } from "./tail/model.ts";
+
+/** Every kind of cell, by the word of its fence, in the order of the manual. A new kind is a folder and a line here. */
+export const KINDS: ReadonlyMap<string, Kind> = new Map(
+  [
+    defineKind(PARAMETERS),
+    defineKind(PROCESS),
+    defineKind(PROFILE),
+    defineKind(COUNTS),
+    defineKind(TAIL),
+    defineKind(TABLE),
+    defineKind(FORMULA),
+  ].map((kind) => [kind.documentation.name, kind]),
+);

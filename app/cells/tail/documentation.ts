@@ -1,0 +1,30 @@
+import type { KindDocumentation } from "../kind.ts";
+
+export const TAIL_DOCUMENTATION: KindDocumentation = {
+  name: "tail",
+  label: "Tail",
+  summary: "The law of K for large n, P(K = n) ~ C n^{−3/2} s0^{−n}, against the exact law.",
+  keys: [
+    { name: "of", meaning: "a process", required: true, fallback: null },
+    {
+      name: "start",
+      meaning: "where the first particle starts, or a map of positions to numbers of particles: {1: 3, 2: 2}",
+      required: true,
+      fallback: null,
+    },
+    { name: "up_to", meaning: "the n at which the law is compared, at most 100000", required: false, fallback: "1000" },
+    { name: "terms", meaning: "terms of the expansion in 1/n, 1 to 8", required: false, fallback: "1" },
+  ],
+  ownKeys: false,
+  values: [
+    { name: "s0", meaning: "radius of convergence of E s^K" },
+    { name: "slope_at_start", meaning: "∂w/∂x at the start, s = s0" },
+    { name: "constant", meaning: "the C of C n^{−3/2} s0^{−n}" },
+    { name: "ratio", meaning: "exact over asymptotic at up_to" },
+    { name: "omitted", meaning: "first omitted term at up_to, relative to the law" },
+  ],
+  callables: [{ member: "", args: ["n"], least: 1, meaning: "the asymptotic law at n" }],
+  parts: ["figure", "table", "points"],
+  shows: ["figure"],
+  example: "of: larvae\nstart: 1\nup_to: 1000",
+};

@@ -1,0 +1,79 @@
+import type { Figure, TableData } from "../../figures/index.ts";
+import type { Value } from "../../formulas/index.ts";
+import { toDouble } from "../../formulas/index.ts";
+import { labelledAxis } from "../figure-parts.ts";
+import type { Presentation } from "../presentation.ts";
+import { startWords } from "../process/start.ts";
+import { tabulatedCounts } from "../process/thinning.ts";
+import { tableEntry } from "../table-parts.ts";
+import type { CellView } from "../types.ts";
+import { exactValue, refusedValue, scaledValue, shortNumber } from "../values.ts";
+import { ratioOf } from "./law.ts";
+import type { Comparison, TailData } from "./model.ts";
+
+/** Exact over asymptotic against n: what one term of the law is good for, and from which n on. */
+export function viewTail(data: TailData, presentation: Presentation): CellView {
+  const compared = data.compared.filter(({ exact }) => exact !== null);
+  const ratios = compared.map((comparison) => numberOf(ratioOf(comparison, data.missing)));
+  const remarks = data.missing === null ? [] : [data.missing];
+  const figure: Figure = {
+    alternative: alternative(data),
+    x: labelledAxis("n", "log", presentation.x),
+    y: labelledAxis("P(K=n)/T(n)", "linear", presentation.y),
+    series: [
+      {
+        name: "exact over asymptotic",
+        label: "",
+        labelAt: "end",
+        mark: "points",
+        role: "ordinary",
+        x: compared.map(({ n }) => n),
+        y: ratios.map(({ ratio }) => ratio),
+        low: ratios.map(({ ratio, error }) => ratio - error),
+        high: ratios.map(({ ratio, error }) => ratio + error),
+      },
+    ],
+    levels: [{ label: "1", y: 1 }],
+    remarks,
+  };
+  const tabulated = new Set(tabulatedCounts(data.upTo));
+  return {
+    figure,
+    table: tailTable(
+      data,
+      data.compared.filter(({ n }) => tabulated.has(n)),
+    ),
+    points: tailTable(data, data.compared),
+  };
+}
+
+function tailTable(data: TailData, rows: readonly Comparison[]): TableData {
+  return {
+    columns: [
+      { name: "n", head: "n", tex: true },
+      { name: "exact", head: "P(K=n)", tex: true },
+      { name: "asymptotic", head: "asymptotic law", tex: false },
+      { name: "ratio", head: "exact over asymptotic", tex: false },
+    ],
+    rows: rows.map((row) => [
+      tableEntry(exactValue(row.n)),
+      tableEntry(row.exact === null ? refusedValue("") : scaledValue(row.exact)),
+      tableEntry(scaledValue(row.law)),
+      tableEntry(ratioOf(row, data.missing)),
+    ]),
+    remarks: data.missing === null ? [] : [data.missing],
+  };
+}
+
+function numberOf(value: Value): { ratio: number; error: number } {
+  if (value.type !== "number") return { ratio: Number.NaN, error: 0 };
+  return { ratio: toDouble(value.quantity), error: value.quantity.error };
+}
+
+function alternative(data: TailData): string {
+  const { law, upTo } = data;
+  const last = data.compared.find(({ n }) => n === upTo);
+  const ratio = last === undefined ? Number.NaN : numberOf(ratioOf(last, data.missing)).ratio;
+  const found = Number.isNaN(ratio) ? "" : ` At n = ${upTo} it is ${Number(ratio.toPrecision(6))}.`;
+  return `P(K = n) over its asymptotic law ${shortNumber(law.constant.value)} n^(−3/2) ${shortNumber(law.s0.value)}^(−n), n = 1 to ${upTo}, for ${startWords(data.starts)}; it tends to 1.${found}`;
+}
