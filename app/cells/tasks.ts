@@ -32,7 +32,7 @@ export class Tasks {
       key: this.keys.key(id, open) ?? "",
       kind: draft.cell.kind,
       model: draft.model,
-      parameters: this.#quantities([...dependencies.parameters, ...varied]),
+      parameters: this.#quantities([...dependencies.parameters, ...varied, ...ownParameters(draft)]),
       needs: this.#keysOf([...fixed, ...behind], open),
       lines: Object.fromEntries(Object.entries(draft.body.places).map(([path, place]) => [path, place.line])),
       ...(varied.length === 0
@@ -84,4 +84,9 @@ export class Tasks {
   #keysOf(cells: readonly string[], open: readonly string[]): Record<string, string> {
     return Object.fromEntries([...new Set(cells)].map((cell) => [cell, this.keys.key(cell, open) ?? ""]));
   }
+}
+
+/** A cell of parameters gives the very values that planning found. */
+function ownParameters(draft: Draft): readonly string[] {
+  return draft.kind?.knownAtPlanning === true ? draft.kind.members(draft.model).values : [];
 }
