@@ -73,6 +73,7 @@ export function normalise(model: ProcessModel, linear: Linearised): Normalised {
   const { law, growth, discriminant } = linear;
   const decay = fastRate(model.drift, model.diffusion, growth, discriminant);
   const unit = scale(multiply(decay, decay), model.diffusion);
-  const ratio = growth[0] > 0 && discriminant[0] === 0 ? ONE : divide(growth, unit);
-  return { law, decay, ratio, strength: divide(pair(model.rate), unit) };
+  // at the critical drift both rates are one, whatever the last digits of the inputs; the drift itself then drops out
+  if (growth[0] > 0 && discriminant[0] === 0) return { law, decay, ratio: ONE, strength: divide(ONE, law.excess) };
+  return { law, decay, ratio: divide(growth, unit), strength: divide(pair(model.rate), unit) };
 }

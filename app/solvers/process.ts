@@ -1,10 +1,9 @@
+import { HALF_UNIT, inputUnit, lawUnit } from "./input-rounding.ts";
 import { fastRate, type Linearised, linearise } from "./linear.ts";
+import { growthSpread, rateSpread } from "./linear-spread.ts";
 import { type Branching, nonlinearity } from "./offspring.ts";
 import { pair, scale, squareRoot, toNumber } from "./pairs.ts";
 import type { Answer, Estimate, Pair, ProcessDescription, ProcessModel } from "./types.ts";
-
-/** Half a unit in the last place of an input, relative. */
-export const HALF_UNIT = 2 ** -53;
 
 /** What is known of a process at once: means, rates, regime, limits.
  *  Units: malthusian 1/time, criticalDrift length/time, decay and farDecay 1/length, the rest pure numbers.
@@ -14,10 +13,10 @@ export const HALF_UNIT = 2 ** -53;
 export function describeProcess(model: ProcessModel): ProcessDescription {
   const linear = linearise(model);
   const { law, growth, regime } = linear;
-  const relative = growthSpread(law);
+  const relative = growthSpread(model, law);
   const extinctionProbability = extinction(law);
   return {
-    meanOffspring: estimate(law.mean, 2 * HALF_UNIT),
+    meanOffspring: estimate(law.mean, 2 * lawUnit(model.offspring)),
     malthusian: estimate(growth, relative),
     criticalDrift: criticalDrift(model, growth, relative),
     regime,
@@ -34,29 +33,10 @@ function estimate(x: Pair, spread: number): Estimate {
   return { value, error: Math.abs(value) * (spread + HALF_UNIT) };
 }
 
-/** Relative change of f'(1) when every input moves by half a unit: the mean is a sum of larger terms than its excess over 1. */
-export function growthSpread(law: Branching): number {
-  const excess = Math.abs(law.excess[0]);
-  return excess === 0 ? 0 : HALF_UNIT * (2 + (2 * (law.mean[0] + 1)) / excess);
-}
-
 function criticalDrift(model: ProcessModel, growth: Pair, relative: number): Answer<Estimate> {
   if (growth[0] < 0)
     return { refused: "The Malthusian parameter is negative: every drift is away, and there is no critical drift." };
-  return estimate(squareRoot(scale(scale(growth, model.diffusion), 4)), relative);
-}
-
-/** Bound on the change of √(drift² − 4 D growth) when the inputs move by half a unit; 0 where the drift was taken as critical. */
-export function rootSpread(
-  drift: number,
-  diffusion: number,
-  growth: number,
-  discriminant: number,
-  relative: number,
-): number {
-  if (discriminant === 0) return 0;
-  const change = 2 * HALF_UNIT * drift * drift + 4 * diffusion * Math.abs(growth) * (relative + HALF_UNIT);
-  return change / (2 * Math.sqrt(discriminant));
+  return estimate(squareRoot(scale(scale(growth, model.diffusion), 4)), (relative + inputUnit(model.diffusion)) / 2);
 }
 
 function decay(model: ProcessModel, linear: Linearised, relative: number): Answer<Estimate> {
@@ -71,14 +51,6 @@ function decay(model: ProcessModel, linear: Linearised, relative: number): Answe
     fastRate(model.drift, model.diffusion, linear.growth, linear.discriminant),
     rateSpread(model, linear.growth[0], linear.discriminant[0], relative),
   );
-}
-
-/** Bound on the relative change of fastRate under half a unit in each input. */
-export function rateSpread(model: ProcessModel, growth: number, discriminant: number, relative: number): number {
-  const root = Math.sqrt(discriminant);
-  const shift = rootSpread(model.drift, model.diffusion, growth, discriminant, relative);
-  if (model.drift >= 0) return (HALF_UNIT * model.drift + shift) / (model.drift + root) + HALF_UNIT;
-  return relative + (HALF_UNIT * -model.drift + shift) / (root - model.drift) + HALF_UNIT;
 }
 
 function farDecay(model: ProcessModel, linear: Linearised, q: Estimate, relative: number): Answer<Estimate> {
