@@ -119,10 +119,12 @@ export class Body {
     return fallback;
   }
 
-  /** The formula under a key, or the number that stands when the key is absent. */
-  formula(key: string, fallback: number, locals: readonly string[] = []): Formula {
+  /** The formula under a key, or the one that stands when the key is absent, as it would be written. */
+  formula(key: string, fallback: string, locals: readonly string[] = []): Formula {
     const node = this.node(key);
-    return node === null ? { node: "number", value: fallback } : this.formulaAt(node, key, locals);
+    if (node !== null) return this.formulaAt(node, key, locals);
+    const parsed = parsedFormula(fallback);
+    return parsed.ok ? parsed.formula : NOTHING;
   }
 
   /** The formula written at a node. `path` names it for failures: "columns.ratio". */

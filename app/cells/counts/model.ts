@@ -40,7 +40,7 @@ export const COUNTS: KindOf<CountsCell, CountsData> = {
   read: (body: Body): CountsCell => ({
     of: body.reference("of", ["process"]),
     start: readStart(body),
-    upTo: body.formula("up_to", 100),
+    upTo: body.formula("up_to", "100"),
   }),
 
   members: () => documentedMembers(COUNTS_DOCUMENTATION),

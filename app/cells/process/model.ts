@@ -35,9 +35,9 @@ export const PROCESS: KindOf<ProcessCell, ProcessData> = {
   knownAtPlanning: false,
 
   read: (body: Body): ProcessCell => ({
-    drift: body.formula("drift", 0),
-    rate: body.formula("rate", 0),
-    diffusion: body.formula("diffusion", 1 / 2),
+    drift: body.formula("drift", "0"),
+    rate: body.formula("rate", "0"),
+    diffusion: body.formula("diffusion", "1/2"),
     offspring: readOffspring(body),
   }),
 

@@ -13,7 +13,7 @@ const ONE: Formula = { node: "number", value: 1 };
 /** Reads `start`: a position, or a map of positions to numbers of particles. */
 export function readStart(body: Body): StartModel {
   const node = body.node("start");
-  if (node?.yaml !== "map") return [{ position: body.formula("start", 0), particles: ONE }];
+  if (node?.yaml !== "map") return [{ position: body.formula("start", "0"), particles: ONE }];
   if (node.entries.length === 0)
     body.problem(node, "`start` is empty; it takes a position, or positions with numbers of particles: {1: 3, 2: 2}.");
   const starts = node.entries.map((entry) => ({

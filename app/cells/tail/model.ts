@@ -52,8 +52,8 @@ export const TAIL: KindOf<TailCell, TailData> = {
   read: (body: Body): TailCell => ({
     of: body.reference("of", ["process"]),
     start: readStart(body),
-    upTo: body.formula("up_to", 1000),
-    terms: body.formula("terms", 1),
+    upTo: body.formula("up_to", "1000"),
+    terms: body.formula("terms", "1"),
   }),
 
   members: () => documentedMembers(TAIL_DOCUMENTATION),
