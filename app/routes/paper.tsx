@@ -1,30 +1,34 @@
 import { requirePaper } from "../access/index.server.ts";
+import { may } from "../access/index.ts";
 import { servicesContext } from "../context.ts";
-import { CommandLink, RunningHead } from "../ui/index.ts";
+import { SheetPage } from "../editor/index.ts";
+import { useNonce } from "../ui/index.ts";
 import type { Route } from "./+types/paper";
 
 export async function loader({ request, context, params }: Route.LoaderArgs) {
-  const { paper, standing } = await requirePaper({ request, context }, params.paperId, "read");
-  const { text } = await context.get(servicesContext).texts.read(paper.id);
-  return { id: paper.id, title: paper.title, standing, text };
+  const { paper, standing, person } = await requirePaper({ request, context }, params.paperId, "read");
+  const { texts } = context.get(servicesContext);
+  const [text, shown] = await Promise.all([texts.read(paper.id), texts.shown(paper.id)]);
+  return {
+    paperId: paper.id,
+    title: paper.title,
+    // A visitor of the specimen has no socket, signed in or not: the sheet is sent whole.
+    person: standing === "visitor" || person === null ? null : { id: person.id, name: person.name },
+    writes: may(standing, "write"),
+    signIn: person === null ? `/sign-in?returnTo=${encodeURIComponent(`/papers/${paper.id}`)}` : "",
+    first: { ...text, shown },
+  };
 }
 
 export default function Sheet({ loaderData }: Route.ComponentProps) {
-  const { id, title, text } = loaderData;
+  const nonce = useNonce() ?? "";
   return (
     <>
-      <title>{`${title} · Halfline`}</title>
-      <RunningHead
-        home="/shelf"
-        title={title}
-        right={
-          <>
-            <CommandLink to={`/papers/${id}/title-page`}>Title page</CommandLink>
-            <CommandLink to={`/papers/${id}/galley`}>Galley</CommandLink>
-          </>
-        }
-      />
-      <main className="mx-auto w-full max-w-[var(--measure)] px-4 whitespace-pre-wrap">{text}</main>
+      <title>{`${loaderData.title} · Halfline`}</title>
+      <SheetPage {...loaderData} nonce={nonce} />
     </>
   );
 }
+
+/** The live sheet tells of the paper by itself: an action elsewhere on the page does not fetch the text again. */
+export const shouldRevalidate = () => false;

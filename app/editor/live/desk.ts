@@ -1,0 +1,278 @@
+import type { EditorView } from "@codemirror/view";
+import type { Kept } from "../kept.ts";
+import { yamlScalar } from "../model/scale.ts";
+import type { CellFace, SheetModel, ShownView } from "../model/types.ts";
+import { createSheetEditor, createSourceEditor } from "../text/editor.ts";
+import type { CellCommands, SheetHost } from "../text/host.ts";
+import { findPlace } from "../text/places.ts";
+import { sheetField, showWorking } from "../text/sheet-field.ts";
+import { Announcer } from "./announcer.ts";
+import type { Connection } from "./connection.ts";
+import { openSession, type PaperSession, type SessionOptions, type ShownRecords } from "./paper-session.ts";
+import { Reading } from "./reading.ts";
+import { requestsOf } from "./requests.ts";
+import { ResultFetcher } from "./result-fetcher.ts";
+import { createStore, type Store } from "./store.ts";
+
+export type DeskOptions = Pick<SessionOptions, "paperId" | "person" | "writes" | "first">;
+
+/** What the parts around the text watch. */
+export interface DeskView {
+  readonly model: SheetModel | null;
+  readonly connection: Connection;
+  readonly kept: Kept;
+  readonly people: readonly string[];
+  /** A refusal, or word of a joining; null when there is nothing to say. */
+  readonly notice: { readonly words: string; readonly amiss: boolean } | null;
+  readonly heard: string;
+  /** The text stands on the sheet. */
+  readonly ready: boolean;
+}
+
+/** States from which "Recompute all" sets out. What stands on purpose is left standing. */
+const TO_RECOMPUTE: ReadonlySet<CellFace["state"]> = new Set<CellFace["state"]>([
+  "outOfDate",
+  "cancelled",
+  "empty",
+  "failed",
+]);
+
+/** Everything that belongs to one open paper: its session, its text on the sheet, its reading, and the commands. */
+export class Desk {
+  readonly store: Store<DeskView> = createStore<DeskView>({
+    model: null,
+    connection: { state: "joining" },
+    kept: { all: false, at: null },
+    people: [],
+    notice: null,
+    heard: "",
+    ready: false,
+  });
+  private readonly options: DeskOptions;
+  private readonly session: PaperSession;
+  private readonly host: SheetHost;
+  private readonly announcer = new Announcer((heard) => this.store.set({ heard }));
+  private readonly requests;
+  private readonly fetcher: ResultFetcher;
+  private view: EditorView | null = null;
+  private reading: Reading | null = null;
+  private shown: ShownRecords;
+  /** A visitor's own values. */
+  private settled: Readonly<Record<string, string>> = {};
+  private trial: Readonly<Record<string, string>> = {};
+  /** A parameter was set: at the next sheet, results that are kept already are to be shown. */
+  private wantsKept = false;
+  private readonly place: HTMLElement;
+  private readonly nonce: string;
+
+  constructor(options: DeskOptions, place: HTMLElement, nonce: string) {
+    this.options = options;
+    this.place = place;
+    this.nonce = nonce;
+    this.shown = options.first.shown;
+    this.requests = requestsOf(options.paperId);
+    this.host = { commands: this.commands(), writes: options.writes, macros: {}, views: new Map<string, ShownView>() };
+    this.fetcher = new ResultFetcher(this.requests, (results) => this.reading?.tellResults(results));
+    this.session = openSession({
+      ...options,
+      onText: () => this.begin(),
+      onConnection: (connection) => this.onConnection(connection),
+      onKept: (kept) => this.store.set({ kept }),
+      onShown: (shown) => {
+        this.shown = shown;
+        this.reading?.tellShown(shown);
+      },
+      onBibliography: () => this.reading?.textChanged(),
+      onPeople: (people) => this.store.set({ people }),
+      onJoined: (own) => {
+        const words = `Connected. ${own} ${own === 1 ? "change" : "changes"} by you ${own === 1 ? "was" : "were"} joined.`;
+        this.store.set({ notice: { words, amiss: false } });
+        this.announcer.say(words);
+      },
+    });
+  }
+
+  end(): void {
+    this.announcer.end();
+    this.fetcher.end();
+    this.reading?.end();
+    this.view?.destroy();
+    this.session.end();
+  }
+
+  joinAgain(): void {
+    this.session.joinAgain();
+  }
+
+  openBibliography(parent: HTMLElement): EditorView {
+    const { bibliography, undo } = this.session;
+    return createSourceEditor({
+      parent,
+      text: bibliography,
+      undo: undo.bibliography,
+      nonce: this.nonce,
+      writes: this.options.writes,
+    });
+  }
+
+  /** Shows privately what follows of a value; null puts back. */
+  tryParameter(name: string, source: string | null): void {
+    this.trial = source === null ? {} : { [name]: source };
+    this.reading?.tellPreview(this.settled, this.trial);
+  }
+
+  /** Lets a value stand: an author's in the text, as one edit and one undo step; a reader's on this page alone. */
+  setParameter(name: string, source: string): void {
+    const { view } = this;
+    if (view === null) return;
+    if (!this.options.writes) {
+      this.settled = { ...this.settled, [name]: source };
+      this.trial = {};
+      this.reading?.tellPreview(this.settled, this.trial);
+      return;
+    }
+    const places = view.state.field(sheetField).places;
+    const found = findPlace(places, (piece) => piece.piece === "parameter" && piece.name === name);
+    if (found === null) return;
+    this.session.undo.text.stopCapturing();
+    view.dispatch({
+      changes: { from: found.from, to: found.to, insert: yamlScalar(source) },
+      userEvent: "input.parameter",
+    });
+    this.session.undo.text.stopCapturing();
+    this.trial = {};
+    this.wantsKept = true;
+    this.reading?.tellPreview(this.settled, this.trial);
+  }
+
+  /** A reader goes back to the paper's own values. */
+  putBackAll(): void {
+    this.settled = {};
+    this.trial = {};
+    this.reading?.tellPreview(this.settled, this.trial);
+  }
+
+  recomputeAll(): void {
+    const cells = this.store.get().model?.cells.filter((cell) => cell.sound && TO_RECOMPUTE.has(cell.state)) ?? [];
+    void this.recompute(cells.map(({ id }) => id));
+  }
+
+  cancelAll(): void {
+    void this.ask(this.requests.cancel("all"));
+  }
+
+  goTo(position: number): void {
+    const { view } = this;
+    if (view === null) return;
+    const at = Math.min(position, view.state.doc.length);
+    view.dispatch({ selection: { anchor: at }, scrollIntoView: true });
+    view.focus();
+  }
+
+  private begin(): void {
+    if (this.view !== null) return;
+    const { text, undo, awareness } = this.session;
+    this.view = createSheetEditor({
+      parent: this.place,
+      text,
+      undo: undo.text,
+      awareness,
+      host: this.host,
+      nonce: this.nonce,
+      onUpdate: (update) => this.reading?.onUpdate(update),
+    });
+    const worker = new Worker(new URL("../reading/paper.worker.ts", import.meta.url), { type: "module" });
+    this.reading = new Reading(
+      this.view,
+      worker,
+      () => this.session.bibliography.toString(),
+      (model) => this.onModel(model),
+    );
+    this.reading.tellShown(this.shown);
+    this.store.set({ ready: true });
+  }
+
+  private onConnection(connection: Connection): void {
+    const before = this.store.get().connection.state;
+    this.store.set({ connection });
+    if (connection.state === before) return;
+    if (connection.state === "live") this.fetcher.tryAgain();
+    if (connection.state === "away" && before === "live")
+      this.announcer.say("No connection. Your words are kept on this machine.");
+  }
+
+  private onModel(model: SheetModel): void {
+    this.host.macros = model.macros;
+    for (const [slot, view] of Object.entries(model.views)) {
+      if (view === null) this.host.views.delete(slot);
+      else this.host.views.set(slot, view);
+    }
+    this.store.set({ model });
+    this.fetcher.want(model.wanted);
+    if (!model.preview) this.announcer.hearCells(model.cells);
+    if (this.wantsKept && !model.preview) {
+      this.wantsKept = false;
+      void this.showKept(model);
+    }
+  }
+
+  /** Results kept under the new keys appear without being asked for; all else waits. */
+  private async showKept(model: SheetModel): Promise<void> {
+    const waiting = model.cells.filter((cell) => cell.state === "outOfDate" && cell.key !== null);
+    if (waiting.length === 0) return;
+    const kept = await this.fetcher.kept(waiting.flatMap(({ key }) => key ?? []));
+    const ready = waiting.filter(({ key }) => key !== null && kept.has(key));
+    if (ready.length > 0) await this.recompute(ready.map(({ id }) => id));
+  }
+
+  private commands(): CellCommands {
+    return {
+      recompute: (cell) => void this.recompute([cell.id]),
+      cancel: (cell) => void this.ask(this.requests.cancel([cell.id])),
+      letStand: (cell) => void this.ask(this.requests.letStand(cell.id, this.textNow())),
+      showWorking: (slot) => this.openWorking(slot, true),
+      putAway: (slot) => this.openWorking(slot, false),
+      goToCell: (slot) => {
+        const cell = this.store.get().model?.cells.find((each) => each.slot === slot);
+        if (cell !== undefined) this.goTo(Math.max(0, cell.from - 1));
+      },
+      goToLine: (line) => {
+        const { view } = this;
+        if (view !== null) this.goTo(view.state.doc.line(Math.min(line, view.state.doc.lines)).to);
+      },
+    };
+  }
+
+  /** Opens a working with the caret in it, for one who writes; or puts it away with the caret after it. */
+  private openWorking(slot: string, open: boolean): void {
+    const { view } = this;
+    if (view === null) return;
+    const place = findPlace(
+      view.state.field(sheetField).places,
+      (piece) => piece.piece === "cell" && piece.slot === slot,
+    );
+    if (place === null) return;
+    view.dispatch({ effects: showWorking.of({ slot, open: open && !this.options.writes }) });
+    if (!this.options.writes) return;
+    const { doc } = view.state;
+    const after = Math.min(doc.length, place.to + 1);
+    view.dispatch({ selection: { anchor: open ? doc.lineAt(place.from).to + 1 : Math.min(doc.length, after + 1) } });
+    if (open) view.focus();
+    else if (after >= doc.length) view.contentDOM.blur();
+  }
+
+  private async recompute(ids: readonly string[]): Promise<void> {
+    if (ids.length === 0) return;
+    await this.ask(this.requests.compute(this.textNow(), this.session.bibliography.toString(), ids));
+  }
+
+  private async ask(request: Promise<{ readonly refused: string } | null>): Promise<void> {
+    const answer = await request;
+    this.store.set({ notice: answer === null ? null : { words: answer.refused, amiss: true } });
+    if (answer !== null) this.announcer.say(answer.refused);
+  }
+
+  private textNow(): string {
+    return this.session.text.toString();
+  }
+}

@@ -1,0 +1,191 @@
+import { IndexeddbPersistence } from "y-indexeddb";
+import { Awareness } from "y-protocols/awareness";
+import { WebsocketProvider } from "y-websocket";
+import * as Y from "yjs";
+import type { CellWork, ParameterChange, ShownCell } from "../../cells/index.ts";
+import { type Kept, watchKept } from "../kept.ts";
+import { BIBLIOGRAPHY_NAME, SHOWN_NAMES, SOCKET_PATHS, TEXT_NAME } from "../protocol.ts";
+import { type Connection, closingOf } from "./connection.ts";
+import { forgetPrivateCopy, privateCopyName } from "./private-copies.ts";
+
+/** What a paper shows, in the form in which pages and workers pass it on. */
+export interface ShownRecords {
+  readonly cells: Readonly<Record<string, ShownCell>>;
+  readonly work: Readonly<Record<string, CellWork>>;
+  readonly changes: Readonly<Record<string, ParameterChange>>;
+}
+
+export interface SessionOptions {
+  readonly paperId: string;
+  /** null: a visitor, who reads what `first` holds and has no socket. */
+  readonly person: { readonly id: string; readonly name: string } | null;
+  readonly writes: boolean;
+  readonly first: { readonly text: string; readonly bibliography: string; readonly shown: ShownRecords };
+  /** The text is here, from the server or from this machine. May be called more than once. */
+  onText(): void;
+  onConnection(connection: Connection): void;
+  onKept(kept: Kept): void;
+  onShown(shown: ShownRecords): void;
+  onBibliography(): void;
+  /** Names of the others whose pages are open. */
+  onPeople(names: readonly string[]): void;
+  /** Words written while away were joined with the others'. */
+  onJoined(own: number): void;
+}
+
+/** One page's hold on a paper: its text and what it shows, live, with a private copy for spells without connection. */
+export interface PaperSession {
+  readonly text: Y.Text;
+  readonly bibliography: Y.Text;
+  /** One's own edits of each, undone apart. */
+  readonly undo: { readonly text: Y.UndoManager; readonly bibliography: Y.UndoManager };
+  readonly awareness: Awareness;
+  joinAgain(): void;
+  end(): void;
+}
+
+export function openSession(options: SessionOptions): PaperSession {
+  const doc = new Y.Doc();
+  const text = doc.getText(TEXT_NAME);
+  const bibliography = doc.getText(BIBLIOGRAPHY_NAME);
+  const awareness = new Awareness(doc);
+  const undo = { text: new Y.UndoManager(text), bibliography: new Y.UndoManager(bibliography) };
+  bibliography.observe(options.onBibliography);
+  const session = { text, bibliography, undo, awareness };
+  const ending = () => {
+    undo.text.destroy();
+    undo.bibliography.destroy();
+    awareness.destroy();
+    doc.destroy();
+  };
+  if (options.person === null) {
+    doc.transact(() => {
+      text.insert(0, options.first.text);
+      bibliography.insert(0, options.first.bibliography);
+    });
+    options.onConnection({ state: "still" });
+    options.onText();
+    options.onShown(options.first.shown);
+    return { ...session, joinAgain: () => {}, end: ending };
+  }
+  awareness.setLocalStateField("user", { name: options.person.name });
+  const stops = [
+    watchPeople(awareness, options.onPeople),
+    joinText(options, options.person, doc, awareness),
+    joinShown(options),
+  ];
+  return {
+    ...session,
+    joinAgain: () => {
+      for (const { again } of stops) again();
+    },
+    end() {
+      for (const { stop } of stops) stop();
+      ending();
+    },
+  };
+}
+
+interface Tie {
+  again(): void;
+  stop(): void;
+}
+
+function joinText(options: SessionOptions, person: { readonly id: string }, doc: Y.Doc, awareness: Awareness): Tie {
+  const copy = options.writes ? new IndexeddbPersistence(privateCopyName(options.paperId, person.id), doc) : null;
+  const provider = new WebsocketProvider(socketBase() + SOCKET_PATHS.text, options.paperId, doc, {
+    awareness,
+    disableBc: true,
+    connect: false,
+  });
+  const unwatch = watchKept(provider, options.onKept);
+  let everLive = false;
+  let away = { since: new Date(), own: 0 };
+  provider.on("sync", (synced) => {
+    if (!synced) return;
+    if (everLive && away.own > 0) options.onJoined(away.own);
+    everLive = true;
+    away = { since: new Date(), own: 0 };
+    options.onConnection({ state: "live" });
+    options.onText();
+  });
+  doc.on("update", (_update: Uint8Array, origin: unknown) => {
+    if (origin !== provider && origin !== copy && !provider.synced) away.own += 1;
+  });
+  provider.on("connection-close", () => {
+    // Counted from the loss, not from the last vain attempt.
+    if (provider.wsUnsuccessfulReconnects === 0) away = { since: new Date(), own: 0 };
+    options.onConnection({ state: "away", since: away.since });
+  });
+  provider.on("closed", ({ code }) => {
+    options.onConnection({ state: "closed", code });
+    if (closingOf(code).forgets && copy !== null) {
+      void copy.destroy().then(() => forgetPrivateCopy(options.paperId, person.id));
+    }
+  });
+  // The private copy first, so that words from before a reload are in the first exchange.
+  const begin = () => provider.connect();
+  if (copy === null) begin();
+  else {
+    void Promise.race([copy.whenSynced, patience()]).then(() => {
+      if (doc.getText(TEXT_NAME).length > 0) options.onText();
+      begin();
+    });
+  }
+  return {
+    again: () => provider.connect(),
+    stop() {
+      unwatch();
+      provider.destroy();
+      void copy?.destroy();
+    },
+  };
+}
+
+function joinShown(options: SessionOptions): Tie {
+  const doc = new Y.Doc();
+  const maps = {
+    cells: doc.getMap<ShownCell>(SHOWN_NAMES.cells),
+    work: doc.getMap<CellWork>(SHOWN_NAMES.work),
+    changes: doc.getMap<ParameterChange>(SHOWN_NAMES.changes),
+  };
+  let due = false;
+  const tell = () => {
+    if (due) return;
+    due = true;
+    queueMicrotask(() => {
+      due = false;
+      options.onShown({ cells: maps.cells.toJSON(), work: maps.work.toJSON(), changes: maps.changes.toJSON() });
+    });
+  };
+  doc.on("update", tell);
+  const provider = new WebsocketProvider(socketBase() + SOCKET_PATHS.shown, options.paperId, doc, { disableBc: true });
+  provider.awareness.setLocalState(null);
+  return {
+    again: () => provider.connect(),
+    stop() {
+      provider.destroy();
+      doc.destroy();
+    },
+  };
+}
+
+function watchPeople(awareness: Awareness, onPeople: (names: readonly string[]) => void): Tie {
+  const tell = () => {
+    const names = [...awareness.getStates()].flatMap(([client, state]) =>
+      client !== awareness.clientID && typeof state.user?.name === "string" ? [state.user.name as string] : [],
+    );
+    onPeople([...new Set(names)].sort());
+  };
+  awareness.on("change", tell);
+  return { again: () => {}, stop: () => awareness.off("change", tell) };
+}
+
+function socketBase(): string {
+  return window.location.origin.replace(/^http/, "ws");
+}
+
+/** A browser that keeps its databases from pages must not keep the text from the person. */
+function patience(): Promise<void> {
+  return new Promise((resolve) => setTimeout(resolve, 1500));
+}

@@ -1,0 +1,139 @@
+import { ChangeSet, type Text } from "@codemirror/state";
+import type { EditorView, ViewUpdate } from "@codemirror/view";
+import type { CellResult } from "../../cells/index.ts";
+import type { FromWorker, ToWorker } from "../model/messages.ts";
+import type { SheetModel } from "../model/types.ts";
+import { setProblems } from "../text/glosses.ts";
+import { applyModel } from "../text/sheet-field.ts";
+import type { ShownRecords } from "./paper-session.ts";
+
+/** The part of a Worker that reading needs; a test gives its own. */
+export interface Reader {
+  postMessage(message: ToWorker): void;
+  onmessage: ((event: MessageEvent<FromWorker>) => void) | null;
+  terminate(): void;
+}
+
+/** How long after a keystroke the text is given to the worker, in ms: a burst is read once. */
+const GATHER_MS = 20;
+/** How long the writing must rest before faults of the text are pointed out, in ms. */
+const REST_MS = 700;
+
+/**
+ * The page's side of reading. At most one text is with the worker; while it is, changes are composed, and the answer
+ * is moved through them, so that fast typing is never without its typeset sheet.
+ */
+export class Reading {
+  private readonly view: EditorView;
+  private readonly reader: Reader;
+  private readonly bibliography: () => string;
+  private readonly onModel: (model: SheetModel) => void;
+  private version = 0;
+  /** Messages that are not answered yet. */
+  private open = 0;
+  private stale = false;
+  private asked: { doc: Text; since: ChangeSet };
+  private timer: ReturnType<typeof setTimeout> | undefined;
+  private rest: ReturnType<typeof setTimeout> | undefined;
+  private typedAt = 0;
+  /** A newest-only message that waits for the answer at hand: a private trial. */
+  private nextPreview: ToWorker | null = null;
+
+  constructor(view: EditorView, reader: Reader, bibliography: () => string, onModel: (model: SheetModel) => void) {
+    this.view = view;
+    this.reader = reader;
+    this.bibliography = bibliography;
+    this.onModel = onModel;
+    this.asked = { doc: view.state.doc, since: ChangeSet.empty(view.state.doc.length) };
+    reader.onmessage = ({ data }) => this.hear(data);
+    this.ask();
+  }
+
+  /** To be called with every update of the view. */
+  onUpdate(update: ViewUpdate): void {
+    if (!update.docChanged) return;
+    this.asked.since = this.asked.since.compose(update.changes);
+    this.typedAt = Date.now();
+    this.textChanged();
+  }
+
+  /** The text or the bibliography has changed. */
+  textChanged(): void {
+    this.stale = true;
+    clearTimeout(this.timer);
+    this.timer = setTimeout(() => this.ask(), GATHER_MS);
+  }
+
+  tellShown(shown: ShownRecords): void {
+    this.send({ tell: "shown", ...shown });
+  }
+
+  tellResults(results: readonly CellResult[]): void {
+    this.send({ tell: "results", results });
+  }
+
+  /** Tries parameters: `settled` are a visitor's own values, `trial` is under the hand right now. Newest only. */
+  tellPreview(settled: Readonly<Record<string, string>>, trial: Readonly<Record<string, string>>): void {
+    const message: ToWorker = { tell: "preview", settled, trial };
+    if (this.open > 0) this.nextPreview = message;
+    else this.send(message);
+  }
+
+  end(): void {
+    clearTimeout(this.timer);
+    clearTimeout(this.rest);
+    this.reader.onmessage = null;
+    this.reader.terminate();
+  }
+
+  private ask(): void {
+    clearTimeout(this.timer);
+    if (this.open > 0) return;
+    this.stale = false;
+    this.version += 1;
+    const { doc } = this.view.state;
+    this.asked = { doc, since: ChangeSet.empty(doc.length) };
+    this.send({ tell: "text", version: this.version, text: doc.toString(), bibliography: this.bibliography() });
+  }
+
+  private send(message: ToWorker): void {
+    this.open += 1;
+    this.reader.postMessage(message);
+  }
+
+  private hear(message: FromWorker): void {
+    this.open -= message.answers;
+    if (message.tell === "sheet" && message.model.version === this.version) {
+      const { model } = message;
+      this.onModel(model);
+      this.view.dispatch({ effects: applyModel.of({ model, ...this.asked }) });
+      this.showProblems(model);
+    } else if (message.tell === "fault") {
+      console.error(`The sheet could not be read: ${message.message}`);
+    }
+    if (this.open > 0) return;
+    if (this.stale) this.ask();
+    else if (this.nextPreview !== null) {
+      const next = this.nextPreview;
+      this.nextPreview = null;
+      this.send(next);
+    }
+  }
+
+  /** Faults wait until the writing rests: a word half written is not a fault. */
+  private showProblems(model: SheetModel): void {
+    clearTimeout(this.rest);
+    const wait = Math.max(0, this.typedAt + REST_MS - Date.now());
+    const { asked } = this;
+    const show = () => {
+      if (asked !== this.asked || asked.since.newLength !== this.view.state.doc.length) return;
+      const problems = model.problems.map((problem) => {
+        const from = asked.since.mapPos(Math.min(problem.from, asked.doc.length), 1);
+        return { ...problem, from, to: Math.max(from, asked.since.mapPos(Math.min(problem.to, asked.doc.length), -1)) };
+      });
+      this.view.dispatch({ effects: setProblems.of(problems) });
+    };
+    if (wait === 0) show();
+    else this.rest = setTimeout(show, wait);
+  }
+}

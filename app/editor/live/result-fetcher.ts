@@ -1,0 +1,58 @@
+import type { CellResult } from "../../cells/index.ts";
+import type { Requests } from "./requests.ts";
+
+/** Before a key that was not found, or a fetch that failed, is tried again, in ms. */
+const AGAIN_MS = 4000;
+
+/** Fetches the results which the paper shows, each once. */
+export class ResultFetcher {
+  private readonly requests: Pick<Requests, "results">;
+  private readonly onResults: (results: readonly CellResult[]) => void;
+  private readonly triedAt = new Map<string, number>();
+  private wanted: readonly string[] = [];
+  private timer: ReturnType<typeof setTimeout> | undefined;
+
+  constructor(requests: Pick<Requests, "results">, onResults: (results: readonly CellResult[]) => void) {
+    this.requests = requests;
+    this.onResults = onResults;
+  }
+
+  /** Fetches those of the keys that are not on their way. */
+  want(keys: readonly string[]): void {
+    this.wanted = keys;
+    const now = Date.now();
+    const due = keys.filter((key) => now - (this.triedAt.get(key) ?? Number.NEGATIVE_INFINITY) > AGAIN_MS);
+    if (due.length > 0) void this.fetch(due);
+  }
+
+  tryAgain(): void {
+    this.triedAt.clear();
+    this.want(this.wanted);
+  }
+
+  /** Which of the keys the server keeps a result under; passes on what it finds. */
+  async kept(keys: readonly string[]): Promise<ReadonlySet<string>> {
+    try {
+      const results = await this.requests.results(keys);
+      if (results.length > 0) this.onResults(results);
+      return new Set(results.map(({ key }) => key));
+    } catch {
+      // Without connection nothing appears by itself; recomputing waits as the tail line says.
+      return new Set();
+    }
+  }
+
+  end(): void {
+    clearTimeout(this.timer);
+  }
+
+  private async fetch(keys: readonly string[]): Promise<void> {
+    const now = Date.now();
+    for (const key of keys) this.triedAt.set(key, now);
+    const found = await this.kept(keys);
+    for (const key of found) this.triedAt.delete(key);
+    if (found.size === keys.length) return;
+    clearTimeout(this.timer);
+    this.timer = setTimeout(() => this.want(this.wanted), AGAIN_MS + 100);
+  }
+}

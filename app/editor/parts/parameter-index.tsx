@@ -1,0 +1,150 @@
+import { type CSSProperties, type KeyboardEvent, type PointerEvent, useRef, useState } from "react";
+import { freeStep, type Scale, scaleOf, shownValue, sourceOf, stepped, valueAt } from "../model/scale.ts";
+import type { ParameterFace } from "../model/types.ts";
+import { strandColour } from "../text/contents.ts";
+import { ParameterField } from "./parameter-field.tsx";
+import { ParameterScale } from "./parameter-scale.tsx";
+import { useTrial } from "./parameter-trial.ts";
+import { Runs } from "./runs.tsx";
+
+interface Props {
+  readonly parameter: ParameterFace;
+  readonly place: number;
+  onTry(name: string, source: string | null): void;
+  onSet(name: string, source: string): void;
+}
+
+/** A pointer that moved less than this, in px, has clicked. */
+const CLICK_PX = 3;
+const NO_MACROS = {};
+const DIRECTIONS: Readonly<Record<string, 1 | -1>> = { ArrowRight: 1, ArrowUp: 1, ArrowLeft: -1, ArrowDown: -1 };
+
+/**
+ * One parameter of the rule:
+ *
+ *     at rest ──drag or arrow──▶ tried (previewed privately) ──release, Enter, or a pause──▶ set (one edit) ──▶ at rest
+ *        │                            └──Esc──▶ at rest, as before
+ *        └──digit, Enter or click──▶ typed ──Enter──▶ set;  ──Esc──▶ at rest, as before
+ */
+export function ParameterIndex({ parameter, place, onTry, onSet }: Props) {
+  const trial = useTrial(parameter, onTry, onSet);
+  const [typed, setTyped] = useState<string | null>(null);
+  const drag = useRef<{ at: number; from: number; moved: boolean; last: number } | null>(null);
+  const scale = scaleOf(parameter);
+  const value = trial.tried ?? parameter.value;
+  const movable = parameter.plain && value !== null;
+
+  const onKeyDown = (event: KeyboardEvent) => {
+    const direction = DIRECTIONS[event.key];
+    if (event.key === "Escape") trial.putBack();
+    else if (event.key === "Enter" && trial.tried !== null) trial.settle(sourceOf(trial.tried));
+    else if (event.key === "Enter" || event.key === " ") setTyped(parameter.source);
+    else if (/^[\d.+-]$/.test(event.key) && !event.ctrlKey && !event.metaKey && !event.altKey) setTyped(event.key);
+    else if (direction !== undefined && movable) {
+      const fineness = event.ctrlKey ? 10 : event.altKey ? 0.1 : 1;
+      const next = stepped(value, scale?.step ?? freeStep(value, parameter.step), direction, fineness, scale);
+      trial.attempt(next);
+      trial.settleSoon(next);
+    } else return;
+    event.preventDefault();
+  };
+
+  const begin = (event: PointerEvent<Element>, from: number, moved: boolean) => {
+    event.currentTarget.setPointerCapture(event.pointerId);
+    drag.current = { at: event.clientX, from, moved, last: from };
+    if (moved) trial.attempt(from);
+  };
+  const move = (event: PointerEvent<Element>, width: number) => {
+    const begun = drag.current;
+    if (begun === null || scale === null || width <= 0) return;
+    const by = event.clientX - begun.at;
+    if (!begun.moved && Math.abs(by) < CLICK_PX) return;
+    const next = draggedTo(scale, begun.from, by / width);
+    if (begun.moved && next === begun.last) return;
+    begun.moved = true;
+    begun.last = next;
+    trial.attempt(next);
+  };
+  const end = () => {
+    const begun = drag.current;
+    drag.current = null;
+    if (begun === null) return;
+    if (begun.moved) trial.settle(sourceOf(begun.last));
+    else setTyped(parameter.source);
+  };
+  const abandon = () => {
+    drag.current = null;
+    trial.putBack();
+  };
+
+  const label = parameter.note === "" ? parameter.name : `${parameter.name}, ${parameter.note}`;
+  const shown = trial.tried === null ? parameter.shown : shownValue(trial.tried, parameter.source, parameter.step);
+  const was = trial.tried === null ? parameter.was : parameter.value;
+  const wasShown = trial.tried === null ? parameter.wasShown : parameter.shown;
+  return (
+    <div className="hl-par" style={{ "--strand": strandColour(place) } as CSSProperties}>
+      <div className="hl-par-value">
+        <Runs runs={[{ run: "math", tex: parameter.symbol }]} macros={NO_MACROS} /> ={" "}
+        {typed === null ? (
+          <span
+            role="spinbutton"
+            tabIndex={0}
+            className={scale !== null && movable ? "hl-par-handle hl-par-movable" : "hl-par-handle"}
+            aria-label={label}
+            aria-valuenow={value ?? 0}
+            aria-valuemin={parameter.min ?? undefined}
+            aria-valuemax={parameter.max ?? undefined}
+            aria-valuetext={parameter.unit === "" ? shown : `${shown} ${parameter.unit}`}
+            data-parameter={parameter.name}
+            onKeyDown={onKeyDown}
+            onPointerDown={(event) => event.button === 0 && begin(event, value ?? 0, false)}
+            onPointerMove={(event) => movable && move(event, widthOfScale(event.currentTarget))}
+            onPointerUp={end}
+            onPointerCancel={abandon}
+          >
+            {shown}
+          </span>
+        ) : (
+          <ParameterField
+            label={label}
+            first={typed}
+            onEnter={(source) => {
+              setTyped(null);
+              trial.settle(source);
+            }}
+            onEscape={() => setTyped(null)}
+          />
+        )}
+        {parameter.unit === "" ? null : <span className="hl-par-unit"> {parameter.unit}</span>}
+        {was === null ? null : <span className="hl-par-was"> was {wasShown}</span>}
+      </div>
+      <div className="hl-par-note">
+        {parameter.plain ? parameter.note : `${parameter.note} = ${parameter.source}`.replace(/^ = /, "")}
+      </div>
+      {scale === null || value === null ? null : (
+        <ParameterScale
+          scale={scale}
+          value={value}
+          was={was}
+          onPointerDown={(event) => {
+            const box = event.currentTarget.getBoundingClientRect();
+            if (!movable || event.button !== 0 || box.width <= 0) return;
+            begin(event, valueAt(scale, (event.clientX - box.left) / box.width), true);
+          }}
+          onPointerMove={(event) => move(event, event.currentTarget.getBoundingClientRect().width)}
+          onPointerUp={end}
+          onPointerCancel={abandon}
+        />
+      )}
+    </div>
+  );
+}
+
+function draggedTo(scale: Scale, from: number, share: number): number {
+  return valueAt(scale, (from - scale.min) / (scale.max - scale.min) + share);
+}
+
+/** The scale beneath a value, whose width the value is dragged along. */
+function widthOfScale(handle: Element): number {
+  return handle.closest(".hl-par")?.querySelector(".hl-par-scale")?.getBoundingClientRect().width ?? 0;
+}

@@ -1,0 +1,45 @@
+import type { TableColumn, TableData } from "../../figures/index.ts";
+import { Runs } from "./runs.tsx";
+
+/** A table of results: rules above, below and under the head, numbers to the right, unsupported digits grey. */
+export function TablePlate({ table }: { readonly table: TableData }) {
+  return (
+    <section className="hl-grid" aria-label="Table" ref={reachable}>
+      <table className="hl-table hl-results">
+        <thead>
+          <tr>
+            {table.columns.map((column) => (
+              <th key={column.name} scope="col">
+                <Head column={column} />
+              </th>
+            ))}
+          </tr>
+        </thead>
+        <tbody>
+          {table.rows.map((row, at) => (
+            <tr key={row[0]?.full ?? at}>
+              {row.map((entry, column) => (
+                <td key={table.columns[column]?.name ?? column}>
+                  {entry.text}
+                  {entry.unsupported === "" ? null : <span className="hl-unknown">{entry.unsupported}</span>}
+                </td>
+              ))}
+            </tr>
+          ))}
+        </tbody>
+      </table>
+    </section>
+  );
+}
+
+/** A wide table scrolls by itself; Tab reaches it, so that the arrows can move it. */
+function reachable(place: HTMLElement | null): void {
+  if (place !== null) place.tabIndex = 0;
+}
+
+function Head({ column }: { readonly column: TableColumn }) {
+  if (!column.tex) return column.head;
+  return <Runs runs={[{ run: "math", tex: column.head }]} macros={NO_MACROS} />;
+}
+
+const NO_MACROS = {};

@@ -1,0 +1,134 @@
+import {
+  type CellResult,
+  type CellState,
+  type CellWork,
+  type Plan,
+  type PlannedCell,
+  provenance,
+  type ShownCell,
+} from "../../cells/index.ts";
+import { type CellNode, type Paper, walk } from "../../paper/index.ts";
+import type { CellFace } from "../model/types.ts";
+import { moment, stateWords } from "./cell-words.ts";
+import type { NumberFaces } from "./number-faces.ts";
+import { runsOf } from "./runs.ts";
+
+/** All that is known of a cell when its face is drawn. */
+export interface CellTelling {
+  readonly planned: PlannedCell;
+  readonly shown: ShownCell | undefined;
+  readonly work: CellWork | undefined;
+  readonly state: CellState;
+  /** The result to show: the paper's, or one tried in this page. */
+  readonly result: CellResult | undefined;
+  /** The result is tried here and kept nowhere. */
+  readonly previewed: boolean;
+}
+
+/** The cells' nodes in the tree, by slot: their printed parts and captions. */
+export function cellNodesOf(paper: Paper): Map<string, CellNode> {
+  const nodes = new Map<string, CellNode>();
+  walk(paper.root.children, (node) => {
+    if (node.type === "cell") nodes.set(node.cell.slot, node);
+  });
+  return nodes;
+}
+
+/** "Figure 1", "Table 2", or kind and name for a cell that prints nothing; by id. */
+export function titlesOf(plan: Plan, nodes: ReadonlyMap<string, CellNode>): Map<string, string> {
+  return new Map(plan.cells.map((planned) => [planned.id, titleOf(planned, nodes.get(planned.slot))]));
+}
+
+function titleOf(planned: PlannedCell, node: CellNode | undefined): string {
+  const part = node?.parts[0];
+  if (part !== undefined) return `${part.noun} ${part.number}`;
+  return planned.cell.name === null
+    ? planned.kind.replace("_", " ")
+    : `${planned.kind.replace("_", " ")} ${planned.cell.name}`;
+}
+
+interface Drawing {
+  readonly plan: Plan;
+  readonly nodes: ReadonlyMap<string, CellNode>;
+  readonly titles: ReadonlyMap<string, string>;
+  readonly numbers: NumberFaces;
+  /** Parameters that are tried privately. */
+  readonly tried: ReadonlySet<string>;
+}
+
+/** The face of each cell, in the order of the plan. */
+export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): CellFace[] {
+  const strands = new Map(drawing.plan.parameters.map(({ name }, place) => [name, place]));
+  const symbols = new Map(drawing.plan.parameters.map(({ name, symbol }) => [name, symbol]));
+  const now = new Date();
+  return tellings.map((telling) => {
+    const { planned, shown, work, state, result, previewed } = telling;
+    const node = drawing.nodes.get(planned.slot);
+    const titleOfId = (id: string) => drawing.titles.get(id) ?? id;
+    const waited = state.waitsFor[0] === undefined ? undefined : drawing.plan.byId.get(state.waitsFor[0]);
+    return {
+      id: planned.id,
+      slot: planned.slot,
+      kind: planned.kind,
+      name: planned.cell.name,
+      from: planned.cell.span.from,
+      to: planned.cell.span.to,
+      line: planned.line,
+      title: titleOfId(planned.id),
+      parts: (node?.parts ?? []).map(({ part, noun, number }) => ({ part, title: `${noun} ${number}` })),
+      caption: node === undefined ? [] : runsOf(node.caption, drawing.numbers),
+      state: previewed ? "preview" : state.state,
+      words: previewed ? [] : stateWords({ state, shown, work, titleOf: titleOfId, now }),
+      provenance: provenanceRuns(telling, symbols, drawing.tried, now),
+      progress:
+        state.state === "computing" && work?.state === "computing" && work.total > 1
+          ? { done: work.done, total: work.total }
+          : null,
+      failureLine: state.failure?.line ?? null,
+      seconds: shown?.seconds ?? result?.seconds ?? null,
+      hasResult: result !== undefined || shown !== undefined,
+      sound: planned.key !== null,
+      key: planned.key,
+      strands: planned.parameters.flatMap((name) => strands.get(name) ?? []),
+      needs: waited === undefined ? null : { title: titleOfId(waited.id), slot: waited.slot },
+      viewSign: result === undefined ? "" : viewSign(result, planned, drawing.plan),
+    };
+  });
+}
+
+/** A view depends on the result, on how the working wants it drawn, and on the parameters' symbols. */
+function viewSign(result: CellResult, planned: PlannedCell, plan: Plan): string {
+  const symbols = plan.parameters.map(({ name, symbol, source }) => `${name} ${symbol} ${source}`).join(";");
+  return `${result.key}\n${JSON.stringify(planned.cell.body, withoutPlaces)}\n${symbols}`;
+}
+
+/** Where an entry stands does not change how it is drawn. */
+function withoutPlaces(name: string, value: unknown): unknown {
+  return PLACES.has(name) ? undefined : value;
+}
+
+const PLACES: ReadonlySet<string> = new Set(["from", "to", "line", "keyFrom", "keyTo"]);
+
+function provenanceRuns(
+  { planned, shown, result, previewed }: CellTelling,
+  symbols: ReadonlyMap<string, string>,
+  tried: ReadonlySet<string>,
+  now: Date,
+): CellFace["provenance"] {
+  if (result === undefined) return [];
+  const { words, by, at } = provenance(planned, result, shown);
+  if (!previewed) {
+    const who = [by, at === null ? null : moment(at, now)].filter((part) => part !== null).join(", ");
+    return [{ run: "text", text: [words, who].filter((part) => part !== "").join(" · ") }];
+  }
+  const said: CellFace["provenance"][number][] = [{ run: "text", text: words }];
+  const names = planned.parameters.filter((name) => tried.has(name));
+  said.push({ run: "text", text: " · tried with " });
+  names.forEach((name, at) => {
+    if (at > 0) said.push({ run: "text", text: ", " });
+    said.push({ run: "math", tex: symbols.get(name) ?? name });
+    said.push({ run: "text", text: ` = ${planned.parameterValues[name] ?? ""}` });
+  });
+  said.push({ run: "text", text: "; not kept" });
+  return said;
+}

@@ -1,0 +1,194 @@
+import type { Nodes, Parent } from "mdast";
+import { citationText, mathTex, type Paper } from "../../paper/index.ts";
+import type { Content } from "../model/types.ts";
+import { type Collecting, lineEnd, lineStart, type Pieces, placeOf, text, words } from "./collecting.ts";
+import { environmentPieces } from "./environment-pieces.ts";
+import type { NumberFaces } from "./number-faces.ts";
+import { referenceText, runsOf } from "./runs.ts";
+
+type NodeOf<Name extends Nodes["type"]> = Extract<Nodes, { type: Name }>;
+type Drawers = { readonly [Name in Nodes["type"]]?: (node: NodeOf<Name>, into: Collecting) => void };
+
+/** Draws up the pieces of a paper from its tree. Front matter and parameters are added by the caller. */
+export function collectPieces(paper: Paper, numbers: NumberFaces): Pieces {
+  const into = collecting(paper.text, numbers, { pieces: [], joins: [], blanks: [] }, 0);
+  collect(paper.root, into);
+  blankLines(paper, into);
+  into.pieces.sort((a, b) => a.from - b.from || b.to - a.to);
+  return into;
+}
+
+function collecting(source: string, numbers: NumberFaces, pieces: Pieces, depth: number): Collecting {
+  const into: Collecting = {
+    ...pieces,
+    text: source,
+    numbers,
+    depth,
+    descend(node) {
+      for (const child of node.children) collect(child, into);
+    },
+    deeper: () => collecting(source, numbers, pieces, depth + 1),
+  };
+  return into;
+}
+
+function collect(node: Nodes, into: Collecting): void {
+  const draw = DRAWERS[node.type] as ((node: Nodes, into: Collecting) => void) | undefined;
+  if (draw !== undefined) draw(node, into);
+  else if ("children" in node) into.descend(node);
+}
+
+const DRAWERS: Drawers = {
+  heading(node, into) {
+    const { from, to } = placeOf(node);
+    if (from < 0) return;
+    const source = into.text.slice(from, to);
+    const mark = /^#{1,6}[ \t]*/.exec(source)?.[0].length ?? 0;
+    const tail = /[ \t]*(\{#[^}]*\})?[ \t]*#*[ \t]*$/.exec(source)?.[0].length ?? 0;
+    const number = node.data?.number ?? null;
+    const before = number === null ? undefined : words([text(number)], "hl-section-number");
+    into.pieces.push({ piece: "lines", from, to, dress: `hl-heading hl-heading-${node.depth}` });
+    const inTo = Math.max(from + mark, to - tail);
+    into.pieces.push({ piece: "dressed", from, to, inFrom: from + mark, inTo, dress: "", before });
+    into.descend(node);
+  },
+  text(node, into) {
+    const { from, to } = placeOf(node);
+    if (from < 0) return;
+    const source = into.text.slice(from, to);
+    for (const found of source.matchAll(/[ \t]*\n[ \t>]*/g)) {
+      into.joins.push(from + found.index, from + found.index + found[0].length);
+    }
+  },
+  inlineMath(node, into) {
+    set(node, into, { content: "math", tex: mathTex(node, into.numbers.tex) });
+  },
+  math(node, into) {
+    const content = {
+      content: "display",
+      tex: mathTex(node, into.numbers.tex),
+      number: node.data?.number ?? "",
+    } as const;
+    set(node, into, content, true);
+  },
+  boundNumber(node, into) {
+    set(node, into, { content: "number", number: into.numbers.face(node.number) });
+  },
+  reference(node, into) {
+    const { target, label } = node;
+    const at = target?.span.from ?? null;
+    set(node, into, { content: "pointer", text: referenceText(target, label), target: at, amiss: target === null });
+  },
+  citation(node, into) {
+    const told = citationText(node.entries, { at: node.at, as: node.as });
+    const amiss = node.entries.length < node.keys.length;
+    set(node, into, { content: "pointer", text: amiss ? node.keys.join(", ") : told, target: null, amiss });
+  },
+  emphasis: (node, into) => dressed(node, into, "hl-emphasis"),
+  strong: (node, into) => dressed(node, into, "hl-strong"),
+  delete: (node, into) => dressed(node, into, "hl-deleted"),
+  link: (node, into) => dressed(node, into, "hl-link", node.url),
+  inlineCode(node, into) {
+    const { from, to } = placeOf(node);
+    const ticks = /^`+/.exec(into.text.slice(from, to))?.[0].length ?? 0;
+    const [inFrom, inTo] = [from + ticks, to - ticks];
+    if (from >= 0 && inFrom < inTo) into.pieces.push({ piece: "dressed", from, to, inFrom, inTo, dress: "hl-code" });
+  },
+  image(node, into) {
+    set(node, into, { content: "image", name: node.url, caption: node.alt ?? "" });
+  },
+  footnoteReference(node, into) {
+    set(node, into, words([text(node.label ?? node.identifier)], "hl-footnote-mark"));
+  },
+  footnoteDefinition(node, into) {
+    lines(node, into, "hl-footnote");
+    into.descend(node);
+  },
+  definition: (node, into) => lines(node, into, "hl-footnote"),
+  code: (node, into) => lines(node, into, "hl-code-lines"),
+  html: (node, into) => lines(node, into, "hl-verbatim"),
+  thematicBreak: (node, into) => set(node, into, words([], "hl-break"), true),
+  blockquote(node, into) {
+    lines(node, into, "hl-quote");
+    for (const child of node.children) {
+      const { from } = placeOf(child);
+      const begin = lineStart(into.text, from);
+      const to = begin + (/^[ \t]*>[ \t]?/.exec(into.text.slice(begin, from))?.[0].length ?? 0);
+      if (to > begin) into.pieces.push({ piece: "dressed", from: begin, to, inFrom: to, inTo: to, dress: "" });
+      collect(child, into);
+    }
+  },
+  list(node, into) {
+    const deeper = into.deeper();
+    for (const item of node.children) {
+      const { from, to } = placeOf(item);
+      if (from < 0) continue;
+      const begin = lineStart(into.text, from);
+      const mark = /^([-*+]|\d+[.)])[ \t]+/.exec(into.text.slice(from, to));
+      const inFrom = from + (mark?.[0].length ?? 0);
+      const shown = mark === null || !/\d/.test(mark[1] ?? "") ? "•" : (mark[1] ?? "");
+      const before = words([text(shown)], "hl-item-mark");
+      into.pieces.push({ piece: "lines", from, to, dress: `hl-item hl-item-${Math.min(4, deeper.depth)}` });
+      // An item opens at its mark alone; its words are typeset as any.
+      into.pieces.push({ piece: "dressed", from: begin, to: inFrom, inFrom, inTo: inFrom, dress: "", before });
+      deeper.descend(item);
+    }
+  },
+  table(node, into) {
+    const [head, ...rows] = node.children.map((row) => row.children.map((cell) => runsOf(cell.children, into.numbers)));
+    set(node, into, { content: "grid", head: head ?? [], rows, align: node.align ?? [] }, true);
+  },
+  environment: environmentPieces,
+  cell(node, into) {
+    const { from, to } = node.cell.span;
+    into.pieces.push({ piece: "cell", from, to, slot: node.cell.slot });
+  },
+};
+
+function set(node: Nodes, into: Collecting, content: Content, block = false): void {
+  const { from, to } = placeOf(node);
+  if (from >= 0 && from < to)
+    into.pieces.push({ piece: "set", from, to, block: block && alone(into.text, from, to), content });
+}
+
+/** Whether nothing else stands on the lines from..to: only whole lines can be a block. */
+function alone(source: string, from: number, to: number): boolean {
+  const before = source.slice(lineStart(source, from), from);
+  return /^[ \t>]*$/.test(before) && source.slice(to, lineEnd(source, to)).trim() === "";
+}
+
+function dressed(node: Parent & Nodes, into: Collecting, dress: string, url?: string): void {
+  const { from, to } = placeOf(node);
+  const inFrom = node.children[0] === undefined ? -1 : placeOf(node.children[0] as Nodes).from;
+  const last = node.children.at(-1);
+  const inTo = last === undefined ? -1 : placeOf(last as Nodes).to;
+  if (from >= 0 && inFrom >= from && inTo <= to && inFrom < inTo) {
+    into.pieces.push({ piece: "dressed", from, to, inFrom, inTo, dress, ...(url === undefined ? {} : { url }) });
+  }
+  into.descend(node);
+}
+
+function lines(node: Nodes, into: Collecting, dress: string): void {
+  const { from, to } = placeOf(node);
+  if (from >= 0) into.pieces.push({ piece: "lines", from, to, dress });
+}
+
+/** Blank lines that part blocks are set low; those within workings and code keep their height. */
+function blankLines(paper: Paper, into: Collecting): void {
+  const inside = [
+    ...paper.cells.map(({ span }) => span),
+    ...(paper.front.span === null ? [] : [paper.front.span]),
+    ...into.pieces.flatMap((piece) =>
+      (piece.piece === "lines" && piece.dress === "hl-code-lines") || (piece.piece === "set" && piece.block)
+        ? [piece]
+        : [],
+    ),
+  ].sort((a, b) => a.from - b.from);
+  let next = 0;
+  for (const found of paper.text.matchAll(/^[ \t]*$/gm)) {
+    const at = found.index;
+    while (next < inside.length && (inside[next]?.to ?? 0) < at) next += 1;
+    const block = inside[next];
+    if (block === undefined || at < block.from) into.blanks.push(at);
+  }
+}

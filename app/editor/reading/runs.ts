@@ -1,0 +1,59 @@
+import type { PhrasingContent } from "mdast";
+import { type BibliographyEntry, bibliographyItem, citationText, mathTex, type Target } from "../../paper/index.ts";
+import type { Run } from "../model/types.ts";
+import type { NumberFaces } from "./number-faces.ts";
+
+/** Running text of the paper as runs: what captions, titles and table entries are set from. */
+export function runsOf(nodes: readonly PhrasingContent[], numbers: NumberFaces): Run[] {
+  return nodes.flatMap((node) => runOf(node, numbers));
+}
+
+function runOf(node: PhrasingContent, numbers: NumberFaces): Run[] {
+  switch (node.type) {
+    case "text":
+      return [{ run: "text", text: node.value.replace(/\s*\n\s*/g, " ") }];
+    case "html":
+      return [{ run: "text", text: node.value }];
+    case "break":
+      return [{ run: "text", text: " " }];
+    case "inlineCode":
+      return [{ run: "code", text: node.value }];
+    case "inlineMath":
+      return [{ run: "math", tex: mathTex(node, numbers.tex) }];
+    case "emphasis":
+    case "strong":
+      return [{ run: node.type, runs: runsOf(node.children, numbers) }];
+    case "delete":
+      return [{ run: "deleted", runs: runsOf(node.children, numbers) }];
+    case "link":
+      return [{ run: "link", url: node.url, runs: runsOf(node.children, numbers) }];
+    case "linkReference":
+      return runsOf(node.children, numbers);
+    case "image":
+    case "imageReference":
+      return [{ run: "text", text: node.alt ?? "" }];
+    case "footnoteReference":
+      return [{ run: "text", text: ` [${node.label ?? node.identifier}]` }];
+    case "reference":
+      return [{ run: "text", text: referenceText(node.target, node.label) }];
+    case "citation":
+      return [{ run: "text", text: citationText(node.entries, { at: node.at, as: node.as }) }];
+    case "boundNumber":
+      return [{ run: "number", number: numbers.face(node.number) }];
+    default:
+      return [];
+  }
+}
+
+/** "Theorem 2.1", "equation (3)", "Figure 2"; the label itself where it leads nowhere. */
+export function referenceText(target: Target | null, label: string): string {
+  if (target === null) return label;
+  return target.noun === "equation" ? `equation (${target.number})` : `${target.noun} ${target.number}`;
+}
+
+/** One entry of the printed bibliography as runs. */
+export function itemRuns(entry: BibliographyEntry): Run[] {
+  return bibliographyItem(entry).map(({ text, emphasis }) =>
+    emphasis ? { run: "emphasis", runs: [{ run: "text", text }] } : { run: "text", text },
+  );
+}

@@ -1,0 +1,158 @@
+import {
+  type CellState,
+  cellState,
+  computePlan,
+  type Outcome,
+  type Plan,
+  type PlannedCell,
+  planPaper,
+  type ShownPaper,
+} from "../../cells/index.ts";
+import { type Paper, readPaper } from "../../paper/index.ts";
+import type { ToWorker } from "../model/messages.ts";
+import type { SheetModel } from "../model/types.ts";
+import { type CellTelling, cellFaces, cellNodesOf, titlesOf } from "./cell-faces.ts";
+import { errataOf } from "./errata.ts";
+import { frontFace, frontPieces } from "./front-face.ts";
+import { type CellStanding, numberFaces } from "./number-faces.ts";
+import { parameterFaces, parameterPieces } from "./parameter-faces.ts";
+import { collectPieces } from "./pieces.ts";
+import { bibliographyFaces, problemFaces } from "./problem-faces.ts";
+import { ResultStore } from "./result-store.ts";
+import { ViewStore } from "./view-store.ts";
+
+type Overrides = Readonly<Record<string, string>>;
+
+/**
+ * All that the page's worker holds of a paper: its text, what it shows, the results, and what is tried privately.
+ * `hear` takes in; `sheet` draws up the whole sheet from it. Steps whose ground has not changed are not done again:
+ *
+ *     text ──read──▶ paper ──plan──▶ plan ─┬─ states of cells ──▶ faces, numbers, pieces
+ *     shown, results, private trial ───────┘
+ */
+export class SheetReader {
+  private version = 0;
+  private text = "";
+  private bibliography = "";
+  private paper: Paper | null = null;
+  private shown: ShownPaper = { cells: new Map(), work: new Map(), changes: new Map() };
+  private settled: Overrides = {};
+  private trial: Overrides = {};
+  private readonly plans = new Map<string, Plan>();
+  private readonly results = new ResultStore();
+  private readonly views = new ViewStore();
+
+  hear(message: ToWorker): void {
+    switch (message.tell) {
+      case "text":
+        this.version = message.version;
+        if (message.text !== this.text || message.bibliography !== this.bibliography) {
+          this.text = message.text;
+          this.bibliography = message.bibliography;
+          this.paper = null;
+          this.plans.clear();
+        }
+        return;
+      case "shown":
+        this.shown = {
+          cells: new Map(Object.entries(message.cells)),
+          work: new Map(Object.entries(message.work)),
+          changes: new Map(Object.entries(message.changes)),
+        };
+        return;
+      case "results":
+        for (const result of message.results) this.results.keep(result);
+        return;
+      case "preview":
+        this.settled = message.settled;
+        this.trial = message.trial;
+        return;
+    }
+  }
+
+  /** The sheet as of now. */
+  sheet(): SheetModel {
+    this.paper ??= readPaper(this.text, this.bibliography);
+    const { paper } = this;
+    const tried = { ...this.settled, ...this.trial };
+    const names = new Set(Object.keys(tried));
+    const plan = this.planWith(paper, tried);
+    const trials = names.size > 0 ? this.tryOut(plan) : new Map<string, Outcome>();
+    const tellings = plan.cells.map((planned) => this.tellingOf(planned, plan, trials.get(planned.id)));
+    const results = new Map(
+      tellings.flatMap(({ planned, result }) => (result === undefined ? [] : [[planned.id, result]])),
+    );
+    const nodes = cellNodesOf(paper);
+    const titles = titlesOf(plan, nodes);
+    const standings = new Map<string, CellStanding>();
+    for (const { planned, state, previewed } of tellings) {
+      const title = titles.get(planned.id) ?? planned.id;
+      standings.set(planned.id, { state: previewed ? "preview" : state.state, title });
+    }
+    const numbers = numberFaces(plan, results, standings, names);
+    const { pieces, joins, blanks } = collectPieces(paper, numbers);
+    // The rule shows by itself what is under the hand; in the model its parameter stays as it was.
+    const resting = Object.keys(this.trial).length === 0 ? plan : this.planWith(paper, this.settled);
+    const cells = cellFaces(tellings, { plan, nodes, titles, numbers, tried: names });
+    const front = frontFace(paper, numbers);
+    const problems = problemFaces(paper, plan);
+    return {
+      version: this.version,
+      front,
+      macros: paper.front.macros,
+      pieces: [...frontPieces(front), ...parameterPieces(resting), ...pieces].sort(
+        (a, b) => a.from - b.from || b.to - a.to,
+      ),
+      joins: Int32Array.from(joins),
+      blanks: Int32Array.from(blanks),
+      parameters: parameterFaces(resting, tellings),
+      cells,
+      views: this.views.changed(plan, results, cells),
+      problems,
+      bibliography: bibliographyFaces(paper),
+      wanted: this.results.missing(tellings.map(({ shown: of }) => of?.key)),
+      errata: errataOf(cells, pieces, problems, paper.text),
+      preview: names.size > 0,
+    };
+  }
+
+  /** What is to be told of a cell: the paper's own state and result, or those of a private trial. */
+  private tellingOf(planned: PlannedCell, plan: Plan, trial: Outcome | undefined): CellTelling {
+    const { shown } = this;
+    const of = shown.cells.get(planned.slot);
+    const work = shown.work.get(planned.slot);
+    const state = cellState(planned, of, work, plan, shown);
+    const kept = this.results.shown(of?.key);
+    if (trial?.status === "computed") {
+      return { planned, shown: of, work, state, result: trial.result, previewed: trial.result.key !== of?.key };
+    }
+    if (trial?.status === "failed") {
+      const failed: CellState = { ...state, state: "failed", causes: [], failure: trial.failure };
+      return { planned, shown: of, work, state: failed, result: kept, previewed: false };
+    }
+    return { planned, shown: of, work, state, result: kept, previewed: false };
+  }
+
+  private planWith(paper: Paper, overrides: Overrides): Plan {
+    const sign = JSON.stringify(overrides);
+    const known = this.plans.get(sign);
+    if (known !== undefined) return known;
+    // A drag passes through many values: the plans of those gone by are not needed again.
+    if (this.plans.size > 4) this.plans.clear();
+    const plan = planPaper(paper, { overrides });
+    this.plans.set(sign, plan);
+    return plan;
+  }
+
+  /** Computes here, for this page alone, what takes milliseconds and reads only such; nothing of it is kept elsewhere. */
+  private tryOut(plan: Plan): ReadonlyMap<string, Outcome> {
+    const quick = new Set<string>();
+    // In dependency order, so that what a cell reads has been judged before it.
+    for (const cell of plan.cells) {
+      if (cell.key !== null && cell.quick && cell.needs.every((id) => quick.has(id))) quick.add(cell.id);
+    }
+    const outcomes = computePlan(plan, { known: (key) => this.results.any(key), only: [...quick] });
+    for (const outcome of outcomes.values()) if (outcome.status === "computed") this.results.keepTrial(outcome.result);
+    return outcomes;
+  }
+}

@@ -1,0 +1,151 @@
+import { renderMath } from "../../ui/math.ts";
+import type { Content, FrontFace, NumberFace, Run } from "../model/types.ts";
+import { element } from "./element.ts";
+
+type Macros = Readonly<Record<string, string>>;
+type Setter<C extends Content> = (content: C, macros: Macros) => HTMLElement;
+type Setters = { readonly [Name in Content["content"]]: Setter<Extract<Content, { content: Name }>> };
+
+/** How each content is set; a new content is one line here. */
+const SETTERS: Setters = {
+  math: (content, macros) => math(content.tex, false, macros),
+  display: (content, macros) => {
+    const number = content.number === "" ? [] : [element("span", "hl-display-number", [`(${content.number})`])];
+    return element("div", "hl-display", [math(content.tex, true, macros), ...number]);
+  },
+  number: (content) => number(content.number),
+  pointer: (content) => {
+    const made = element("span", content.amiss ? "hl-pointer hl-amiss" : "hl-pointer", [content.text]);
+    if (content.target !== null) made.dataset.target = String(content.target);
+    return made;
+  },
+  words: (content, macros) => element("span", content.dress, [runs(content.runs, macros)]),
+  grid: (content, macros) => grid(content.head, content.rows, content.align, macros),
+  image: (content) => element("div", "hl-image", [element("span", "hl-image-name", [content.name]), content.caption]),
+  title: (content, macros) => title(content.front, macros),
+};
+
+/** Sets a content as an element. Never throws: what cannot be set says so in its place. */
+export function setContent(content: Content, macros: Macros): HTMLElement {
+  try {
+    // The table's type says that each setter takes the content of its own name; indexing by a union loses it.
+    return (SETTERS[content.content] as Setter<Content>)(content, macros);
+  } catch (error) {
+    return element("span", "hl-amiss", [`cannot be set: ${error instanceof Error ? error.message : String(error)}`]);
+  }
+}
+
+/** Sets running text. */
+export function runs(given: readonly Run[], macros: Macros): DocumentFragment {
+  const made = document.createDocumentFragment();
+  for (const each of given) made.append(run(each, macros));
+  return made;
+}
+
+function run(given: Run, macros: Macros): Node {
+  switch (given.run) {
+    case "text":
+      return document.createTextNode(given.text);
+    case "math":
+      return math(given.tex, false, macros);
+    case "number":
+      return number(given.number);
+    case "code":
+      return element("code", "hl-code", [given.text]);
+    case "emphasis":
+      return element("em", "", [runs(given.runs, macros)]);
+    case "strong":
+      return element("strong", "", [runs(given.runs, macros)]);
+    case "deleted":
+      return element("del", "", [runs(given.runs, macros)]);
+    case "link":
+      return element("a", "hl-link", [runs(given.runs, macros)], { href: given.url, rel: "noreferrer" });
+  }
+}
+
+function math(tex: string, display: boolean, macros: Macros): HTMLElement {
+  const made = element("span", display ? "hl-math hl-math-display" : "hl-math");
+  made.innerHTML = renderMath(tex, display, macros);
+  return made;
+}
+
+const MARKS: Readonly<Record<NumberFace["state"], string>> = {
+  current: "",
+  outOfDate: "†",
+  stands: "†",
+  computing: "",
+  waiting: "",
+  failed: "‡",
+  empty: "",
+  preview: "",
+};
+const AFTER: Readonly<Record<NumberFace["state"], string>> = {
+  current: "",
+  outOfDate: "",
+  stands: "",
+  computing: " being set",
+  waiting: " waits",
+  failed: "",
+  empty: "",
+  preview: "",
+};
+
+/** A number that is bound to a result: supported digits in ink, the rest grey, its state as a mark. */
+function number(face: NumberFace): HTMLElement {
+  const valueless = face.known === "" && face.rest === "";
+  const digits = valueless
+    ? [face.state === "failed" ? "no value" : face.state === "empty" ? "no value yet" : "no value"]
+    : [face.known, ...(face.unknown === "" ? [] : [element("span", "hl-unknown", [face.unknown])]), face.rest];
+  const made = element("span", `hl-number hl-number-${face.state}${valueless ? " hl-valueless" : ""}`, digits);
+  const [first, second] = [face.strands[0], face.strands[1] ?? face.strands[0]];
+  if (first !== undefined) made.style.setProperty("--a", strandColour(first));
+  if (second !== undefined) made.style.setProperty("--b", strandColour(second));
+  made.title = face.said;
+  const mark = MARKS[face.state];
+  const after = AFTER[face.state];
+  return element("span", "hl-number-place", [
+    made,
+    ...(mark === "" ? [] : [element("span", "hl-dagger", [mark], { "aria-hidden": "true" })]),
+    ...(after === "" ? [] : [element("i", "hl-number-after", [after])]),
+    element("span", "hl-said", [`, ${face.said}`]),
+  ]);
+}
+
+/** The colour of the strand of the parameter declared at `place` (from 0); from the seventh on they repeat. */
+export function strandColour(place: number): string {
+  return `var(--strand-${(place % 6) + 1})`;
+}
+
+function grid(
+  head: readonly (readonly Run[])[],
+  rows: readonly (readonly Run[])[][],
+  align: readonly (string | null)[],
+  macros: Macros,
+): HTMLElement {
+  const cell = (tag: "th" | "td") => (content: readonly Run[], column: number) =>
+    element(tag, "", [runs(content, macros)], { style: `text-align:${align[column] ?? "left"}` });
+  return element("div", "hl-grid", [
+    element("table", "hl-table", [
+      element("thead", "", [element("tr", "", head.map(cell("th")))]),
+      element(
+        "tbody",
+        "",
+        rows.map((row) => element("tr", "", row.map(cell("td")))),
+      ),
+    ]),
+  ]);
+}
+
+function title(front: FrontFace, macros: Macros): HTMLElement {
+  const authors = front.authors.map((author) =>
+    element("span", "hl-author", [
+      author.name,
+      ...(author.affiliation === "" ? [] : [element("span", "hl-affiliation", [author.affiliation])]),
+    ]),
+  );
+  return element("div", "hl-title-block", [
+    element("h1", "hl-title", front.plainTitle === "" ? ["Untitled"] : [runs(front.title, macros)]),
+    ...(authors.length === 0 ? [] : [element("div", "hl-authors", authors)]),
+    ...(front.abstract.length === 0 ? [] : [element("div", "hl-abstract", [runs(front.abstract, macros)])]),
+  ]);
+}

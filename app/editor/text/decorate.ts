@@ -1,0 +1,153 @@
+import type { Range, Text } from "@codemirror/state";
+import { Decoration } from "@codemirror/view";
+import type { CellFace, Content, Piece } from "../model/types.ts";
+import { CellWidget } from "./cell-widget.tsx";
+import { wholeLines } from "./places.ts";
+import { SPACE, type WidgetStore } from "./widgets.ts";
+
+/** What decorating needs of the answer: the widgets kept from the one before, and the cells' faces. */
+export interface Workshop {
+  readonly store: WidgetStore;
+  readonly faces: ReadonlyMap<string, CellFace>;
+}
+
+type Marks = Range<Decoration>[];
+type PieceOf<Name extends Piece["piece"]> = Extract<Piece, { piece: Name }>;
+
+/**
+ * How a kind of piece is drawn while the caret is elsewhere (`closed`) and while it is in it (`opened`).
+ * What `closed` gives with `piece` in its spec is taken away while the piece is open; the rest stays.
+ */
+interface Drawing<P extends Piece> {
+  closed(piece: P, doc: Text, workshop: Workshop): Marks;
+  opened(piece: P, from: number, to: number, doc: Text, workshop: Workshop): Marks;
+}
+
+const DRAWINGS: { readonly [Name in Piece["piece"]]: Drawing<PieceOf<Name>> } = {
+  set: {
+    closed(piece, doc, { store }) {
+      const { from, to } = piece.block ? wholeLines(doc, piece.from, piece.to) : piece;
+      if (from === to) return [];
+      const widget = store.widget(piece.content, piece.block);
+      return [Decoration.replace({ widget, block: piece.block, piece }).range(from, to)];
+    },
+    opened(piece, from, to, doc, { store }) {
+      if (!piece.block) return from === to ? [] : [Decoration.mark({ class: "hl-source" }).range(from, to)];
+      const preview = PREVIEWED.has(piece.content.content)
+        ? [
+            Decoration.widget({ widget: store.widget(piece.content, true), block: true, side: 1 }).range(
+              doc.lineAt(to).to,
+            ),
+          ]
+        : [];
+      return [...lines(doc, from, to, "hl-source-line"), ...preview];
+    },
+  },
+  dressed: {
+    closed(piece, _doc, { store }) {
+      const made: Marks = [];
+      if (piece.inTo > piece.inFrom && piece.dress !== "") {
+        made.push(dress(piece).range(piece.inFrom, piece.inTo));
+      }
+      if (piece.inFrom > piece.from) {
+        const widget = piece.before === undefined ? undefined : store.widget(piece.before, false);
+        made.push(Decoration.replace({ widget, piece }).range(piece.from, piece.inFrom));
+      }
+      if (piece.to > piece.inTo) made.push(Decoration.replace({ piece }).range(piece.inTo, piece.to));
+      return made;
+    },
+    opened(piece, from, to) {
+      const head = Math.min(piece.inFrom - piece.from, to - from);
+      const tail = Math.min(piece.to - piece.inTo, to - from - head);
+      const mark = Decoration.mark({ class: "hl-mark" });
+      return [...(head > 0 ? [mark.range(from, from + head)] : []), ...(tail > 0 ? [mark.range(to - tail, to)] : [])];
+    },
+  },
+  lines: {
+    closed: (piece, doc) => lines(doc, piece.from, piece.to, piece.dress),
+    opened: () => [],
+  },
+  cell: {
+    closed(piece, doc, { faces }) {
+      const face = faces.get(piece.slot);
+      if (face === undefined) return [];
+      const { from, to } = wholeLines(doc, piece.from, piece.to);
+      return [Decoration.replace({ widget: new CellWidget(face, false), block: true, piece }).range(from, to)];
+    },
+    opened(piece, from, to, doc, { faces }) {
+      const face = faces.get(piece.slot);
+      if (face === undefined) return [];
+      const plate = Decoration.widget({ widget: new CellWidget(face, true), block: true, side: -1 });
+      return [plate.range(doc.lineAt(from).from), ...working(doc, from, to)];
+    },
+  },
+  parameter: { closed: () => [], opened: () => [] },
+};
+
+/** All that is drawn of the pieces while the caret is outside of them, and their joins and blank lines. */
+export function closedDecorations(
+  pieces: readonly Piece[],
+  joins: Int32Array,
+  blanks: Int32Array,
+  doc: Text,
+  workshop: Workshop,
+): Marks {
+  const made: Marks = [];
+  for (const piece of pieces) {
+    if (piece.to > doc.length || piece.from > piece.to) continue;
+    made.push(...drawing(piece).closed(piece, doc, workshop));
+  }
+  const join = Decoration.replace({ widget: SPACE });
+  for (let k = 0; k + 1 < joins.length; k += 2) {
+    const [from, to] = [joins[k] ?? 0, joins[k + 1] ?? 0];
+    if (to <= doc.length && from < to) made.push(join.range(from, to));
+  }
+  const blank = Decoration.line({ class: "hl-blank" });
+  for (const at of blanks) if (at <= doc.length) made.push(blank.range(doc.lineAt(at).from));
+  return made;
+}
+
+/** What is drawn of a piece in which the caret is; from..to is where it stands now. */
+export function openedDecorations(piece: Piece, from: number, to: number, doc: Text, workshop: Workshop): Marks {
+  return drawing(piece).opened(piece, from, to, doc, workshop);
+}
+
+function drawing<P extends Piece>(piece: P): Drawing<P> {
+  // Each name has the drawing of its own piece by the type of DRAWINGS; indexing by a union loses it.
+  return DRAWINGS[piece.piece] as unknown as Drawing<P>;
+}
+
+function dress(piece: PieceOf<"dressed">): Decoration {
+  return piece.url === undefined
+    ? Decoration.mark({ class: piece.dress })
+    : Decoration.mark({ class: piece.dress, attributes: { title: piece.url, "data-url": piece.url } });
+}
+
+function lines(doc: Text, from: number, to: number, className: string): Marks {
+  const made: Marks = [];
+  const mark = Decoration.line({ class: className });
+  for (let at = doc.lineAt(from); ; at = doc.line(at.number + 1)) {
+    made.push(mark.range(at.from));
+    if (at.to >= to || at.number === doc.lines) return made;
+  }
+}
+
+/** The lines of an open working, numbered from its first, without its fences' weight. */
+function working(doc: Text, from: number, to: number): Marks {
+  const first = doc.lineAt(from).number;
+  const last = doc.lineAt(to).number;
+  const made: Marks = [];
+  for (let number = first; number <= last; number += 1) {
+    const place = number === first ? " hl-working-first" : number === last ? " hl-working-last" : "";
+    made.push(
+      Decoration.line({
+        class: `hl-working${place}`,
+        attributes: { "data-working-line": String(number - first + 1) },
+      }).range(doc.line(number).from),
+    );
+  }
+  return made;
+}
+
+/** Contents that stay visible beneath their source while it is edited. */
+const PREVIEWED: ReadonlySet<Content["content"]> = new Set(["display"]);

@@ -1,0 +1,133 @@
+import { defaultKeymap } from "@codemirror/commands";
+import { markdown, markdownLanguage } from "@codemirror/lang-markdown";
+import { yaml, yamlFrontmatter } from "@codemirror/lang-yaml";
+import { HighlightStyle, syntaxHighlighting } from "@codemirror/language";
+import { EditorState, type Extension } from "@codemirror/state";
+import { drawSelection, EditorView, keymap, type ViewUpdate } from "@codemirror/view";
+import { tags } from "@lezer/highlight";
+import { yCollab, yUndoManagerKeymap } from "y-codemirror.next";
+import type { Awareness } from "y-protocols/awareness";
+import type * as Y from "yjs";
+import { KINDS } from "../../cells/index.ts";
+import { glossField } from "./glosses.ts";
+import { type SheetHost, sheetHost } from "./host.ts";
+import { lineNumbers } from "./line-numbers.ts";
+import { enter, lineBreak } from "./paragraphs.ts";
+import { remoteCarets } from "./remote-carets.ts";
+import { setAttention, setPressed, sheetField } from "./sheet-field.ts";
+
+export interface EditorOptions {
+  readonly parent: HTMLElement;
+  readonly text: Y.Text;
+  readonly undo: Y.UndoManager;
+  readonly awareness: Awareness;
+  readonly host: SheetHost;
+  readonly nonce: string;
+  onUpdate(update: ViewUpdate): void;
+}
+
+/** The paper's text as a typeset sheet, bound to the shared text. */
+export function createSheetEditor(options: EditorOptions): EditorView {
+  const { host, text, undo, awareness } = options;
+  return new EditorView({
+    parent: options.parent,
+    state: EditorState.create({
+      doc: text.toString(),
+      extensions: [
+        ground(options.nonce, host.writes, "Text of the paper"),
+        sheetHost.of(host),
+        keymap.of([
+          { key: "Enter", run: enter },
+          { key: "Shift-Enter", run: lineBreak },
+        ]),
+        keymap.of(yUndoManagerKeymap),
+        keymap.of(defaultKeymap),
+        yamlFrontmatter({
+          content: markdown({ base: markdownLanguage, codeLanguages: workingLanguage, addKeymap: false }),
+        }),
+        yCollab(text, null, { undoManager: undo }),
+        sheetField,
+        glossField,
+        lineNumbers,
+        attention,
+        remoteCarets(text, awareness),
+        EditorView.updateListener.of(options.onUpdate),
+      ],
+    }),
+  });
+}
+
+/** The BibTeX of the bibliography: plain source, bound to the shared text. */
+export function createSourceEditor(
+  options: Pick<EditorOptions, "parent" | "text" | "undo" | "nonce"> & { readonly writes: boolean },
+): EditorView {
+  return new EditorView({
+    parent: options.parent,
+    state: EditorState.create({
+      doc: options.text.toString(),
+      extensions: [
+        ground(options.nonce, options.writes, "BibTeX of the bibliography"),
+        keymap.of(yUndoManagerKeymap),
+        keymap.of(defaultKeymap),
+        yCollab(options.text, null, { undoManager: options.undo }),
+      ],
+    }),
+  });
+}
+
+/** What both have. Tab is not taken, so that it leaves the text; the caret is drawn in ink. */
+function ground(nonce: string, writes: boolean, label: string): Extension {
+  return [
+    nonce === "" ? [] : EditorView.cspNonce.of(nonce),
+    EditorState.readOnly.of(!writes),
+    EditorView.editable.of(writes),
+    EditorView.lineWrapping,
+    drawSelection(),
+    EditorView.contentAttributes.of({
+      "aria-label": label,
+      "aria-readonly": String(!writes),
+      spellcheck: "true",
+      autocorrect: "off",
+    }),
+    syntaxHighlighting(SOURCE_STYLE),
+  ];
+}
+
+/** Workings are YAML. lang-markdown passes the first word of the info string: the kind. */
+function workingLanguage(info: string) {
+  return KINDS.has(info) ? yaml().language : null;
+}
+
+const SOURCE_STYLE = HighlightStyle.define([
+  { tag: tags.definition(tags.propertyName), class: "hl-key" },
+  { tag: tags.labelName, class: "hl-kind" },
+  { tag: tags.comment, class: "hl-comment" },
+]);
+
+/** Whether the text has the person's attention, the parts within it counted; and whether the pointer is pressed in it. */
+const attention = EditorView.domEventHandlers({
+  focusin(_event, view) {
+    if (!view.state.field(sheetField).attention) view.dispatch({ effects: setAttention.of(true) });
+  },
+  focusout(event, view) {
+    const next = event.relatedTarget;
+    if (next instanceof Node && view.dom.contains(next)) return;
+    // After the editor's own handling of the event.
+    setTimeout(() => {
+      if (view.dom.isConnected && !view.dom.contains(document.activeElement)) {
+        view.dispatch({ effects: setAttention.of(false) });
+      }
+    });
+  },
+  pointerdown(event, view) {
+    if (event.button !== 0) return;
+    view.dispatch({ effects: setPressed.of(true) });
+    const release = () => {
+      for (const name of RELEASES) window.removeEventListener(name, release);
+      if (view.dom.isConnected) view.dispatch({ effects: setPressed.of(false) });
+    };
+    for (const name of RELEASES) window.addEventListener(name, release);
+  },
+});
+
+const RELEASES = ["pointerup", "pointercancel"] as const;

@@ -1,0 +1,107 @@
+import { Annotation, type Extension, RangeSet } from "@codemirror/state";
+import {
+  Decoration,
+  type DecorationSet,
+  type EditorView,
+  ViewPlugin,
+  type ViewUpdate,
+  WidgetType,
+} from "@codemirror/view";
+import type { Awareness } from "y-protocols/awareness";
+import * as Y from "yjs";
+import { element } from "./element.ts";
+
+const moved = Annotation.define<true>();
+
+/** Where the others write: a proof caret below the line, and the name in the margin beside it. */
+export function remoteCarets(text: Y.Text, awareness: Awareness): Extension {
+  return ViewPlugin.define((view) => new RemoteCarets(view, text, awareness), {
+    decorations: (carets) => carets.decorations,
+  });
+}
+
+class RemoteCarets {
+  decorations: DecorationSet = Decoration.none;
+  private readonly text: Y.Text;
+  private readonly awareness: Awareness;
+  private readonly heard: (change: { added: number[]; updated: number[]; removed: number[] }) => void;
+
+  constructor(view: EditorView, text: Y.Text, awareness: Awareness) {
+    this.text = text;
+    this.awareness = awareness;
+    this.heard = ({ added, updated, removed }) => {
+      const others = [...added, ...updated, ...removed].some((client) => client !== awareness.clientID);
+      if (others) view.dispatch({ annotations: moved.of(true) });
+    };
+    awareness.on("change", this.heard);
+  }
+
+  update(update: ViewUpdate): void {
+    this.tellOwn(update);
+    const redraw = update.docChanged || update.transactions.some((each) => each.annotation(moved) === true);
+    if (redraw) this.decorations = this.draw(update.state.doc.length);
+  }
+
+  destroy(): void {
+    this.awareness.off("change", this.heard);
+  }
+
+  private tellOwn({ view, state, docChanged, selectionSet, focusChanged }: ViewUpdate): void {
+    const own = this.awareness.getLocalState();
+    if (own === null || !(docChanged || selectionSet || focusChanged)) return;
+    if (!view.hasFocus) {
+      if (own.cursor !== undefined && own.cursor !== null) this.awareness.setLocalStateField("cursor", null);
+      return;
+    }
+    const { anchor, head } = state.selection.main;
+    const cursor = { anchor: this.relative(anchor), head: this.relative(head) };
+    if (JSON.stringify(cursor) !== JSON.stringify(own.cursor)) this.awareness.setLocalStateField("cursor", cursor);
+  }
+
+  private relative(index: number): unknown {
+    return Y.relativePositionToJSON(Y.createRelativePositionFromTypeIndex(this.text, index));
+  }
+
+  private draw(length: number): DecorationSet {
+    const marks: ReturnType<Decoration["range"]>[] = [];
+    for (const [client, state] of this.awareness.getStates()) {
+      if (client === this.awareness.clientID) continue;
+      const head = this.absolute(state.cursor?.head);
+      const anchor = this.absolute(state.cursor?.anchor);
+      if (head === null || anchor === null || head > length || anchor > length) continue;
+      const name = typeof state.user?.name === "string" ? state.user.name : "";
+      marks.push(Decoration.widget({ widget: new Caret(name), side: head > anchor ? -1 : 1 }).range(head));
+      if (head !== anchor) {
+        const mark = Decoration.mark({ class: "hl-remote-selection" });
+        marks.push(mark.range(Math.min(head, anchor), Math.max(head, anchor)));
+      }
+    }
+    return marks.length === 0 ? RangeSet.empty : Decoration.set(marks, true);
+  }
+
+  private absolute(position: unknown): number | null {
+    const { doc } = this.text;
+    if (position === null || typeof position !== "object" || doc === null) return null;
+    const place = Y.createAbsolutePositionFromRelativePosition(Y.createRelativePositionFromJSON(position), doc);
+    return place !== null && place.type === this.text ? place.index : null;
+  }
+}
+
+class Caret extends WidgetType {
+  private readonly name: string;
+  constructor(name: string) {
+    super();
+    this.name = name;
+  }
+  override eq(other: Caret): boolean {
+    return this.name === other.name;
+  }
+  override toDOM(): HTMLElement {
+    return element("span", "hl-remote-caret", [element("span", "hl-remote-name", [this.name])], {
+      "aria-hidden": "true",
+    });
+  }
+  override ignoreEvent(): boolean {
+    return true;
+  }
+}

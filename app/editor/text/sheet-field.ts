@@ -1,0 +1,126 @@
+import { type ChangeDesc, type EditorState, RangeSet, StateEffect, StateField, type Text } from "@codemirror/state";
+import { Decoration, type DecorationSet, EditorView } from "@codemirror/view";
+import type { CellFace, Piece, SheetModel } from "../model/types.ts";
+import { closedDecorations, openedDecorations, type Workshop } from "./decorate.ts";
+import { type Place, placesOf, touched } from "./places.ts";
+import { WidgetStore } from "./widgets.ts";
+
+/** An answer of the worker, with the text that it is about and what has changed since that was asked. */
+export const applyModel = StateEffect.define<{ model: SheetModel; doc: Text; since: ChangeDesc }>();
+/** Opens or puts away a cell's working, whether or not the caret is in it. */
+export const showWorking = StateEffect.define<{ slot: string; open: boolean }>();
+/** The text gained or lost the focus; without it nothing is open by the caret. */
+export const setAttention = StateEffect.define<boolean>();
+/** While the pointer is pressed nothing opens or closes, so that what is pointed at stays under it. */
+export const setPressed = StateEffect.define<boolean>();
+
+interface Sheet {
+  readonly model: SheetModel | null;
+  readonly workshop: Workshop;
+  readonly places: RangeSet<Place>;
+  /** Drawn while nothing is open. */
+  readonly closed: DecorationSet;
+  readonly opened: ReadonlySet<Piece>;
+  /** Drawn now. */
+  readonly shown: DecorationSet;
+  readonly workings: ReadonlySet<string>;
+  readonly attention: boolean;
+  readonly pressed: boolean;
+}
+
+const NOTHING: ReadonlySet<Piece> = new Set();
+
+/**
+ * The typeset sheet over the text:
+ *
+ *     answer ──▶ closed ──(pieces under the caret taken out, their source dressed)──▶ shown
+ *     change ──▶ places and closed are moved through it; the next answer replaces them
+ */
+export const sheetField = StateField.define<Sheet>({
+  create: () => ({
+    model: null,
+    workshop: { store: new WidgetStore(), faces: new Map() },
+    places: RangeSet.empty,
+    closed: Decoration.none,
+    opened: NOTHING,
+    shown: Decoration.none,
+    workings: new Set(),
+    attention: false,
+    pressed: false,
+  }),
+  update(before, transaction) {
+    let { model, workshop, places, closed, workings, attention, pressed } = before;
+    if (transaction.docChanged) {
+      places = places.map(transaction.changes);
+      closed = closed.map(transaction.changes);
+    }
+    for (const effect of transaction.effects) {
+      if (effect.is(applyModel)) {
+        model = effect.value.model;
+        workshop = { store: workshop.store, faces: facesOf(model.cells) };
+        workshop.store.begin(model.macros);
+        const { doc, since } = effect.value;
+        const marks = closedDecorations(model.pieces, model.joins, model.blanks, doc, workshop);
+        closed = Decoration.set(marks, true).map(since);
+        places = placesOf(model.pieces, doc.length).map(since);
+      } else if (effect.is(showWorking)) {
+        const next = new Set(workings);
+        if (effect.value.open) next.add(effect.value.slot);
+        else next.delete(effect.value.slot);
+        workings = next;
+      } else if (effect.is(setAttention)) attention = effect.value;
+      else if (effect.is(setPressed)) pressed = effect.value;
+    }
+    const next = { model, workshop, places, closed, workings, attention, pressed };
+    if (pressed && before.pressed && closed === before.closed)
+      return { ...next, opened: before.opened, shown: before.shown };
+    const opened = openPieces(next, transaction.state, before);
+    if (closed === before.closed && same(opened, before.opened)) return { ...next, opened, shown: before.shown };
+    return { ...next, opened, shown: withOpened(next, opened, transaction.state.doc) };
+  },
+  provide: (field) => EditorView.decorations.from(field, (sheet) => sheet.shown),
+});
+
+function facesOf(cells: readonly CellFace[]): Map<string, CellFace> {
+  return new Map(cells.map((face) => [face.slot, face]));
+}
+
+function openPieces(sheet: Omit<Sheet, "opened" | "shown">, state: EditorState, before: Sheet): ReadonlySet<Piece> {
+  // An answer that comes while the pointer is pressed has new pieces: those at the old places stay as they were.
+  const byCaret = sheet.attention && !state.readOnly && !(sheet.pressed && before.opened.size === 0);
+  const opened = byCaret ? touched(sheet.places, state) : new Set<Piece>();
+  if (sheet.workings.size > 0) {
+    for (const cursor = sheet.places.iter(); cursor.value !== null; cursor.next()) {
+      const { piece } = cursor.value;
+      if (piece.piece === "cell" && sheet.workings.has(piece.slot)) opened.add(piece);
+    }
+  }
+  return opened.size === 0 ? NOTHING : opened;
+}
+
+function same(a: ReadonlySet<Piece>, b: ReadonlySet<Piece>): boolean {
+  if (a === b) return true;
+  if (a.size !== b.size) return false;
+  for (const piece of a) if (!b.has(piece)) return false;
+  return true;
+}
+
+function withOpened(sheet: Omit<Sheet, "opened" | "shown">, opened: ReadonlySet<Piece>, doc: Text): DecorationSet {
+  if (opened.size === 0) return sheet.closed;
+  let [filterFrom, filterTo] = [doc.length, 0];
+  const marks: ReturnType<typeof openedDecorations> = [];
+  for (const cursor = sheet.places.iter(); cursor.value !== null; cursor.next()) {
+    const { piece } = cursor.value;
+    if (!opened.has(piece)) continue;
+    filterFrom = Math.min(filterFrom, doc.lineAt(cursor.from).from);
+    filterTo = Math.max(filterTo, doc.lineAt(cursor.to).to);
+    marks.push(...openedDecorations(piece, cursor.from, cursor.to, doc, sheet.workshop));
+  }
+  return sheet.closed.update({
+    filter: (_from, _to, value) => !opened.has(value.spec.piece),
+    filterFrom,
+    filterTo,
+    add: marks,
+    sort: true,
+  });
+}
