@@ -1,3 +1,4 @@
+import { fileURLToPath } from "node:url";
 import { reactRouter } from "@react-router/dev/vite";
 import tailwindcss from "@tailwindcss/vite";
 import { defineConfig } from "vite";
@@ -52,7 +53,15 @@ const EDITOR = [
 
 export default defineConfig(({ isSsrBuild }) => ({
   plugins: [tailwindcss(), reactRouter()],
-  resolve: { dedupe: SINGLE },
+  resolve: {
+    dedupe: SINGLE,
+    alias: {
+      // Named character references (&amp;) by table: the browser's variant asks `document`, which workers do not have.
+      "decode-named-character-reference": fileURLToPath(
+        new URL("./node_modules/decode-named-character-reference/index.js", import.meta.url),
+      ),
+    },
+  },
   optimizeDeps: { include: EDITOR },
   worker: { format: "es" as const },
   build: {
