@@ -31,7 +31,7 @@ export function checkOrder(tokens: readonly Token[], length: number): FormulaPro
     const before = tokens[i - 1];
     const problem = operandExpected ? checkOperand(token, before, brackets) : checkOperator(tokens, i, brackets);
     if (problem) return problem;
-    if (isPrefix(token) || token.text === "^") rightBinding += 1;
+    if ((operandExpected && isPrefix(token)) || token.text === "^") rightBinding += 1;
     if (token.type === "open") {
       const callee = !operandExpected && before ? before.text : null;
       brackets.push({ token, callee });

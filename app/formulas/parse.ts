@@ -1,12 +1,13 @@
 import { create, type MathNode, parseDependencies } from "mathjs/number";
 import { checkOrder } from "./grammar.ts";
+import { child, children, field, placeholderIndex } from "./mathNode.ts";
 import { nearestSpelling } from "./spelling.ts";
 import { readTokens, type Token } from "./tokens.ts";
 import type { Formula, FormulaProblem, ParsedFormula } from "./types.ts";
 import { BINDERS, CONSTANTS, FUNCTIONS, functionNamed, RESERVED_NAMES, WORD_OPERATORS } from "./words.ts";
 
-/** Longest formula, in characters. */
-const LONGEST = 4000;
+/** Longest formula, in characters: its tree is then never deeper than the stack of a worker bears. */
+const LONGEST = 2000;
 
 /** mathjs' parser alone, without anything that could evaluate. */
 const { parse: mathParse } = create(parseDependencies ?? {});
@@ -267,9 +268,14 @@ class TreeReader {
 
   private textOf(part: Part): string {
     let text = "";
-    for (let i = part.first; i <= part.last; i++) {
+    let { first, last } = part;
+    if (isBracketed(this.tokens.slice(first, last + 1))) {
+      first += 1;
+      last -= 1;
+    }
+    for (let i = first; i <= last; i++) {
       const token = this.token(i);
-      const gap = i > part.first && token.from > this.token(i - 1).to ? " " : "";
+      const gap = i > first && token.from > this.token(i - 1).to ? " " : "";
       text += gap + token.text;
     }
     return text.length > 60 ? `${text.slice(0, 57)}...` : text;
@@ -296,21 +302,12 @@ function isIf(formula: Formula): boolean {
   return formula.node === "apply" && formula.name === "if";
 }
 
-/** Reads one field of a node of mathjs, whose nodes are open objects. */
-function field(node: MathNode, name: string): unknown {
-  return Reflect.get(node, name);
-}
-
-function child(node: MathNode, name: string): MathNode {
-  return field(node, name) as MathNode;
-}
-
-function children(node: MathNode, name: string): readonly MathNode[] {
-  return field(node, name) as readonly MathNode[];
-}
-
-function placeholderIndex(node: MathNode): number {
-  const match = /^t(\d+)$/.exec(String(field(node, "name")));
-  if (match === null) throw new Error(`unexpected name in a ${node.type}`);
-  return Number(match[1]);
+/** Whether the first of these tokens is a bracket that the last one closes. */
+function isBracketed(tokens: readonly Token[]): boolean {
+  let depth = 0;
+  for (const [i, { type }] of tokens.entries()) {
+    depth += type === "open" ? 1 : type === "close" ? -1 : 0;
+    if (depth === 0 && i < tokens.length - 1) return false;
+  }
+  return tokens[0]?.type === "open";
 }

@@ -31,9 +31,10 @@ export function printNumber(q: Quantity, options: PrintOptions = {}): PrintedNum
   if (isExact) return layOut(exactLayout(number, options));
   const lowest = supportedPlace(uncertainty, number.exponent);
   const first = number.mantissa === 0 ? null : leadingPlace(number);
+  const known = Number.isFinite(lowest) ? roundToPlace(number, lowest) : null;
   const asked = askedPlace(number, first, isBracketed, options);
   const place = Math.max(asked, lowest);
-  const supported = first === null ? 0 : Math.max(0, first - lowest + 1);
+  const supported = known === null ? Number.POSITIVE_INFINITY : known.digits.length;
   const rounded = roundToPlace(number, place);
   const isKnown = rounded.digits !== "" || (options.decimals !== undefined && place === asked) || isBracketed;
   if (!isKnown) return nothingKnown(number, asked, options);
@@ -107,13 +108,12 @@ function exactLayout(q: Quantity, options: PrintOptions): Layout {
   }
   const first = leadingPlace(q);
   const asked = options.decimals !== undefined ? -options.decimals : carried(q, first, options.digits ?? USUAL_DIGITS);
-  const hasAsked = options.digits !== undefined || options.decimals !== undefined;
   const rounded = roundToPlace(q, asked);
-  const kept = hasAsked ? rounded : withoutTrailingZeros(rounded);
-  const place = hasAsked ? asked : rounded.exponent - kept.digits.length + 1;
-  const isPadded = !hasAsked && place > 0 && isWhole(q);
-  const isPowerOfTen = isPadded ? false : isScientific(rounded, hasAsked ? place : Math.min(place, 0), options);
-  return { ...common, value: kept, place, isScientific: isPowerOfTen };
+  const shared = { ...common, isScientific: isScientific(rounded, asked, options) };
+  if (options.digits !== undefined || options.decimals !== undefined)
+    return { ...shared, value: rounded, place: asked };
+  const kept = withoutTrailingZeros(rounded);
+  return { ...shared, value: kept, place: rounded.exponent - kept.digits.length + 1 };
 }
 
 /** q·100: exactly, where a double can. */
@@ -124,14 +124,15 @@ function shiftedByTwo(q: Quantity): Quantity {
 
 function nothingKnown(q: Quantity, asked: number, options: PrintOptions): PrintedNumber {
   const words = "no digit known";
+  const place = q.mantissa === 0 ? 0 : asked;
   const shown = layOut({
-    value: roundToPlace(q, asked),
-    place: asked,
+    value: roundToPlace(q, place),
+    place,
     full: null,
-    fullPlace: asked,
+    fullPlace: place,
     bracket: null,
     supported: 0,
-    isScientific: isScientific(roundToPlace(q, asked), asked, options),
+    isScientific: isScientific(roundToPlace(q, place), place, options),
     isPercent: options.as === "percent",
     unit: "",
   });
