@@ -64,7 +64,7 @@ export class Body {
     this.places[""] = this.opening;
     for (const entry of map.entries) {
       this.#entries.set(entry.key, entry);
-      this.places[entry.key] = { from: entry.keyFrom, to: entry.value.to, line: entry.line };
+      this.places[entry.key] = { from: entry.keyFrom, to: entry.keyTo, line: entry.line };
     }
   }
 

@@ -68,9 +68,19 @@ export function scopeOver(
     call(of, member, args) {
       const found = result(of);
       if (found === undefined || "type" in found) return found;
-      return KINDS.get(found.kind)?.call(found.data, member, args);
+      return called(found, member, args);
     },
   };
+}
+
+/** What a callable gives; arguments that the solver cannot take are refused in its words. */
+function called(result: CellResult, member: string, args: readonly Quantity[]): Value | undefined {
+  try {
+    return KINDS.get(result.kind)?.call(result.data, member, args);
+  } catch (error) {
+    if (error instanceof SolverError) return { type: "refused", reason: error.message };
+    throw error;
+  }
 }
 
 function plannedOutcome(planned: Plan["cells"][number], results: ReadonlyMap<string, CellResult>): Outcome {

@@ -63,7 +63,7 @@ export interface Computed<Data> {
  *
  * Life: `read` (planning, on each keystroke) → `inspect` (planning, when no other cell's value enters) → `compute` (in a
  * worker) → `call` and `view` (wherever the result is shown, from its data alone). All are pure; `read` notes problems in
- * the body and never throws; `inspect` and `compute` throw CellFault; `call` and `view` never throw.
+ * the body and never throws; `inspect` and `compute` throw CellFault or SolverError, `call` SolverError; `view` never throws.
  */
 export interface KindOf<Model, Data> {
   readonly documentation: KindDocumentation;

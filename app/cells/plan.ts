@@ -97,12 +97,11 @@ function looksFaults(draft: Draft, names: Declarations): Problem[] {
   const axes = draft.looks?.formulas.filter(({ path }) => path.startsWith("axes.")) ?? [];
   return axes.flatMap((use) => {
     const { faults, reads } = lookUp(use.formula, [], names);
-    const cells = [...reads.cells].map((id) => ({
-      at: 0,
-      length: 0,
-      message: `An axis may be given by numbers and parameters, not by \`${id}\`.`,
-    }));
-    return [...faults, ...cells].map((fault) => faultAt(draft, placeOfFault(fault, use, use.base), fault.message));
+    const misspelt = faults.map((fault) => faultAt(draft, placeOfFault(fault, use, use.base), fault.message));
+    const results = [...reads.cells].map((id) =>
+      faultAt(draft, use, `An axis may be given by numbers and parameters, not by \`${id}\`.`),
+    );
+    return [...misspelt, ...results];
   });
 }
 

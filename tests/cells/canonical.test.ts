@@ -6,7 +6,7 @@ describe("canonical JSON", () => {
   test("RFC 8785, section 3.2.2: literals, strings and numbers", () => {
     const value = {
       numbers: [333333333.33333329, 1e30, 4.5, 2e-3, 0.000000000000000000000000001],
-      string: '\u20ac$\u000f\u000aA\'\u0042\u0022\u005c\\"\/',
+      string: "\u20ac$\u000f\u000aA'\u0042\u0022\u005c\\\"/",
       literals: [null, true, false],
     };
     expect(canonicalJson(value)).toBe(
@@ -19,7 +19,9 @@ describe("canonical JSON", () => {
     const value = Object.fromEntries(names.map((name) => [name, name]));
     const order = ["\r", "1", "\u0080", "\u00f6", "\u20ac", "\ud83d\ude00", "\ufb33"];
     expect(Object.keys(JSON.parse(canonicalJson(value)) as object).sort()).toEqual([...names].sort());
-    expect(canonicalJson(value)).toBe(`{${order.map((name) => `${JSON.stringify(name)}:${JSON.stringify(name)}`).join(",")}}`);
+    expect(canonicalJson(value)).toBe(
+      `{${order.map((name) => `${JSON.stringify(name)}:${JSON.stringify(name)}`).join(",")}}`,
+    );
   });
 
   test("RFC 8785, appendix B: numbers at the ends of the double's range", () => {

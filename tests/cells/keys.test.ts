@@ -15,9 +15,12 @@ const HARMLESS: readonly [string, (text: string) => string][] = [
   ["prose", (text) => `# A heading\n\nSome words.\n\n${text}\n\nMore words.`],
   ["a space in a formula", (text) => text.replace("start: 1", "start:   ( 1 )")],
   ["quotes", (text) => text.replace("start: 1", "start: '1'")],
-  ["block style", (text) => text.replace("mu: {value: 2, min: 1.45, max: 4, step: 0.05,", "mu: {max: 5, value: 2, min: 1,")],
+  [
+    "block style",
+    (text) => text.replace("mu: {value: 2, min: 1.45, max: 4, step: 0.05,", "mu: {max: 5, value: 2, min: 1,"),
+  ],
   ["note, unit and symbol", (text) => text.replace("note: drift", "unit: m/s, note: the drift").replace("\\mu", "m")],
-  ["a default written out", (text) => text.replace("rate: beta", "rate: beta\noffspring: binary\ndiffusion: 1/2")],
+  ["a default written out", (text) => text.replace("rate: beta", "rate: beta\ndiffusion: 1/2")],
   ["binary as a map", (text) => text.replace("rate: beta", "rate: beta\noffspring: {2: 1}")],
   ["the name of the process", (text) => text.replaceAll("larvae", "spores")],
   ["a value typed otherwise", (text) => text.replace("value: 2,", "value: 2.00,")],
@@ -66,17 +69,13 @@ describe("keys of cells", () => {
   test("any harmless changes together leave the key, any change of a value makes a new one", () => {
     const harmless = HARMLESS.filter(([what]) => what !== "cells in another order");
     fc.assert(
-      fc.property(
-        fc.subarray(harmless),
-        fc.double({ min: 1.5, max: 4, noNaN: true }),
-        (changes, mu) => {
-          const text = changes.reduce((text, [, change]) => change(text), PAPER);
-          expect(keyOf(text, "K")).toBe(key);
-          const moved = keyOf(text, "K", { mu: String(mu) });
-          expect(moved === key).toBe(mu === 2);
-          expect(keyOf(PAPER, "K", { mu: String(mu) })).toBe(moved);
-        },
-      ),
+      fc.property(fc.subarray(harmless), fc.double({ min: 1.5, max: 4, noNaN: true }), (changes, mu) => {
+        const text = changes.reduce((text, [, change]) => change(text), PAPER);
+        expect(keyOf(text, "K")).toBe(key);
+        const moved = keyOf(text, "K", { mu: String(mu) });
+        expect(moved === key).toBe(mu === 2);
+        expect(keyOf(PAPER, "K", { mu: String(mu) })).toBe(moved);
+      }),
       { numRuns: 60 },
     );
   });
@@ -100,7 +99,8 @@ describe("keys of cells", () => {
 
   test("a parameter computed from a varied one stays a formula of it", () => {
     const setup = LARVAE.replace("beta: 1", "beta: 1\nnu: 2*mu").replace("drift: mu", "drift: nu/2");
-    const text = setup + cell("profile w", "of: larvae") + cell("table t", "rows: {mu: [1.5, 2]}", "columns: {a: w.s0}");
+    const text =
+      setup + cell("profile w", "of: larvae") + cell("table t", "rows: {mu: [1.5, 2]}", "columns: {a: w.s0}");
     expect(keyOf(text, "t", { mu: "3" })).toBe(keyOf(text, "t"));
     expect(keyOf(text.replace("nu: 2*mu", "nu: 2*mu + 0.1"), "t")).not.toBe(keyOf(text, "t"));
   });

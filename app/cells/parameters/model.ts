@@ -86,7 +86,7 @@ function declaredParameter(body: Body, entry: YamlEntry): DeclaredParameter | nu
   };
   return {
     name: entry.key,
-    value: body.formulaAt(node, entry.key),
+    value: body.formulaAt(node, `${entry.key}.value`),
     se: number("se") ?? ZERO,
     source: node.yaml === "scalar" ? node.text : "",
     from: node.from,

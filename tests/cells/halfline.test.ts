@@ -1,0 +1,167 @@
+import { describe, expect, test } from "vitest";
+import type { Value } from "../../app/formulas/index.ts";
+import { log10Of, toDouble } from "../../app/formulas/index.ts";
+import { cell, computed, LARVAE, quantityOf, reasonOf, valueIn } from "./papers.ts";
+
+/**
+ * Reference values for binary branching at rate 1, D = 1/2, drift 2.
+ * Source of the equations: J. Berestycki, É. Brunet, S. C. Harris, P. Miłoś, J. Funct. Anal. 273 (2017).
+ * Numbers computed by an independent method: Taylor series of order 85 at 65 digits, Cauchy integral of 4096 nodes.
+ */
+const REFERENCE = {
+  decay: 3.414213562373095,
+  slope: 3.71560594573003,
+  amplitude: 0.916563392497971848,
+  s0: 5.436877834061205227,
+  w: { 0.25: 0.5949918567602501805, 1: 0.969757486443957099, 4: 0.9999989258470868352 },
+  wAtS0: { 0.5: 2.919640129426419111, 2: 1.014214161953508812 },
+  slopeAtStart: -1.361623447692068861,
+  mean: 0.03290227211421473,
+  variance: 0.03779140215865752691,
+  constant: 0.1823531853797005001,
+  ratio: 1.00015264689580125,
+  p: { 0: 0.969757486443957099, 1: 0.02786808820474096869, 3: 0.0002195893912356346, 100: 5.328537271833063817e-78 },
+  log10p: { 1000: -740.5885949280441580430993, 10000: -7360.23482571395238818429 },
+} as const;
+
+const PAPER = `${LARVAE}${cell("profile w", "of: larvae", "s: [0, 1/2, 2, s0]")}${cell("counts K", "of: larvae", "start: 1", "up_to: 150")}${cell("tail T", "of: larvae", "start: 1")}`;
+
+/** Relative agreement to 10 digits, and an error that is both kept and not a caricature. */
+function agrees(value: Value | undefined, reference: number): void {
+  const quantity = quantityOf(value);
+  const x = toDouble(quantity);
+  expect(Math.abs(x / reference - 1)).toBeLessThan(1e-10);
+  expect(quantity.error * 2 ** quantity.exponent).toBeGreaterThanOrEqual(
+    Math.abs(x - reference) - 1e-16 * Math.abs(reference),
+  );
+  expect(quantity.error).toBeLessThan(1e-9 * Math.abs(quantity.mantissa));
+}
+
+describe("values of half-line cells against the reference", () => {
+  const { results, outcomes, plan } = computed(PAPER);
+  const value = (id: string, name: string): Value | undefined => results.get(id)?.values[name];
+
+  test("everything computes", () => {
+    expect(plan.problems).toEqual([]);
+    expect([...outcomes.values()].map(({ status }) => status)).toEqual([
+      "computed",
+      "computed",
+      "computed",
+      "computed",
+      "computed",
+    ]);
+  });
+
+  test("process", () => {
+    agrees(value("larvae", "decay"), REFERENCE.decay);
+    agrees(value("larvae", "critical_drift"), Math.SQRT2);
+    expect(value("larvae", "regime")).toEqual({ type: "text", text: "away" });
+    expect(toDouble(quantityOf(value("larvae", "mean_offspring")))).toBe(2);
+    expect(toDouble(quantityOf(value("larvae", "limit")))).toBe(1);
+    expect(toDouble(quantityOf(value("larvae", "extinction_probability")))).toBe(0);
+  });
+
+  test("profile", () => {
+    agrees(value("w", "slope_at_barrier"), REFERENCE.slope);
+    agrees(value("w", "amplitude"), REFERENCE.amplitude);
+    agrees(value("w", "s0"), REFERENCE.s0);
+    for (const [x, w] of Object.entries(REFERENCE.w)) agrees(valueIn(PAPER, `w(${x})`), w);
+    for (const [x, w] of Object.entries(REFERENCE.wAtS0)) agrees(valueIn(PAPER, `w(${x}, w.s0)`), w);
+  });
+
+  test("counts", () => {
+    agrees(value("K", "zero"), REFERENCE.p[0]);
+    agrees(value("K", "mean"), REFERENCE.mean);
+    agrees(value("K", "variance"), REFERENCE.variance);
+    agrees(value("K", "s0"), REFERENCE.s0);
+    expect(toDouble(quantityOf(value("K", "infinite")))).toBe(0);
+    for (const [n, p] of Object.entries(REFERENCE.p)) agrees(valueIn(PAPER, `K(${n})`), p);
+  });
+
+  test("probabilities beyond up_to and beyond the double's range", () => {
+    for (const [n, log10] of Object.entries(REFERENCE.log10p)) {
+      expect(Math.abs(log10Of(quantityOf(valueIn(PAPER, `K(${n})`))) - log10)).toBeLessThan(2e-10);
+    }
+  });
+
+  test("tail", () => {
+    agrees(value("T", "s0"), REFERENCE.s0);
+    agrees(value("T", "slope_at_start"), REFERENCE.slopeAtStart);
+    agrees(value("T", "constant"), REFERENCE.constant);
+    agrees(value("T", "ratio"), REFERENCE.ratio);
+    agrees(valueIn(PAPER, "K(100)/T(100)"), 1.00150266878337352);
+    const omitted = toDouble(quantityOf(value("T", "omitted")));
+    // The first omitted term is what the ratio misses 1 by, to leading order.
+    expect(omitted / (REFERENCE.ratio - 1)).toBeCloseTo(1, 1);
+  });
+});
+
+describe("callables of counts", () => {
+  // Computed by an independent method: sums of the law itself.
+  test("above is what the law leaves", () => {
+    const above = toDouble(quantityOf(valueIn(PAPER, "K.above(2)")));
+    const sum = toDouble(quantityOf(valueIn(PAPER, "sum(K(n), n, 3, 60)")));
+    expect(Math.abs(above / sum - 1)).toBeLessThan(1e-12);
+    expect(toDouble(quantityOf(valueIn(PAPER, "K.above(-1)")))).toBe(1);
+  });
+
+  test("factorial moments agree with mean and variance", () => {
+    agrees(valueIn(PAPER, "K.moment(1)"), REFERENCE.mean);
+    agrees(valueIn(PAPER, "K.moment(2)"), REFERENCE.variance - REFERENCE.mean + REFERENCE.mean ** 2);
+    expect(toDouble(quantityOf(valueIn(PAPER, "K.moment(0)")))).toBe(1);
+  });
+
+  test("quantiles step where the law says", () => {
+    const crowd = LARVAE + cell("counts K", "of: larvae", "start: {0.2: 5}", "up_to: 60");
+    const below = [0.01, 0.1, 0.3, 0.5, 0.9, 0.999].map((p) => {
+      const n = toDouble(quantityOf(valueIn(crowd, `K.quantile(${p})`)));
+      const upTo = (m: number) => (m < 0 ? 0 : toDouble(quantityOf(valueIn(crowd, `sum(K(n), n, 0, ${m})`))));
+      return upTo(n) >= p && upTo(n - 1) < p;
+    });
+    expect(below).toEqual([true, true, true, true, true, true]);
+    expect(valueIn(crowd, "K.median")).toEqual(valueIn(crowd, "K.quantile(1/2)"));
+  });
+
+  test("arguments that mean nothing are refused with the reason", () => {
+    expect(reasonOf(valueIn(PAPER, "K(1/2)"))).toContain("not a whole number");
+    expect(reasonOf(valueIn(PAPER, "K.quantile(1)"))).toContain("infinite");
+    expect(reasonOf(valueIn(PAPER, "K.quantile(2)"))).toContain("from 0 to 1");
+    expect(reasonOf(valueIn(PAPER, "K.moment(1.5)"))).toContain("whole order");
+    expect(reasonOf(valueIn(PAPER, "T(0)"))).toContain("n = 1, 2, …");
+    expect(reasonOf(valueIn(PAPER, "w(-1)"))).not.toBe("");
+    expect(reasonOf(valueIn(PAPER, "w(1, 6)"))).toContain("5.43");
+  });
+
+  test("independent particles multiply their generating functions", () => {
+    const two = LARVAE + cell("counts K", "of: larvae", "start: {1: 1, 2: 1}") + cell("profile w", "of: larvae");
+    agrees(valueIn(two, "K.zero"), 0.969757486443957099 * 0.9990076731925253);
+    agrees(valueIn(two, "K.zero/(w(1)*w(2))"), 1);
+  });
+});
+
+test("errors of arguments are passed on", () => {
+  const exact = quantityOf(valueIn(PAPER, "w(1)"));
+  const inexact = quantityOf(valueIn(PAPER, "w(1 + K.zero - K.zero)"));
+  expect(inexact.error).toBeGreaterThan(exact.error);
+  expect(Math.abs(inexact.mantissa - exact.mantissa)).toBeLessThanOrEqual(inexact.error + exact.error);
+});
+
+describe("regimes without these answers", () => {
+  const slow = computed(PAPER, { mu: "1" });
+
+  test("the process stands, with its regime; what has no meaning is refused alone", () => {
+    const process = slow.results.get("larvae");
+    expect(process?.values.regime).toEqual({ type: "text", text: "between" });
+    expect(reasonOf(process?.values.decay)).toContain("between");
+    agrees(process?.values.critical_drift, Math.SQRT2);
+  });
+
+  test("profile, counts and tail fail at their `of`, with the critical drift", () => {
+    for (const id of ["w", "K", "T"]) {
+      const outcome = slow.outcomes.get(id);
+      if (outcome?.status !== "failed") throw new Error(`${id}: ${outcome?.status}`);
+      expect(outcome.failure.message).toContain("1.41421");
+      expect(outcome.failure.line).toBe((slow.plan.byId.get(id)?.line ?? 0) + 1);
+    }
+  });
+});
