@@ -3,7 +3,7 @@ import { markdown, markdownLanguage } from "@codemirror/lang-markdown";
 import { yaml, yamlFrontmatter } from "@codemirror/lang-yaml";
 import { HighlightStyle, syntaxHighlighting } from "@codemirror/language";
 import { EditorState, type Extension } from "@codemirror/state";
-import { drawSelection, EditorView, keymap, type ViewUpdate } from "@codemirror/view";
+import { drawSelection, EditorView, gutters, keymap, type ViewUpdate } from "@codemirror/view";
 import { tags } from "@lezer/highlight";
 import { yCollab, yUndoManagerKeymap } from "y-codemirror.next";
 import type { Awareness } from "y-protocols/awareness";
@@ -49,6 +49,7 @@ export function createSheetEditor(options: EditorOptions): EditorView {
         sheetField,
         glossField,
         lineNumbers,
+        gutters({ fixed: false }),
         attention,
         remoteCarets(text, awareness),
         EditorView.updateListener.of(options.onUpdate),

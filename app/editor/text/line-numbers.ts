@@ -46,7 +46,11 @@ function markerOf(view: EditorView, block: BlockInfo): GutterMarker | null {
   const { doc } = view.state;
   const first = doc.lineAt(block.from).number;
   const last = doc.lineAt(Math.min(block.to, doc.length)).number;
+  if (doc.lineAt(block.from).text.trim() === "") return null;
+  // Blank lines bear no number: theirs falls to the block after them.
+  let begin = first;
+  while (begin > 1 && doc.line(begin - 1).text.trim() === "") begin -= 1;
   const mark = view.state.field(glossField).marks.get(first) ?? "";
-  const numbered = Math.floor(last / EVERY) > Math.floor((first - 1) / EVERY);
+  const numbered = Math.floor(last / EVERY) > Math.floor((begin - 1) / EVERY);
   return numbered || mark !== "" ? new LineNumber(numbered ? String(first) : "", mark) : null;
 }
