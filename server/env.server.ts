@@ -1,3 +1,4 @@
+import { availableParallelism } from "node:os";
 import { z } from "zod";
 
 const LOOPBACK = new Set(["127.0.0.1", "localhost", "::1", "[::1]"]);
@@ -22,7 +23,13 @@ const shape = z.object({
   GITHUB_CLIENT_SECRET: z.string().optional(),
   /** Port of the stand-in for GitHub in demo and test; 0 takes a free one. */
   STAND_IN_PORT: port.default(0),
-  LOG_LEVEL: z.enum(["fatal", "error", "warn", "info", "debug", "silent"]).default("info"),
+  /** Threads that compute cells; one core is left to the rest. */
+  COMPUTE_THREADS: z.coerce.number().int().min(1).max(64).optional(),
+  /** Longest that one cell may compute. */
+  CELL_LIMIT_SECONDS: z.coerce.number().positive().default(120),
+  /** Solver seconds that one person may use within an hour. */
+  SOLVER_SECONDS_AN_HOUR: z.coerce.number().positive().default(900),
+  LOG_LEVEL: z.enum(["fatal", "error", "warn", "info", "debug", "silent"]).optional(),
 });
 
 export type Mode = z.infer<typeof shape>["HALFLINE_MODE"];
@@ -41,7 +48,10 @@ export interface Environment {
   readonly sessionSecret: string | null;
   readonly github: { readonly clientId: string; readonly clientSecret: string } | null;
   readonly standInPort: number;
-  readonly logLevel: z.infer<typeof shape>["LOG_LEVEL"];
+  readonly computeThreads: number;
+  readonly cellLimitSeconds: number;
+  readonly solverSecondsAnHour: number;
+  readonly logLevel: NonNullable<z.infer<typeof shape>["LOG_LEVEL"]>;
 }
 
 export class EnvironmentError extends Error {
@@ -82,7 +92,11 @@ export function readEnvironment(variables: Readonly<Record<string, string | unde
     sessionSecret: env.SESSION_SECRET ?? null,
     github: clientId && clientSecret ? { clientId, clientSecret } : null,
     standInPort: env.STAND_IN_PORT,
-    logLevel: env.LOG_LEVEL,
+    computeThreads: env.COMPUTE_THREADS ?? Math.max(1, availableParallelism() - 1),
+    cellLimitSeconds: env.CELL_LIMIT_SECONDS,
+    solverSecondsAnHour: env.SOLVER_SECONDS_AN_HOUR,
+    // A person sits before a demo, and reads what goes wrong; a machine reads the rest.
+    logLevel: env.LOG_LEVEL ?? (env.HALFLINE_MODE === "production" ? "info" : "warn"),
   };
 }
 

@@ -5,6 +5,7 @@ import type { Logger } from "pino";
 import { readSession } from "../app/access/index.server.ts";
 import type { AppConfig, Services } from "../app/context.ts";
 import type { Database } from "../db/index.server.ts";
+import { Computations } from "./compute/index.ts";
 import type { Environment } from "./env.server.ts";
 import type { StandIn, StandInClient } from "./fakes/index.ts";
 import { attachSockets, type Identify, LiveTexts, type SocketsOptions } from "./sync/index.ts";
@@ -60,14 +61,25 @@ export async function createServices(parts: ServiceParts): Promise<RunningServic
   };
   const onProblem = (error: unknown, where: string) => log.error({ err: error, where }, "live texts");
   const texts = await LiveTexts.open({ database, databaseUrl: environment.databaseUrl, identify, onProblem });
+  const compute = new Computations({
+    database,
+    texts,
+    threads: environment.computeThreads,
+    cellLimitMs: environment.cellLimitSeconds * 1000,
+    secondsAnHour: environment.solverSecondsAnHour,
+    onProblem: (error, where) => log.error({ err: error, where }, "computations"),
+  });
   return {
     texts,
-    compute: absent("compute"),
+    compute,
     pdf: absent("pdf"),
     config,
     log,
     attachSockets: (server, options) => attachSockets(server, { ...options, texts, database, identify, onProblem }),
-    close: () => texts.close(),
+    close: async () => {
+      await compute.close();
+      await texts.close();
+    },
   };
 }
 

@@ -102,7 +102,10 @@ async function loadPages(server: Server, environment: Environment): Promise<Page
     root,
     appType: "custom",
     logLevel: "warn",
-    server: { middlewareMode: { server }, hmr: environment.development ? { server } : false },
+    server: {
+      middlewareMode: { server },
+      ...(environment.development ? { ws: { server } } : { ws: false, hmr: false }),
+    },
   });
   const load = () => vite.ssrLoadModule("./server/app.ts") as Promise<Pick<Pages, "makeHandler">>;
   return {

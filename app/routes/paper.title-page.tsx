@@ -1,11 +1,71 @@
+import { data, redirect } from "react-router";
 import { requirePaper } from "../access/index.server.ts";
+import { databaseContext, servicesContext } from "../context.ts";
+import { plainText, readInline, readPaper } from "../paper/index.ts";
+import { CommandLink, RunningHead } from "../ui/index.ts";
 import type { Route } from "./+types/paper.title-page";
+import { FrontMatterBlock } from "./parts/front-matter.tsx";
+import { changePeople } from "./parts/people.server.ts";
+import { groupPeople } from "./parts/people-groups.ts";
+import { PeopleList } from "./parts/people-list.tsx";
+import "./title-page.css";
 
 export async function loader({ request, context, params }: Route.LoaderArgs) {
-  const { paper } = await requirePaper({ request, context }, params.paperId, "read");
-  return { title: paper.title };
+  const { paper, standing, person } = await requirePaper({ request, context }, params.paperId, "read");
+  const { text, bibliography } = await context.get(servicesContext).texts.read(paper.id);
+  const { title, authors, keywords, msc, abstract } = readPaper(text, bibliography).front;
+  // Whoever comes without being on the paper is not told who is.
+  const members = standing === "visitor" ? [] : await context.get(databaseContext).members.list(paper.id);
+  return {
+    id: paper.id,
+    front: { title, authors, keywords, msc },
+    abstract: plainText(readInline(abstract, 0)),
+    groups: groupPeople(members, { standing, personId: person?.id ?? null }),
+    you: person?.id ?? "",
+    standing,
+    changing: new URL(request.url).searchParams.get("change"),
+  };
 }
 
-export default function TitlePage({ loaderData }: Route.ComponentProps) {
-  return <main>{loaderData.title}</main>;
+export async function action({ request, context, params }: Route.ActionArgs) {
+  const { fault, left } = await changePeople({ request, context }, params.paperId, await request.formData());
+  if (left) return redirect("/shelf");
+  return fault ? data({ fault }, { status: 422 }) : redirect(`/papers/${params.paperId}/title-page`);
+}
+
+export default function TitlePage({ loaderData, actionData }: Route.ComponentProps) {
+  const { id, front, abstract, groups, you, standing, changing } = loaderData;
+  const writes = standing === "owner" || standing === "author";
+  return (
+    <>
+      <title>{`Title page of ${front.title} · Halfline`}</title>
+      <RunningHead
+        home={you ? "/shelf" : "/"}
+        title={front.title}
+        right={
+          <>
+            <CommandLink to={`/papers/${id}`}>Back to the sheet</CommandLink>
+            <CommandLink to={`/papers/${id}/galley`}>Galley</CommandLink>
+          </>
+        }
+      />
+      <main className="title-page">
+        <FrontMatterBlock front={front} abstract={abstract} />
+        {writes ? (
+          <p className="front-hint">
+            This stands at the head of the sheet, between the lines of three hyphens, and is changed there.
+          </p>
+        ) : null}
+        {standing === "visitor" ? null : (
+          <PeopleList
+            groups={groups}
+            you={you}
+            owns={standing === "owner"}
+            changing={changing}
+            fault={actionData?.fault ?? null}
+          />
+        )}
+      </main>
+    </>
+  );
 }

@@ -3,13 +3,13 @@ import { ancestryOfAbsorbed, type BranchingModel, type Lineage, simulateBranchin
 /** Drift above the critical sqrt(2): only finitely many ever reach the shore. */
 const LARVA: BranchingModel = { start: 0.9, drift: 1.45, rate: 1, diffusion: 0.5, until: 3.2, step: 0.0125 };
 /** One of a few hundred thousand realizations: rarely do as many as four arrive. */
-const REALIZATION = 209_575;
+const REALIZATION = 174_708;
 
 const WIDTH = 840;
 const HEIGHT = 1000;
 const TOP = 72;
 /** Pixels a unit of length, and a unit of time. */
-const ACROSS = 140;
+const ACROSS = 104;
 const DOWN = (HEIGHT - TOP) / LARVA.until;
 
 const lineages = simulateBranching(LARVA, REALIZATION);
@@ -37,7 +37,7 @@ export function BranchingPicture({ className = "" }: { readonly className?: stri
         <path d={paths(false)} />
       </g>
       <path d={paths(true)} fill="none" stroke="var(--ink)" strokeWidth="1.5" strokeLinejoin="round" />
-      <path d={`M0 -${HEIGHT}V${2 * HEIGHT}`} stroke="var(--ink)" strokeWidth="2.5" />
+      <path d={`M0 0V${HEIGHT}`} stroke="var(--ink)" strokeWidth="2.5" />
       {arrivals.map((y, index) => (
         <g key={y}>
           <circle cx="0" cy={y} r="6" fill="var(--paper)" stroke="var(--ink)" strokeWidth="2" />

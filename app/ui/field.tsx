@@ -23,7 +23,9 @@ export function Choice({ label, hint, fault, ...rest }: SelectHTMLAttributes<HTM
   const id = useId();
   return (
     <FieldFrame id={id} label={label} hint={hint} fault={fault}>
-      <select {...rest} {...described(id, hint, fault)} className={`field-input ${rest.className ?? ""}`} />
+      <div className="field-choice">
+        <select {...rest} {...described(id, hint, fault)} className={`field-input ${rest.className ?? ""}`} />
+      </div>
     </FieldFrame>
   );
 }

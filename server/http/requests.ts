@@ -5,10 +5,11 @@ import type { Logger } from "pino";
 export function loggedRequests(log: Logger): RequestHandler {
   return (request, response, next) => {
     const begun = performance.now();
+    const { method, path } = request;
     response.on("finish", () => {
       const details = {
-        method: request.method,
-        path: request.path,
+        method,
+        path,
         status: response.statusCode,
         ms: Math.round(performance.now() - begun),
       };

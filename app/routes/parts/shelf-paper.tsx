@@ -25,7 +25,7 @@ export function ShelfPaperRow({ paper, now }: { readonly paper: ShelfPaper; read
           Changed <When moment={changedAt} now={now} />
         </p>
         {STANDING[role] ? <p>{STANDING[role]}</p> : null}
-        <Form method="post" className="shelf-commands" aria-label={`Commands for ${title}`}>
+        <Form method="post" className="shelf-commands">
           <input type="hidden" name="paper" value={id} />
           {putBy ? null : (
             <Command type="submit" name="intent" value="duplicate">
