@@ -2,7 +2,7 @@ import { Continuation } from "./continuation.ts";
 import { type Expansion, evaluate, pointValue } from "./expansion.ts";
 import { gaussLegendre } from "./quadrature.ts";
 import type { TrajectoryReader } from "./reader.ts";
-import type { Turning } from "./types.ts";
+import type { Pair } from "./types.ts";
 
 /** The contour of Cauchy's formula for P(K = n), in L = ln(s/s0): out from s0 beside the slit [s0, ∞), then round on a circle.
  *
@@ -26,6 +26,13 @@ export interface Contour {
   readonly xiIm: Float64Array;
 }
 
+/** Where the leg starts, and what L = ln(s/radius) is measured from: s0, or a point just short of the end of a trajectory that does not turn. */
+export interface Reference {
+  readonly radius: Pair;
+  /** radius − 1 */
+  readonly excess: Pair;
+}
+
 export interface ContourShape {
   /** ln of the circle's radius over s0 */
   readonly width: number;
@@ -42,29 +49,31 @@ export interface ContourShape {
 const TRUSTED = 0.9;
 const NEWTON_ROUNDS = 30;
 /** At θ = π, s is real and so must ξ + iπ be: the path has come round on the right sheet. */
-const CLOSING_TOLERANCE = 1e-9;
+export const CLOSING_TOLERANCE = 1e-9;
 
 /** Finds ξ at all nodes. @returns null where the continuation fails or does not close: the circle meets a singularity. */
-export function traceContour(reader: TrajectoryReader, turning: Turning, shape: ContourShape): Contour | null {
+export function traceContour(reader: TrajectoryReader, reference: Reference, shape: ContourShape): Contour | null {
   const contour = layNodes(shape);
   const { logRe, logIm, legNodes } = contour;
-  const s0 = turning.s0[0];
-  const top = reader.topExpansion();
-  const path = new Continuation(reader, "above", top.xiRe);
-  contour.xiRe[0] = top.xiRe;
+  const radius = reference.radius[0];
+  const top = reader.turning === null ? null : reader.topExpansion();
+  const start = reader.locate(radius).xi;
+  const path = new Continuation(reader, "above", start);
+  contour.xiRe[0] = start;
   for (let j = 1; j < logRe.length; j += 1) {
-    // s − s0 = s0 (e^L − 1), so that u must fall by as much below its value at the turning point
+    // s − radius = radius (e^L − 1), so that u must fall by as much below its value where the leg starts
     const a = logRe[j] as number;
     const b = logIm[j] as number;
-    const riseRe = s0 * (Math.expm1(a) * Math.cos(b) - 2 * Math.sin(b / 2) ** 2);
-    const riseIm = s0 * Math.exp(a) * Math.sin(b);
+    const riseRe = radius * (Math.expm1(a) * Math.cos(b) - 2 * Math.sin(b / 2) ** 2);
+    const riseIm = radius * Math.exp(a) * Math.sin(b);
     const solved =
-      (j <= legNodes && solveNearTop(top, riseRe, riseIm, path)) || path.solve(-(turning.excess[0] + riseRe), -riseIm);
+      (top !== null && j <= legNodes && solveNearTop(top, riseRe, riseIm, path)) ||
+      path.solve(-(reference.excess[0] + riseRe), -riseIm);
     if (!solved) return null;
     contour.xiRe[j] = path.xiRe;
     contour.xiIm[j] = path.xiIm;
   }
-  if (!path.solve(1 + s0 * Math.exp(shape.width), 0)) return null;
+  if (!path.solve(1 + radius * Math.exp(shape.width), 0)) return null;
   return Math.abs(path.xiIm + Math.PI) < CLOSING_TOLERANCE ? contour : null;
 }
 

@@ -1,12 +1,13 @@
-import { type Contour, traceContour } from "./contour.ts";
+import { type Contour, type Reference, traceContour } from "./contour.ts";
 import { SolverError } from "./errors.ts";
 import type { TrajectoryReader } from "./reader.ts";
 import { nodeValues } from "./sources.ts";
 import { sumRange, sumsOf } from "./sums.ts";
-import type { Trajectory, Turning } from "./types.ts";
+import type { Trajectory } from "./types.ts";
 
 /** Two contours of different width for the same law: their difference measures the error of either. */
 export interface ContourPair {
+  readonly reference: Reference;
   readonly fine: Contour;
   readonly check: Contour;
 }
@@ -37,28 +38,31 @@ const cache = new WeakMap<Trajectory, Map<number, ContourPair>>();
 /** The contours for n up to `n`, accepted by three tests on the limit law from far away, whose total and mean are known:
  *  both contours agree at sampled n, the total is 1, and ξ closes with the period of z.
  *  @throws SolverError "not_converged" where no width passes. */
-export function contoursFor(t: Trajectory, reader: TrajectoryReader, turning: Turning, n: number): ContourPair {
+export function contoursFor(t: Trajectory, reader: TrajectoryReader, n: number): ContourPair {
   const level = Math.ceil(Math.log10(Math.max(n, 1000)));
   const known = cache.get(t) ?? new Map<number, ContourPair>();
   cache.set(t, known);
   const found = known.get(level);
   if (found !== undefined) return found;
-  const made = searchWidths(t, reader, turning, level);
+  const made = searchWidths(t, reader, level);
   known.set(level, made);
   return made;
 }
 
-function searchWidths(t: Trajectory, reader: TrajectoryReader, turning: Turning, level: number): ContourPair {
-  const finest = finestScale(reader, turning, level);
-  const tilt = reader.law.law === "geometric" ? POLE_TILT : PLAIN_TILT;
+const NOT_FOUND = "No contour passed its tests; the probabilities of this law cannot be vouched for.";
+
+function searchWidths(t: Trajectory, reader: TrajectoryReader, level: number): ContourPair {
+  const reference = referenceOf(reader);
+  const finest = finestScale(t, reader, reference, level);
+  const tilt = reader.law.law === "geometric" || t.edge !== null ? POLE_TILT : PLAIN_TILT;
   let best: ContourPair | null = null;
   let smallest = TOLERATED;
   for (const width of WIDTHS) {
     for (let round = 0, nodes = arcNodes(width); round <= REFINEMENTS; round += 1, nodes = Math.ceil(1.5 * nodes)) {
-      const fine = traceContour(reader, turning, { width, tilt, panelNodes: PANEL_NODES, finest, arcNodes: nodes });
+      const fine = traceContour(reader, reference, { width, tilt, panelNodes: PANEL_NODES, finest, arcNodes: nodes });
       if (fine === null) break;
       const checkWidth = width * CHECK_SHARE;
-      const check = traceContour(reader, turning, {
+      const check = traceContour(reader, reference, {
         width: checkWidth,
         tilt: tilt + CHECK_TILT,
         panelNodes: CHECK_PANEL_NODES,
@@ -66,8 +70,8 @@ function searchWidths(t: Trajectory, reader: TrajectoryReader, turning: Turning,
         arcNodes: Math.ceil((nodes * arcNodes(checkWidth)) / arcNodes(width)),
       });
       if (check === null) break;
-      const pair = { fine, check };
-      const disagreement = compare(t, reader, turning, pair);
+      const pair = { reference, fine, check };
+      const disagreement = compare(t, reader, pair);
       if (disagreement < ACCEPTED) return pair;
       if (disagreement < smallest) {
         smallest = disagreement;
@@ -76,20 +80,25 @@ function searchWidths(t: Trajectory, reader: TrajectoryReader, turning: Turning,
     }
   }
   if (best !== null) return best;
-  throw new SolverError(
-    "not_converged",
-    "No contour around the saddle s0 passed its tests; the probabilities of this law cannot be vouched for.",
-  );
+  throw new SolverError("not_converged", NOT_FOUND);
 }
 
-/** The leg must resolve the Gaussian e^{−nτ²}, the scale s0 − 1 on which w(x, ·) itself varies, and the distance to a pole of G. */
-function finestScale(reader: TrajectoryReader, turning: Turning, level: number): number {
+/** Where the leg starts: s0, or the end of a trajectory that does not turn, just inside the first singularity. */
+function referenceOf(reader: TrajectoryReader): Reference {
+  if (reader.turning !== null) return { radius: reader.turning.s0, excess: reader.turning.excess };
+  return { radius: [reader.largest, 0], excess: [reader.largest - 1, 0] };
+}
+
+/** The leg must resolve the Gaussian e^{−nτ²}, the scale s0 − 1 on which w(x, ·) itself varies, and the distance to further singularities:
+ *  the pole of a geometric law, and the fixed point that a trajectory without turning point tends to. */
+function finestScale(t: Trajectory, reader: TrajectoryReader, reference: Reference, level: number): number {
   const gaussian = 1 / (2 * Math.sqrt(10 ** level));
-  const variation = Math.sqrt(turning.excess[0] / turning.s0[0]) / 4;
+  const variation = Math.sqrt(reference.excess[0] / reference.radius[0]) / 4;
   const mean = reader.law.mean[0];
-  const pole =
-    reader.law.law === "geometric" ? (1 / mean - turning.excess[0]) / turning.s0[0] : Number.POSITIVE_INFINITY;
-  return Math.min(gaussian, variation, Math.sqrt(Math.max(pole, Number.EPSILON)) / 2);
+  const pole = reader.law.law === "geometric" ? 1 / mean - reference.excess[0] : Number.POSITIVE_INFINITY;
+  const edge = t.edge === null ? Number.POSITIVE_INFINITY : t.edge.s - reference.radius[0];
+  const nearest = Math.max(Math.min(pole, edge), Number.EPSILON) / reference.radius[0];
+  return Math.min(gaussian, variation, Math.sqrt(nearest) / 2);
 }
 
 function arcNodes(width: number): number {
@@ -100,12 +109,12 @@ function arcNodes(width: number): number {
 const SAMPLES = [0, 1, 2, 3, 5, 8, 13, 21, 34, 55, 89, 144, 233, 377, 610];
 
 /** Largest relative difference of the two contours on the limit law, its total against 1 included. */
-function compare(t: Trajectory, reader: TrajectoryReader, turning: Turning, pair: ContourPair): number {
+function compare(t: Trajectory, reader: TrajectoryReader, pair: ContourPair): number {
   const u = nodeValues(t, reader, pair.fine, "far");
   const v = nodeValues(t, reader, pair.check, "far");
   if (u === null || v === null) return Number.POSITIVE_INFINITY;
-  const fine = sumsOf(pair.fine, turning, u, "each");
-  const check = sumsOf(pair.check, turning, v, "each");
+  const fine = sumsOf(pair.fine, pair.reference, u, "each");
+  const check = sumsOf(pair.check, pair.reference, v, "each");
   const atTop = u.re[0] as number;
   let worst = 0;
   for (const n of SAMPLES) {

@@ -2,7 +2,7 @@ import { prepareLaw, readLaw, zeroOf } from "./prepared.ts";
 import { profileComplementAt } from "./profile.ts";
 import { ROUNDING } from "./reader.ts";
 import { normalise, scaledByPower } from "./scaled.ts";
-import type { ScaledEstimate, Start, Starts, Trajectory, Turning } from "./types.ts";
+import type { Pair, ScaledEstimate, Start, Starts, Trajectory } from "./types.ts";
 
 /** A law as values v_n = p_n·2^{n·log2}, all ≥ 0, with one relative error for all of them that are not 0. */
 interface Weights {
@@ -11,35 +11,28 @@ interface Weights {
 }
 
 /** Law of several particles as a convolution of the laws of one. Sums of products of positive numbers lose no digits.
- *  Each value carries s0^n, so that the powers do not underflow. */
-export function convolvedLaw(
-  t: Trajectory,
-  turning: Turning,
-  starts: readonly Start[],
-  upTo: number,
-): ScaledEstimate[] {
+ *  Each value carries radius^n, so that the powers do not underflow. */
+export function convolvedLaw(t: Trajectory, starts: readonly Start[], upTo: number): ScaledEstimate[] {
   let total: Weights | null = null;
-  let log2s0: readonly [number, number] = [0, 0];
+  let log2Radius: Pair = [0, 0];
   let radiusSpread = 0;
   for (const { position, particles } of starts) {
-    const law = prepareLaw(t, turning, [{ position, particles: 1 }], upTo, "each");
-    log2s0 = law.log2s0;
+    const law = prepareLaw(t, [{ position, particles: 1 }], upTo, "each");
+    log2Radius = law.log2Radius;
     radiusSpread = law.radiusSpread;
-    const one = singleWeights(t, position, readLaw(law, 1, Math.max(1, upTo)), law.log2s0, upTo, law.first > 1);
+    const one = singleWeights(t, position, readLaw(law, 1, Math.max(1, upTo)), law.log2Radius, upTo, law.first > 1);
     const powered = power(one, particles);
     total = total === null ? powered : convolve(total, powered);
   }
   const { values, relative } = total as Weights;
-  return Array.from(values, (value, n) =>
-    scaledByPower(value, value * (relative + n * radiusSpread), [log2s0[0], log2s0[1]], n),
-  );
+  return Array.from(values, (value, n) => scaledByPower(value, value * (relative + n * radiusSpread), log2Radius, n));
 }
 
 function singleWeights(
   t: Trajectory,
   position: number,
   read: readonly ScaledEstimate[],
-  log2s0: readonly [number, number],
+  log2Radius: Pair,
   upTo: number,
   takenOut: boolean,
 ): Weights {
@@ -49,10 +42,10 @@ function singleWeights(
   let relative = zero.error / zero.mantissa;
   for (let n = 1; n <= upTo; n += 1) {
     const v = read[n - 1] as ScaledEstimate;
-    let back = scaledByPower(v.mantissa, v.error, [log2s0[0], log2s0[1]], -n, v.exponent);
+    let back = scaledByPower(v.mantissa, v.error, log2Radius, -n, v.exponent);
     if (n === 1 && takenOut) {
-      const s0 = 2 ** log2s0[0];
-      back = normalise(s0 + back.mantissa * 2 ** back.exponent, (back.error + ROUNDING) * 2 ** back.exponent, 0);
+      const radius = 2 ** log2Radius[0];
+      back = normalise(radius + back.mantissa * 2 ** back.exponent, (back.error + ROUNDING) * 2 ** back.exponent, 0);
     }
     values[n] = back.mantissa * 2 ** back.exponent;
     relative = Math.max(relative, back.error / Math.abs(back.mantissa));

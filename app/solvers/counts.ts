@@ -5,7 +5,7 @@ import { readerOf } from "./reader.ts";
 import { normalise } from "./scaled.ts";
 import { checkStarts } from "./sources.ts";
 import type { Wanted } from "./sums.ts";
-import type { AbsorbedLaw, Answer, ScaledEstimate, Start, Starts, Trajectory, Turning } from "./types.ts";
+import type { AbsorbedLaw, Answer, ScaledEstimate, Start, Starts, Trajectory } from "./types.ts";
 
 /** Largest n of a whole law; single probabilities go on beyond it. */
 const MOST = 1_000_000;
@@ -23,15 +23,15 @@ export function absorbedLaw(t: Trajectory, starts: Starts, upTo: number): Answer
       `The law is asked for up to ${upTo}; at most ${MOST} values are computed at once.`,
     );
   const question = pose(t, starts);
-  const { shift, rest, turning } = question;
+  const { shift, rest, sterile } = question;
   const values: ScaledEstimate[] = new Array(Math.min(shift, upTo + 1)).fill(ZERO);
   let method = "exact";
   const last = upTo - shift;
   if (last >= 0) {
     if (rest !== "far" && rest.length === 0) values.push(...pointMass(last));
-    else if (turning === null) values.push(...sterileLaw(t, rest, last));
+    else if (sterile) values.push(...sterileLaw(t, rest, last));
     else {
-      const law = prepareLaw(t, turning, rest, last, "each");
+      const law = prepareLaw(t, rest, last, "each");
       const read = wholeLaw(t, law, rest, last);
       values.push(...read.values);
       method = read.method;
@@ -51,12 +51,12 @@ export function absorbedLaw(t: Trajectory, starts: Starts, upTo: number): Answer
  *  @throws SolverError as absorbedLaw. */
 export function absorbedProbability(t: Trajectory, starts: Starts, n: number): Answer<ScaledEstimate> {
   requireCount("n", n);
-  const { shift, rest, turning } = pose(t, starts);
+  const { shift, rest, sterile } = pose(t, starts);
   const m = n - shift;
   if (m < 0) return ZERO;
   if (rest !== "far" && rest.length === 0) return m === 0 ? ONE : ZERO;
-  if (turning === null) return sterileLaw(t, rest, m)[m] as ScaledEstimate;
-  return single(t, turning, rest, m, "each");
+  if (sterile) return sterileProbability(t, rest, m);
+  return single(t, rest, m, "each");
 }
 
 /** P(K > n), one n without the others.
@@ -64,28 +64,28 @@ export function absorbedProbability(t: Trajectory, starts: Starts, n: number): A
  *  @throws SolverError as absorbedLaw. */
 export function absorbedAbove(t: Trajectory, starts: Starts, n: number): Answer<ScaledEstimate> {
   requireCount("n", n);
-  const { shift, rest, turning } = pose(t, starts);
+  const { shift, rest, sterile } = pose(t, starts);
   const m = n - shift;
   if (m < 0) return ONE;
   if (rest !== "far" && rest.length === 0) return ZERO;
-  if (turning === null) return sterileAbove(t, rest, m);
+  if (sterile) return sterileAbove(t, rest, m);
   if (m === 0) return rest === "far" ? ONE : zeroOf(t, rest).complement;
-  return single(t, turning, rest, m, "above");
+  return single(t, rest, m, "above");
 }
 
 /** A checked question: particles already at the barrier count at once, the rest have the law to be computed. */
 interface Question {
   readonly shift: number;
   readonly rest: Starts;
-  readonly turning: Turning | null;
+  readonly sterile: boolean;
 }
 
 function pose(t: Trajectory, starts: Starts): Question {
-  const { turning } = readerOf(t);
-  if (starts === "far") return { shift: 0, rest: starts, turning };
+  const { sterile } = readerOf(t);
+  if (starts === "far") return { shift: 0, rest: starts, sterile };
   const checked = checkStarts(starts);
   const atBarrier = checked.filter((s) => s.position === 0).reduce((sum, s) => sum + s.particles, 0);
-  return { shift: atBarrier, rest: checked.filter((s) => s.position > 0), turning };
+  return { shift: atBarrier, rest: checked.filter((s) => s.position > 0), sterile };
 }
 
 function requireCount(name: string, n: number): void {
@@ -108,13 +108,13 @@ function plusOne(value: ScaledEstimate): ScaledEstimate {
   return normalise(1 + value.mantissa * size, value.error * size + Number.EPSILON, 0);
 }
 
-function single(t: Trajectory, turning: Turning, rest: Starts, n: number, wanted: Wanted): ScaledEstimate {
+function single(t: Trajectory, rest: Starts, n: number, wanted: Wanted): ScaledEstimate {
   if (n === 0) return atZero(t, rest);
-  const law = prepareLaw(t, turning, rest, n, wanted);
+  const law = prepareLaw(t, rest, n, wanted);
   const value = readLaw(law, n, n)[0] as ScaledEstimate;
   const read = wanted === "each" && n < law.first ? plusOne(value) : value;
   if (wanted === "above" || !isSeveral(rest) || !isCancelled(read) || n > CONVOLVED_UP_TO) return read;
-  return better(read, convolvedLaw(t, turning, rest, n)[n] as ScaledEstimate);
+  return better(read, convolvedLaw(t, rest, n)[n] as ScaledEstimate);
 }
 
 /** Up to here a law of many particles is convolved from that of one where its contour cancels. */
@@ -146,13 +146,17 @@ function wholeLaw(
   if (last >= 1) values.push(...readLaw(law, 1, last));
   if (law.first > 1 && last >= 1) values[1] = plusOne(values[1] as ScaledEstimate);
   const lastCancelled = values.findLastIndex((v, n) => n > 0 && n <= CONVOLVED_UP_TO && isCancelled(v));
-  const { turning } = readerOf(t);
-  if (!isSeveral(rest) || lastCancelled < 1 || turning === null) return { values, method: law.method };
-  const convolved = convolvedLaw(t, turning, rest, lastCancelled);
+  if (!isSeveral(rest) || lastCancelled < 1) return { values, method: law.method };
+  const convolved = convolvedLaw(t, rest, lastCancelled);
   return {
     values: values.map((v, n) => (n > 0 && n <= lastCancelled ? better(v, convolved[n] as ScaledEstimate) : v)),
     method: `${law.method}; convolved from single particles up to n = ${lastCancelled}`,
   };
+}
+
+function sterileProbability(t: Trajectory, rest: Starts, n: number): ScaledEstimate {
+  const total = rest === "far" ? 1 : rest.reduce((sum, s) => sum + s.particles, 0);
+  return n > total ? ZERO : (sterileLaw(t, rest, n)[n] as ScaledEstimate);
 }
 
 function sterileAbove(t: Trajectory, rest: Starts, n: number): ScaledEstimate {

@@ -109,6 +109,23 @@ export function nonlinearity(law: Branching, u: number): { value: number; deriva
   return { value: g.value - 1 + q, derivative: mean - g.derivative };
 }
 
+/** The root s > 1 of G(s) = s, where mean < 1: 1 − u with M(u) = (mean − 1) u, u < 0, by Newton's method on a convex function. */
+export function upperFixedPoint(law: Branching): number {
+  const excess = law.excess[0];
+  if (law.law === "geometric") return 1 / law.mean[0];
+  let u = excess;
+  while (nonlinearity(law, u).value < excess * u) u *= 2;
+  for (let round = 0; round < NEWTON_ROUNDS; round += 1) {
+    const { value, derivative } = nonlinearity(law, u);
+    const step = (value - excess * u) / (derivative - excess);
+    u -= step;
+    if (Math.abs(step) <= Number.EPSILON * Math.abs(u)) break;
+  }
+  return 1 - u;
+}
+
+const NEWTON_ROUNDS = 100;
+
 /** The polynomial about u = 0 is used where its terms exceed those of the polynomial about w = 0 by less than this factor per power. */
 export const FORM_FACTOR = 1.3;
 

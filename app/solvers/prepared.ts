@@ -1,12 +1,15 @@
+import type { Contour } from "./contour.ts";
 import { contoursFor } from "./contours.ts";
 import { SolverError } from "./errors.ts";
+import { lawUnit } from "./input-rounding.ts";
+import { nonlinearity } from "./offspring.ts";
 import { divide, LN2, logarithm } from "./pairs.ts";
 import { profileComplementAt } from "./profile.ts";
 import { ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
 import { scaledByPower } from "./scaled.ts";
 import { differenceValues, nodeValues } from "./sources.ts";
 import { type Sums, sumRange, sumsOf, type Wanted } from "./sums.ts";
-import type { Pair, ScaledEstimate, Start, Starts, Trajectory, Turning } from "./types.ts";
+import type { Pair, ScaledEstimate, Start, Starts, Trajectory } from "./types.ts";
 
 /** A law made ready for reading at any n up to some bound. */
 export interface PreparedLaw {
@@ -14,7 +17,7 @@ export interface PreparedLaw {
   readonly check: Sums;
   /** added to the power of two of every value: the size of a start too far away for doubles */
   readonly extra: number;
-  readonly log2s0: Pair;
+  readonly log2Radius: Pair;
   /** relative spread of s0 and of what multiplies s0^−n, under half a unit in each input */
   readonly radiusSpread: number;
   readonly factorSpread: number;
@@ -30,30 +33,32 @@ const NEAR = 0.25;
 
 /** Traces the law of K for particles at positions > 0, or of the limit law.
  *  @throws SolverError "not_converged" where no contour passes its tests. */
-export function prepareLaw(t: Trajectory, turning: Turning, starts: Starts, n: number, wanted: Wanted): PreparedLaw {
+export function prepareLaw(t: Trajectory, starts: Starts, n: number, wanted: Wanted): PreparedLaw {
   const reader = readerOf(t);
-  const contours = contoursFor(t, reader, turning, n);
+  const contours = contoursFor(t, reader, n);
   const nearest = starts === "far" ? 0 : reader.decay * (starts[0] as Start).position;
   const distant = starts !== "far" && nearest > FAR;
   const source: Starts = distant ? "far" : starts;
-  const close = source !== "far" && isSingle(source) && nearest < NEAR;
-  const read = (contour: typeof contours.fine) => {
-    const values =
-      (close ? differenceValues(reader, contour, nearest) : null) ?? nodeValues(t, reader, contour, source);
-    if (values === null)
+  const near = source !== "far" && isSingle(source) && nearest < NEAR ? nearest : null;
+  const { fine, check, reference } = contours;
+  const both = [fine, check];
+  const differences = near === null ? [null] : both.map((contour) => differenceValues(reader, contour, near));
+  const close = differences.every((values) => values !== null);
+  const read = (contour: Contour, i: number) => {
+    const values = close ? differences[i] : nodeValues(t, reader, contour, source);
+    if (!values)
       throw new SolverError("not_converged", "The law could not be continued along its contour from this start.");
-    return sumsOf(contour, turning, values, wanted);
+    return sumsOf(contour, reference, values, wanted);
   };
-  const { legNodes, arcNodes } = contours.fine;
   return {
-    fine: read(contours.fine),
-    check: read(contours.check),
+    fine: read(fine, 0),
+    check: read(check, 1),
     extra: distant ? farSize(t, reader, starts) : 0,
-    log2s0: divide(logarithm(turning.s0), LN2),
-    radiusSpread: (turning.excessSpread * turning.excess[0]) / turning.s0[0],
-    factorSpread: factorSpread(t, turning, reader, starts),
+    log2Radius: divide(logarithm(reference.radius), LN2),
+    radiusSpread: radiusSpread(t, reader),
+    factorSpread: factorSpread(t, reader, starts),
     first: close ? 2 : 1,
-    method: `Cauchy's integral along the slit from s0, ${legNodes} + ${arcNodes} nodes`,
+    method: `Cauchy's integral along the slit from s0, ${fine.legNodes} + ${fine.arcNodes} nodes`,
   };
 }
 
@@ -68,9 +73,20 @@ function farSize(t: Trajectory, reader: TrajectoryReader, starts: readonly Start
   return (Math.log(total * t.amplitude[0]) - reader.decay * nearest) / Math.LN2;
 }
 
+/** What half a unit in each input does to ln s0, or to that of the edge of a trajectory that does not turn. */
+function radiusSpread(t: Trajectory, reader: TrajectoryReader): number {
+  const { turning, law } = reader;
+  if (turning !== null) return (turning.excessSpread * turning.excess[0]) / turning.s0[0];
+  const unit = lawUnit(t.model.offspring);
+  if (t.edge === null || t.edge.kind === "pole") return 2 * unit;
+  const growth = law.mean[0] - nonlinearity(law, 1 - t.edge.s).derivative;
+  return (2 * unit * growth) / (growth - 1);
+}
+
 /** What half a unit in each input does to the factor of s0^−n. */
-function factorSpread(t: Trajectory, turning: Turning, reader: TrajectoryReader, starts: Starts): number {
-  const base = turning.excessSpread + turning.amplitudeSpread + t.amplitudeSpread;
+function factorSpread(t: Trajectory, reader: TrajectoryReader, starts: Starts): number {
+  const { turning } = reader;
+  const base = t.amplitudeSpread + (turning === null ? t.decaySpread : turning.excessSpread + turning.amplitudeSpread);
   if (starts === "far") return base;
   const perParticle = starts.reduce(
     (sum, s) => sum + s.particles * (base + reader.decay * s.position * (t.decaySpread + 2 * ROUNDING)),
@@ -89,7 +105,7 @@ export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstim
     const value = values[i] as number;
     const spread = Math.abs(value) * (n * law.radiusSpread + law.factorSpread + 8 * ROUNDING);
     const error = (rounding[i] as number) + Math.abs(value) * (methodError[i] as number) + spread;
-    read.push(scaledByPower(value, error, law.log2s0, n, law.extra));
+    read.push(scaledByPower(value, error, law.log2Radius, n, law.extra));
   }
   return read;
 }

@@ -68,11 +68,14 @@ function readProfile(t: Trajectory, x: number, s: number): Reading | Refusal {
   const reader = readerOf(t);
   if (s < -1) return { refused: `w(x, s) is given for s from −1 up to s0; s = ${s} is below −1.` };
   if (s === 1) return { u: 0, error: 0, slope: 0, slopeError: 0 };
-  if (reader.turning !== null && s > toNumber(reader.turning.s0) * (1 + 2 * Number.EPSILON))
+  if (reader.sterile) return withoutBranching(t, x, s);
+  if (s > reader.largest * (1 + 2 * Number.EPSILON))
     return {
-      refused: `The series in s diverges beyond s0 = ${toNumber(reader.turning.s0)}: E[s^K] is infinite at s = ${s}. Take s up to s0.`,
+      refused:
+        reader.turning === null
+          ? `w(x, s) is given for s up to ${reader.largest}, where its trajectory ends; s = ${s} is beyond.`
+          : `The series in s diverges beyond s0 = ${reader.largest}: E[s^K] is infinite at s = ${s}. Take s up to s0.`,
     };
-  if (reader.turning === null) return withoutBranching(t, x, s);
   return shifted(t, reader, reader.locate(s), x, s);
 }
 

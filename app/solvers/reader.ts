@@ -26,6 +26,10 @@ export class TrajectoryReader {
   readonly decay: number;
   readonly expander: Expander;
   readonly turning: Turning | null;
+  /** no particle can ever have two or more children: u = z exactly */
+  readonly sterile: boolean;
+  /** largest s at which w(x, s) is given: s0, or just short of where a trajectory without turning point ends */
+  readonly largest: number;
   private readonly t: Trajectory;
   private readonly expansions: Record<Side, (Expansion | undefined)[]> = { below: [], above: [] };
   private readonly scratch: PointValue = pointValue();
@@ -36,6 +40,9 @@ export class TrajectoryReader {
     this.decay = toNumber(t.decay);
     this.expander = new Expander(t, this.law);
     this.turning = "refused" in t.turning ? null : t.turning;
+    this.sterile = this.turning === null && t.edge === null;
+    if (this.sterile) this.largest = Number.POSITIVE_INFINITY;
+    else this.largest = this.turning === null ? 1 - (t.above.at(-1) as Knot).u : toNumber(this.turning.s0);
   }
 
   /** Largest |z| at which the power series at z = 0 is used. */

@@ -40,21 +40,18 @@ export function nodeValues(
   contour: Contour,
   starts: Starts,
 ): NodeValues | null {
-  if (starts === "far") return farValues(t, reader, contour);
+  if (starts === "far") return farValues(t, contour);
   const first = starts[0] as Start;
   if (starts.length === 1 && first.particles === 1) return singleValues(reader, contour, first.position);
   return productValues(reader, contour, starts);
 }
 
-function farValues(t: Trajectory, reader: TrajectoryReader, contour: Contour): NodeValues {
+function farValues(t: Trajectory, contour: Contour): NodeValues {
   const count = contour.xiRe.length;
   const re = new Float64Array(count);
   const im = new Float64Array(count);
-  const { turning } = reader;
-  if (turning === null) return { re, im };
-  const top = reader.topExpansion().xiRe;
   for (let j = 0; j < count; j += 1) {
-    const size = (-turning.amplitude[0] / t.amplitude[0]) * Math.exp(top - (contour.xiRe[j] as number));
+    const size = -Math.exp(-(contour.xiRe[j] as number)) / t.amplitude[0];
     re[j] = size * Math.cos(contour.xiIm[j] as number);
     im[j] = -size * Math.sin(contour.xiIm[j] as number);
   }
@@ -66,7 +63,7 @@ function singleValues(reader: TrajectoryReader, contour: Contour, position: numb
   const re = new Float64Array(count);
   const im = new Float64Array(count);
   const way = reader.decay * position;
-  const path = new Continuation(reader, "above", reader.topExpansion().xiRe + way);
+  const path = new Continuation(reader, "above", (contour.xiRe[0] as number) + way);
   const at = pointValue();
   for (let j = 0; j < count; j += 1) {
     if (!path.evaluate((contour.xiRe[j] as number) + way, contour.xiIm[j] as number, at)) return null;
@@ -84,7 +81,7 @@ export function differenceValues(reader: TrajectoryReader, contour: Contour, way
   const count = contour.xiRe.length;
   const re = new Float64Array(count);
   const im = new Float64Array(count);
-  const path = new Continuation(reader, "above", reader.topExpansion().xiRe);
+  const path = new Continuation(reader, "above", contour.xiRe[0] as number);
   const local = reader.expander.create();
   const at = pointValue();
   for (let j = 0; j < count; j += 1) {

@@ -1,14 +1,13 @@
-import type { Contour } from "./contour.ts";
+import type { Contour, Reference } from "./contour.ts";
 import { ROUNDING } from "./reader.ts";
 import type { NodeValues } from "./sources.ts";
-import type { Turning } from "./types.ts";
 
 /** Cauchy's formula on a contour as a sum over amplitudes that do not depend on n:
  *
- *      P(K = n) s0^n = Σ_j Re(amplitude_j e^{−n L_j}),   amplitude = (i/π)(u − u(s0)) dL
+ *      P(K = n) radius^n = Σ_j Re(amplitude_j e^{−n L_j}),   amplitude = (i/π)(u − u(radius)) dL
  *
  *  Source: P(K = n) = (1/2πi) ∮ E[s^K] s^{−n} ds/s with u = 1 − E[s^K]; the lower half of the contour is the mirror image of
- *  the upper; a constant adds nothing for n ≥ 1, and taking u(s0) out leaves only what the law is made of.
+ *  the upper; a constant adds nothing for n ≥ 1, and taking u(radius) out leaves only what the law is made of.
  *  For P(K > n) the factor s/(s − 1)·1/s enters: Σ_{k > n} s^{−k−1} = s^{−n−1}/(s − 1) for |s| > 1. */
 export interface Sums {
   readonly logRe: Float64Array;
@@ -21,7 +20,7 @@ export interface Sums {
 export type Wanted = "each" | "above";
 
 /** Amplitudes of a law whose values u = 1 − E[s^K] are known at the nodes (for n ≥ 2 a multiple of s may be added to u at will). */
-export function sumsOf(contour: Contour, turning: Turning, u: NodeValues, wanted: Wanted): Sums {
+export function sumsOf(contour: Contour, reference: Reference, u: NodeValues, wanted: Wanted): Sums {
   const { logRe, logIm, weightRe, weightIm } = contour;
   const count = logRe.length;
   const re = new Float64Array(count);
@@ -35,18 +34,18 @@ export function sumsOf(contour: Contour, turning: Turning, u: NodeValues, wanted
     re[j] = -(a * q + b * p);
     im[j] = a * p - b * q;
   }
-  if (wanted === "above") overExcess(contour, turning, re, im);
+  if (wanted === "above") overExcess(contour, reference, re, im);
   return { logRe, logIm, re, im };
 }
 
-/** Divides by s − 1 = (s0 − 1) + s0 (e^L − 1). */
-function overExcess(contour: Contour, turning: Turning, re: Float64Array, im: Float64Array): void {
-  const s0 = turning.s0[0];
+/** Divides by s − 1 = (radius − 1) + radius (e^L − 1). */
+function overExcess(contour: Contour, reference: Reference, re: Float64Array, im: Float64Array): void {
+  const radius = reference.radius[0];
   for (let j = 1; j < re.length; j += 1) {
     const a = contour.logRe[j] as number;
     const b = contour.logIm[j] as number;
-    const dRe = turning.excess[0] + s0 * (Math.expm1(a) * Math.cos(b) - 2 * Math.sin(b / 2) ** 2);
-    const dIm = s0 * Math.exp(a) * Math.sin(b);
+    const dRe = reference.excess[0] + radius * (Math.expm1(a) * Math.cos(b) - 2 * Math.sin(b / 2) ** 2);
+    const dIm = radius * Math.exp(a) * Math.sin(b);
     const size = dRe * dRe + dIm * dIm;
     const x = re[j] as number;
     const y = im[j] as number;
@@ -62,7 +61,7 @@ const BLOCK = 16;
 /** Roundings of one term: value of u, weight, factor. */
 const TERM_ROUNDINGS = 12;
 
-/** P(K = n) s0^n (or P(K > n) s0^n) for n = from, …, to, with a bound on the rounding of each. */
+/** P(K = n) radius^n (or P(K > n) radius^n) for n = from, …, to, with a bound on the rounding of each. */
 export function sumRange(sums: Sums, from: number, to: number): { values: Float64Array; rounding: Float64Array } {
   const count = to - from + 1;
   const values = new Float64Array(count);

@@ -2,7 +2,7 @@ import { type Linearised, linearise, normalise } from "./linear.ts";
 import { multiply, negate, toNumber } from "./pairs.ts";
 import { follow } from "./path.ts";
 import { constantSpreads } from "./spreads.ts";
-import type { Answer, ProcessModel, Trajectory } from "./types.ts";
+import type { Answer, Edge, ProcessModel, Trajectory } from "./types.ts";
 import { FULL_WALK } from "./walk.ts";
 
 /** Solves the trajectory of D w″ + drift w′ + f(w) = 0 that leaves w = 1 along its fast direction, in the regime `away`.
@@ -30,14 +30,22 @@ export function solveTrajectory(model: ProcessModel): Answer<Trajectory> {
     above: path.above,
     amplitude: path.amplitude,
     slopeAtBarrier: multiply(negate(path.slope), n.decay),
-    turning: path.turning === null ? { refused: NO_TURNING } : { ...path.turning, ...spread.turning },
+    turning: path.turning === null ? { refused: whyNot(path.edge) } : { ...path.turning, ...spread.turning },
+    edge: path.edge,
     decaySpread: spread.decay,
     amplitudeSpread: spread.amplitude,
     slopeSpread: spread.slope,
   };
 }
 
-const NO_TURNING =
+function whyNot(edge: Edge | null): string {
+  if (edge === null) return STERILE;
+  if (edge.kind === "pole")
+    return `s0 lies within a millionth of ${edge.s}, the pole of the geometric law, and is not told apart from it: the n^(−3/2) law begins only beyond n of the order of a million. A smaller drift would do.`;
+  return `With mean offspring below 1 and this drift toward the barrier, w(x, s) never turns back: it ends at s = ${edge.s}, the second root of G(s) = s, and the tail is not of the n^(−3/2) kind. A drift further away from the barrier would do.`;
+}
+
+const STERILE =
   "No particle ever has two or more children, so at most the particles present at the start are absorbed: w is a polynomial in s, s0 is infinite and there is no tail.";
 
 function refusal(model: ProcessModel, linear: Linearised): string {

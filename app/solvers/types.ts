@@ -88,6 +88,13 @@ export interface Turning {
   readonly amplitudeSpread: number;
 }
 
+/** What the trajectory's upper end tends to without turning back: a second fixed point G(s) = s > 1 (offspring mean below 1 and a
+ *  drift strongly toward the barrier), or the pole of a geometric law (closer than 10^−6 to s0). It ends the reach of w(x, ·). */
+export interface Edge {
+  readonly kind: "fixed point" | "pole";
+  readonly s: number;
+}
+
 /** The trajectory of D w″ + drift w′ + f(w) = 0 that leaves w = 1 along its fast direction, from which all answers are read.
  *  In ξ = decay·x, u = 1 − w it obeys u″ + (1 + ratio) u′ + ratio u = strength·(G(1 − u) − 1 + mean u), with u = z − … at z = e^{−ξ}. */
 export interface Trajectory {
@@ -111,6 +118,8 @@ export interface Trajectory {
   /** ∂w/∂x at x = 0, s = 0 */
   readonly slopeAtBarrier: Pair;
   readonly turning: Answer<Turning>;
+  /** where there is branching and yet no turning point within reach: what w tends to instead */
+  readonly edge: Edge | null;
   /** bounds on relative changes under half a unit in the last place of the inputs */
   readonly decaySpread: number;
   readonly amplitudeSpread: number;
