@@ -1,7 +1,7 @@
 import type { Quantity, Scope, Value } from "../formulas/index.ts";
 import { SolverError } from "../solvers/index.ts";
 import type { ReadCell } from "./context.ts";
-import { CellFault, ComputeContext, evaluated } from "./context.ts";
+import { CellFault, ComputeContext, evaluated, NotKnownYet } from "./context.ts";
 import { KINDS } from "./registry.ts";
 import type { CellResult, CellTask, Outcome, Plan } from "./types.ts";
 import { numberValue } from "./values.ts";
@@ -138,20 +138,31 @@ function lineOf(task: CellTask, path: string): number | undefined {
   return line !== undefined || path === "" ? line : lineOf(task, path.slice(0, Math.max(0, path.lastIndexOf("."))));
 }
 
+/** The context in which a task's inputs are judged at planning: parameters are known, no cell is. */
+export function planningContext(task: CellTask): ComputeContext {
+  const notYet = (): never => {
+    throw new NotKnownYet();
+  };
+  const scope = scopeOf(task.parameters, new Map());
+  return new ComputeContext({
+    scope: { name: (name) => scope.name(name), member: notYet, call: notYet },
+    results: new Map(),
+    progress: () => undefined,
+    varied: task.recomputed?.varied ?? [],
+    recomputedCells: cellsIn(task.recomputed?.cells ?? []),
+    with: notYet,
+  });
+}
+
 /** The context in which a task computes. */
-export function contextOf(
+function contextOf(
   task: CellTask,
   parameters: Readonly<Record<string, Quantity>>,
   results: ReadonlyMap<string, ReadCell>,
   progress: (done: number, total: number) => void,
 ): ComputeContext {
-  const quantity = (name: string) => (Object.hasOwn(parameters, name) ? parameters[name] : undefined);
-  const value = (name: string): Value | undefined => {
-    const found = quantity(name);
-    return found === undefined ? undefined : numberValue(found);
-  };
   return new ComputeContext({
-    scope: scopeOver(value, results),
+    scope: scopeOf(parameters, results),
     results,
     progress,
     varied: task.recomputed?.varied ?? [],
@@ -163,6 +174,14 @@ export function contextOf(
   });
 }
 
+function scopeOf(parameters: Readonly<Record<string, Quantity>>, results: ReadonlyMap<string, ReadCell>): Scope {
+  const value = (name: string): Value | undefined => {
+    const found = Object.hasOwn(parameters, name) ? parameters[name] : undefined;
+    return found === undefined ? undefined : numberValue(found);
+  };
+  return scopeOver(value, results);
+}
+
 function cellsIn(tasks: readonly CellTask[]): number {
   return tasks.reduce((count, task) => count + 1 + cellsIn(task.recomputed?.cells ?? []), 0);
 }
@@ -170,7 +189,7 @@ function cellsIn(tasks: readonly CellTask[]): number {
 /** Parameters with those that are computed from varied ones evaluated anew; one without a value is left out. */
 function recomputedParameters(task: CellTask, values: Readonly<Record<string, Quantity>>): Record<string, Quantity> {
   const again: Record<string, Quantity> = { ...values };
-  const scope = scopeOver((name) => (again[name] === undefined ? undefined : numberValue(again[name])), new Map());
+  const scope = scopeOf(again, new Map());
   for (const { name, formula } of task.recomputed?.parameters ?? []) {
     const value = evaluated(formula, scope);
     if (value.type === "number") again[name] = { ...value.quantity, error: 0 };

@@ -14,6 +14,9 @@ export class CellFault extends Error {
   }
 }
 
+/** Thrown while planning where an input depends on a result that is still to be computed. */
+export class NotKnownYet extends Error {}
+
 /** What an input must be. Ends belong to the range unless `above` excludes the lower one. */
 export interface Limits {
   readonly least?: number;

@@ -15,8 +15,6 @@ export interface Dependencies {
   readonly varied: readonly string[];
   /** Parameters it reads, itself, through other parameters and through the cells it reads; not those it varies. */
   readonly parameters: ReadonlySet<string>;
-  /** True when a formula of the body reads a cell's value, so that the inputs are not known before computing. */
-  readonly readsValues: boolean;
 }
 
 /** What a body itself reads, before what stands behind it is followed. */
@@ -27,7 +25,6 @@ interface DirectReads {
   readonly outside: Set<string>;
   readonly outsideCells: Set<string>;
   readonly varied: readonly string[];
-  readonly readsValues: boolean;
 }
 
 /**
@@ -65,8 +62,6 @@ function readsOf(draft: Draft, names: Declarations, values: ParameterValues): Di
     outside: new Set(),
     outsideCells: new Set(),
     varied,
-    readsValues:
-      draft.body?.formulas.some((use) => lookUp(use.formula, use.locals, names).reads.cells.size > 0) ?? false,
   };
   if (draft.body === null || draft.kind === null) return reads;
   for (const use of draft.body.formulas) noteFormula(draft, use, reads, names, values);
@@ -90,6 +85,11 @@ function noteFormula(
     if (!isVaried) reads.outside.add(name);
     const value = values.values.get(name);
     if (value?.type === "refused" && !reads.varied.includes(name)) draft.faults.push(faultAt(draft, use, value.reason));
+  }
+  if (draft.kind?.knownAtPlanning === true && found.cells.size > 0) {
+    const message = `A parameter may read parameters only, and ${listOfNames(found.cells)} is still to be computed. A formula cell may read it.`;
+    draft.faults.push(faultAt(draft, use, message));
+    return;
   }
   for (const cell of found.cells) {
     reads.cells.add(cell);
@@ -154,7 +154,7 @@ function follow(reads: DirectReads, known: ReadonlyMap<string, Dependencies>, va
     for (const through of [name, ...(values.reads.get(name) ?? [])]) parameters.add(through);
   for (const cell of reads.cells) for (const name of known.get(cell)?.parameters ?? []) parameters.add(name);
   for (const name of reads.varied) parameters.delete(name);
-  return { cells: reads.cells, varied: reads.varied, parameters, readsValues: reads.readsValues };
+  return { cells: reads.cells, varied: reads.varied, parameters };
 }
 
 /** The values that a varied parameter takes cannot depend on it. */

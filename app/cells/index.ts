@@ -12,6 +12,9 @@ export { captionOf } from "./presentation.ts";
 export type { Provenance } from "./provenance.ts";
 export { durationWords, provenance } from "./provenance.ts";
 export { KINDS } from "./registry.ts";
+export type { Report, ReportedCell, ReportedNumber, ReportedProblem, ReportedValue } from "./report.ts";
+export { reportPaper } from "./report.ts";
+export { reportAsText } from "./report-text.ts";
 export { cellState } from "./state.ts";
 export type {
   Cause,

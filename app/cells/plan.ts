@@ -1,8 +1,8 @@
 import { toDouble } from "../formulas/index.ts";
 import type { BoundNumber, Paper, Problem } from "../paper/index.ts";
 import { parsedFormula } from "./body.ts";
-import { contextOf } from "./compute.ts";
-import { CellFault } from "./context.ts";
+import { planningContext } from "./compute.ts";
+import { CellFault, NotKnownYet } from "./context.ts";
 import type { Declarations } from "./declared.ts";
 import { declareNames, faultAt } from "./declared.ts";
 import type { Dependencies } from "./dependencies.ts";
@@ -53,7 +53,7 @@ function plannedCell(
   parameters: ParameterValues,
 ): PlannedCell {
   const { cell } = draft;
-  const quick = inspect(draft, reads, tasks);
+  const quick = inspect(draft, tasks);
   const key = keys.key(cell.id);
   const first = [...draft.faults].sort((a, b) => a.from - b.from)[0];
   const used = parameters.planned.filter(({ name }) => reads.parameters.has(name));
@@ -76,16 +76,14 @@ function plannedCell(
 }
 
 /** Inputs that need no other cell's value are judged now, so that a wrong one is shown before anything is computed. */
-function inspect(draft: Draft, reads: Dependencies, tasks: Tasks): boolean {
-  if (draft.kind === null || draft.faults.length > 0 || reads.readsValues) return true;
+function inspect(draft: Draft, tasks: Tasks): boolean {
+  if (draft.kind === null || draft.faults.length > 0) return true;
   const task: CellTask | null = tasks.task(draft.cell.id);
   if (task === null) return true;
   try {
-    return draft.kind.inspect(
-      draft.model,
-      contextOf(task, task.parameters, new Map(), () => undefined),
-    );
+    return draft.kind.inspect(draft.model, planningContext(task));
   } catch (error) {
+    if (error instanceof NotKnownYet) return true;
     if (!(error instanceof CellFault)) throw error;
     draft.faults.push(faultAt(draft, draft.body?.placeOf(error.path) ?? draft.cell.span, error.message));
     return true;
