@@ -2,7 +2,8 @@ import { create, type MathNode, parseDependencies } from "mathjs/number";
 import { checkOrder } from "./grammar.ts";
 import { child, children, field, placeholderIndex } from "./mathNode.ts";
 import { nearestSpelling } from "./spelling.ts";
-import { readTokens, type Token } from "./tokens.ts";
+import { isBracketed, readTokens, type Token } from "./tokens.ts";
+import { isIf, isTruth } from "./truths.ts";
 import type { Formula, FormulaProblem, ParsedFormula } from "./types.ts";
 import { BINDERS, CONSTANTS, FUNCTIONS, functionNamed, RESERVED_NAMES, WORD_OPERATORS } from "./words.ts";
 
@@ -29,7 +30,6 @@ const OPERATORS: ReadonlyMap<string, string> = new Map([
   ["or", "or"],
   ["not", "not"],
 ]);
-const TRUTHS: ReadonlySet<string> = new Set(["lt", "le", "gt", "ge", "eq", "ne", "and", "or", "not"]);
 const LOGICAL: ReadonlySet<string> = new Set(["and", "or", "not"]);
 
 /** A mistake found while the tree is read; caught by `parseFormula`. */
@@ -290,24 +290,4 @@ class TreeReader {
   private fail(message: string, first: number, last: number): never {
     throw new Mistake({ message, from: this.token(first).from, to: this.token(last).to });
   }
-}
-
-function isTruth(formula: Formula): boolean {
-  if (formula.node !== "apply") return false;
-  if (formula.name === "if") return formula.args.slice(1).every(isTruth);
-  return TRUTHS.has(formula.name);
-}
-
-function isIf(formula: Formula): boolean {
-  return formula.node === "apply" && formula.name === "if";
-}
-
-/** Whether the first of these tokens is a bracket that the last one closes. */
-function isBracketed(tokens: readonly Token[]): boolean {
-  let depth = 0;
-  for (const [i, { type }] of tokens.entries()) {
-    depth += type === "open" ? 1 : type === "close" ? -1 : 0;
-    if (depth === 0 && i < tokens.length - 1) return false;
-  }
-  return tokens[0]?.type === "open";
 }

@@ -128,3 +128,13 @@ export function readTokens(source: string): Tokens {
   }
   return { ok: true, tokens };
 }
+
+/** Whether the first of these tokens is a bracket that the last one closes. */
+export function isBracketed(tokens: readonly Token[]): boolean {
+  let depth = 0;
+  for (const [i, { type }] of tokens.entries()) {
+    depth += type === "open" ? 1 : type === "close" ? -1 : 0;
+    if (depth === 0 && i < tokens.length - 1) return false;
+  }
+  return tokens[0]?.type === "open";
+}
