@@ -1,7 +1,7 @@
 import type { CellResult, CellTask } from "../../app/cells/types.ts";
 import type { Database, SignalLine } from "../../db/index.server.ts";
 import { unlessAborted } from "./abandon.ts";
-import { type Pool, StoppedError } from "./pool.ts";
+import { type ComputeHooks, type Pool, StoppedError } from "./pool.ts";
 
 /** How a job ended. */
 export type JobEnd =
@@ -73,6 +73,10 @@ export class Jobs {
     return this.#jobs.has(key);
   }
 
+  hasThread(key: string): boolean {
+    return this.#jobs.get(key)?.begun ?? false;
+  }
+
   /** Begins the job, or follows the one that runs. The follower stays until it leaves or the job ends. */
   follow(request: JobRequest, follower: Follower): Promise<JobEnd> {
     let job = this.#jobs.get(request.key);
@@ -117,7 +121,7 @@ export class Jobs {
     } catch (error) {
       if (error instanceof StoppedError) {
         if (error.reason === "cancelled") return CANCELLED;
-        this.#options.onStopped(error);
+        if (error.cause) this.#options.onStopped(error);
         return { end: "failed", entry: "", message: error.message };
       }
       if (cancel.aborted) return CANCELLED;
@@ -163,28 +167,20 @@ export class Jobs {
     }
     if (missing.length > 0) return { end: "waiting", needs: missing };
 
-    let from = 0;
-    const outcome = await pool
-      .compute(
-        task,
-        read,
-        {
-          begun: async () => {
-            const refusal = await request.refusal();
-            if (refusal) throw new StoppedError("stopped", refusal);
-            from = performance.now();
-            const job = this.#jobs.get(key);
-            if (job) job.begun = true;
-            for (const follower of followers) follower.begun();
-          },
-          progress: (done, total) => {
-            for (const follower of followers) follower.progress(done, total);
-          },
-        },
-        cancel,
-      )
-      .finally(() => (from > 0 ? request.used((performance.now() - from) / 1000) : undefined));
-
+    const hooks: ComputeHooks = {
+      begun: async () => {
+        const refusal = await request.refusal();
+        if (refusal) throw new StoppedError("stopped", refusal);
+        const job = this.#jobs.get(key);
+        if (job) job.begun = true;
+        for (const follower of followers) follower.begun();
+      },
+      progress: (done, total) => {
+        for (const follower of followers) follower.progress(done, total);
+      },
+      ended: (seconds) => request.used(seconds),
+    };
+    const outcome = await pool.compute(task, read, hooks, cancel);
     switch (outcome.status) {
       case "computed": {
         const { result } = outcome;

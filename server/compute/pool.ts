@@ -1,13 +1,10 @@
-import { createRequire } from "node:module";
-import { fileURLToPath, pathToFileURL } from "node:url";
+import { fileURLToPath } from "node:url";
 import { MessageChannel } from "node:worker_threads";
 import { Piscina } from "piscina";
 import type { CellResult, CellTask, Outcome } from "../../app/cells/types.ts";
 import type { PaperText } from "../../app/context.ts";
 import type { ComputeJob, PlannedWork } from "./worker.ts";
 
-/** Memory of a thread's JavaScript heap. Typed arrays are not counted: kinds bound the size of their problems. */
-const HEAP_MB = 512;
 const PLAN_LIMIT_MS = 20_000;
 const IDLE_MS = 60_000;
 
@@ -16,6 +13,18 @@ export interface PoolOptions {
   readonly threads: number;
   /** Longest that one cell may compute. */
   readonly cellLimitMs: number;
+  /** Memory of a thread's JavaScript heap. Typed arrays are not counted: kinds bound the size of their problems. */
+  readonly heapMb: number;
+  /** File of the worker, if not the one beside this file. */
+  readonly worker?: string;
+}
+
+export interface ComputeHooks {
+  /** There is a thread for it; may refuse by throwing. */
+  begun(): Promise<void>;
+  progress(done: number, total: number): void;
+  /** It is over, however it ended, after so many seconds; the thread is given on when this resolves. */
+  ended(seconds: number): Promise<void>;
 }
 
 /** A cell that was stopped or whose thread died; `message` is for the author of the cell. */
@@ -43,10 +52,10 @@ export class Pool {
     this.#options = options;
     this.#free = options.threads;
     const shared = {
-      ...workerFile(),
+      filename: options.worker ?? workerFile(),
       idleTimeout: IDLE_MS,
       minThreads: 1,
-      resourceLimits: { maxOldGenerationSizeMb: HEAP_MB },
+      resourceLimits: { maxOldGenerationSizeMb: options.heapMb },
     };
     this.#cells = new Piscina({ ...shared, maxThreads: options.threads });
     this.#plans = new Piscina({ ...shared, maxThreads: 1 });
@@ -67,19 +76,23 @@ export class Pool {
 
   /**
    * Computes a cell as soon as a thread is free.
-   * @param hooks.begun called when it has a thread; may refuse by throwing
-   * @throws StoppedError when it is cancelled, takes too long or too much memory
+   * @throws what `hooks.begun` throws; StoppedError when it is cancelled, takes too long or too much memory
    */
   async compute(
     task: CellTask,
     results: ReadonlyMap<string, CellResult>,
-    hooks: { begun(): void | Promise<void>; progress(done: number, total: number): void },
+    hooks: ComputeHooks,
     cancel: AbortSignal,
   ): Promise<Outcome> {
     await this.#thread(cancel);
     try {
       await hooks.begun();
-      return await this.#run(task, results, hooks.progress, cancel);
+      const from = performance.now();
+      try {
+        return await this.#run(task, results, hooks.progress, cancel);
+      } finally {
+        await hooks.ended((performance.now() - from) / 1000);
+      }
     } finally {
       const next = this.#waiting.shift();
       // The thread goes from hand to hand while somebody waits for it.
@@ -115,7 +128,7 @@ export class Pool {
           cause: error,
         });
       }
-      throw new StoppedError("stopped", wordsOfDeath(error), { cause: error });
+      throw new StoppedError("stopped", wordsOfDeath(error, this.#options.heapMb), { cause: error });
     } finally {
       port1.close();
     }
@@ -147,19 +160,16 @@ function cancelled(cause: unknown): StoppedError {
   return new StoppedError("cancelled", "Cancelled.", { cause });
 }
 
-function wordsOfDeath(error: unknown): string {
+function wordsOfDeath(error: unknown, heapMb: number): string {
   const code = error instanceof Error && "code" in error ? error.code : "";
   if (code === "ERR_WORKER_OUT_OF_MEMORY") {
-    return `Stopped: it needed more than ${HEAP_MB} MB of memory, the limit for a cell. A smaller problem would do.`;
+    return `Stopped: it needed more than ${heapMb} MB of memory, the limit for a cell. A smaller problem would do.`;
   }
   return "Its worker ended before it was done. Recompute tries again.";
 }
 
-/** Beside this file when run from the sources, and then with their loader; beside the bundle otherwise. */
-function workerFile(): { filename: string; execArgv?: string[] } {
-  if (!import.meta.url.endsWith(".ts")) {
-    return { filename: fileURLToPath(new URL("./compute/worker.js", import.meta.url)) };
-  }
-  const loader = pathToFileURL(createRequire(import.meta.url).resolve("tsx")).href;
-  return { filename: fileURLToPath(new URL("./worker.ts", import.meta.url)), execArgv: ["--import", loader] };
+/** Beside this file when run from the sources, whose loader threads inherit; beside the bundle otherwise. */
+function workerFile(): string {
+  const file = import.meta.url.endsWith(".ts") ? "./worker.ts" : "./compute/worker.js";
+  return fileURLToPath(new URL(file, import.meta.url));
 }

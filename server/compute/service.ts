@@ -5,15 +5,13 @@ import type { LiveTexts } from "../sync/index.ts";
 import { unlessAborted } from "./abandon.ts";
 import { Board, type Computable } from "./board.ts";
 import { claimOf, type Follower, type JobEnd, Jobs } from "./jobs.ts";
-import { Pool, StoppedError } from "./pool.ts";
+import { Pool, type PoolOptions, StoppedError } from "./pool.ts";
 import { Quota } from "./quota.ts";
 import type { PlannedWork } from "./worker.ts";
 
-export interface ComputeOptions {
+export interface ComputeOptions extends PoolOptions {
   readonly database: Database;
   readonly texts: LiveTexts;
-  readonly threads: number;
-  readonly cellLimitMs: number;
   /** Solver seconds that a person may use within an hour. */
   readonly secondsAnHour: number;
   readonly onProblem: (error: unknown, where: string) => void;
@@ -40,9 +38,9 @@ export class Computations implements ComputeService {
   readonly #waits = new Set<Wait>();
 
   constructor(options: ComputeOptions) {
-    const { database, texts, threads, cellLimitMs, secondsAnHour } = options;
+    const { database, texts, secondsAnHour } = options;
     this.#options = options;
-    this.#pool = new Pool({ threads, cellLimitMs });
+    this.#pool = new Pool(options);
     this.#jobs = new Jobs({
       pool: this.#pool,
       results: database.results,
@@ -134,6 +132,11 @@ export class Computations implements ComputeService {
 
   async results(paperId: string, keys: readonly string[]): Promise<Readonly<Record<string, CellResult>>> {
     return Object.fromEntries((await this.#options.database.results.ofPaper(paperId, keys)) as Map<string, CellResult>);
+  }
+
+  /** True while a thread of this process computes a cell of this id. */
+  isComputing(id: string): boolean {
+    return [...this.#waits].some(({ cell }) => cell.id === id && this.#jobs.hasThread(cell.key));
   }
 
   /** Resolves when nothing is being computed for the paper in this process. */
@@ -243,14 +246,10 @@ export class Computations implements ComputeService {
   /** Cancels what this process computes for the paper's cells, and what reads them. */
   #cancelHere(paperId: string, ids: readonly string[] | "all", by: string): Promise<void>[] {
     const waits = [...this.#waits].filter((wait) => wait.paperId === paperId);
-    const keys = new Set(
-      waits.filter(({ cell }) => ids === "all" || ids.includes(cell.id)).map(({ cell }) => cell.key),
-    );
+    const stopped = new Set(waits.map(({ cell }) => cell.id).filter((id) => ids === "all" || ids.includes(id)));
     // Waits stand in dependency order, so one pass finds all that read a cancelled cell.
-    for (const { cell } of waits) {
-      if (Object.values(cell.task.needs).some((need) => keys.has(need))) keys.add(cell.key);
-    }
-    const cancelled = waits.filter(({ cell }) => keys.has(cell.key));
+    for (const { cell } of waits) if (cell.needs.some((need) => stopped.has(need))) stopped.add(cell.id);
+    const cancelled = waits.filter(({ cell }) => stopped.has(cell.id));
     for (const wait of cancelled) {
       wait.cancel.abort(by);
       this.#jobs.leave(wait.cell.key, wait.follower);
