@@ -56,7 +56,7 @@ export function traceContour(reader: TrajectoryReader, reference: Reference, sha
   const contour = layNodes(shape);
   const { logRe, logIm, legNodes } = contour;
   const radius = reference.radius[0];
-  const top = reader.turning === null ? null : reader.topExpansion();
+  const top = reader.turning?.s0[0] === radius ? reader.topExpansion() : null;
   const start = reader.locate(radius).xi;
   const path = new Continuation(reader, "above", start);
   contour.xiRe[0] = start;

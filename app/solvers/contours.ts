@@ -16,10 +16,10 @@ export interface ContourPair {
  *  those on the slit, where a geometric law has its pole. The tilted one serves as the check, on a narrower arc. */
 const WIDTHS = [0.3, 0.12, 0.05, 0.02, 0.008];
 const PLAIN_TILT = 0;
-const POLE_TILT = 0.6;
+const POLE_TILT = 0.5;
 /** What the check changes. */
 const CHECK_SHARE = 0.75;
-const CHECK_TILT = 0.3;
+const CHECK_TILT = 0.25;
 /** The arc matters up to n = REACH/width; Gauss–Legendre needs a little more than π/4 nodes for each of these n. */
 const REACH = 40;
 const NODES_PER_N = 0.8;
@@ -30,6 +30,7 @@ const PANEL_NODES = 16;
 const CHECK_PANEL_NODES = 20;
 /** Relative agreement asked of the two contours, and of their total with 1. */
 const ACCEPTED = 1e-12;
+const ACCEPTED_UNITS = 64;
 /** What is still accepted from the best attempt, with its error stated. */
 const TOLERATED = 1e-6;
 
@@ -52,9 +53,14 @@ export function contoursFor(t: Trajectory, reader: TrajectoryReader, n: number):
 const NOT_FOUND = "No contour passed its tests; the probabilities of this law cannot be vouched for.";
 
 function searchWidths(t: Trajectory, reader: TrajectoryReader, level: number): ContourPair {
-  const reference = referenceOf(reader);
+  const reference = referenceOf(t, reader, level);
   const finest = finestScale(t, reader, reference, level);
-  const tilt = reader.law.law === "geometric" || t.edge !== null ? POLE_TILT : PLAIN_TILT;
+  const tilt = Number.isFinite(obstacle(t, reader)) ? POLE_TILT : PLAIN_TILT;
+  // a double short of the obstacle by a share of 1/n has lost that much of its digits
+  const accepted = Math.max(
+    ACCEPTED,
+    (ACCEPTED_UNITS * Number.EPSILON) / (obstacle(t, reader) / reference.radius[0] - 1),
+  );
   let best: ContourPair | null = null;
   let smallest = TOLERATED;
   for (const width of WIDTHS) {
@@ -72,7 +78,7 @@ function searchWidths(t: Trajectory, reader: TrajectoryReader, level: number): C
       if (check === null) break;
       const pair = { reference, fine, check };
       const disagreement = compare(t, reader, pair);
-      if (disagreement < ACCEPTED) return pair;
+      if (disagreement < accepted) return pair;
       if (disagreement < smallest) {
         smallest = disagreement;
         best = pair;
@@ -83,22 +89,29 @@ function searchWidths(t: Trajectory, reader: TrajectoryReader, level: number): C
   throw new SolverError("not_converged", NOT_FOUND);
 }
 
-/** Where the leg starts: s0, or the end of a trajectory that does not turn, just inside the first singularity. */
-function referenceOf(reader: TrajectoryReader): Reference {
-  if (reader.turning !== null) return { radius: reader.turning.s0, excess: reader.turning.excess };
-  return { radius: [reader.largest, 0], excess: [reader.largest - 1, 0] };
+/** The first singularity beyond the trajectory's upper end, if one is known: the pole of a geometric law, or a fixed point. */
+function obstacle(t: Trajectory, reader: TrajectoryReader): number {
+  if (t.edge !== null) return t.edge.s;
+  return reader.law.law === "geometric" ? 1 + 1 / reader.law.mean[0] : Number.POSITIVE_INFINITY;
 }
 
-/** The leg must resolve the Gaussian e^{−nτ²}, the scale s0 − 1 on which w(x, ·) itself varies, and the distance to further singularities:
- *  the pole of a geometric law, and the fixed point that a trajectory without turning point tends to. */
+/** Where the leg starts: s0, the saddle; or, with an obstacle close by, short of both by 1/n at the largest n, where s^−n is at most e
+ *  times what it is at the obstacle, and the rounding of doubles near it is not felt. */
+function referenceOf(t: Trajectory, reader: TrajectoryReader, level: number): Reference {
+  const near = obstacle(t, reader);
+  const { turning } = reader;
+  if (turning !== null && turning.s0[0] < near * (1 - 10 ** -level))
+    return { radius: turning.s0, excess: turning.excess };
+  const radius = Math.max(Math.sqrt(near), near * (1 - 10 ** -level));
+  return { radius: [radius, 0], excess: [radius - 1, 0] };
+}
+
+/** The leg must resolve the Gaussian e^{−nτ²}, the scale s0 − 1 on which w(x, ·) itself varies, and the distance to an obstacle. */
 function finestScale(t: Trajectory, reader: TrajectoryReader, reference: Reference, level: number): number {
+  const radius = reference.radius[0];
   const gaussian = 1 / (2 * Math.sqrt(10 ** level));
-  const variation = Math.sqrt(reference.excess[0] / reference.radius[0]) / 4;
-  const mean = reader.law.mean[0];
-  const pole = reader.law.law === "geometric" ? 1 / mean - reference.excess[0] : Number.POSITIVE_INFINITY;
-  const edge = t.edge === null ? Number.POSITIVE_INFINITY : t.edge.s - reference.radius[0];
-  const nearest = Math.max(Math.min(pole, edge), Number.EPSILON) / reference.radius[0];
-  return Math.min(gaussian, variation, Math.sqrt(nearest) / 2);
+  const variation = Math.sqrt(reference.excess[0] / radius) / 4;
+  return Math.min(gaussian, variation, Math.sqrt(obstacle(t, reader) / radius - 1) / 2);
 }
 
 function arcNodes(width: number): number {
