@@ -137,6 +137,9 @@ function dressWords(reading: Reading, nodes: readonly RawPhrasing[], depth: numb
       case "image":
       case "imageReference":
         return [settleImage(reading, node)];
+      case "footnoteReference":
+        if (reading.footnotes.has(node.identifier)) return [node];
+        return [{ type: "text", value: sourceOf(reading, node), position: node.position }];
       case "emphasis":
       case "strong":
       case "delete":

@@ -1,7 +1,16 @@
-import type { Definition, Image, ImageReference, Link, LinkReference, PhrasingContent, Root } from "mdast";
+import type {
+  Definition,
+  FootnoteDefinition,
+  Image,
+  ImageReference,
+  Link,
+  LinkReference,
+  PhrasingContent,
+  Root,
+} from "mdast";
 import type { Reading } from "./reading.ts";
 
-/** Gathers `[name]: url`; the first of several of one name counts, as in CommonMark. */
+/** Gathers `[name]: url` (the first of several of one name counts, as in CommonMark) and the names of footnotes. */
 export function collectDefinitions(reading: Reading, root: Root): void {
   const pending: { children: readonly unknown[] }[] = [root];
   for (let next = pending.pop(); next !== undefined; next = pending.pop()) {
@@ -9,6 +18,7 @@ export function collectDefinitions(reading: Reading, root: Root): void {
       if (isDefinition(child) && !reading.definitions.has(child.identifier)) {
         reading.definitions.set(child.identifier, { url: child.url, title: child.title ?? null });
       }
+      if (isFootnote(child)) reading.footnotes.add(child.identifier);
       if (hasChildren(child)) pending.push(child);
     }
   }
@@ -16,6 +26,10 @@ export function collectDefinitions(reading: Reading, root: Root): void {
 
 function isDefinition(node: unknown): node is Definition {
   return typeof node === "object" && node !== null && "type" in node && node.type === "definition";
+}
+
+function isFootnote(node: unknown): node is FootnoteDefinition {
+  return typeof node === "object" && node !== null && "type" in node && node.type === "footnoteDefinition";
 }
 
 function hasChildren(node: unknown): node is { children: readonly unknown[] } {
@@ -36,7 +50,7 @@ export function allowedUrl(url: string): string | null {
 /** A link whose address is allowed, or else its words. */
 export function settleLink(reading: Reading, node: Link | LinkReference, words: PhrasingContent[]): PhrasingContent[] {
   const definition = node.type === "link" ? node : reading.definitions.get(node.identifier);
-  if (definition === undefined) return words;
+  if (definition === undefined) return asWritten(reading, node, words);
   const url = allowedUrl(definition.url);
   if (url === null) {
     const message = `A link leads to an address with http, https, mailto or doi; “${definition.url.slice(0, 60)}” is none, so its words are set without a link.`;
@@ -45,6 +59,20 @@ export function settleLink(reading: Reading, node: Link | LinkReference, words: 
   }
   const { position } = node;
   return [{ type: "link", url, title: definition.title ?? null, children: words.filter(isNoLink), position }];
+}
+
+/** Words in brackets that nothing defines, with their brackets. */
+function asWritten(reading: Reading, node: Link | LinkReference, words: PhrasingContent[]): PhrasingContent[] {
+  const first = node.children.at(0);
+  const last = node.children.at(-1);
+  const { text } = reading;
+  if (first === undefined || last === undefined)
+    return [{ type: "text", value: text.slice(reading.from(node), reading.to(node)) }];
+  return [
+    { type: "text", value: text.slice(reading.from(node), reading.from(first)) },
+    ...words,
+    { type: "text", value: text.slice(reading.to(last), reading.to(node)) },
+  ];
 }
 
 function isNoLink(node: PhrasingContent): boolean {

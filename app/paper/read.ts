@@ -7,7 +7,6 @@ import { Lines } from "./lines.ts";
 import { collectDefinitions } from "./links.ts";
 import { numberPaper } from "./numbering.ts";
 import { Reading } from "./reading.ts";
-import { relocate } from "./relocate.ts";
 import { citedKeys, resolveMarks } from "./resolve.ts";
 import { parseBlocks } from "./syntax/index.ts";
 import type { Paper } from "./types.ts";
@@ -22,7 +21,6 @@ export function readPaper(text: string, bibliography: string): Paper {
   const lines = new Lines(text);
   const reading = new Reading(text, lines);
   const root = parseBlocks(text);
-  if (text.startsWith("\uFEFF")) relocate(root, (index) => index + 1, lines);
   const yaml = root.children.find((node) => node.type === "yaml");
   collectDefinitions(reading, root);
   const front = readFrontMatter(reading, yaml === undefined ? null : reading.span(yaml));

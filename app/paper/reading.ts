@@ -17,6 +17,8 @@ export class Reading {
   /** Link definitions `[name]: url`, by their folded names. */
   readonly definitions = new Map<string, { url: string; title: string | null }>();
 
+  readonly footnotes = new Set<string>();
+
   constructor(
     readonly text: string,
     readonly lines: Lines,

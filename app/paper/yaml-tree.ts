@@ -1,6 +1,7 @@
 import type { Node, Pair, Scalar, YAMLMap, YAMLSeq } from "yaml";
 import { isAlias, isMap, isPair, isScalar, isSeq, parseDocument } from "yaml";
-import type { Lines } from "./lines.ts";
+import { Lines } from "./lines.ts";
+import { remembered } from "./memory.ts";
 import type { Problem, Yaml, YamlEntry } from "./types.ts";
 import type { YamlFault } from "./yaml-cures.ts";
 import {
@@ -21,28 +22,49 @@ export interface YamlReading {
   readonly problems: readonly Problem[];
 }
 
+/** Length of YAML, in characters, whose reading is remembered. */
+const kept = 200_000;
+
 /**
  * Reads YAML by the failsafe schema: every scalar is its text. Anchors, aliases, tags and keys that are not plain words
  * are refused; the traps of YAML are reported with their cures.
  * @param at where an index of `source` stands in the paper's text
  */
 export function readYaml(source: string, at: (index: number) => number, lines: Lines): YamlReading {
-  const faults: YamlFault[] = [];
-  let value: Yaml | null = null;
-  if (nestsTooDeeply(source)) {
-    faults.push({ from: 0, to: source.length, message: "Lists and maps are nested too deeply here to be read." });
-  } else {
-    const document = parseDocument(source, {
-      schema: "failsafe",
-      prettyErrors: false,
-      uniqueKeys: false,
-      logLevel: "error",
-    });
-    faults.push(...faultsOfErrors(source, document.errors));
-    value = new Converter(source, at, lines, faults).convert(document.contents, 0);
-  }
+  const { tree, faults } = readOnItsOwn(source);
   const problems = faults.map((fault) => problemOf(fault, at, lines));
-  return { value: problems.length === 0 ? value : null, partial: value, problems };
+  const partial = tree === null ? null : moved(tree, at, lines);
+  return { value: problems.length === 0 ? partial : null, partial, problems };
+}
+
+/** The same with offsets and lines of the source itself. */
+const readOnItsOwn = remembered((source: string): { tree: Yaml | null; faults: readonly YamlFault[] } => {
+  if (nestsTooDeeply(source)) {
+    const message = "Lists and maps are nested too deeply here to be read.";
+    return { tree: null, faults: [{ from: 0, to: source.length, message }] };
+  }
+  const document = parseDocument(source, {
+    schema: "failsafe",
+    prettyErrors: false,
+    uniqueKeys: false,
+    logLevel: "error",
+  });
+  const faults = faultsOfErrors(source, document.errors);
+  const tree = new Converter(source, new Lines(source), faults).convert(document.contents, 0);
+  return { tree, faults };
+}, kept);
+
+function moved(node: Yaml, at: (index: number) => number, lines: Lines): Yaml {
+  const from = at(node.from);
+  const place = { from, to: at(node.to), line: lines.lineAt(from) };
+  if (node.yaml === "scalar") return { ...node, ...place };
+  if (node.yaml === "list") return { ...node, ...place, items: node.items.map((item) => moved(item, at, lines)) };
+  const entries = node.entries.map((entry): YamlEntry => {
+    const keyFrom = at(entry.keyFrom);
+    const value = moved(entry.value, at, lines);
+    return { key: entry.key, keyFrom, keyTo: at(entry.keyTo), line: lines.lineAt(keyFrom), value };
+  });
+  return { ...node, ...place, entries };
 }
 
 function problemOf(fault: YamlFault, at: (index: number) => number, lines: Lines): Problem {
@@ -55,7 +77,6 @@ function problemOf(fault: YamlFault, at: (index: number) => number, lines: Lines
 class Converter {
   constructor(
     private readonly source: string,
-    private readonly at: (index: number) => number,
     private readonly lines: Lines,
     private readonly faults: YamlFault[],
   ) {}
@@ -128,7 +149,7 @@ class Converter {
     const key = isScalar(pair.key) ? String(pair.key.value ?? "") : this.source.slice(from, to);
     const value = this.convert(pair.value, to);
     if (value.yaml === "scalar" && value.text === "" && !value.quoted) this.noticeLostText(to);
-    return { key, keyFrom: this.at(from), keyTo: this.at(to), line: this.lines.lineAt(this.at(from)), value };
+    return { key, keyFrom: from, keyTo: to, line: this.lines.lineAt(from), value };
   }
 
   /** `symbol: #1`: the whole value is a comment to YAML. */
@@ -168,8 +189,8 @@ class Converter {
   }
 
   private report(fault: YamlFault): void {
-    const line = this.lines.lineAt(this.at(fault.from));
-    if (!this.faults.some((known) => this.lines.lineAt(this.at(known.from)) === line)) this.faults.push(fault);
+    const line = this.lines.lineAt(fault.from);
+    if (!this.faults.some((known) => this.lines.lineAt(known.from) === line)) this.faults.push(fault);
   }
 
   private scalar(text: string, quoted: boolean, from: number, to: number): Yaml {
@@ -177,8 +198,7 @@ class Converter {
   }
 
   private place(from: number, to: number): { from: number; to: number; line: number } {
-    const start = this.at(from);
-    return { from: start, to: this.at(to), line: this.lines.lineAt(start) };
+    return { from, to, line: this.lines.lineAt(from) };
   }
 }
 

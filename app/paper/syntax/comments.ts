@@ -1,5 +1,6 @@
 import { markdownLineEnding, markdownSpace } from "micromark-util-character";
 import type { Code, Construct, Effects, State, TokenizeContext } from "micromark-util-types";
+import { SourceRun } from "./source-run.ts";
 
 const opening = [60, 33, 45, 45]; // <!--
 const dash = 45;
@@ -28,6 +29,7 @@ function commentConstruct(inLines: boolean): Construct {
     const parser = this.parser;
     const now = () => this.now();
     const start = now().offset;
+    const run = new SourceRun(effects);
     let matched = 0;
     let dashes = 0;
 
@@ -39,7 +41,7 @@ function commentConstruct(inLines: boolean): Construct {
 
     function inOpening(code: Code): State | undefined {
       if (code !== opening[matched]) return nok(code);
-      effects.consume(code);
+      run.consume(code);
       matched++;
       return matched === opening.length ? inside : inOpening;
     }
@@ -50,18 +52,17 @@ function commentConstruct(inLines: boolean): Construct {
         return nok(code);
       }
       if (code === greater && dashes >= 2) {
-        effects.consume(code);
+        run.consume(code);
+        run.close();
         effects.exit("paperComment");
         return inLines ? end : ok;
       }
       dashes = code === dash ? dashes + 1 : 0;
       if (markdownLineEnding(code)) {
-        effects.enter("lineEnding");
-        effects.consume(code);
-        effects.exit("lineEnding");
+        run.consume(code);
         return inLines ? lineStart : inside;
       }
-      effects.consume(code);
+      run.consume(code);
       return inside;
     }
 

@@ -1,5 +1,6 @@
 import { asciiAlpha, markdownLineEnding, markdownSpace } from "micromark-util-character";
 import type { Code, Construct, Effects, State, TokenizeContext } from "micromark-util-types";
+import { SourceRun } from "./source-run.ts";
 
 const colon = 58;
 const openBracket = 91;
@@ -36,13 +37,14 @@ function notAfterColon(this: TokenizeContext, code: Code): boolean {
 }
 
 function tokenizeDirective(this: TokenizeContext, effects: Effects, ok: State, nok: State): State {
+  const run = new SourceRun(effects);
   let name = "";
   let depth = 0;
   let length = 0;
 
   return (code) => {
     effects.enter("paperDirective");
-    effects.consume(code);
+    run.consume(code);
     return inName;
   };
 
@@ -50,7 +52,7 @@ function tokenizeDirective(this: TokenizeContext, effects: Effects, ok: State, n
     if (code === openBracket && names.includes(name)) return inLabel(code);
     if (code === null || !asciiAlpha(code) || name.length >= longestName) return nok(code);
     name += String.fromCharCode(code);
-    effects.consume(code);
+    run.consume(code);
     return inName;
   }
 
@@ -58,46 +60,42 @@ function tokenizeDirective(this: TokenizeContext, effects: Effects, ok: State, n
     if (code === null || ++length > longestLabel) return nok(code);
     if (code === openBracket) depth++;
     if (code === closeBracket) depth--;
-    consume(effects, code);
+    run.consume(code);
     return depth === 0 ? afterLabel : inLabel;
   }
 
   function afterLabel(code: Code): State | undefined {
+    run.close();
     return code === openBrace ? effects.attempt(attributes, done, done)(code) : done(code);
   }
 
   function done(code: Code): State | undefined {
+    run.close();
     effects.exit("paperDirective");
     return ok(code);
   }
 }
 
 function tokenizeAttributes(this: TokenizeContext, effects: Effects, ok: State, nok: State): State {
+  const run = new SourceRun(effects);
   let quoted = false;
   let length = 0;
 
   return (code) => {
     effects.enter("paperAttributes");
-    effects.consume(code);
+    run.consume(code);
     return inside;
   };
 
   function inside(code: Code): State | undefined {
     if (code === null || ++length > longestAttributes) return nok(code);
     if (code === quotationMark) quoted = !quoted;
-    consume(effects, code);
+    run.consume(code);
     if (code !== closeBrace || quoted) return inside;
+    run.close();
     effects.exit("paperAttributes");
     return ok;
   }
-}
-
-/** Line endings are tokens of their own, so that line counts and prefixes of quotes and lists stay right. */
-function consume(effects: Effects, code: Code): void {
-  const ending = markdownLineEnding(code);
-  if (ending) effects.enter("lineEnding");
-  effects.consume(code);
-  if (ending) effects.exit("lineEnding");
 }
 
 /**

@@ -1,5 +1,6 @@
 import { markdownLineEnding, markdownSpace } from "micromark-util-character";
 import type { Code, Construct, Effects, State, TokenizeContext, Tokenizer } from "micromark-util-types";
+import { SourceRun } from "./source-run.ts";
 
 const dollar = 36;
 const backslash = 92;
@@ -26,6 +27,7 @@ function notAfterDollar(this: TokenizeContext, code: Code): boolean {
 }
 
 function tokenizeMath(this: TokenizeContext, effects: Effects, ok: State, nok: State): State {
+  const run = new SourceRun(effects);
   let opening = 0;
   let closing = 0;
   let beforeDigit = false;
@@ -40,7 +42,7 @@ function tokenizeMath(this: TokenizeContext, effects: Effects, ok: State, nok: S
   function opened(code: Code): State | undefined {
     if (code === dollar && opening < 3) {
       opening++;
-      effects.consume(code);
+      run.consume(code);
       return opened;
     }
     if (opening > 2) return nok(code);
@@ -57,32 +59,31 @@ function tokenizeMath(this: TokenizeContext, effects: Effects, ok: State, nok: S
     }
     if (markdownLineEnding(code)) {
       afterSpace = true;
-      effects.enter("lineEnding");
-      effects.consume(code);
-      effects.exit("lineEnding");
+      run.consume(code);
       return inside;
     }
     afterSpace = isSpace(code);
-    effects.consume(code);
+    run.consume(code);
     return code === backslash ? escaped : inside;
   }
 
   function escaped(code: Code): State | undefined {
     if (code !== dollar && code !== backslash) return inside(code);
     afterSpace = false;
-    effects.consume(code);
+    run.consume(code);
     return inside;
   }
 
   function atClosing(code: Code): State | undefined {
     if (code === dollar) {
       closing++;
-      effects.consume(code);
+      run.consume(code);
       return atClosing;
     }
     const closes =
       closing === opening && !(beforeDigit && (afterSpace || isDigit(code))) && !(beforeSpace && !afterSpace);
     if (closes) {
+      run.close();
       effects.exit("paperMath");
       return ok(code);
     }
@@ -101,6 +102,7 @@ export const display: Construct = { name: "paperDisplay", tokenize: tokenizeDisp
 function tokenizeDisplay(this: TokenizeContext, effects: Effects, ok: State, nok: State): State {
   const parser = this.parser;
   const now = () => this.now().line;
+  const run = new SourceRun(effects);
   let dollars = 0;
   let blank = false;
 
@@ -112,7 +114,7 @@ function tokenizeDisplay(this: TokenizeContext, effects: Effects, ok: State, nok
   function opening(code: Code): State | undefined {
     if (code === dollar && dollars < 3) {
       dollars++;
-      effects.consume(code);
+      run.consume(code);
       return opening;
     }
     return dollars === 2 ? inside(code) : nok(code);
@@ -123,13 +125,11 @@ function tokenizeDisplay(this: TokenizeContext, effects: Effects, ok: State, nok
     if (markdownLineEnding(code)) {
       if (blank) return nok(code);
       blank = true;
-      effects.enter("lineEnding");
-      effects.consume(code);
-      effects.exit("lineEnding");
+      run.consume(code);
       return lineStart;
     }
     if (!markdownSpace(code)) blank = false;
-    effects.consume(code);
+    run.consume(code);
     if (code === backslash) return escaped;
     return code === dollar ? secondDollar : inside;
   }
@@ -140,13 +140,14 @@ function tokenizeDisplay(this: TokenizeContext, effects: Effects, ok: State, nok
 
   function escaped(code: Code): State | undefined {
     if (code !== dollar && code !== backslash) return inside(code);
-    effects.consume(code);
+    run.consume(code);
     return inside;
   }
 
   function secondDollar(code: Code): State | undefined {
     if (code !== dollar) return inside(code);
-    effects.consume(code);
+    run.consume(code);
+    run.close();
     effects.exit("paperDisplay");
     return end;
   }

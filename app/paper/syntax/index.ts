@@ -1,96 +1,87 @@
 import type { Nodes, Root } from "mdast";
-import type { CompileContext, Extension, Token } from "mdast-util-from-markdown";
-import { fromMarkdown } from "mdast-util-from-markdown";
-import { frontmatterFromMarkdown } from "mdast-util-frontmatter";
-import { gfmFootnoteFromMarkdown } from "mdast-util-gfm-footnote";
-import { gfmTableFromMarkdown } from "mdast-util-gfm-table";
-import { frontmatter } from "micromark-extension-frontmatter";
-import { gfmFootnote } from "micromark-extension-gfm-footnote";
-import { gfmTable } from "micromark-extension-gfm-table";
-import type { Extension as SyntaxExtension } from "micromark-util-types";
-import { comments } from "./comments.ts";
-import { directive, environmentFence } from "./directives.ts";
-import { display, mathAmongWords } from "./dollars.ts";
+import { Lines } from "../lines.ts";
+import { remembered } from "../memory.ts";
+import { cutIntoPieces } from "./pieces.ts";
+import { parseFrontMatter, parseParagraphs, parseTree } from "./tree.ts";
 
-/** `:value[…]{…}` and its like, not yet looked into. */
-export interface RawDirective {
-  type: "rawDirective";
-  value: string;
-}
+export type { RawDirective, RawFence } from "./tree.ts";
 
-/** A line of three or more colons, not yet paired. */
-export interface RawFence {
-  type: "rawFence";
-  value: string;
-}
+/** Lengths of text, in characters, whose trees are kept: a few long papers. A tree takes some fifty times the memory. */
+const keptOfPieces = 600_000;
+const keptOfWords = 60_000;
 
-const treeOfTables = gfmTableFromMarkdown();
-const treeOfFootnotes = gfmFootnoteFromMarkdown();
-const treeOfFrontMatter = frontmatterFromMarkdown(["yaml"]);
+const frontMatter = remembered(parseFrontMatter, keptOfWords);
+const blocks = remembered(parseTree, keptOfPieces);
+const words = remembered(parseParagraphs, keptOfWords);
 
-/** A whole text as an mdast tree, with `rawDirective` and `rawFence` nodes for the paper's own marks. */
+/**
+ * A whole text as an mdast tree, with `rawDirective` and `rawFence` nodes for the paper's own marks. The tree is the
+ * caller's to change.
+ */
 export function parseBlocks(text: string): Root {
-  return fromMarkdown(text, {
-    extensions: [frontmatter(["yaml"]), gfmTable(), gfmFootnote(), paperSyntax()],
-    mdastExtensions: [treeOfFrontMatter, treeOfTables, treeOfFootnotes, treeOfPaper],
-  });
+  const lines = new Lines(text);
+  const names = definedNames(text);
+  const bom = text.startsWith("\uFEFF") ? 1 : 0;
+  const root: Root = { type: "root", children: [] };
+  for (const piece of cutIntoPieces(text)) {
+    const before = piece.frontMatter ? "" : definitionsFor(piece.text, names);
+    const tree = piece.frontMatter ? frontMatter(piece.text) : blocks(before + piece.text);
+    const offset = piece.from - before.length + (piece.from === 0 && before === "" ? bom : 0);
+    const line = lines.lineAt(piece.from) - before.split("\n").length;
+    for (const child of tree.children) {
+      if ((child.position?.start.offset ?? 0) >= before.length) root.children.push(copyAt(child, offset, line));
+    }
+  }
+  return root;
 }
 
-const blockConstructs = [
-  "headingAtx",
-  "setextUnderline",
-  "list",
-  "blockQuote",
-  "codeIndented",
-  "codeFenced",
-  "thematicBreak",
-  "definition",
-  "gfmTable",
-  "paperFence",
-];
-
-/** A short text (a caption, a title) as one paragraph: marks of headings, lists and the like are plain characters. */
+/** A short text (a caption, a title) as paragraphs: marks of headings, lists and the like are plain characters. */
 export function parseInline(text: string): Root {
-  return fromMarkdown(text, {
-    extensions: [paperSyntax(), { disable: { null: blockConstructs } }],
-    mdastExtensions: [treeOfPaper],
-  });
+  return copyAt(words(text), 0, 0);
 }
 
-function paperSyntax(): SyntaxExtension {
-  const { amongWords, inLines } = comments();
-  return {
-    text: { 36: mathAmongWords, 58: directive, 60: amongWords },
-    flow: { 36: display, 58: environmentFence, 60: inLines },
-    disable: { null: ["htmlFlow", "htmlText"] },
-  };
+/** Names that a text seems to define, `[name]: …` and `[^name]: …`, by their folded form. */
+function definedNames(text: string): Map<string, string> {
+  const names = new Map<string, string>();
+  for (const match of text.matchAll(/^[ \t>]{0,8}\[([^[\]]{1,200})\]:/gm)) {
+    const name = (match[1] ?? "").replace(/\s+/g, " ");
+    if (name.trim() !== "" && !name.endsWith("\\")) names.set(fold(name), name);
+  }
+  return names;
 }
 
-const treeOfPaper: Extension = {
-  enter: {
-    paperDirective(token) {
-      enterRaw(this, token, { type: "rawDirective", value: this.sliceSerialize(token) });
-    },
-    paperFence(token) {
-      enterRaw(this, token, { type: "rawFence", value: this.sliceSerialize(token) });
-    },
-    paperMath(token) {
-      const source = this.sliceSerialize(token);
-      if (source.startsWith("$$")) this.enter({ type: "math", value: source.slice(2, -2) }, token);
-      else this.enter({ type: "inlineMath", value: source.slice(1, -1) }, token);
-    },
-    paperDisplay(token) {
-      this.enter({ type: "math", value: this.sliceSerialize(token).slice(2, -2) }, token);
-    },
-  },
-  exit: { paperDirective: leave, paperFence: leave, paperMath: leave, paperDisplay: leave },
-};
-
-function leave(this: CompileContext, token: Token): void {
-  this.exit(token);
+/**
+ * Definitions to stand before a piece while it is parsed, because words in brackets are references only where
+ * something defines them. They say no more than the names; the last ends the footnotes before it and defines nothing.
+ */
+function definitionsFor(piece: string, names: ReadonlyMap<string, string>): string {
+  if (names.size === 0) return "";
+  const used = new Set<string>();
+  for (const match of piece.matchAll(/\[([^[\]]{1,200})\](?!:)/g)) {
+    const name = names.get(fold(match[1] ?? ""));
+    if (name !== undefined) used.add(name);
+  }
+  if (used.size === 0) return "";
+  return `${[...used].map((name) => `[${name}]: -\n\n`).join("")}[\uE000]: -\n\n`;
 }
 
-/** Raw nodes live only between parsing and dressing, so mdast's own union of nodes does not know them. */
-function enterRaw(context: CompileContext, token: Token, node: RawDirective | RawFence): void {
-  context.enter(node as unknown as Nodes, token);
+function fold(name: string): string {
+  return name.trim().replace(/\s+/g, " ").toLowerCase();
+}
+
+/** A copy of a node moved by so many characters and lines. */
+function copyAt<Node extends Nodes>(node: Node, offset: number, line: number): Node {
+  const copy: Node = { ...node };
+  const position = node.position;
+  if (position !== undefined) {
+    const { start, end } = position;
+    copy.position = {
+      start: { line: start.line + line, column: start.column, offset: (start.offset ?? 0) + offset },
+      end: { line: end.line + line, column: end.column, offset: (end.offset ?? 0) + offset },
+    };
+  }
+  if ("children" in copy) {
+    Object.assign(copy, { children: copy.children.map((child: Nodes) => copyAt(child, offset, line)) });
+  }
+  return copy;
 }
