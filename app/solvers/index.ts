@@ -6,6 +6,7 @@ export { SolverError } from "./errors.ts";
 export { absorbedMoments, factorialMoment } from "./moments.ts";
 export { describeProcess } from "./process.ts";
 export { profileAt, profileComplementAt, profileConstants, profileSlopeAt } from "./profile.ts";
+export { survivalProbability } from "./survival.ts";
 export { tailLaw, tailProbability } from "./tail.ts";
 export { solveTrajectory } from "./trajectory.ts";
 export type {

@@ -2,7 +2,7 @@ import { SolverError } from "./errors.ts";
 import { fastRate, linearise } from "./linear.ts";
 import { type Branching, nonlinearity } from "./offspring.ts";
 import { PairSeries, pairComposer } from "./pair-series.ts";
-import { add, divide, multiply, negate, ONE, pair, scale, subtract, toNumber } from "./pairs.ts";
+import { add, divide, multiply, negate, ONE, pair, scale, subtract, toNumber, ZERO } from "./pairs.ts";
 import type { Pair, ProcessModel } from "./types.ts";
 
 /**
@@ -18,6 +18,8 @@ export interface SurvivalPath {
   readonly barrier: number;
   /** u = Σ far[k] z^k with z = e^{−ξ}, used for ξ ≥ knots[0].xi */
   readonly far: Float64Array;
+  /** Taylor expansion in ξ − barrier, used to `reach`: near the barrier u keeps its relative accuracy. */
+  readonly near: { readonly reach: number; readonly series: Float64Array };
   /** Taylor expansions in ξ − xi, of decreasing ξ; each reaches down to the next one's, the last one past the barrier. */
   readonly knots: readonly { readonly xi: number; readonly series: Float64Array }[];
 }
@@ -27,6 +29,9 @@ const ORDER = 30;
 const TOLERANCE = 2 ** -66;
 const MOST_STEPS = 5000;
 const NEWTON_STEPS = 8;
+const MOST_HALVINGS = 30;
+/** Below this the double's range is near its end, and with it the digits of every product. */
+const SMALLEST = 2 ** -930;
 
 interface Equation {
   readonly law: Branching;
@@ -58,22 +63,39 @@ export function survivalPath(model: ProcessModel): SurvivalPath {
   for (let step = 0; step < MOST_STEPS; step += 1) {
     const series = expandAt(equation, u, slope);
     knots.push({ xi: at, series: series.high.slice() });
-    const length = stepOf(series);
-    const next = series.evaluate(pair(-length), ORDER);
-    if (!(toNumber(next.derivative) > 0)) break;
-    if (next.value[0] <= 0) return { rate: toNumber(equation.rate), barrier: at - zeroOf(series, length), far: origin.high.slice(), knots };
+    let length = stepOf(series);
+    let next = series.evaluate(pair(-length), ORDER);
+    // u increases up to the barrier and turns only behind it: a step that ends behind the turn is too long.
+    for (let halvings = 0; next.derivative[0] <= 0 && halvings < MOST_HALVINGS; halvings += 1) {
+      length /= 2;
+      next = series.evaluate(pair(-length), ORDER);
+    }
+    if (!(next.derivative[0] > SMALLEST)) break;
+    if (next.value[0] <= 0) {
+      const down = zeroOf(series, length);
+      const near = expandAt(equation, ZERO, series.evaluate(negate(down), ORDER).derivative);
+      return {
+        rate: toNumber(equation.rate),
+        barrier: at - toNumber(down),
+        far: origin.high.slice(),
+        near: { reach: stepOf(near), series: near.high.slice() },
+        knots,
+      };
+    }
     at -= length;
     u = next.value;
     slope = next.derivative;
   }
   throw new SolverError(
     "not_converged",
-    `The survival probability did not reach 0 at the barrier within ${MOST_STEPS} steps: the drift is too near the one at which every line is absorbed.`,
+    `Near the barrier the survival probability is below ${SMALLEST.toExponential(0)}: the drift is too near the one at which every line is absorbed.`,
   );
 }
 
-/** u at ξ, which must not lie below the barrier. */
-export function survivalIn(path: SurvivalPath, xi: number): number {
+/** u at a distance ξ − barrier ≥ 0 from the barrier. */
+export function survivalIn(path: SurvivalPath, distance: number): number {
+  if (distance <= path.near.reach) return horner(path.near.series, distance);
+  const xi = path.barrier + distance;
   const [first] = path.knots;
   if (first === undefined || xi >= first.xi) return horner(path.far, Math.exp(-xi));
   let low = 0;
@@ -84,9 +106,7 @@ export function survivalIn(path: SurvivalPath, xi: number): number {
     else high = middle - 1;
   }
   const knot = path.knots[low] ?? first;
-  // Near the barrier u is small beside its terms: the expansion is taken from the barrier itself.
-  const there = xi - knot.xi;
-  return low === path.knots.length - 1 ? horner(knot.series, there) - horner(knot.series, path.barrier - knot.xi) : horner(knot.series, there);
+  return horner(knot.series, xi - knot.xi);
 }
 
 function equationOf(model: ProcessModel): Equation {
@@ -180,7 +200,7 @@ function stepOf(c: PairSeries): number {
 }
 
 /** h in (0, length] with u(ξ − h) = 0; u increases with ξ. */
-function zeroOf(c: PairSeries, length: number): number {
+function zeroOf(c: PairSeries, length: number): Pair {
   let near = 0;
   let far = length;
   for (let round = 0; round < 20; round += 1) {
@@ -193,7 +213,7 @@ function zeroOf(c: PairSeries, length: number): number {
     const { value, derivative } = c.evaluate(negate(h), ORDER);
     h = add(h, divide(value, derivative));
   }
-  return toNumber(h);
+  return h;
 }
 
 function horner(coefficients: Float64Array, h: number): number {

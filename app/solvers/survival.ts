@@ -5,7 +5,7 @@ import type { Answer, Estimate, Offspring, ProcessModel } from "./types.ts";
 
 /** Relative change of the inputs from which the spread of the answer is measured. */
 const NUDGE = 2 ** -20;
-/** What evaluation of the expansions in double precision may lose, in units of the last place of p. */
+/** What evaluation of the expansions in double precision may lose, in half units of the last place, for each unit of ξ. */
 const ROUNDINGS = 8;
 
 interface Family {
@@ -29,12 +29,12 @@ export function survivalProbability(model: ProcessModel, x: number): Answer<Esti
   const family = familyOf(model);
   const value = at(family.path, x);
   const spread = family.nudged.reduce((sum, path) => sum + Math.abs(at(path, x) - value), 0);
-  const rounding = ROUNDINGS * HALF_UNIT * Math.min(1, 1 + family.path.rate * x);
-  return { value, error: (spread / NUDGE) * HALF_UNIT + Math.max(rounding * value, ROUNDINGS * HALF_UNIT * value) + Number.MIN_VALUE };
+  const rounding = ROUNDINGS * HALF_UNIT * (1 + Math.abs(family.path.barrier));
+  return { value, error: (spread / NUDGE) * HALF_UNIT + rounding * value + Number.MIN_VALUE };
 }
 
 function at(path: SurvivalPath, x: number): number {
-  return Math.max(0, survivalIn(path, path.barrier + path.rate * x));
+  return survivalIn(path, path.rate * x);
 }
 
 function familyOf(model: ProcessModel): Family {

@@ -139,6 +139,16 @@ describe("callables of counts", () => {
   });
 });
 
+test("survival of a process, also where it has no profile", () => {
+  const drifting = toDouble(quantityOf(valueIn(PAPER, "larvae.survival(1)")));
+  const still = toDouble(quantityOf(valueIn(PAPER, "larvae.survival(1)", { mu: "0" })));
+  // Without drift: 1 − (1 − h²)/(1 + h/√3)², h = tanh(x/√2), from the equation's energy (see the solver's test).
+  const h = Math.tanh(1 / Math.SQRT2);
+  expect(still).toBeCloseTo(1 - (1 - h * h) / (1 + h / Math.sqrt(3)) ** 2, 14);
+  expect(drifting).toBeGreaterThan(still);
+  expect(reasonOf(valueIn(PAPER, "larvae.survival(0 - 1)"))).toContain("begins at 0");
+});
+
 test("errors of arguments are passed on", () => {
   const exact = quantityOf(valueIn(PAPER, "w(1)"));
   const inexact = quantityOf(valueIn(PAPER, "w(1 + K.zero - K.zero)"));

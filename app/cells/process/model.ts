@@ -1,5 +1,4 @@
 import type { Formula, Value } from "../../formulas/index.ts";
-import { toDouble } from "../../formulas/index.ts";
 import type { Answer, Offspring, ProcessModel, Trajectory } from "../../solvers/index.ts";
 import { describeProcess, SOLVER_VERSIONS, solveTrajectory } from "../../solvers/index.ts";
 import type { Body } from "../body.ts";
@@ -11,7 +10,7 @@ import { estimateValue, refusedValue, textValue } from "../values.ts";
 import { PROCESS_DOCUMENTATION } from "./documentation.ts";
 import type { OffspringModel } from "./offspring.ts";
 import { offspringOf, readOffspring } from "./offspring.ts";
-import { survival } from "./survival.ts";
+import { survivalValue } from "./survival.ts";
 
 export interface ProcessCell {
   readonly drift: Formula;
@@ -69,7 +68,7 @@ export const PROCESS: KindOf<ProcessCell, ProcessData> = {
 
   call(data, member, args) {
     if (member !== "survival" || args.length !== 1 || args[0] === undefined) return undefined;
-    return survival(data, toDouble(args[0]));
+    return survivalValue(data, args[0]);
   },
 
   view: () => ({ figure: null, table: null, points: null }),
