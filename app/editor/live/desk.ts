@@ -142,6 +142,8 @@ export class Desk {
     this.session.undo.text.stopCapturing();
     this.trial = {};
     this.wantsKept = true;
+    // The text first: the trial ends only when what it led to is in the sheet, and nothing older shows in between.
+    this.reading?.askNow();
     this.reading?.tellPreview(this.settled, this.trial);
   }
 

@@ -72,6 +72,11 @@ export class Reading {
     this.send({ tell: "results", results });
   }
 
+  /** Gives the text to the worker without waiting, if none is with it. */
+  askNow(): void {
+    if (this.stale) this.ask();
+  }
+
   /** Tries parameters: `settled` are a visitor's own values, `trial` is under the hand right now. Newest only. */
   tellPreview(settled: Readonly<Record<string, string>>, trial: Readonly<Record<string, string>>): void {
     const message: ToWorker = { tell: "preview", settled, trial };
@@ -113,7 +118,7 @@ export class Reading {
     }
     if (this.open > 0) return;
     if (this.stale) this.ask();
-    else if (this.nextPreview !== null) {
+    if (this.nextPreview !== null) {
       const next = this.nextPreview;
       this.nextPreview = null;
       this.send(next);

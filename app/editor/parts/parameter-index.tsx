@@ -34,9 +34,13 @@ export function ParameterIndex({ parameter, place, onTry, onSet }: Props) {
   const value = trial.tried ?? parameter.value;
   const movable = parameter.plain && value !== null;
 
+  const abandon = () => {
+    drag.current = null;
+    trial.putBack();
+  };
   const onKeyDown = (event: KeyboardEvent) => {
     const direction = DIRECTIONS[event.key];
-    if (event.key === "Escape") trial.putBack();
+    if (event.key === "Escape") abandon();
     else if (event.key === "Enter" && trial.tried !== null) trial.settle(sourceOf(trial.tried));
     else if (event.key === "Enter" || event.key === " ") setTyped(parameter.source);
     else if (/^[\d.+-]$/.test(event.key) && !event.ctrlKey && !event.metaKey && !event.altKey) setTyped(event.key);
@@ -51,6 +55,8 @@ export function ParameterIndex({ parameter, place, onTry, onSet }: Props) {
 
   const begin = (event: PointerEvent<Element>, from: number, moved: boolean) => {
     event.currentTarget.setPointerCapture(event.pointerId);
+    // The keys go with the hand: Esc puts back what is dragged.
+    event.currentTarget.closest(".hl-par")?.querySelector<HTMLElement>("[role=spinbutton]")?.focus();
     drag.current = { at: event.clientX, from, moved, last: from };
     if (moved) trial.attempt(from);
   };
@@ -71,10 +77,6 @@ export function ParameterIndex({ parameter, place, onTry, onSet }: Props) {
     if (begun === null) return;
     if (begun.moved) trial.settle(sourceOf(begun.last));
     else setTyped(parameter.source);
-  };
-  const abandon = () => {
-    drag.current = null;
-    trial.putBack();
   };
 
   const label = parameter.note === "" ? parameter.name : `${parameter.name}, ${parameter.note}`;
@@ -129,6 +131,7 @@ export function ParameterIndex({ parameter, place, onTry, onSet }: Props) {
           onPointerDown={(event) => {
             const box = event.currentTarget.getBoundingClientRect();
             if (!movable || event.button !== 0 || box.width <= 0) return;
+            event.preventDefault();
             begin(event, valueAt(scale, (event.clientX - box.left) / box.width), true);
           }}
           onPointerMove={(event) => move(event, event.currentTarget.getBoundingClientRect().width)}

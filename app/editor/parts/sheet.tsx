@@ -21,8 +21,8 @@ export default function Sheet(props: SheetPageProps) {
     <div className="hl-sheet">
       {desk === null ? null : <Around desk={desk} props={props} part="head" />}
       <main className="hl-column">
-        {desk === null ? null : <Preface desk={desk} props={props} />}
-        <div ref={place} className="hl-text" />
+        {desk === null ? null : <Preface desk={desk} props={props} place={place} />}
+        <div ref={place} className="hl-text hl-untyped" />
         {desk === null ? null : <BibliographyPlace desk={desk} />}
       </main>
       {desk === null ? null : <Around desk={desk} props={props} part="tail" />}
@@ -49,9 +49,13 @@ interface PartProps {
   readonly props: SheetPageProps;
 }
 
-function Preface({ desk, props }: PartProps) {
-  const ready = useDeskView(desk, ({ ready: there, model }) => there && model !== null);
-  return ready ? null : (
+/** The plain setting, until the text is typeset. The text's own place is the editor's, so its class is set by hand. */
+function Preface({ desk, props, place }: PartProps & { readonly place: RefObject<HTMLDivElement | null> }) {
+  const typeset = useDeskView(desk, ({ ready, model }) => ready && model !== null);
+  useEffect(() => {
+    place.current?.classList.toggle("hl-untyped", !typeset);
+  }, [typeset, place]);
+  return typeset ? null : (
     <div className="hl-preface">
       <PlainText title={props.title} text={props.first.text} />
     </div>

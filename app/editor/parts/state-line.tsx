@@ -112,9 +112,9 @@ function Command({ name, of, quiet, onPress }: CommandProps) {
       // The caret stays where it is, or the working would close under the pointer.
       onMouseDown={(event) => event.preventDefault()}
       onClick={onPress}
+      aria-label={`${name}, ${of}`}
     >
       {name}
-      <span className="hl-said">, {of}</span>
     </button>
   );
 }

@@ -8,6 +8,7 @@ import {
   type ShownCell,
 } from "../../cells/index.ts";
 import { type CellNode, type Paper, walk } from "../../paper/index.ts";
+import { isPlainNumber, shownValue } from "../model/scale.ts";
 import type { CellFace } from "../model/types.ts";
 import { moment, stateWords } from "./cell-words.ts";
 import type { NumberFaces } from "./number-faces.ts";
@@ -23,6 +24,8 @@ export interface CellTelling {
   readonly result: CellResult | undefined;
   /** The result is tried here and kept nowhere. */
   readonly previewed: boolean;
+  /** The result that the paper shows is on its way here; `result` is the one before. */
+  readonly awaited: boolean;
 }
 
 /** The cells' nodes in the tree, by slot: their printed parts and captions. */
@@ -60,6 +63,7 @@ interface Drawing {
 export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): CellFace[] {
   const strands = new Map(drawing.plan.parameters.map(({ name }, place) => [name, place]));
   const symbols = new Map(drawing.plan.parameters.map(({ name, symbol }) => [name, symbol]));
+  const printed = valuesIn(drawing.plan);
   const now = new Date();
   return tellings.map((telling) => {
     const { planned, shown, work, state, result, previewed } = telling;
@@ -78,8 +82,8 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
       parts: (node?.parts ?? []).map(({ part, noun, number }) => ({ part, title: `${noun} ${number}` })),
       caption: node === undefined ? [] : runsOf(node.caption, drawing.numbers),
       state: previewed ? "preview" : state.state,
-      words: previewed ? [] : stateWords({ state, shown, work, titleOf: titleOfId, now }),
-      provenance: provenanceRuns(telling, symbols, drawing.tried, now),
+      words: previewed ? [] : stateWords({ state, shown, work, titleOf: titleOfId, printed, now }),
+      provenance: provenanceRuns(telling, symbols, drawing.tried, printed, now),
       progress:
         state.state === "computing" && work?.state === "computing" && work.total > 1
           ? { done: work.done, total: work.total }
@@ -96,6 +100,12 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
   });
 }
 
+/** Values of parameters as the rule shows them, with the decimals of their steps. */
+function valuesIn(plan: Plan): (name: string, words: string) => string {
+  const steps = new Map(plan.parameters.map(({ name, step }) => [name, step]));
+  return (name, words) => (isPlainNumber(words) ? shownValue(Number(words), words, steps.get(name) ?? null) : words);
+}
+
 /** A view depends on the result, on how the working wants it drawn, and on the parameters' symbols. */
 function viewSign(result: CellResult, planned: PlannedCell, plan: Plan): string {
   const symbols = plan.parameters.map(({ name, symbol, source }) => `${name} ${symbol} ${source}`).join(";");
@@ -110,12 +120,13 @@ function withoutPlaces(name: string, value: unknown): unknown {
 const PLACES: ReadonlySet<string> = new Set(["from", "to", "line", "keyFrom", "keyTo"]);
 
 function provenanceRuns(
-  { planned, shown, result, previewed }: CellTelling,
+  { planned, shown, result, previewed, awaited }: CellTelling,
   symbols: ReadonlyMap<string, string>,
   tried: ReadonlySet<string>,
+  printed: (name: string, words: string) => string,
   now: Date,
 ): CellFace["provenance"] {
-  if (result === undefined) return [];
+  if (result === undefined || awaited) return [];
   const { words, by, at } = provenance(planned, result, shown);
   if (!previewed) {
     const who = [by, at === null ? null : moment(at, now)].filter((part) => part !== null).join(", ");
@@ -123,11 +134,12 @@ function provenanceRuns(
   }
   const said: CellFace["provenance"][number][] = [{ run: "text", text: words }];
   const names = planned.parameters.filter((name) => tried.has(name));
-  said.push({ run: "text", text: " · tried with " });
+  if (names.length === 0) return words === "" ? [] : said;
+  said.push({ run: "text", text: words === "" ? "Tried with " : " · tried with " });
   names.forEach((name, at) => {
     if (at > 0) said.push({ run: "text", text: ", " });
     said.push({ run: "math", tex: symbols.get(name) ?? name });
-    said.push({ run: "text", text: ` = ${planned.parameterValues[name] ?? ""}` });
+    said.push({ run: "text", text: ` = ${printed(name, planned.parameterValues[name] ?? "")}` });
   });
   said.push({ run: "text", text: "; not kept" });
   return said;

@@ -8,6 +8,8 @@ export interface Telling {
   readonly work: CellWork | undefined;
   /** "Figure 1" for the id of a cell. */
   titleOf(id: string): string;
+  /** A parameter's value as the rule shows it: "1.90". */
+  printed(name: string, words: string): string;
   readonly now: Date;
 }
 
@@ -18,15 +20,15 @@ export function stateWords(telling: Telling): Run[] {
 
 const WORDS: Readonly<Record<CellState["state"], (telling: Telling) => Run[]>> = {
   current: () => [],
-  outOfDate: ({ state, titleOf, now }) => causeWords(state.causes, titleOf, now),
-  stands({ state, shown }) {
+  outOfDate: (telling) => causeWords(telling.state.causes, telling),
+  stands({ state, shown, printed }) {
     const parameters = state.causes.filter((cause) => cause.cause === "parameter");
     const by = shown?.stands === undefined ? "" : `, by ${shown.stands.by}`;
     return parameters.length === 0
       ? [text(`Stands as it was${by}.`)]
       : [
           text("Stands with "),
-          ...joined(parameters.map(({ symbol, was }) => [math(symbol), text(` = ${was}`)])),
+          ...joined(parameters.map(({ name, symbol, was }) => [math(symbol), text(` = ${printed(name, was)}`)])),
           text(`${by}.`),
         ];
   },
@@ -54,18 +56,20 @@ function lineWords({ line, message }: { readonly line: number; readonly message:
 }
 
 /** "Set with μ = 1.90; μ is now 2.00 (Tormod, 14:30)." and the other causes, each a sentence. */
-export function causeWords(causes: readonly Cause[], titleOf: (id: string) => string, now: Date): Run[] {
+function causeWords(causes: readonly Cause[], { titleOf, printed, now }: Telling): Run[] {
   const parameters = causes.filter((cause) => cause.cause === "parameter");
   const sentences: Run[][] = [];
   if (parameters.length > 0) {
     sentences.push([
       text("Set with "),
-      ...joined(parameters.map(({ symbol, was }) => [math(symbol), text(` = ${was}`)])),
+      ...joined(parameters.map(({ name, symbol, was }) => [math(symbol), text(` = ${printed(name, was)}`)])),
       text("; "),
       ...joined(
-        parameters.map(({ symbol, now: value, by, at }) => [
+        parameters.map(({ name, symbol, now: value, by, at }) => [
           math(symbol),
-          text(` is now ${value}${by === null ? "" : ` (${by}${at === null ? "" : `, ${moment(at, now)}`})`}`),
+          text(
+            ` is now ${printed(name, value)}${by === null ? "" : ` (${by}${at === null ? "" : `, ${moment(at, now)}`})`}`,
+          ),
         ]),
       ),
       text("."),

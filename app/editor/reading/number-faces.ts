@@ -47,7 +47,10 @@ function faceOf(
   strands: ReadonlyMap<string, number>,
   tried: ReadonlySet<string>,
 ): Known {
-  const { value, printed, needs, parameters, problem } = evaluateNumber(number, plan, results);
+  const { value, printed, needs, problem, ...read } = evaluateNumber(number, plan, results);
+  const through = needs.flatMap((id) => plan.byId.get(id)?.parameters ?? []);
+  const hung = new Set([...read.parameters, ...through]);
+  const parameters = plan.parameters.flatMap(({ name }) => (hung.has(name) ? [name] : []));
   const cells = needs.flatMap((id) => standings.get(id) ?? []);
   const state = stateOf(
     cells,

@@ -7,6 +7,7 @@ const MOST_TRIALS = 300;
 export class ResultStore {
   private readonly kept = new Map<string, CellResult>();
   private readonly trials = new Map<string, CellResult>();
+  private readonly lastShown = new Map<string, CellResult>();
 
   keep(result: CellResult): void {
     this.kept.set(result.key, result);
@@ -22,6 +23,15 @@ export class ResultStore {
   /** The result that the paper shows under a key. A trial is never taken for one: only the server says what is kept. */
   shown(key: string | undefined): CellResult | undefined {
     return key === undefined ? undefined : this.kept.get(key);
+  }
+
+  /** Notes what a slot shows, so that it stays until what replaces it is here. */
+  showing(slot: string, result: CellResult): void {
+    this.lastShown.set(slot, result);
+  }
+
+  last(slot: string): CellResult | undefined {
+    return this.lastShown.get(slot);
   }
 
   any(key: string): CellResult | undefined {

@@ -85,9 +85,9 @@ export class SheetReader {
     const nodes = cellNodesOf(paper);
     const titles = titlesOf(plan, nodes);
     const standings = new Map<string, CellStanding>();
-    for (const { planned, state, previewed } of tellings) {
+    for (const { planned, state, previewed, awaited } of tellings) {
       const title = titles.get(planned.id) ?? planned.id;
-      standings.set(planned.id, { state: previewed ? "preview" : state.state, title });
+      standings.set(planned.id, { state: previewed ? "preview" : awaited ? "computing" : state.state, title });
     }
     const numbers = numberFaces(plan, results, standings, names);
     const { pieces, joins, blanks } = collectPieces(paper, numbers);
@@ -122,15 +122,25 @@ export class SheetReader {
     const of = shown.cells.get(planned.slot);
     const work = shown.work.get(planned.slot);
     const state = cellState(planned, of, work, plan, shown);
-    const kept = this.results.shown(of?.key);
+    const kept = this.results.shown(of?.key) ?? this.results.last(planned.slot);
+    if (kept !== undefined) this.results.showing(planned.slot, kept);
+    const awaited = of !== undefined && kept?.key !== of.key;
     if (trial?.status === "computed") {
-      return { planned, shown: of, work, state, result: trial.result, previewed: trial.result.key !== of?.key };
+      return {
+        planned,
+        shown: of,
+        work,
+        state,
+        result: trial.result,
+        previewed: trial.result.key !== of?.key,
+        awaited: false,
+      };
     }
     if (trial?.status === "failed") {
       const failed: CellState = { ...state, state: "failed", causes: [], failure: trial.failure };
-      return { planned, shown: of, work, state: failed, result: kept, previewed: false };
+      return { planned, shown: of, work, state: failed, result: kept, previewed: false, awaited };
     }
-    return { planned, shown: of, work, state, result: kept, previewed: false };
+    return { planned, shown: of, work, state, result: kept, previewed: false, awaited };
   }
 
   private planWith(paper: Paper, overrides: Overrides): Plan {

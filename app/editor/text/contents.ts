@@ -90,11 +90,23 @@ const AFTER: Readonly<Record<NumberFace["state"], string>> = {
   preview: "",
 };
 
+/** What stands where there is no value at all. */
+const VALUELESS: Readonly<Record<NumberFace["state"], string>> = {
+  current: "no value",
+  outOfDate: "no value",
+  stands: "no value",
+  computing: "",
+  waiting: "",
+  failed: "no value",
+  empty: "no value yet",
+  preview: "no value",
+};
+
 /** A number that is bound to a result: supported digits in ink, the rest grey, its state as a mark. */
 function number(face: NumberFace): HTMLElement {
   const valueless = face.known === "" && face.rest === "";
   const digits = valueless
-    ? [face.state === "failed" ? "no value" : face.state === "empty" ? "no value yet" : "no value"]
+    ? [VALUELESS[face.state]]
     : [face.known, ...(face.unknown === "" ? [] : [element("span", "hl-unknown", [face.unknown])]), face.rest];
   const made = element("span", `hl-number hl-number-${face.state}${valueless ? " hl-valueless" : ""}`, digits);
   const [first, second] = [face.strands[0], face.strands[1] ?? face.strands[0]];

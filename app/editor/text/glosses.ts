@@ -52,14 +52,26 @@ function drawn(problems: readonly ProblemFace[], state: EditorState): Pick<Gloss
     if (problem.slot !== null && !openSlots.has(problem.slot)) return [];
     const line = state.doc.lineAt(problem.from);
     marks.set(line.number, problem.severity === "error" ? "‡" : "†");
-    const gloss = Decoration.widget({ widget: new Gloss(problem, line.number), block: true, side: 2 }).range(line.to);
-    const under =
+    // Under its line, or under the block that is typeset in its place.
+    const under = closedBlockAround(state, problem.from) ?? line.to;
+    const gloss = Decoration.widget({ widget: new Gloss(problem, line.number), block: true, side: 2 }).range(under);
+    const fault =
       problem.to > problem.from && problem.to <= state.doc.lineAt(problem.from).to
         ? [Decoration.mark({ class: "hl-fault" }).range(problem.from, problem.to)]
         : [];
-    return [...under, gloss];
+    return [...fault, gloss];
   });
   return { shown: Decoration.set(ranges, true), marks };
+}
+
+/** Where the block ends that is typeset over a position at the moment, or null. */
+function closedBlockAround(state: EditorState, at: number): number | null {
+  const { places, opened } = state.field(sheetField);
+  let end: number | null = null;
+  places.between(at, at, (_from, to, { piece }) => {
+    if (piece.piece === "set" && piece.block && !opened.has(piece)) end = state.doc.lineAt(to).to;
+  });
+  return end;
 }
 
 class Gloss extends WidgetType {
