@@ -113,14 +113,26 @@ function single(t: Trajectory, rest: Starts, n: number, wanted: Wanted): ScaledE
   const law = prepareLaw(t, rest, n, wanted);
   const value = readLaw(law, n, n)[0] as ScaledEstimate;
   const read = wanted === "each" && n < law.first ? plusOne(value) : value;
-  if (wanted === "above" || !isSeveral(rest) || !isCancelled(read) || n > CONVOLVED_UP_TO) return read;
-  return better(read, convolvedLaw(t, rest, n)[n] as ScaledEstimate);
+  if (!isSeveral(rest) || !isCancelled(read) || n > CONVOLVED_UP_TO) return read;
+  const convolved = convolvedLaw(t, rest, n);
+  return better(read, wanted === "each" ? (convolved[n] as ScaledEstimate) : complementOf(convolved));
 }
 
 /** Up to here a law of many particles is convolved from that of one where its contour cancels. */
 const CONVOLVED_UP_TO = 4000;
 /** Relative error beyond which another method is tried. */
 const CANCELLED = 1e-11;
+
+/** 1 − Σ, where the contour cancels: n is then not far in the tail, and the complement not small. */
+function complementOf(law: readonly ScaledEstimate[]): ScaledEstimate {
+  let value = 1;
+  let error = law.length * Number.EPSILON;
+  for (const v of law) {
+    value -= v.mantissa * 2 ** v.exponent;
+    error += v.error * 2 ** v.exponent;
+  }
+  return normalise(value, error, 0);
+}
 
 function isSeveral(rest: Starts): rest is readonly Start[] {
   return rest !== "far" && (rest.length > 1 || (rest[0] as Start).particles > 1);
