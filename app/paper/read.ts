@@ -1,4 +1,4 @@
-import type { RootContent } from "mdast";
+import type { Root, RootContent } from "mdast";
 import { readBibliography } from "./bibliography/index.ts";
 import { markContinuations } from "./continuations.ts";
 import { dressBlocks } from "./dress.ts";
@@ -18,9 +18,12 @@ import type { Paper } from "./types.ts";
  * @param bibliography BibTeX
  */
 export function readPaper(text: string, bibliography: string): Paper {
-  const lines = new Lines(text);
-  const reading = new Reading(text, lines);
-  const root = parseBlocks(text);
+  return readParsed(text, bibliography, parseBlocks(text));
+}
+
+/** The same from a tree of the text, which is changed. */
+export function readParsed(text: string, bibliography: string, root: Root): Paper {
+  const reading = new Reading(text, new Lines(text));
   const yaml = root.children.find((node) => node.type === "yaml");
   collectDefinitions(reading, root);
   const front = readFrontMatter(reading, yaml === undefined ? null : reading.span(yaml));

@@ -5,6 +5,8 @@ export interface YamlFault {
   readonly from: number;
   readonly to: number;
   readonly message: string;
+  /** Where the same was said before. */
+  readonly earlier?: number;
   readonly fix?: { readonly label: string; readonly from: number; readonly to: number; readonly insert: string };
 }
 

@@ -69,7 +69,9 @@ function moved(node: Yaml, at: (index: number) => number, lines: Lines): Yaml {
 
 function problemOf(fault: YamlFault, at: (index: number) => number, lines: Lines): Problem {
   const from = at(fault.from);
-  const { message, fix } = fault;
+  const { fix } = fault;
+  const earlier = fault.earlier === undefined ? "" : ` It stands first in line ${lines.lineAt(at(fault.earlier))}.`;
+  const message = fault.message + earlier;
   const problem: Problem = { from, to: at(fault.to), line: lines.lineAt(from), severity: "error", message };
   return fix === undefined ? problem : { ...problem, fix: { ...fix, from: at(fix.from), to: at(fix.to) } };
 }
@@ -130,12 +132,11 @@ class Converter {
     const entries = node.items.map((pair) => {
       const entry = this.entry(pair, from);
       const earlier = seen.get(entry.key);
-      if (earlier !== undefined) {
-        const [keyFrom, keyTo] = rangeOf(pair.key, from);
-        const message = `“${entry.key}” is given twice here, first in line ${earlier}. Keep one of the two.`;
-        this.report({ from: keyFrom, to: keyTo, message });
+      if (earlier === undefined) seen.set(entry.key, entry.keyFrom);
+      else {
+        const message = `“${entry.key}” is given twice here. Keep one of the two.`;
+        this.report({ from: entry.keyFrom, to: entry.keyTo, message, earlier });
       }
-      seen.set(entry.key, earlier ?? entry.line);
       return entry;
     });
     return { yaml: "map", entries, ...this.place(from, to) };

@@ -128,6 +128,8 @@ class BibtexReader {
       if (this.peek() === close) break;
       this.field(key, fields);
     }
+    if (this.peek() === "@")
+      throw new EntryFault(`The entry “${key}” is not closed before the next: a brace is missing.`, start);
     if (this.peek() !== close) {
       const why = this.peek() === "" ? `it needs its “${close}”` : "after a field comes a comma, or the closing brace";
       throw new EntryFault(`The entry “${key}” cannot be read here: ${why}.`, Math.min(this.at, this.text.length));

@@ -27,7 +27,7 @@ export function withInitials(name: PersonName): string {
 
 function initial(word: string): string {
   const letter = [...word][0] ?? "";
-  return word.length > 1 && !word.endsWith(".") ? `${letter}.` : word;
+  return word.endsWith(".") ? word : `${letter}.`;
 }
 
 function readName(source: string): PersonName {
