@@ -1,0 +1,29 @@
+/** Times of repeated runs, in milliseconds. */
+export interface Timing {
+  readonly first: number;
+  readonly median: number;
+  readonly least: number;
+}
+
+const BUDGET_MS = 1500;
+const MOST_RUNS = 200;
+const FEWEST_RUNS = 3;
+
+/** Runs `work` for about a second and a half, at least three times, or exactly as often as asked. */
+export function timed(work: () => unknown, options: { readonly runs?: number } = {}): Timing {
+  const times: number[] = [];
+  const begun = performance.now();
+  const goesOn = (): boolean =>
+    options.runs === undefined
+      ? times.length < FEWEST_RUNS || (performance.now() - begun < BUDGET_MS && times.length < MOST_RUNS)
+      : times.length < options.runs;
+  while (goesOn()) {
+    globalThis.gc?.();
+    const start = performance.now();
+    work();
+    times.push(performance.now() - start);
+  }
+  const first = times[0] ?? 0;
+  const sorted = [...times].sort((a, b) => a - b);
+  return { first, median: sorted[Math.floor(sorted.length / 2)] ?? 0, least: sorted[0] ?? 0 };
+}
