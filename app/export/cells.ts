@@ -126,5 +126,5 @@ function writeTable(
 function entryTex(entry: TableEntry, printing: Printing, line: number): string {
   if (entry.text === "") return "";
   const words = entry.tex === `\\text{${entry.text}}` || (entry.tex === entry.text && /\p{L}/u.test(entry.text));
-  return words ? printing.text(entry.text, line) : `$${entry.tex}$`;
+  return words ? printing.text(entry.text, line) : `$${printing.math(entry.tex, line)}$`;
 }

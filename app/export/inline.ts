@@ -1,4 +1,5 @@
 import type { PhrasingContent } from "mdast";
+import type { PrintedNumber } from "../formulas/index.ts";
 import type { BoundNumber, BoundNumberNode, CitationNode, ReferenceNode } from "../paper/index.ts";
 import { citationText, readInline, mathTex as readMathTex, referenceText } from "../paper/index.ts";
 import type { Note } from "../print/index.ts";
@@ -36,9 +37,6 @@ function writeNode(node: PhrasingContent, printing: Printing, out: LatexWriter, 
     case "strong":
       wrapped("textbf", node.children);
       break;
-    case "delete":
-      // Struck words are words taken back: they are told apart on the page, and left out of print.
-      return;
     case "inlineCode":
       out.write(printing.code(node.value, line));
       break;
@@ -56,6 +54,8 @@ function writeNode(node: PhrasingContent, printing: Printing, out: LatexWriter, 
       printing.problem(line, `The picture “${node.alt ?? ""}” is not among what this paper can print.`);
       break;
     case "linkReference":
+    case "delete":
+      // The language has neither; what a reader of Markdown may still find in them is their words.
       writeInline(node.children, printing, out, line);
       break;
     case "footnoteReference":
@@ -111,14 +111,20 @@ function numberTex(node: BoundNumberNode, printing: Printing, line: number): str
     printing.problem(line, `\`${node.number.formula.trim()}\` has no value: ${set.reason}`);
     return "?";
   }
-  const { siunitx, text } = set.printed;
-  // Words such as "away" are set as words; siunitx sets numbers and their units.
-  const tex = siunitx.startsWith("\\text") ? printing.text(text, line) : siunitx;
+  const tex = printedTex(set.printed, printing, line);
   if (!set.note) return tex;
   const first = noteText(set.note, printing, line);
   return first === ""
     ? `${tex}\\textsuperscript{${set.note.mark}}`
     : `${tex}\\textsuperscript{${set.note.mark}}${first}`;
+}
+
+/** siunitx sets the number; a unit or per cent sign after it is TeX of a formula; words such as "away" are set as words. */
+function printedTex({ siunitx, text }: PrintedNumber, printing: Printing, line: number): string {
+  const parts = /^(\\num\{[^{}\\]*\})([\s\S]*)$/.exec(siunitx);
+  if (!parts) return printing.text(text, line);
+  const [, number = "", after = ""] = parts;
+  return after === "" ? number : `${number}$${printing.math(after, line)}$`;
 }
 
 /** The note itself, once in the paper; where it cannot stand, the dagger alone, and the note at its next use. */

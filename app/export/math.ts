@@ -1,4 +1,5 @@
-import { alphabetTex, MATH_CHARACTERS, shifted } from "./characters.ts";
+import { alphabetTex, shifted } from "./characters.ts";
+import { MATH_CHARACTERS } from "./math-characters.ts";
 import { ALIGNMENTS, COMMANDS, ENVIRONMENTS, TEXT_COMMANDS } from "./math-words.ts";
 import { textTex } from "./text.ts";
 

@@ -27,7 +27,7 @@ export function preamble(needs: PreambleNeeds): readonly string[] {
     "\\usepackage{amssymb,mathtools,mathrsfs,bm,cancel}",
     "\\usepackage{booktabs,longtable,array,graphicx}",
     "\\usepackage{siunitx}",
-    "\\sisetup{group-minimum-digits=5, exponent-product=\\times, retain-zero-uncertainty=true}",
+    "\\sisetup{group-digits=integer, group-minimum-digits=5, exponent-product=\\times, retain-zero-uncertainty=true}",
     "\\usepackage{pgfplots}",
     "\\pgfplotsset{compat=1.18}",
     "\\usepackage[hidelinks,hyperfootnotes=false,unicode]{hyperref}",
@@ -74,7 +74,7 @@ function cyrillic(): readonly string[] {
     "\\DeclareFontSubstitution{OT2}{wncyr}{m}{n}",
     "\\DeclareFontFamily{OT2}{wncyr}{}",
     ...shapes.map(([shape, font]) => `\\DeclareFontShape{OT2}{wncyr}${shape}{<-> ${font}}{}`),
-    "\\newcommand{\\cyr}[1]{{\\fontencoding{OT2}\\fontfamily{wncyr}\\selectfont #1}}",
+    "\\DeclareRobustCommand{\\cyr}[1]{{\\fontencoding{OT2}\\fontfamily{wncyr}\\selectfont #1}}",
     ...meanings,
   ];
 }

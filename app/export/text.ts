@@ -1,4 +1,5 @@
-import { alphabetTex, COMBINING, CYRILLIC, isGreek, isLatin, MATH_CHARACTERS, SPACING, shifted } from "./characters.ts";
+import { alphabetTex, COMBINING, CYRILLIC, isGreek, isLatin, SPACING, shifted } from "./characters.ts";
+import { MATH_CHARACTERS } from "./math-characters.ts";
 
 /** Text as TeX, and the characters that no font of print holds. */
 export interface TextTex {

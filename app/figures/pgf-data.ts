@@ -8,6 +8,8 @@ export interface Columns {
   readonly y: string;
   /** Outline of the band: along its lower edge and back along the upper one. */
   readonly band: { readonly x: string; readonly y: string } | null;
+  /** From the foot to each point and a gap; null when the series has no stems. */
+  readonly stems: { readonly x: string; readonly y: string } | null;
 }
 
 export interface DataTable {
@@ -19,8 +21,9 @@ export interface DataTable {
 /**
  * The points of a figure as a table for pgfplots: columns of all series side by side, shorter ones filled up with `nan`,
  * which is also a gap. On logarithmic axes the plotted columns are decimal logarithms, and `valueK` holds the values.
+ * @param feet where the stems of each series stand, in plotted coordinates; null for one without stems
  */
-export function dataTable(figure: Figure): DataTable {
+export function dataTable(figure: Figure, feet: readonly (number | null)[]): DataTable {
   const heads: string[] = [];
   const bodies: (readonly string[])[] = [];
   const add = (head: string, body: readonly string[]) => {
@@ -46,19 +49,25 @@ export function dataTable(figure: Figure): DataTable {
       columnName(figure.y, "y"),
       indices.map((i) => text(plottedY(figure.y, series, i))),
     );
-    const outline = bandOutline(figure, series, ends);
-    if (outline.length === 0) return { x, y, band: null };
-    const band = {
-      x: add(
-        `bandx${k + 1}`,
-        outline.map((point) => text(point?.[0] ?? null)),
-      ),
-      y: add(
-        columnName(figure.y, "band"),
-        outline.map((point) => text(point?.[1] ?? null)),
-      ),
+    const pair = (name: string, points: readonly OutlinePoint[]) =>
+      points.length === 0
+        ? null
+        : {
+            x: add(
+              `${name}x${k + 1}`,
+              points.map((point) => text(point?.[0] ?? null)),
+            ),
+            y: add(
+              columnName(figure.y, name),
+              points.map((point) => text(point?.[1] ?? null)),
+            ),
+          };
+    return {
+      x,
+      y,
+      band: pair("band", bandOutline(figure, series, ends)),
+      stems: pair("stem", stems(figure, series, feet[k] ?? null)),
     };
-    return { x, y, band };
   });
   const length = bodies.reduce((most, body) => Math.max(most, body.length), 0);
   const comments = figure.series.map((series, k) => `# ${k + 1}: ${series.name.replace(/[^\x20-\x7e]/g, "?")}`);
@@ -95,4 +104,13 @@ function bandOutline(figure: Figure, series: Series, ends: Ends): readonly Outli
   });
   finish();
   return outline.slice(0, -1);
+}
+
+function stems(figure: Figure, series: Series, foot: number | null): readonly OutlinePoint[] {
+  if (foot === null) return [];
+  return series.x.flatMap((value, i): OutlinePoint[] => {
+    const x = plotted(figure.x, value);
+    const y = plottedY(figure.y, series, i);
+    return x === null || y === null ? [] : [[x, foot], [x, y], null];
+  });
 }

@@ -36,7 +36,10 @@ export function figureToPgfplots(figure: Figure, options: PgfplotsOptions): Pgfp
   if (!/^[\w./-]+$/.test(options.dataFile))
     throw new RangeError(`"${options.dataFile}" cannot name a data file: letters, digits, ".", "-", "_" and "/" only.`);
   const layout = layoutFigure(figure, { width: options.widthMm * POINTS_PER_MM, fontSize: PRINT_FONT_PT });
-  const table = dataTable(figure);
+  const table = dataTable(
+    figure,
+    layout.series.map((series) => (series.foot === null ? null : yAt(layout, series.foot))),
+  );
   const plots = layout.series.flatMap((placed, i) => {
     const columns = table.columns[i];
     return columns ? plotLines(placed.series, columns, figure, layout, i, options.dataFile) : [];
@@ -153,8 +156,13 @@ function plotLines(
       `\\addplot[${colour}, line width=0.7pt, no marks, forget plot] coordinates {(${x},${number0(yAt(layout, mark.bar[0]))}) (${x},${number0(yAt(layout, mark.bar[1]))})};`,
     );
   }
-  const stems = placed.foot === null ? "only marks" : `ycomb, line width=0.5pt, /pgfplots/every ycomb/.style={}`;
-  lines.push(`\\addplot[${colour}, ${stems}, mark=*, ${radius}, ${filled}, ${restrict(layout)}] ${table(columns.y)}`);
+  if (columns.stems) {
+    const { x, y } = columns.stems;
+    lines.push(
+      `\\addplot[${colour}, draw opacity=0.55, line width=0.5pt, no marks, forget plot] table[x=${x}, y=${y}] {${dataFile}};`,
+    );
+  }
+  lines.push(`\\addplot[${colour}, only marks, mark=*, ${radius}, ${filled}, ${restrict(layout)}] ${table(columns.y)}`);
   return lines;
 }
 

@@ -1,0 +1,2 @@
+/** PDFs by TeX, confined. */
+export { TexPdfService } from "./service.ts";

@@ -1,0 +1,94 @@
+import { mkdir, mkdtemp, rm, writeFile } from "node:fs/promises";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import type { LatexSource, Log, PdfService } from "../../app/context.ts";
+import { type TexFault, texFaults } from "./faults.ts";
+import { type Confinement, findConfinement, LIMITS, type Limits, makePdf, type Ran } from "./sandbox.ts";
+
+/** At most this many papers are set at once, and this many more wait. */
+const AT_ONCE = 1;
+const MOST_WAITING = 8;
+
+type Typeset = Awaited<ReturnType<PdfService["typeset"]>>;
+
+/** Makes PDFs of LaTeX sources, one after the other, each confined (see sandbox.ts). */
+export class TexPdfService implements PdfService {
+  private readonly log: Log;
+  private readonly limits: Limits;
+  private confinement: Promise<Confinement> | null = null;
+  private running = 0;
+  private readonly waiting: (() => void)[] = [];
+
+  constructor(options: { readonly log: Log; readonly limits?: Limits }) {
+    this.log = options.log;
+    this.limits = options.limits ?? LIMITS;
+  }
+
+  async typeset(source: LatexSource): Promise<Typeset> {
+    if (this.waiting.length >= MOST_WAITING)
+      return failure(`${MOST_WAITING} papers wait to be set. Try again in a minute.`);
+    await this.begin();
+    const folder = await mkdtemp(join(tmpdir(), "halfline-tex-"));
+    try {
+      return await this.make(source, folder);
+    } finally {
+      await rm(folder, { recursive: true, force: true });
+      this.end();
+    }
+  }
+
+  private async make(source: LatexSource, folder: string): Promise<Typeset> {
+    const input = join(folder, "in");
+    const scratch = join(folder, "scratch");
+    await Promise.all([mkdir(input), mkdir(scratch)]);
+    for (const file of source.files) {
+      if (!/^[A-Za-z0-9][A-Za-z0-9._-]*$/.test(file.name))
+        throw new Error(`"${file.name}" cannot name a file of a LaTeX source.`);
+      await writeFile(join(input, file.name), file.text);
+    }
+    const ran = await makePdf(input, await this.confined(), scratch, this.limits);
+    if (ran.status === 0 && ran.output.subarray(0, 5).toString("latin1") === "%PDF-")
+      return { ok: true, pdf: new Uint8Array(ran.output) };
+    const problems = this.problemsOf(ran, source);
+    this.log.warn(
+      { problems, stopped: ran.stopped, status: ran.status, end: ran.log.slice(-800) },
+      "a paper could not be set",
+    );
+    return { ok: false, problems };
+  }
+
+  private problemsOf(ran: Ran, source: LatexSource): readonly TexFault[] {
+    if (ran.stopped === "time")
+      return [{ line: null, message: `Setting the paper took more than ${this.limits.seconds} s and was stopped.` }];
+    if (ran.stopped === "size")
+      return [{ line: null, message: `The PDF would be larger than ${this.limits.pdfMiB} MB.` }];
+    return texFaults(ran.log, (line) => source.lineMap(line));
+  }
+
+  private confined(): Promise<Confinement> {
+    this.confinement ??= findConfinement().then(({ confinement, reason }) => {
+      if (confinement === "limits") {
+        this.log.warn(
+          { reason },
+          "This machine grants no namespaces: TeX runs with its own restrictions and resource limits only.",
+        );
+      }
+      return confinement;
+    });
+    return this.confinement;
+  }
+
+  private async begin(): Promise<void> {
+    if (this.running >= AT_ONCE) await new Promise<void>((resolve) => this.waiting.push(resolve));
+    else this.running += 1;
+  }
+
+  /** Hands the place on to the next in line. */
+  private end(): void {
+    const next = this.waiting.shift();
+    if (next) next();
+    else this.running -= 1;
+  }
+}
+
+const failure = (message: string): Typeset => ({ ok: false, problems: [{ line: null, message }] });
