@@ -28,7 +28,7 @@ describe("profiles", () => {
     const figure = figureIn(PROFILE, "w");
     expect(figure.series.map(({ label, role, labelAt }) => [label, role, labelAt])).toEqual([
       ["s=0", "ordinary", "start"],
-      ["0.5", "ordinary", "start"],
+      ["1/2", "ordinary", "start"],
       ["2", "ordinary", "start"],
       ["s_0=5.437", "principal", "start"],
     ]);

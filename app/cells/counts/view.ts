@@ -1,11 +1,12 @@
 import type { Figure, Series, TableData } from "../../figures/index.ts";
+import { printNumber } from "../../formulas/index.ts";
 import { labelledAxis } from "../figure-parts.ts";
 import type { Presentation } from "../presentation.ts";
 import { startWords } from "../process/start.ts";
 import { plottedCounts, tabulatedCounts } from "../process/thinning.ts";
 import { tableEntry } from "../table-parts.ts";
 import type { CellView } from "../types.ts";
-import { exactValue, refusedValue, scaledValue, shortNumber } from "../values.ts";
+import { exactValue, refusedValue, scaledQuantity, scaledValue, shortNumber } from "../values.ts";
 import { callCounts } from "./callables.ts";
 import { doubleProbability, log10Probability, probabilityAt } from "./law.ts";
 import type { CountsData } from "./model.ts";
@@ -82,8 +83,8 @@ function alternative(data: CountsData): string {
   const a = beforeLast === undefined ? null : log10Probability(beforeLast);
   const b = last === undefined ? null : log10Probability(last);
   const fall =
-    a === null || b === null
+    last === undefined || a === null || b === null
       ? ""
-      : ` At n = ${law.upTo} it has fallen to about 10^${shortNumber(b)}, by a factor of ${shortNumber(10 ** (a - b))} from one n to the next.`;
+      : ` At n = ${law.upTo} it is ${printNumber(scaledQuantity(last), { digits: 2 }).text}, falling by a factor of ${shortNumber(10 ** (a - b))} from the n before.`;
   return `The law of K for ${startWords(data.starts)}, n = 0 to ${law.upTo}.${zero}${fall}`;
 }

@@ -33,10 +33,13 @@ export function startsOf(model: StartModel, context: ComputeContext): readonly S
   }));
 }
 
-/** "x = 1", "3 particles at 1 and 2 at 2": for the words of figures. */
+/** "one particle at 1", "3 particles at 1 and 2 at 2": for the words of figures. */
 export function startWords(starts: readonly Start[]): string {
   const [first] = starts;
   if (starts.length === 1 && first !== undefined && first.particles === 1) return `one particle at ${first.position}`;
-  const parts = starts.map(({ position, particles }) => `${particles} at ${position}`);
-  return `particles: ${parts.join(", ")}`;
+  const parts = starts.map(({ position, particles }, index) => {
+    const noun = index > 0 ? "" : particles === 1 ? " particle" : " particles";
+    return `${particles}${noun} at ${position}`;
+  });
+  return parts.join(" and ");
 }

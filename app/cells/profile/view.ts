@@ -23,7 +23,7 @@ export function viewProfile(data: ProfileData, presentation: Presentation): Cell
 
 function seriesOf(curve: ProfileCurve, index: number, x: readonly number[]): Series {
   const start = shortNumber(curve.s);
-  const tex = shortTex(curve.s);
+  const tex = startLabel(curve.s);
   const label = curve.turning ? `s_0=${tex}` : index === 0 ? `s=${tex}` : tex;
   const bound = (sign: 1 | -1) => curve.w.map((w, i) => (w === null ? null : w + sign * (curve.error[i] ?? 0)));
   return {
@@ -37,6 +37,12 @@ function seriesOf(curve: ProfileCurve, index: number, x: readonly number[]): Ser
     low: bound(-1),
     high: bound(1),
   };
+}
+
+/** Halves, thirds and quarters as fractions: they are what one types. */
+function startLabel(s: number): string {
+  const denominator = [1, 2, 3, 4].find((candidate) => Math.abs(s * candidate - Math.round(s * candidate)) < 1e-12);
+  return denominator === undefined || denominator === 1 ? shortTex(s) : `${Math.round(s * denominator)}/${denominator}`;
 }
 
 /** Says the finding: where the curves begin, that they tend to 1, and how the last one leaves the barrier. */

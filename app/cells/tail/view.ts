@@ -19,7 +19,7 @@ export function viewTail(data: TailData, presentation: Presentation): CellView {
   const figure: Figure = {
     alternative: alternative(data),
     x: labelledAxis("n", "log", presentation.x),
-    y: labelledAxis("P(K=n)/T(n)", "linear", presentation.y),
+    y: labelledAxis("exact over asymptotic", "linear", presentation.y),
     series: [
       {
         name: "exact over asymptotic",
