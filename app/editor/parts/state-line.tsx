@@ -27,11 +27,14 @@ const STATES: Readonly<Record<CellStateName, { lead: string; offers: readonly Of
 /** The line beneath a caption: how the result came to be or what is the matter with it, and the commands for it. */
 export function StateLine({ face, open, host }: Props) {
   const { lead, offers } = STATES[face.state];
-  const telling = face.words.length > 0;
+  // With the working open, a fault of it is said at its line.
+  const saidBelow = open && face.state === "failed" && !face.sound;
+  const telling = face.words.length > 0 && !saidBelow;
   return (
     <div className={`hl-state hl-state-${face.state}`}>
       {face.progress === null ? null : <Bar {...face.progress} />}
       {lead === "" ? null : <b className="hl-lead">{lead} </b>}
+      {saidBelow ? <span className="hl-state-words">Its working is at fault, see below.</span> : null}
       {telling ? <Runs className="hl-state-words" runs={face.words} macros={host.macros} /> : null}
       {face.state === "current" || face.state === "preview" ? (
         <Runs className="hl-provenance" runs={face.provenance} macros={host.macros} />
@@ -73,7 +76,7 @@ const NAMES: Readonly<Record<Offer, (face: CellFace) => string>> = {
   letStand: () => "Let it stand",
   doNotWait: () => "Do not wait",
   showNeeded: (face) => `Show ${face.needs?.title ?? ""}`,
-  goToLine: (face) => `Go to line ${face.failureLine ?? face.line}`,
+  goToLine: (face) => `Go to line ${(face.failureLine ?? face.line) - face.line + 1}`,
 };
 
 const PRESENT: Readonly<Record<Offer, (face: CellFace) => boolean>> = {

@@ -82,7 +82,9 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
       parts: (node?.parts ?? []).map(({ part, noun, number }) => ({ part, title: `${noun} ${number}` })),
       caption: node === undefined ? [] : runsOf(node.caption, drawing.numbers),
       state: previewed ? "preview" : state.state,
-      words: previewed ? [] : stateWords({ state, shown, work, titleOf: titleOfId, printed, now }),
+      words: previewed
+        ? []
+        : stateWords({ state, shown, work, titleOf: titleOfId, printed, firstLine: planned.line, now }),
       provenance: provenanceRuns(telling, symbols, drawing.tried, printed, now),
       progress:
         state.state === "computing" && work?.state === "computing" && work.total > 1
@@ -130,7 +132,8 @@ function provenanceRuns(
   const { words, by, at } = provenance(planned, result, shown);
   if (!previewed) {
     const who = [by, at === null ? null : moment(at, now)].filter((part) => part !== null).join(", ");
-    return [{ run: "text", text: [words, who].filter((part) => part !== "").join(" · ") }];
+    if (words === "") return who === "" ? [] : [{ run: "text", text: `Computed by ${who}` }];
+    return [{ run: "text", text: who === "" ? words : `${words} · ${who}` }];
   }
   const said: CellFace["provenance"][number][] = [{ run: "text", text: words }];
   const names = planned.parameters.filter((name) => tried.has(name));

@@ -10,6 +10,8 @@ export interface Telling {
   titleOf(id: string): string;
   /** A parameter's value as the rule shows it: "1.90". */
   printed(name: string, words: string): string;
+  /** Source line of the cell's fence. */
+  readonly firstLine: number;
   readonly now: Date;
 }
 
@@ -42,7 +44,9 @@ const WORDS: Readonly<Record<CellState["state"], (telling: Telling) => Run[]>> =
     const begun = work?.state === "waiting" ? ` Asked by ${work.by}, ${moment(work.begun, now)}.` : "";
     return [text(needs.length === 0 ? `Waits its turn.${begun}` : `Needs ${listed(needs)} first.${begun}`)];
   },
-  failed: ({ state }) => [text(state.failure === null ? "It could not be computed." : lineWords(state.failure))],
+  failed: ({ state, firstLine }) => [
+    text(state.failure === null ? "It could not be computed." : lineWords(state.failure, firstLine)),
+  ],
   cancelled({ work, shown, now }) {
     const by = work?.state === "cancelled" ? ` by ${work.by}, ${moment(work.at, now)}` : "";
     const kept = shown === undefined ? "" : ` The result from ${moment(shown.at, now)} is kept.`;
@@ -51,8 +55,9 @@ const WORDS: Readonly<Record<CellState["state"], (telling: Telling) => Run[]>> =
   empty: () => [text("Not computed yet.")],
 };
 
-function lineWords({ line, message }: { readonly line: number; readonly message: string }): string {
-  return /^line \d/i.test(message) ? message : `Line ${line}: ${message}`;
+/** Lines of a working count from its first. */
+function lineWords({ line, message }: { readonly line: number; readonly message: string }, firstLine: number): string {
+  return /^line \d/i.test(message) ? message : `Line ${line - firstLine + 1}: ${message}`;
 }
 
 /** "Set with μ = 1.90; μ is now 2.00 (Tormod, 14:30)." and the other causes, each a sentence. */

@@ -2,6 +2,7 @@ import { type EditorState, StateEffect, StateField } from "@codemirror/state";
 import { Decoration, type DecorationSet, EditorView, WidgetType } from "@codemirror/view";
 import type { ProblemFace } from "../model/types.ts";
 import { element } from "./element.ts";
+import { findPlace } from "./places.ts";
 import { sheetField } from "./sheet-field.ts";
 
 /** Faults of the text to be shown; positions are those of the text at hand. */
@@ -54,7 +55,8 @@ function drawn(problems: readonly ProblemFace[], state: EditorState): Pick<Gloss
     marks.set(line.number, problem.severity === "error" ? "‡" : "†");
     // Under its line, or under the block that is typeset in its place.
     const under = closedBlockAround(state, problem.from) ?? line.to;
-    const gloss = Decoration.widget({ widget: new Gloss(problem, line.number), block: true, side: 2 }).range(under);
+    const number = line.number - (problem.slot === null ? 0 : linesAbove(state, problem.slot));
+    const gloss = Decoration.widget({ widget: new Gloss(problem, number), block: true, side: 2 }).range(under);
     const fault =
       problem.to > problem.from && problem.to <= state.doc.lineAt(problem.from).to
         ? [Decoration.mark({ class: "hl-fault" }).range(problem.from, problem.to)]
@@ -62,6 +64,12 @@ function drawn(problems: readonly ProblemFace[], state: EditorState): Pick<Gloss
     return [...fault, gloss];
   });
   return { shown: Decoration.set(ranges, true), marks };
+}
+
+/** How many lines stand above a working: its own are counted from its first. */
+function linesAbove(state: EditorState, slot: string): number {
+  const place = findPlace(state.field(sheetField).places, (piece) => piece.piece === "cell" && piece.slot === slot);
+  return place === null ? 0 : state.doc.lineAt(place.from).number - 1;
 }
 
 /** Where the block ends that is typeset over a position at the moment, or null. */
