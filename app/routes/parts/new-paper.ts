@@ -4,11 +4,10 @@ export const UNTITLED = "Untitled paper";
 
 /** The text of an empty paper: a title, its author, one parameter, and a sentence to begin from. */
 export function emptyPaper(author: string): string {
-  // A JSON string is a YAML string, whatever is in the name.
   return `---
 title: ${UNTITLED}
 authors:
-  - name: ${JSON.stringify(author)}
+  - name: ${quoted(author)}
 ---
 
 \`\`\`parameters
@@ -30,5 +29,12 @@ export function copyOf(text: string): { text: string; title: string | null } {
   const copied = `Copy of ${String(title.value).trim()}`;
   const offset = text.indexOf(source);
   const [from, to] = title.range;
-  return { text: text.slice(0, offset + from) + JSON.stringify(copied) + text.slice(offset + to), title: copied };
+  // A folded title reaches over the end of its last line.
+  const end = from + source.slice(from, to).trimEnd().length;
+  return { text: text.slice(0, offset + from) + quoted(copied) + text.slice(offset + end), title: copied };
+}
+
+/** Words as YAML, whatever is in them: between single quotes a backslash is a backslash. */
+function quoted(words: string): string {
+  return `'${words.replace(/\s+/g, " ").replaceAll("'", "''")}'`;
 }
