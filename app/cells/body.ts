@@ -1,7 +1,7 @@
 import type { Formula, FormulaProblem } from "../formulas/index.ts";
 import { parseFormula } from "../formulas/index.ts";
 import type { Cell, Problem, Yaml, YamlEntry } from "../paper/index.ts";
-import { didYouMean, isName, listOfNames } from "./names.ts";
+import { didYouMean, isName, listOfNames, nearestFix } from "./names.ts";
 
 /** A cell named in a body, `of: larvae`. In keys it stands for the key of that cell. */
 export interface CellReference {
@@ -194,14 +194,18 @@ export class Body {
       );
   }
 
+  /** A name that has a meaning of its own under this key; a parameter or cell of that name would be hidden by it. */
+  introduceWord(name: string, node: Yaml, path: string): void {
+    this.introduced.push({ name, varies: false, path, from: node.from, to: node.to, line: node.line });
+  }
+
   /** Notes keys of a map that are not allowed there. */
   onlyKeys(entries: readonly YamlEntry[], allowed: readonly string[], owner: string): void {
     for (const entry of entries) {
       if (allowed.includes(entry.key)) continue;
-      this.problem(
-        { from: entry.keyFrom, to: entry.keyTo, line: entry.line },
-        `\`${entry.key}\` is not a key of ${owner}, which takes ${listOfNames(allowed)}.${didYouMean(entry.key, allowed)}`,
-      );
+      const place = { from: entry.keyFrom, to: entry.keyTo, line: entry.line };
+      const message = `\`${entry.key}\` is not a key of ${owner}, which takes ${listOfNames(allowed)}.${didYouMean(entry.key, allowed)}`;
+      this.problem(place, message, nearestFix(entry.key, allowed, place));
     }
   }
 

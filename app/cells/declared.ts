@@ -42,8 +42,8 @@ export function declareNames(drafts: readonly Draft[]): Declarations {
 }
 
 /** A fault of a cell, at a place. */
-export function faultAt(draft: Draft, place: Place, message: string): Problem {
-  return { from: place.from, to: place.to, line: place.line, severity: "error", message, cell: draft.cell.id };
+export function faultAt(draft: Draft, place: Place, message: string, fix?: Problem["fix"]): Problem {
+  return { from: place.from, to: place.to, line: place.line, severity: "error", message, cell: draft.cell.id, fix };
 }
 
 function declareCell(draft: Draft, cells: Map<string, NamedCell>, lines: Map<string, number>): void {
@@ -51,7 +51,13 @@ function declareCell(draft: Draft, cells: Map<string, NamedCell>, lines: Map<str
   if (cell.name === null) return;
   const message = nameFault(cell.name, lines);
   if (message !== null) {
-    draft.faults.push(faultAt(draft, { from: cell.span.from, to: cell.bodyFrom, line: cell.span.line }, message));
+    draft.faults.push(
+      faultAt(
+        draft,
+        { from: cell.span.from, to: Math.max(cell.span.from, cell.bodyFrom - 1), line: cell.span.line },
+        message,
+      ),
+    );
     return;
   }
   lines.set(cell.name, cell.span.line);

@@ -3,8 +3,8 @@ import type { FormulaUse, IntroducedName, ReferenceUse } from "./body.ts";
 import type { Declarations } from "./declared.ts";
 import { faultAt } from "./declared.ts";
 import type { Draft } from "./drafts.ts";
-import { lookUp, placeOfFault } from "./lookup.ts";
-import { didYouMean, listOfNames } from "./names.ts";
+import { fixOfFault, lookUp, placeOfFault } from "./lookup.ts";
+import { didYouMean, listOfNames, nearestFix } from "./names.ts";
 import type { ParameterValues } from "./parameter-values.ts";
 
 /** What a cell reads. */
@@ -78,7 +78,10 @@ function noteFormula(
   values: ParameterValues,
 ): void {
   const { reads: found, faults } = lookUp(use.formula, use.locals, names);
-  for (const fault of faults) draft.faults.push(faultAt(draft, placeOfFault(fault, use, use.base), fault.message));
+  for (const fault of faults) {
+    const fix = fixOfFault(fault, use, use.base);
+    draft.faults.push(faultAt(draft, placeOfFault(fault, use, use.base), fault.message, fix));
+  }
   const isVaried = reads.varied.some((name) => use.locals.includes(name));
   for (const name of found.parameters) {
     reads.parameters.add(name);
@@ -107,7 +110,7 @@ function noteReference(draft: Draft, use: ReferenceUse, reads: DirectReads, name
         ? ` This paper has no ${use.kinds.join(" or ")} cell with a name.`
         : ` There are ${listOfNames(candidates)}.`;
     const message = `\`${use.id}\` is not a cell of this paper; \`${use.path}\` names ${wanted}.${didYouMean(use.id, candidates) || there}`;
-    draft.faults.push(faultAt(draft, use.node, message));
+    draft.faults.push(faultAt(draft, use.node, message, nearestFix(use.id, candidates, use.node)));
   } else if (!use.kinds.includes(cell.kind)) {
     draft.faults.push(
       faultAt(draft, use.node, `\`${use.id}\` is a ${cell.kind} cell; \`${use.path}\` names ${wanted}.`),

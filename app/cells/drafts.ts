@@ -1,7 +1,7 @@
 import type { Cell, Paper, Problem } from "../paper/index.ts";
 import { Body } from "./body.ts";
 import type { Kind } from "./kind.ts";
-import { didYouMean, listOfNames } from "./names.ts";
+import { didYouMean, listOfNames, nearestFix } from "./names.ts";
 import { checkPresentation, presentationKeys, readShow } from "./presentation.ts";
 import { KINDS } from "./registry.ts";
 
@@ -54,7 +54,8 @@ function unknownKind(cell: Cell, text: string): Problem {
   const from = Math.max(cell.span.from, text.indexOf(cell.kind, cell.span.from));
   const kinds = [...KINDS.keys()];
   const message = `\`${cell.kind}\` is not a kind of cell; there are ${listOfNames(kinds)}.${didYouMean(cell.kind, kinds)}`;
-  return { from, to: from + cell.kind.length, line: cell.span.line, severity: "error", message, cell: cell.id };
+  const place = { from, to: from + cell.kind.length, line: cell.span.line };
+  return { ...place, severity: "error", message, cell: cell.id, fix: nearestFix(cell.kind, kinds, place) };
 }
 
 /** Notes unknown and missing keys. */

@@ -1,4 +1,6 @@
 import type { Formula } from "../formulas/index.ts";
+import { nearestSpelling } from "../formulas/index.ts";
+import type { Problem } from "../paper/index.ts";
 import type { Place } from "./body.ts";
 import type { Members } from "./kind.ts";
 import { didYouMean, listOfNames } from "./names.ts";
@@ -28,6 +30,8 @@ export interface NameFault {
   readonly at: number;
   readonly length: number;
   readonly message: string;
+  /** What was probably meant in place of those characters. */
+  readonly meant: string | null;
 }
 
 /** Looks up every name of a formula; `locals` are dummies and earlier keys. */
@@ -39,18 +43,21 @@ export function lookUp(
   const parameters = new Set<string>();
   const cells = new Set<string>();
   const faults: NameFault[] = [];
-  const fault = (at: number, length: number, message: string): void => {
-    faults.push({ at, length, message });
+  const fault = (at: number, length: number, message: string, meant: string | null = null): void => {
+    faults.push({ at, length, message, meant });
   };
 
   const visitName = (name: string, at: number, bound: ReadonlySet<string>): void => {
     if (bound.has(name)) return;
     if (table.parameters.has(name)) parameters.add(name);
-    else fault(at, name.length, unknownName(name, bound, table));
+    else if (table.cells.has(name)) fault(at, name.length, cellAsNumber(name, table));
+    else
+      fault(at, name.length, unknownName(name, bound, table), nearestSpelling(name, [...bound, ...table.parameters]));
   };
   const visitMember = (of: string, member: string, at: number, args: number | null): void => {
     const message = memberFault(of, member, args, table);
-    if (message !== null) fault(at, of.length, message);
+    if (message !== null)
+      fault(at, of.length, message, isKnown(of, table) ? null : nearestSpelling(of, table.cells.keys()));
     else if (table.cells.get(of)?.isParameters === true) parameters.add(member);
     else cells.add(of);
   };
@@ -78,12 +85,24 @@ export function placeOfFault(fault: NameFault, place: Place, base: number | null
   return { from, to: Math.min(from + fault.length, place.to), line: place.line };
 }
 
-function unknownName(name: string, bound: ReadonlySet<string>, table: NameTable): string {
+/** A fix for a misspelt name whose characters stand in the paper as they are. */
+export function fixOfFault(fault: NameFault, place: Place, base: number | null): Problem["fix"] {
+  if (base === null || fault.meant === null) return undefined;
+  const { from, to } = placeOfFault(fault, place, base);
+  return { label: `Write ${fault.meant}`, from, to, insert: fault.meant };
+}
+
+function isKnown(name: string, table: NameTable): boolean {
+  return table.cells.has(name) || table.parameters.has(name);
+}
+
+function cellAsNumber(name: string, table: NameTable): string {
   const cell = table.cells.get(name);
-  if (cell !== undefined) {
-    const ways = waysToRead(name, cell.members);
-    return `\`${name}\` is a ${cell.kind} cell, not a number.${ways === "" ? " It gives no values." : ` It gives ${ways}.`}`;
-  }
+  const ways = waysToRead(name, cell?.members ?? null);
+  return `\`${name}\` is a ${cell?.kind} cell, not a number. It gives ${ways === "" ? "no values" : ways}.`;
+}
+
+function unknownName(name: string, bound: ReadonlySet<string>, table: NameTable): string {
   const known = [...bound, ...table.parameters];
   return `\`${name}\` is not a parameter of this paper${bound.size > 0 ? ", nor a name given here" : ""}.${didYouMean(name, known)}`;
 }

@@ -1,4 +1,5 @@
 import { nearestSpelling } from "../formulas/index.ts";
+import type { Problem } from "../paper/index.ts";
 
 /** Names of parameters, cells, columns and dummies: letters, digits and underscores, starting with a letter. */
 export function isName(text: string): boolean {
@@ -9,6 +10,16 @@ export function isName(text: string): boolean {
 export function didYouMean(text: string, candidates: Iterable<string>): string {
   const nearest = nearestSpelling(text, candidates);
   return nearest === null ? "" : ` Did you mean \`${nearest}\`?`;
+}
+
+/** The nearest candidate in place of a stretch of the text, to be accepted as it stands. */
+export function nearestFix(
+  text: string,
+  candidates: Iterable<string>,
+  place: { from: number; to: number },
+): Problem["fix"] {
+  const insert = nearestSpelling(text, candidates);
+  return insert === null ? undefined : { label: `Write ${insert}`, from: place.from, to: place.to, insert };
 }
 
 /** `a`, `b` and `c`, in code marks. */

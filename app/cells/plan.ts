@@ -10,7 +10,7 @@ import { findDependencies } from "./dependencies.ts";
 import type { Draft } from "./drafts.ts";
 import { readDrafts } from "./drafts.ts";
 import { Keys } from "./keys.ts";
-import { lookUp, placeOfFault } from "./lookup.ts";
+import { fixOfFault, lookUp, placeOfFault } from "./lookup.ts";
 import type { ParameterValues } from "./parameter-values.ts";
 import { evaluateParameters, parameterWords } from "./parameter-values.ts";
 import { Tasks } from "./tasks.ts";
@@ -105,7 +105,8 @@ function looksFaults(draft: Draft, names: Declarations): Problem[] {
 
 function numberProblems(number: BoundNumber, names: Declarations): Problem[] {
   const place = { from: number.formulaFrom, to: number.formulaFrom + number.formula.length, line: number.span.line };
-  const problem = (at: { from: number; to: number; line: number }, message: string): Problem => ({
+  const problem = (at: { from: number; to: number; line: number }, message: string, fix?: Problem["fix"]): Problem => ({
+    fix,
     ...at,
     severity: "error",
     message,
@@ -116,7 +117,9 @@ function numberProblems(number: BoundNumber, names: Declarations): Problem[] {
     return [problem({ from, to: place.from + parsed.problem.to, line: place.line }, parsed.problem.message)];
   }
   const { faults } = lookUp(parsed.formula, [], names);
-  return faults.map((fault) => problem(placeOfFault(fault, place, place.from), fault.message));
+  return faults.map((fault) =>
+    problem(placeOfFault(fault, place, place.from), fault.message, fixOfFault(fault, place, place.from)),
+  );
 }
 
 /** Each problem once, in the order of the text, those apart that the paper's own reading has found. */

@@ -131,7 +131,7 @@ const CASES: readonly Case[] = [
   {
     what: "a reserved name",
     text: LARVAE + cell("formula sqrt", "a: 1"),
-    at: "```formula sqrt\n",
+    at: "```formula sqrt",
     line: "formula sqrt",
     says: ["`sqrt` has a meaning of its own"],
   },
@@ -148,6 +148,13 @@ const CASES: readonly Case[] = [
     at: "larvae",
     line: "rows: {larvae",
     says: ["is the name of a cell"],
+  },
+  {
+    what: "the turning value hidden by a parameter",
+    text: LARVAE.replace("beta: 1", "beta: 1\ns0: 3") + cell("profile w", "of: larvae", "s: [0, s0]"),
+    at: "[0, s0]",
+    line: "s: [0, s0]",
+    says: ["`s0` is the name of a parameter"],
   },
   {
     what: "a column that shadows a parameter",
@@ -224,6 +231,25 @@ describe("each problem stands at its line, and says what is allowed", () => {
       for (const words of says) expect(problem?.message).toContain(words);
     });
   }
+
+  test("a fix, accepted as it stands, mends the paper", () => {
+    const whole = `${LARVAE}${cell("counts K", "of: larvae", "start: 1")}${cell("formula f", "a: 2*beta + K.mean")}\nIt is :value[beta + K(1)].\n`;
+    expect(planOf(whole).problems).toEqual([]);
+    const damages: readonly [string, string][] = [
+      ["counts K", "count K"],
+      ["start: 1", "strat: 1"],
+      ["of: larvae", "of: lavrae"],
+      ["2*beta", "2*bata"],
+      ["+ K.mean", "+ k.mean"],
+      ["[beta +", "[bete +"],
+    ];
+    for (const [right, wrong] of damages) {
+      const text = whole.replace(right, wrong);
+      const fix = planOf(text).problems.find((problem) => problem.fix !== undefined)?.fix;
+      if (fix === undefined) throw new Error(`No fix is offered for ${wrong}.`);
+      expect(text.slice(0, fix.from) + fix.insert + text.slice(fix.to)).toBe(whole);
+    }
+  });
 
   test("the other cells still compute", () => {
     const text = `${LARVAE}${cell("counts K", "of: larvae", "start: -1")}${cell("counts L", "of: larvae", "start: 1")}`;

@@ -1,4 +1,5 @@
 import type { Formula } from "../../formulas/index.ts";
+import { freeNames } from "../../formulas/index.ts";
 import type { Trajectory } from "../../solvers/index.ts";
 import { profileAt, profileComplementAt, profileConstants } from "../../solvers/index.ts";
 import type { Body, CellReference } from "../body.ts";
@@ -36,7 +37,7 @@ export interface ProfileData {
   readonly left: readonly string[];
 }
 
-const POINTS = 161;
+const POINTS = 121;
 const MOST_CURVES = 24;
 /** How near its limit w is to be at the right end of the default range. */
 const NEAR_LIMIT = 1e-3;
@@ -51,6 +52,8 @@ export const PROFILE: KindOf<ProfileCell, ProfileData> = {
     const s = list === null ? [{ node: "number", value: 0 } as const] : body.listAt(list, "s", ["s0"]);
     if (list !== null && s.length > MOST_CURVES)
       body.problem(list, `${s.length} values of \`s\` are given; a profile has at most ${MOST_CURVES}.`);
+    if (list !== null && s.some((formula) => freeNames(formula).names.includes("s0")))
+      body.introduceWord("s0", list, "s");
     return { of: body.reference("of", ["process"]), s, x: readRange(body) };
   },
 
