@@ -71,7 +71,13 @@ export class Desk {
     this.nonce = nonce;
     this.shown = options.first.shown;
     this.requests = requestsOf(options.paperId);
-    this.host = { commands: this.commands(), writes: options.writes, macros: {}, views: new Map<string, ShownView>() };
+    this.host = {
+      commands: this.commands(),
+      writes: options.writes,
+      macros: {},
+      views: new Map<string, ShownView>(),
+      columnWidth: 660,
+    };
     this.fetcher = new ResultFetcher(this.requests, (results) => this.reading?.tellResults(results));
     this.session = openSession({
       ...options,
@@ -205,6 +211,7 @@ export class Desk {
 
   private onModel(model: SheetModel): void {
     this.host.macros = model.macros;
+    this.host.columnWidth = this.view?.contentDOM.clientWidth || this.host.columnWidth;
     for (const [slot, view] of Object.entries(model.views)) {
       if (view === null) this.host.views.delete(slot);
       else this.host.views.set(slot, view);

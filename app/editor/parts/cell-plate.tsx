@@ -1,4 +1,4 @@
-import { memo } from "react";
+import { memo, type ReactNode, useCallback, useState } from "react";
 import type { CellView } from "../../cells/index.ts";
 import { type Figure, FigurePlate, type TableData } from "../../figures/index.ts";
 import type { CellFace } from "../model/types.ts";
@@ -14,8 +14,27 @@ interface Props {
   readonly host: SheetHost;
 }
 
-/** Kept from the last drawing when the figure is the same object: typing above a plate does not draw it again. */
-const Plate = memo(({ figure }: { readonly figure: Figure }) => <FigurePlate figure={figure} width={660} />);
+interface PlateProps {
+  readonly figure: Figure;
+  /** Of the column, before the plate's own is known [px]. */
+  readonly width: number;
+}
+
+/** A figure as wide as the column. The same figure in the same width is not drawn again when text above it changes. */
+const Plate = memo(({ figure, width }: PlateProps) => {
+  const [measured, setMeasured] = useState(0);
+  const watch = useCallback((place: HTMLDivElement | null) => {
+    if (place === null) return;
+    const observer = new ResizeObserver(() => setMeasured(Math.round(place.clientWidth)));
+    observer.observe(place);
+    return () => observer.disconnect();
+  }, []);
+  return (
+    <div ref={watch}>
+      <FigurePlate figure={figure} width={measured > 0 ? measured : width} />
+    </div>
+  );
+});
 const Rows = memo(({ table }: { readonly table: TableData }) => <TablePlate table={table} />);
 
 /** A cell as it stands on the sheet: what it prints, its caption, and how it came to be. */
@@ -30,7 +49,7 @@ export function CellPlate({ face, view, open, host }: Props) {
   }
   return (
     <section className={`hl-plate hl-plate-${face.state}`} aria-label={`${first.title}, ${STATE_WORDS[face.state]}`}>
-      <Part part={first.part} view={view} face={face}>
+      <Part part={first.part} view={view} face={face} width={host.columnWidth}>
         <p className="hl-caption">
           <b>{first.title}.</b>
           {MARKED[face.state] ? <span className="hl-dagger">{MARKED[face.state]}</span> : null}{" "}
@@ -39,7 +58,7 @@ export function CellPlate({ face, view, open, host }: Props) {
         <StateLine face={face} open={open} host={host} />
       </Part>
       {others.map(({ part, title }) => (
-        <Part key={part} part={part} view={view} face={face}>
+        <Part key={part} part={part} view={view} face={face} width={host.columnWidth}>
           <p className="hl-caption">
             <b>{title}.</b>
           </p>
@@ -58,15 +77,18 @@ interface PartProps {
   readonly part: "figure" | "table" | "points";
   readonly view: CellView | null;
   readonly face: CellFace;
-  readonly children: React.ReactNode;
+  readonly width: number;
+  readonly children: ReactNode;
 }
 
 /** A figure has its caption beneath it, a table above. */
-function Part({ part, view, face, children }: PartProps) {
+function Part({ part, view, face, width, children }: PartProps) {
   if (part === "figure") {
     return (
       <>
-        <div className="hl-figure">{view?.figure ? <Plate figure={view.figure} /> : <Frame face={face} />}</div>
+        <div className="hl-figure">
+          {view?.figure ? <Plate figure={view.figure} width={width} /> : <Frame face={face} />}
+        </div>
         {children}
       </>
     );

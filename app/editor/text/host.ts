@@ -20,6 +20,8 @@ export interface SheetHost {
   /** TeX macros of the front matter, of the newest answer. */
   macros: Readonly<Record<string, string>>;
   readonly views: Map<string, ShownView>;
+  /** Of the text [px]; plates are drawn to it. */
+  columnWidth: number;
 }
 
 /** The page around the text; one for each editor. The last one given wins, and there must be one. */
