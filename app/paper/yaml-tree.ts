@@ -76,6 +76,9 @@ function problemOf(fault: YamlFault, at: (index: number) => number, lines: Lines
   return fix === undefined ? problem : { ...problem, fix: { ...fix, from: at(fix.from), to: at(fix.to) } };
 }
 
+/** YAML's `? key` at the beginning of a line or of an entry; a value that ends in a question mark is none. */
+const EXPLICIT_KEY = /(?:^|[\r\n{[,]|-[ \t])[ \t]*\?[ \t]*$/;
+
 class Converter {
   constructor(
     private readonly source: string,
@@ -144,7 +147,7 @@ class Converter {
 
   private entry(pair: Pair, fallback: number): YamlEntry {
     const [from, to] = rangeOf(pair.key, fallback);
-    if (!isScalar(pair.key) || (from < to && this.source.slice(0, from).trimEnd().endsWith("?"))) {
+    if (!isScalar(pair.key) || (from < to && EXPLICIT_KEY.test(this.source.slice(0, from)))) {
       this.report({ from, to, message: "A key is one plain word, with a colon and a space after it." });
     } else this.refuseProperties(pair.key, from, to);
     const key = isScalar(pair.key) ? String(pair.key.value ?? "") : this.source.slice(from, to);

@@ -1,7 +1,7 @@
 import fc from "fast-check";
 import type { Nodes } from "mdast";
 import { describe, expect, test } from "vitest";
-import type { Paper, PaperNode, Yaml } from "../../app/paper/index.ts";
+import type { Cell, Paper, PaperNode, Yaml } from "../../app/paper/index.ts";
 import { outline, plainText, readInline, readPaper, walk } from "../../app/paper/index.ts";
 import { readParsed } from "../../app/paper/read.ts";
 import { parseTree } from "../../app/paper/syntax/tree.ts";
@@ -140,6 +140,11 @@ describe("any text whatsoever gives a paper", () => {
   });
 });
 
+/** A cell without its end: blank lines at the end of an unclosed one may be counted to it or not. */
+function heart({ id, slot, kind, name, body }: Cell): unknown {
+  return { id, slot, kind, name, entries: body?.entries };
+}
+
 /** Types and words, with neighbouring texts joined: how brackets that are no reference are cut does not matter. */
 function gist(nodes: readonly Nodes[]): unknown[] {
   const parts: unknown[] = [];
@@ -149,6 +154,8 @@ function gist(nodes: readonly Nodes[]): unknown[] {
       if (typeof last === "string") parts[parts.length - 1] = last + node.value;
       else parts.push(node.value);
     } else if ("children" in node) parts.push({ [node.type]: gist(node.children) });
+    else if (node.type === "cell") parts.push(heart(node.cell));
+    else if ("value" in node) parts.push({ [node.type]: node.value.trimEnd() });
     else parts.push({ ...node, position: undefined });
   }
   return parts;
@@ -170,7 +177,7 @@ test("parsing in pieces gives what parsing the whole text gives", () => {
       const inPieces = readPaper(text, "");
       const whole = readParsed(text, "", parseTree(text));
       expect(gist(inPieces.root.children)).toEqual(gist(whole.root.children));
-      expect(inPieces.cells).toEqual(whole.cells);
+      expect(inPieces.cells.map(heart)).toEqual(whole.cells.map(heart));
       expect(inPieces.numbers).toEqual(whole.numbers);
     }),
     { numRuns: 300 },

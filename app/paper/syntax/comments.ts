@@ -16,12 +16,14 @@ declare module "micromark-util-types" {
  * Comments `<!-- … -->`: among words, and in lines of their own (there they may hold blank lines). A comment that is
  * not closed is text. Made anew for each reading, since each remembers where no closing is left: else a text of many
  * openings would take quadratic time.
+ * @param text the text that is read: nothing is begun that its end leaves open
  */
-export function comments(): { amongWords: Construct; inLines: Construct } {
-  return { amongWords: commentConstruct(false), inLines: commentConstruct(true) };
+export function comments(text: string): { amongWords: Construct; inLines: Construct } {
+  const lastClosing = text.lastIndexOf("-->");
+  return { amongWords: commentConstruct(false, lastClosing), inLines: commentConstruct(true, lastClosing) };
 }
 
-function commentConstruct(inLines: boolean): Construct {
+function commentConstruct(inLines: boolean, lastClosing: number): Construct {
   /** No comment that opens between these offsets is closed. */
   let unclosed = { from: -1, to: -1 };
 
@@ -34,7 +36,7 @@ function commentConstruct(inLines: boolean): Construct {
     let dashes = 0;
 
     return (code) => {
-      if (start >= unclosed.from && start <= unclosed.to) return nok(code);
+      if (start > lastClosing || (start >= unclosed.from && start <= unclosed.to)) return nok(code);
       effects.enter("paperComment");
       return inOpening(code);
     };
@@ -43,7 +45,10 @@ function commentConstruct(inLines: boolean): Construct {
       if (code !== opening[matched]) return nok(code);
       run.consume(code);
       matched++;
-      return matched === opening.length ? inside : inOpening;
+      if (matched < opening.length) return inOpening;
+      // The dashes of the opening may be those of the end: <!--> is a comment in CommonMark.
+      dashes = 2;
+      return inside;
     }
 
     function inside(code: Code): State | undefined {

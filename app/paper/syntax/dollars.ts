@@ -1,5 +1,5 @@
 import { markdownLineEnding, markdownSpace } from "micromark-util-character";
-import type { Code, Construct, Effects, State, TokenizeContext, Tokenizer } from "micromark-util-types";
+import type { Code, Construct, Effects, State, TokenizeContext } from "micromark-util-types";
 import { SourceRun } from "./source-run.ts";
 
 const dollar = 36;
@@ -96,8 +96,25 @@ function tokenizeMath(this: TokenizeContext, effects: Effects, ok: State, nok: S
 /**
  * A display in lines of its own: `$$…$$`, on one line or several, begun at the start of a line and with nothing after
  * its end. A blank line ends the attempt, so that a display being typed does not swallow the paper.
+ * @param text the text that is read: nothing is begun that no `$$` closes before a blank line
  */
-export const display: Construct = { name: "paperDisplay", tokenize: tokenizeDisplay as Tokenizer, concrete: true };
+export function displayIn(text: string): Construct {
+  return {
+    name: "paperDisplay",
+    concrete: true,
+    tokenize(effects, ok, nok) {
+      const start = tokenizeDisplay.call(this, effects, ok, nok);
+      return isClosed(text, this.now().offset) ? start : nok;
+    },
+  };
+}
+
+/** Whether `$$` stands between a display's beginning and the next blank line. */
+function isClosed(text: string, from: number): boolean {
+  const next = /\$\$|(?:\r\n?|\n)[ \t>]*(?:\r\n?|\n)/g;
+  next.lastIndex = from + 2;
+  return next.exec(text)?.[0] === "$$";
+}
 
 function tokenizeDisplay(this: TokenizeContext, effects: Effects, ok: State, nok: State): State {
   const parser = this.parser;

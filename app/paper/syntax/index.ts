@@ -57,7 +57,7 @@ function definedNames(text: string): Map<string, string> {
 function definitionsFor(piece: string, names: ReadonlyMap<string, string>): string {
   if (names.size === 0) return "";
   const used = new Set<string>();
-  for (const match of piece.matchAll(/\[([^[\]]{1,200})\](?!:)/g)) {
+  for (const match of piece.matchAll(/\[([^[\]]{1,200})\]/g)) {
     const name = names.get(fold(match[1] ?? ""));
     if (name !== undefined) used.add(name);
   }

@@ -34,7 +34,7 @@ export function cutIntoPieces(text: string): Piece[] {
     if (blank && beginsBlock(line)) cut(start);
     blank = /^[ \t]*$/.test(line);
     if (/^ {0,3}<!--/.test(line)) {
-      const close = text.indexOf("-->", start + 4);
+      const close = text.indexOf("-->", text.indexOf("<!--", start) + 2);
       if (close >= 0) {
         const after = text.indexOf("\n", close);
         const next = after < 0 ? text.length : after + 1;

@@ -10,7 +10,7 @@ import { gfmTable } from "micromark-extension-gfm-table";
 import type { Extension as SyntaxExtension } from "micromark-util-types";
 import { comments } from "./comments.ts";
 import { directive, environmentFence } from "./directives.ts";
-import { display, mathAmongWords } from "./dollars.ts";
+import { displayIn, mathAmongWords } from "./dollars.ts";
 
 /** `:value[…]{…}` and its like, not yet looked into. */
 export interface RawDirective {
@@ -31,7 +31,7 @@ const treeOfFrontMatter = frontmatterFromMarkdown(["yaml"]);
 /** A text without front matter as an mdast tree. */
 export function parseTree(text: string): Root {
   return fromMarkdown(text, {
-    extensions: [gfmTable(), gfmFootnote(), paperSyntax()],
+    extensions: [gfmTable(), gfmFootnote(), paperSyntax(text)],
     mdastExtensions: [treeOfTables, treeOfFootnotes, treeOfPaper],
   });
 }
@@ -57,16 +57,16 @@ const blockConstructs = [
 /** Paragraphs alone: marks of headings, lists and other blocks are plain characters. */
 export function parseParagraphs(text: string): Root {
   return fromMarkdown(text, {
-    extensions: [paperSyntax(), { disable: { null: blockConstructs } }],
+    extensions: [paperSyntax(text), { disable: { null: blockConstructs } }],
     mdastExtensions: [treeOfPaper],
   });
 }
 
-function paperSyntax(): SyntaxExtension {
-  const { amongWords, inLines } = comments();
+function paperSyntax(text: string): SyntaxExtension {
+  const { amongWords, inLines } = comments(text);
   return {
     text: { 36: mathAmongWords, 58: directive, 60: amongWords },
-    flow: { 36: display, 58: environmentFence, 60: inLines },
+    flow: { 36: displayIn(text), 58: environmentFence, 60: inLines },
     disable: { null: ["htmlFlow", "htmlText"] },
   };
 }
