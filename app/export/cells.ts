@@ -1,6 +1,6 @@
 import { figureToPgfplots, type TableData, type TableEntry } from "../figures/index.ts";
 import type { CellNode, PrintedPart } from "../paper/index.ts";
-import type { SetCell } from "../print/index.ts";
+import { provenanceLine, type SetCell } from "../print/index.ts";
 import { wordsTex, writeInline } from "./inline.ts";
 import type { Printing } from "./printing.ts";
 import type { LatexWriter } from "./writer.ts";
@@ -72,6 +72,8 @@ function writeCaption(
   const remarks = part.part === "figure" ? (set.view?.figure?.remarks ?? []) : (tableOf(part, set)?.remarks ?? []);
   for (const remark of remarks) out.write(` ${wordsTex(remark, printing, line)}`);
   if (set.note) out.write(` \\textsuperscript{${set.note.mark}}~${wordsTex(set.note.words, printing, line)}`);
+  const made = printing.provenance && first ? provenanceLine(set) : "";
+  if (made !== "") out.write(` {\\footnotesize ${printing.text(made, line)}}`);
   printing.moving = false;
   out.from(line);
   out.write("}");

@@ -22,6 +22,12 @@ export interface LatexPaper {
 export interface LatexOptions {
   /** The paper's BibTeX, given along as it is. */
   readonly bibliography?: string;
+  /** Under each figure and table: how its result was computed, when and for whom. */
+  readonly provenance?: boolean;
+  /** Numbers every fifth line. */
+  readonly lineNumbers?: boolean;
+  /** Leaves out the authors, for referees. */
+  readonly anonymous?: boolean;
 }
 
 /**
@@ -37,11 +43,12 @@ export function paperToLatex(
   options: LatexOptions = {},
 ): LatexPaper {
   const macros = paperMacros(paper.front.macros);
-  const printing = new Printing(setPaper(paper, plan, results, shown), macros.known);
+  const printing = new Printing(setPaper(paper, plan, results, shown), macros.known, options.provenance ?? false);
   for (const problem of macros.problems) printing.problem(paper.front.span?.line ?? 1, problem);
   const body = new LatexWriter();
   body.line("\\begin{document}");
-  writeFront(paper.front, printing, body);
+  if (options.lineNumbers) body.line("\\linenumbers");
+  writeFront(options.anonymous ? withoutNames(paper.front) : paper.front, printing, body);
   writeBlocks(paper.root.children, printing, body);
   const bibliography = bibliographyTex(paper.bibliography, printing);
   body.from(0);
@@ -57,6 +64,7 @@ export function paperToLatex(
   const text = body.text();
   const all = text + bibliography;
   const head = preamble({
+    lineNumbers: options.lineNumbers ?? false,
     greek: /[\u0370-\u03ff\u1f00-\u1fff]/.test(all),
     cyrillic: all.includes("\\cyr{"),
     macros: macros.definitions,
@@ -74,6 +82,8 @@ export function paperToLatex(
     problems: [...printing.problems].sort((a, b) => a.line - b.line),
   };
 }
+
+const withoutNames = (front: FrontMatter): FrontMatter => ({ ...front, authors: [] });
 
 function writeFront(front: FrontMatter, printing: Printing, out: LatexWriter): void {
   const line = front.span?.line ?? 1;

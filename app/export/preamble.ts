@@ -4,6 +4,7 @@ import { CYRILLIC } from "./characters.ts";
 export interface PreambleNeeds {
   readonly greek: boolean;
   readonly cyrillic: boolean;
+  readonly lineNumbers: boolean;
   /** Definitions of the paper's macros, one a line. */
   readonly macros: readonly string[];
 }
@@ -30,6 +31,7 @@ export function preamble(needs: PreambleNeeds): readonly string[] {
     "\\sisetup{group-digits=integer, group-minimum-digits=5, exponent-product=\\times, retain-zero-uncertainty=true}",
     "\\usepackage{pgfplots}",
     "\\pgfplotsset{compat=1.18}",
+    ...(needs.lineNumbers ? ["\\usepackage[mathlines]{lineno}", "\\modulolinenumbers[5]"] : []),
     "\\usepackage[hidelinks,hyperfootnotes=false,unicode]{hyperref}",
     // Words copied and searched in the PDF are the words of the paper.
     "\\input{glyphtounicode}",

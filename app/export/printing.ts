@@ -15,6 +15,8 @@ export interface LatexFile {
 export class Printing {
   readonly paper: SetPaper;
   readonly macros: KnownMacros;
+  /** Whether how a result was computed is said under it. */
+  readonly provenance: boolean;
   readonly names = new LatexNames();
   readonly problems: PrintProblem[] = [];
   readonly files: LatexFile[] = [];
@@ -24,7 +26,8 @@ export class Printing {
   /** Within a heading or caption, where LaTeX cannot put a footnote. */
   moving = false;
 
-  constructor(paper: SetPaper, macros: KnownMacros) {
+  constructor(paper: SetPaper, macros: KnownMacros, provenance: boolean) {
+    this.provenance = provenance;
     this.paper = paper;
     this.macros = macros;
     this.footnotes = footnoteDefinitions(paper.paper.root);

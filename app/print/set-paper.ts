@@ -159,3 +159,35 @@ function shownFrom(planned: PlannedCell, result: CellResult): ShownCell {
     workingKey: planned.workingKey ?? "",
   };
 }
+
+/** What somebody who sends a paper to print should know first. */
+export interface Doubts {
+  /** Numbers and printed cells whose result is out of date. */
+  readonly outOfDate: number;
+}
+
+export function doubtsOf(set: SetPaper): Doubts {
+  const numbers = set.paper.numbers.filter((number) => set.number(number).note !== null).length;
+  const cells = set.paper.cells
+    .map((cell) => set.cell(cell))
+    .filter((cell) => cell.note !== null && (cell.planned?.show.length ?? 0) > 0);
+  return { outOfDate: numbers + cells.length };
+}
+
+const MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"];
+
+/**
+ * The provenance line: "Slit contour, 310 nodes; D = 0.5; halfline 1; 4 ms · Inês, 1 Dec 2026, 14:31 UTC". In UTC, since
+ * neither the server nor a printed page knows the reader's own time.
+ */
+export function provenanceLine({ provenance: known }: SetCell): string {
+  if (!known || known.words === "") return "";
+  const who = [known.by, known.at === null ? "" : utcWords(known.at)].filter((part) => part).join(", ");
+  return who === "" ? known.words : `${known.words} · ${who}`;
+}
+
+function utcWords(iso: string): string {
+  const time = new Date(iso);
+  if (Number.isNaN(time.getTime())) return "";
+  return `${time.getUTCDate()} ${MONTHS[time.getUTCMonth()]} ${time.getUTCFullYear()}, ${time.toISOString().slice(11, 16)} UTC`;
+}

@@ -1,0 +1,116 @@
+import { type Figure, FigurePlate, type TableData } from "../figures/index.ts";
+import type { CellNode, PrintedPart } from "../paper/index.ts";
+import { provenanceLine, type SetCell } from "../print/index.ts";
+import { Formula, Inline, NumberText, Words } from "./inline.tsx";
+import { anchor, type Setting } from "./setting.ts";
+
+/** Widths a plate is laid out for: text in it keeps its size, so a narrow window gets a plate of its own. */
+const WIDE = 500;
+const NARROW = 350;
+
+/** What a cell prints: its figure above its caption, its tables beneath theirs. Nothing for a cell that prints nothing. */
+export function CellParts({ node, setting }: { readonly node: CellNode; readonly setting: Setting }) {
+  const set = setting.set.cell(node.cell);
+  return node.parts.map((part, i) => {
+    const id = i === 0 && node.cell.name !== null ? anchor.label(node.cell.name) : undefined;
+    const caption = <Caption node={node} part={part} set={set} first={i === 0} setting={setting} />;
+    if (part.part === "figure") {
+      return (
+        <figure key={part.part} className="g-figure" id={id}>
+          {set.view?.figure ? <Plates figure={set.view.figure} /> : <Absent part={part} set={set} />}
+          <figcaption>{caption}</figcaption>
+        </figure>
+      );
+    }
+    const table = part.part === "points" ? set.view?.points : set.view?.table;
+    return (
+      <figure key={part.part} className="g-figure" id={id}>
+        <figcaption>{caption}</figcaption>
+        {table ? <ResultTable table={table} setting={setting} /> : <Absent part={part} set={set} />}
+      </figure>
+    );
+  });
+}
+
+function Plates({ figure }: { readonly figure: Figure }) {
+  return (
+    <>
+      <div className="g-plate-wide">
+        <FigurePlate figure={figure} width={WIDE} />
+      </div>
+      <div className="g-plate-narrow">
+        <FigurePlate figure={figure} width={NARROW} />
+      </div>
+    </>
+  );
+}
+
+function Absent({ part, set }: { readonly part: PrintedPart; readonly set: SetCell }) {
+  return (
+    <p className="g-absent">
+      <span className="g-dagger">‡</span> {`${part.noun} ${part.number} has no result. ${set.reason}`}
+    </p>
+  );
+}
+
+interface CaptionProps {
+  readonly node: CellNode;
+  readonly part: PrintedPart;
+  readonly set: SetCell;
+  readonly first: boolean;
+  readonly setting: Setting;
+}
+
+function Caption({ node, part, set, first, setting }: CaptionProps) {
+  const remarks = (part.part === "figure" ? set.view?.figure?.remarks : set.view?.table?.remarks) ?? [];
+  return (
+    <>
+      <p className="g-caption">
+        <b>{`${part.noun} ${part.number}.`}</b>
+        {set.note ? <sup className="g-dagger">†</sup> : null}{" "}
+        {first ? <Inline nodes={node.caption} setting={setting} /> : null}
+        {remarks.map((remark) => (
+          <span key={remark}>
+            {" "}
+            <Words words={remark} setting={setting} />
+          </span>
+        ))}
+      </p>
+      {set.note ? (
+        <p className="g-provenance">
+          <span className="g-dagger">† Out of date.</span> <Words words={set.note.words} setting={setting} />
+        </p>
+      ) : null}
+      {first && provenanceLine(set) !== "" ? <p className="g-provenance">{provenanceLine(set)}</p> : null}
+    </>
+  );
+}
+
+function ResultTable({ table, setting }: { readonly table: TableData; readonly setting: Setting }) {
+  return (
+    <div className="g-grid">
+      <table className="g-table g-results">
+        <thead>
+          <tr>
+            {table.columns.map((column) => (
+              <th key={column.name} scope="col">
+                {column.tex ? <Formula tex={column.head} setting={setting} /> : column.head}
+              </th>
+            ))}
+          </tr>
+        </thead>
+        <tbody>
+          {table.rows.map((row, i) => (
+            <tr key={row[0]?.full || i}>
+              {row.map((entry, k) => (
+                <td key={table.columns[k]?.name ?? k}>
+                  <NumberText text={entry.text} />
+                </td>
+              ))}
+            </tr>
+          ))}
+        </tbody>
+      </table>
+    </div>
+  );
+}
