@@ -6,9 +6,11 @@ import { readSession } from "../app/access/index.server.ts";
 import type { AppConfig, Services } from "../app/context.ts";
 import type { Database } from "../db/index.server.ts";
 import { Computations } from "./compute/index.ts";
+import { prepareDemo } from "./demo.ts";
 import type { Environment } from "./env.server.ts";
 import type { StandIn, StandInClient } from "./fakes/index.ts";
 import { attachSockets, type Identify, LiveTexts, type SocketsOptions } from "./sync/index.ts";
+import { TexPdfService } from "./tex/index.ts";
 
 export interface ServiceParts {
   readonly knex: Knex;
@@ -16,6 +18,8 @@ export interface ServiceParts {
   readonly environment: Environment;
   readonly config: AppConfig;
   readonly log: Logger;
+  /** Folder of the specimen paper's text. */
+  readonly specimenFolder: string;
 }
 
 /** The services, with their sockets and the way to end them. */
@@ -69,10 +73,15 @@ export async function createServices(parts: ServiceParts): Promise<RunningServic
     secondsAnHour: environment.solverSecondsAnHour,
     onProblem: (error, where) => log.error({ err: error, where }, "computations"),
   });
+  if (environment.mode === "demo") {
+    await prepareDemo({ database, texts, compute, folder: parts.specimenFolder, provider: "github" }).catch((error) =>
+      log.error({ err: error }, "demo"),
+    );
+  }
   return {
     texts,
     compute,
-    pdf: absent("pdf"),
+    pdf: new TexPdfService({ log }),
     config,
     log,
     attachSockets: (server, options) => attachSockets(server, { ...options, texts, database, identify, onProblem }),
@@ -81,12 +90,4 @@ export async function createServices(parts: ServiceParts): Promise<RunningServic
       await texts.close();
     },
   };
-}
-
-/** Stands where a service is being fitted: every use of it fails with its name. */
-function absent<Service extends object>(name: string): Service {
-  return new Proxy({} as Service, {
-    get: (_target, member) => () =>
-      Promise.reject(new Error(`The service "${name}" is not fitted; ${String(member)} was asked of it.`)),
-  });
 }

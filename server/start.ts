@@ -5,7 +5,7 @@ import type { RequestHandler } from "express";
 import type { Logger } from "pino";
 import { connect, migrateToLatest, openDatabase } from "../db/index.server.ts";
 import type { makeHandler } from "./app.ts";
-import type { Environment } from "./env.server.ts";
+import { type Environment, EnvironmentError } from "./env.server.ts";
 import { startGithubStandIn } from "./fakes/index.ts";
 import { exactOrigin, httpApp, loopbackOrigin } from "./http/index.ts";
 import { appConfig, createServices, drawStandInClient } from "./services.ts";
@@ -52,7 +52,14 @@ export async function startServer(environment: Environment, log: Logger): Promis
   const port = await listen(server, environment.host, environment.port);
   const publicOrigin = environment.publicUrl ?? `http://localhost:${port}`;
   const config = appConfig(environment, publicOrigin, standIn);
-  const services = await createServices({ knex, database, environment, config, log });
+  const services = await createServices({
+    knex,
+    database,
+    environment,
+    config,
+    log,
+    specimenFolder: join(root, "db/specimen"),
+  });
   const isOwnOrigin = standIn ? loopbackOrigin(() => port) : exactOrigin(publicOrigin);
   const pages = await loadPages(server, environment);
 
@@ -131,7 +138,10 @@ function socketOrigins(publicOrigin: string, standIn: boolean, port: number): st
 
 function listen(server: Server, host: string, port: number): Promise<number> {
   return new Promise((done, fail) => {
-    server.once("error", fail);
+    server.once("error", (error: NodeJS.ErrnoException) => {
+      const taken = `Port ${port} of ${host} is in use by another program. Give another one by PORT.`;
+      fail(error.code === "EADDRINUSE" ? new EnvironmentError([taken]) : error);
+    });
     server.listen(port, host, () => {
       const address = server.address();
       if (address === null || typeof address === "string") fail(new Error(`${host}:${port} has no port.`));

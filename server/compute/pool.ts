@@ -5,7 +5,9 @@ import type { CellResult, CellTask, Outcome } from "../../app/cells/types.ts";
 import type { PaperText } from "../../app/context.ts";
 import type { ComputeJob, PlannedWork } from "./worker.ts";
 
-const PLAN_LIMIT_MS = 20_000;
+const HEAP_MB = 512;
+/** With the start of the thread, where it has to be started. */
+const PLAN_LIMIT_MS = 60_000;
 const IDLE_MS = 60_000;
 
 export interface PoolOptions {
@@ -13,8 +15,10 @@ export interface PoolOptions {
   readonly threads: number;
   /** Longest that one cell may compute. */
   readonly cellLimitMs: number;
-  /** Memory of a thread's JavaScript heap. Typed arrays are not counted: kinds bound the size of their problems. */
-  readonly heapMb: number;
+  /** Memory of a thread's JavaScript heap (512). Typed arrays are not counted: kinds bound the size of their problems. */
+  readonly heapMb?: number;
+  /** A thread died without a cell. */
+  readonly onThreadError?: (error: unknown) => void;
   /** File of the worker, if not the one beside this file. */
   readonly worker?: string;
 }
@@ -55,10 +59,12 @@ export class Pool {
       filename: options.worker ?? workerFile(),
       idleTimeout: IDLE_MS,
       minThreads: 1,
-      resourceLimits: { maxOldGenerationSizeMb: options.heapMb },
+      resourceLimits: { maxOldGenerationSizeMb: options.heapMb ?? HEAP_MB },
     };
     this.#cells = new Piscina({ ...shared, maxThreads: options.threads });
     this.#plans = new Piscina({ ...shared, maxThreads: 1 });
+    // A thread that dies without a cell is replaced; one that dies over a cell fails that cell (`#run`).
+    for (const threads of [this.#cells, this.#plans]) threads.on("error", options.onThreadError ?? (() => {}));
   }
 
   /** Reads and plans a text. @throws StoppedError when it takes too long */
@@ -87,12 +93,7 @@ export class Pool {
     await this.#thread(cancel);
     try {
       await hooks.begun();
-      const from = performance.now();
-      try {
-        return await this.#run(task, results, hooks.progress, cancel);
-      } finally {
-        await hooks.ended((performance.now() - from) / 1000);
-      }
+      return await this.#run(task, results, hooks, cancel);
     } finally {
       const next = this.#waiting.shift();
       // The thread goes from hand to hand while somebody waits for it.
@@ -108,29 +109,38 @@ export class Pool {
   async #run(
     task: CellTask,
     results: ReadonlyMap<string, CellResult>,
-    onProgress: (done: number, total: number) => void,
+    hooks: ComputeHooks,
     cancel: AbortSignal,
   ): Promise<Outcome> {
-    const { cellLimitMs } = this.#options;
+    const { cellLimitMs, heapMb = HEAP_MB } = this.#options;
+    const limit = new AbortController();
     const { port1, port2 } = new MessageChannel();
-    port1.on("message", ([done, total]: [number, number]) => onProgress(done, total));
+    let clock: NodeJS.Timeout | null = null;
+    let from = 0;
+    port1.on("message", (told: [number, number] | null) => {
+      if (told) hooks.progress(...told);
+      // A thread that replaces one that was stopped takes a while to be there: not the cell's time.
+      else if (!clock) {
+        from = performance.now();
+        clock = setTimeout(() => limit.abort(), cellLimitMs);
+      }
+    });
     port1.unref();
-    const limit = AbortSignal.timeout(cellLimitMs);
     try {
       return await this.#cells.run(
         { task, results: [...results], progress: port2 },
-        { name: "compute", transferList: [port2], signal: AbortSignal.any([cancel, limit]) },
+        { name: "compute", transferList: [port2], signal: AbortSignal.any([cancel, limit.signal]) },
       );
     } catch (error) {
       if (cancel.aborted) throw cancelled(error);
-      if (limit.aborted) {
-        throw new StoppedError("stopped", `Stopped after ${cellLimitMs / 1000} s, the limit for a cell.`, {
-          cause: error,
-        });
-      }
-      throw new StoppedError("stopped", wordsOfDeath(error, this.#options.heapMb), { cause: error });
+      const words = limit.signal.aborted
+        ? `Stopped after ${cellLimitMs / 1000} s, the limit for a cell.`
+        : wordsOfDeath(error, heapMb);
+      throw new StoppedError("stopped", words, { cause: error });
     } finally {
+      if (clock) clearTimeout(clock);
       port1.close();
+      await hooks.ended(from > 0 ? (performance.now() - from) / 1000 : 0);
     }
   }
 
@@ -168,8 +178,8 @@ function wordsOfDeath(error: unknown, heapMb: number): string {
   return "Its worker ended before it was done. Recompute tries again.";
 }
 
-/** Beside this file when run from the sources, whose loader threads inherit; beside the bundle otherwise. */
+/** Beside this file when the server runs from its sources; beside the bundle otherwise. */
 function workerFile(): string {
-  const file = import.meta.url.endsWith(".ts") ? "./worker.ts" : "./compute/worker.js";
+  const file = import.meta.url.endsWith(".ts") ? "./worker.from-sources.mjs" : "./compute/worker.js";
   return fileURLToPath(new URL(file, import.meta.url));
 }

@@ -40,7 +40,7 @@ export class Computations implements ComputeService {
   constructor(options: ComputeOptions) {
     const { database, texts, secondsAnHour } = options;
     this.#options = options;
-    this.#pool = new Pool(options);
+    this.#pool = new Pool({ onThreadError: (error) => options.onProblem(error, "a thread died"), ...options });
     this.#jobs = new Jobs({
       pool: this.#pool,
       results: database.results,

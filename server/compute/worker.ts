@@ -9,7 +9,7 @@ export interface ComputeJob {
   readonly task: CellTask;
   /** Results of the cells it reads, and of those they read: id → result. */
   readonly results: readonly (readonly [string, CellResult])[];
-  /** Where `[done, total]` is told. */
+  /** Where it is told that the thread is at it (`null`, once) and how far it is (`[done, total]`). */
   readonly progress: MessagePort;
 }
 
@@ -23,6 +23,7 @@ export type PlannedWork = Pick<
 const PROGRESS_EVERY_MS = 100;
 
 export function compute({ task, results, progress }: ComputeJob): Outcome {
+  progress.postMessage(null);
   let told = 0;
   const outcome = computeCell(task, new Map(results), {
     progress(done, total) {

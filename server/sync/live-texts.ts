@@ -77,6 +77,11 @@ export class LiveTexts implements TextService {
     });
   }
 
+  /** True when nothing was ever written in the paper. */
+  async isEmpty(paperId: string): Promise<boolean> {
+    return this.rooms.using(paperId, "text", ({ room }) => room.isEmpty);
+  }
+
   async create(paperId: string, text: PaperText, personId: string | null): Promise<void> {
     await this.rooms.using(paperId, "text", async ({ room, writer }) => {
       if (!room.isEmpty) throw new Error(`Paper ${paperId} has a text already.`);

@@ -75,11 +75,11 @@ test("another process cancels what this one computes, and leaves alone what it w
 });
 
 test("a cell that takes too long is stopped with the limit in words", async () => {
-  const strict = await startComputing({ cellLimitMs: 4_000 });
+  const strict = await startComputing({ cellLimitMs: 1_000 });
   try {
     const there = await Desk.invent(strict);
     await there.computed(`${formula("Spin")}${formula("after", "Spin")}${formula("apart")}`);
-    const message = "Stopped after 4 s, the limit for a cell.";
+    const message = "Stopped after 1 s, the limit for a cell.";
     expect(await there.work("Spin")).toMatchObject({ state: "failed", line: 1, message });
     expect(await there.work("after")).toMatchObject({ state: "waiting", needs: ["Spin"] });
     expect(await there.shown("apart")).toBeDefined();

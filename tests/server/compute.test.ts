@@ -88,14 +88,15 @@ test("a cell that fails is told with its line, what reads it waits, the rest com
     cell("formula low", "value: K.mean - 2"),
     cell("process slow", "drift: low.value", "rate: beta"),
     cell("counts L", "of: slow", "start: 1"),
+    cell("formula after", "value: L.mean + 1"),
   ].join("");
   await desk.computed(text);
-  const work = await desk.work("slow");
+  const work = await desk.work("L");
   expect(work).toMatchObject({ state: "failed", by: "Inês" });
   if (work?.state !== "failed") return;
-  expect(text.split("\n")[work.line - 1]).toMatch(/process slow|drift: low.value/);
+  expect(text.split("\n")[work.line - 1]).toMatch(/counts L|of: slow/);
   expect(work.message.length).toBeGreaterThan(20);
-  expect(await desk.work("L")).toMatchObject({ state: "waiting", needs: ["slow"] });
+  expect(await desk.work("after")).toMatchObject({ state: "waiting", needs: ["L"] });
   expect(await desk.shown("K")).toBeDefined();
 });
 

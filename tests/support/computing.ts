@@ -1,4 +1,4 @@
-import { mkdtempSync, rmSync } from "node:fs";
+import { renameSync } from "node:fs";
 import { resolve } from "node:path";
 import { buildSync } from "esbuild";
 import type { Knex } from "knex";
@@ -27,7 +27,6 @@ export async function startComputing(
   const knex = connect(url);
   const server = await startLiveServer(knex, url);
   const problems: unknown[] = [];
-  const bundle = bundledWorker();
   const service = new Computations({
     database: openDatabase(knex),
     texts: server.texts,
@@ -35,7 +34,7 @@ export async function startComputing(
     cellLimitMs: 60_000,
     heapMb: 256,
     secondsAnHour: 600,
-    worker: bundle.file,
+    worker: bundledWorker(),
     onProblem: (error, where) => problems.push({ where, error }),
     ...options,
   });
@@ -49,7 +48,6 @@ export async function startComputing(
       await service.close();
       await server.close();
       await knex.destroy();
-      bundle.remove();
     },
   };
 }
@@ -119,19 +117,25 @@ export class Desk {
   }
 }
 
-/** The unruly worker as one file of JavaScript: threads that vitest starts have no loader for the sources. */
-function bundledWorker(): { file: string; remove(): void } {
+/**
+ * The unruly worker as one file of JavaScript: threads that vitest starts have no loader for the sources. It stays
+ * where it is, since a thread may still be starting when its test is over.
+ */
+function bundledWorker(): string {
   // Within the project, so that it finds the packages.
-  const folder = mkdtempSync(resolve(import.meta.dirname, "../../node_modules/.halfline-worker-"));
-  const file = resolve(folder, "worker.mjs");
+  const folder = resolve(import.meta.dirname, "../../node_modules/.cache/halfline");
+  const outfile = resolve(folder, "unruly-worker.mjs");
+  const own = resolve(folder, `unruly-worker.${process.pid}.mjs`);
   buildSync({
     entryPoints: [resolve(import.meta.dirname, "unruly-worker.ts")],
-    outfile: file,
+    outfile: own,
     bundle: true,
     packages: "external",
     platform: "node",
     format: "esm",
     target: "node20",
   });
-  return { file, remove: () => rmSync(folder, { recursive: true }) };
+  // At once, for test files that run beside this one.
+  renameSync(own, outfile);
+  return outfile;
 }

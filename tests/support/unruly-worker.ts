@@ -10,6 +10,7 @@ export { plan };
 
 export function compute(job: ComputeJob): ReturnType<typeof computeOrderly> {
   const { id } = job.task;
+  job.progress.postMessage(null);
   if (id.startsWith("Exit")) process.exit(3);
   if (id.startsWith("Heap")) fillMemory();
   const end = Date.now() + (id.startsWith("Spin") ? Number.POSITIVE_INFINITY : id.startsWith("Slow") ? SLOW_MS : 0);

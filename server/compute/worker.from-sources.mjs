@@ -1,0 +1,5 @@
+/** The worker's entry when the server runs from its sources: a thread does not inherit the loader of TypeScript. */
+import { register } from "tsx/esm/api";
+
+register();
+export const { compute, plan } = await import("./worker.ts");
