@@ -2,7 +2,7 @@ import { describe, expect, test } from "vitest";
 import type { CellView } from "../../app/cells/index.ts";
 import { viewCell } from "../../app/cells/index.ts";
 import type { Figure, TableData } from "../../app/figures/index.ts";
-import { cell, computed, LARVAE, plannedCell } from "./papers.ts";
+import { cell, computed, LARVAE, plannedCell, quantityOf, valueIn } from "./papers.ts";
 
 function viewIn(text: string, id: string, overrides: Record<string, string> = {}): CellView {
   const { plan, results, outcomes } = computed(LARVAE + text, overrides);
@@ -99,6 +99,19 @@ describe("counts", () => {
     expect(texts(table, 0)).toEqual(["0", "1", "2", "3", "4", "5", "6", "7", "8", "9", "10", "20", "50", "100", "200"]);
     expect(texts(table, 1)[1]).toBe("0.0278681");
     expect(table?.rows[14]?.[1]?.full).toMatch(/^5\.4926\d+e-152$/);
+  });
+
+  test("P(K > n) of the table is that of the callable", () => {
+    const text = cell("counts K", "of: larvae", "start: {0.3: 2}", "up_to: 400");
+    const { table } = viewIn(text, "K");
+    for (const [index, n] of ["0", "1", "7", "50", "400"].entries()) {
+      const row = table?.rows.find((entries) => entries[0]?.text === n);
+      const { mantissa, exponent, error } = quantityOf(valueIn(LARVAE + text, `K.above(${n})`));
+      const [printed, power] = (row?.[2]?.full ?? "").split("e");
+      const log10 = Math.log10(Number(printed)) + Number(power ?? 0);
+      expect(log10, `row ${index}`).toBeCloseTo(Math.log10(mantissa) + exponent * Math.log10(2), 11);
+      expect(error).toBeGreaterThan(0);
+    }
   });
 
   test("full precision stands behind each entry, beyond the double's range too", () => {

@@ -1,6 +1,6 @@
 import type { Formula, Value } from "../../formulas/index.ts";
-import type { AbsorbedLaw, Start, Trajectory } from "../../solvers/index.ts";
-import { absorbedLaw, absorbedMoments, profileConstants } from "../../solvers/index.ts";
+import type { AbsorbedLaw, ScaledEstimate, Start, Trajectory } from "../../solvers/index.ts";
+import { absorbedAbove, absorbedLaw, absorbedMoments, profileConstants } from "../../solvers/index.ts";
 import type { Body, CellReference } from "../body.ts";
 import type { ComputeContext } from "../context.ts";
 import { CellFault } from "../context.ts";
@@ -12,6 +12,7 @@ import { readStart, startsOf } from "../process/start.ts";
 import { estimateValue, exactValue } from "../values.ts";
 import { callCounts } from "./callables.ts";
 import { COUNTS_DOCUMENTATION } from "./documentation.ts";
+import { withShortErrors } from "./law.ts";
 import { modeOf, quantileOf } from "./order.ts";
 import { viewCounts } from "./view.ts";
 
@@ -26,6 +27,8 @@ export interface CountsData {
   readonly trajectory: Trajectory;
   readonly starts: readonly Start[];
   readonly law: AbsorbedLaw;
+  /** P(K > up_to); null where it is refused. */
+  readonly beyond: ScaledEstimate | null;
 }
 
 const MOST_COUNTED = 100_000;
@@ -55,7 +58,13 @@ export const COUNTS: KindOf<CountsCell, CountsData> = {
     const starts = startsOf(model.start, context);
     const law = absorbedLaw(trajectory, starts, upToOf(model.upTo, context));
     if ("refused" in law) throw new CellFault("of", law.refused);
-    const data: CountsData = { trajectory, starts, law };
+    const beyond = absorbedAbove(trajectory, starts, law.upTo);
+    const data: CountsData = {
+      trajectory,
+      starts,
+      law: withShortErrors(law),
+      beyond: "refused" in beyond ? null : beyond,
+    };
     return { values: countsValues(data), data, method: `${law.method}; ${diffusionWords(trajectory.model)}` };
   },
 

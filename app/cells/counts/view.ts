@@ -6,9 +6,8 @@ import { startWords } from "../process/start.ts";
 import { plottedCounts, tabulatedCounts } from "../process/thinning.ts";
 import { tableEntry } from "../table-parts.ts";
 import type { CellView } from "../types.ts";
-import { exactValue, refusedValue, scaledQuantity, scaledValue, shortNumber } from "../values.ts";
-import { callCounts } from "./callables.ts";
-import { doubleProbability, log10Probability, probabilityAt } from "./law.ts";
+import { exactValue, scaledQuantity, scaledValue, shortNumber } from "../values.ts";
+import { doubleProbability, log10Probability, probabilitiesAbove, probabilityAt } from "./law.ts";
 import type { CountsData } from "./model.ts";
 
 /** The law as stems over n, on a logarithmic axis unless `axes` says otherwise; the table has thinned rows. */
@@ -58,19 +57,16 @@ function countsTable(data: CountsData, rows: readonly number[], withAbove: boole
     { name: "P(K=n)", head: "P(K=n)", tex: true },
     { name: "P(K>n)", head: "P(K>n)", tex: true },
   ];
+  const showsAbove = withAbove && data.beyond !== null;
+  const above = showsAbove && data.beyond !== null ? probabilitiesAbove(data.law, data.beyond, rows) : null;
   const entries = rows.map((n) => {
-    const probability = probabilityAt(data.law, n);
-    const first = [
+    const shown = [probabilityAt(data.law, n), ...(above === null ? [] : [above.get(n)])];
+    return [
       tableEntry(exactValue(n)),
-      tableEntry(probability === undefined ? refusedValue("") : scaledValue(probability)),
+      ...shown.map((p) => tableEntry(p === undefined ? { type: "none" } : scaledValue(p))),
     ];
-    return withAbove ? [...first, tableEntry(aboveValue(data, n))] : first;
   });
-  return { columns: withAbove ? columns : columns.slice(0, 2), rows: entries, remarks: [] };
-}
-
-function aboveValue(data: CountsData, n: number) {
-  return callCounts(data, "above", [{ mantissa: n, exponent: 0, error: 0, se: 0 }]) ?? refusedValue("");
+  return { columns: showsAbove ? columns : columns.slice(0, 2), rows: entries, remarks: [] };
 }
 
 /** Says the finding: how likely none is, and how fast the law falls at its end. */

@@ -5,6 +5,7 @@ import { profileAt, profileComplementAt, profileConstants } from "../../solvers/
 import type { Body, CellReference } from "../body.ts";
 import type { ComputeContext } from "../context.ts";
 import { CellFault } from "../context.ts";
+import { shortError } from "../counts/law.ts";
 import type { KindOf } from "../kind.ts";
 import { documentedMembers } from "../kind.ts";
 import { diffusionWords, HALFLINE_SOLVER, trajectoryOf } from "../process/model.ts";
@@ -153,7 +154,7 @@ function curveOf(trajectory: Trajectory, s: number, turning: boolean, x: readonl
   for (const position of x) {
     const answer = profileAt(trajectory, position, s);
     w.push("refused" in answer ? null : answer.value);
-    error.push("refused" in answer ? null : answer.error);
+    error.push("refused" in answer ? null : shortError(answer.error));
   }
   return { s, turning, w, error };
 }
