@@ -102,6 +102,12 @@ const DRAWERS: Drawers = {
   },
   footnoteDefinition(node, into) {
     lines(node, into, "hl-footnote");
+    const { from } = placeOf(node);
+    const to = from + (/^\[\^[^\]]*\]:[ \t]*/.exec(into.text.slice(from, from + 200))?.[0].length ?? 0);
+    if (from >= 0 && to > from) {
+      const content = words([text(node.label ?? node.identifier)], "hl-footnote-mark");
+      into.pieces.push({ piece: "set", from, to, block: false, content });
+    }
     into.descend(node);
   },
   definition: (node, into) => lines(node, into, "hl-footnote"),

@@ -1,0 +1,42 @@
+import { type Browser, type BrowserContext, chromium, type Page } from "playwright-core";
+
+/** Chromium as the distribution installs it; without its sandbox, since tests may run as root. */
+export function openBrowser(): Promise<Browser> {
+  return chromium.launch({
+    executablePath: process.env.CHROMIUM ?? "/usr/bin/chromium",
+    args: ["--no-sandbox", "--disable-dev-shm-usage"],
+  });
+}
+
+/** One person at a browser of their own, and everything amiss that their pages said. */
+export interface Visitor {
+  readonly page: Page;
+  readonly context: BrowserContext;
+  readonly complaints: string[];
+}
+
+const PATIENCE_MS = 60_000;
+
+/** Opens a window in which nobody is signed in. */
+export async function visitor(browser: Browser, application: string): Promise<Visitor> {
+  const context = await browser.newContext({ baseURL: application, viewport: { width: 1440, height: 1000 } });
+  context.setDefaultTimeout(PATIENCE_MS);
+  const page = await context.newPage();
+  const complaints: string[] = [];
+  page.on("pageerror", (error) => complaints.push(`page error: ${error.message}`));
+  page.on("console", (message) => {
+    if (message.type() === "error" || message.type() === "warning") complaints.push(message.text());
+  });
+  return { page, context, complaints };
+}
+
+/** Signs one of the demo's people in through the stand-in for GitHub. */
+export async function signedIn(browser: Browser, application: string, name: string): Promise<Visitor> {
+  const someone = await visitor(browser, application);
+  const { page } = someone;
+  await page.goto("/sign-in");
+  await page.getByRole("button", { name: /GitHub/ }).click();
+  await page.getByRole("button", { name }).click();
+  await page.waitForURL("**/shelf");
+  return someone;
+}
