@@ -4,6 +4,9 @@ import type { Dependencies } from "./dependencies.ts";
 import type { Draft } from "./drafts.ts";
 import type { ParameterValues } from "./parameter-values.ts";
 
+/** Enough to tell workings of one paper apart. */
+const WORKING_DIGITS = 32;
+
 /** How names and cells are written in a canonical form. */
 interface Forms {
   name(name: string): unknown;
@@ -21,6 +24,7 @@ interface Forms {
  */
 export class Keys {
   readonly #known = new Map<string, string | null>();
+  readonly #knownWorking = new Map<string, string>();
 
   constructor(
     readonly drafts: ReadonlyMap<string, Draft>,
@@ -49,13 +53,17 @@ export class Keys {
    * something it reads was.
    */
   workingKey(id: string): string {
+    const known = this.#knownWorking.get(id);
+    if (known !== undefined) return known;
     const draft = this.drafts.get(id);
     if (draft === undefined) return "";
     const byName: Forms = { name: (name) => ({ node: "name", name }), cell: (cell) => cell };
     const byWorking: Forms = { ...byName, cell: (cell) => this.workingKey(cell) };
     const hash = (forms: Forms): string =>
-      sha256(canonicalJson([draft.cell.kind, formOf(draft.model, forms)])).slice(0, 32);
-    return `${hash(byName)}.${hash(byWorking)}`;
+      sha256(canonicalJson([draft.cell.kind, formOf(draft.model, forms)])).slice(0, WORKING_DIGITS);
+    const key = `${hash(byName)}.${hash(byWorking)}`;
+    this.#knownWorking.set(id, key);
+    return key;
   }
 
   #compute(draft: Draft, dependencies: Dependencies, open: readonly string[]): string | null {

@@ -114,4 +114,13 @@ describe("keys of cells", () => {
     expect(wholeBehind).not.toBe(whole);
     expect(working(PAPER.replace("up_to: 200", "up_to: 300"))[0]).not.toBe(own);
   });
+
+  test("a long chain of cells that read each other many times is planned at once", () => {
+    const links = Array.from({ length: 40 }, (_, k) =>
+      cell(`formula f${k}`, `a: ${k === 0 ? "mu" : `f${k - 1}.a + f${k - 1}.a*f${k - 1}.a - f${k - 1}.a^2`}`),
+    );
+    const plan = planOf(LARVAE + links.join(""));
+    expect(plan.problems).toEqual([]);
+    expect(new Set(plan.cells.map(({ key }) => key)).size).toBe(42);
+  });
 });

@@ -57,8 +57,8 @@ function countsTable(data: CountsData, rows: readonly number[], withAbove: boole
     { name: "P(K=n)", head: "P(K=n)", tex: true },
     { name: "P(K>n)", head: "P(K>n)", tex: true },
   ];
-  const showsAbove = withAbove && data.beyond !== null;
-  const above = showsAbove && data.beyond !== null ? probabilitiesAbove(data.law, data.beyond, rows) : null;
+  const beyond = withAbove ? (data.beyond ?? null) : null;
+  const above = beyond === null ? null : probabilitiesAbove(data.law, beyond, rows);
   const entries = rows.map((n) => {
     const shown = [probabilityAt(data.law, n), ...(above === null ? [] : [above.get(n)])];
     return [
@@ -66,7 +66,7 @@ function countsTable(data: CountsData, rows: readonly number[], withAbove: boole
       ...shown.map((p) => tableEntry(p === undefined ? { type: "none" } : scaledValue(p))),
     ];
   });
-  return { columns: showsAbove ? columns : columns.slice(0, 2), rows: entries, remarks: [] };
+  return { columns: above === null ? columns.slice(0, 2) : columns, rows: entries, remarks: [] };
 }
 
 /** Says the finding: how likely none is, and how fast the law falls at its end. */
