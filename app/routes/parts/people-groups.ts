@@ -25,6 +25,6 @@ export function groupPeople(
   return [
     { name: "Authors", may: "write, change parameters, recompute", members: [...owners, ...authors] },
     { name: "Referees", may: "read the sheet and the galley", members: known.filter(({ role }) => role === "referee") },
-    { name: "Readers", may: "read, follow strands", members: known.filter(({ role }) => role === "reader") },
+    { name: "Readers", may: "read the sheet and the galley", members: known.filter(({ role }) => role === "reader") },
   ];
 }
