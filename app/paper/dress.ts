@@ -19,7 +19,7 @@ import { readDirective, readMath } from "./marks.ts";
 import type { CellNode, DisplayMath, EnvironmentNode } from "./nodes.ts";
 import type { Reading } from "./reading.ts";
 import { relocate } from "./relocate.ts";
-import type { RawDirective } from "./syntax/index.ts";
+import type { RawDirective, RawPiece } from "./syntax/index.ts";
 import { parseInline } from "./syntax/index.ts";
 import type { Yaml } from "./types.ts";
 
@@ -57,8 +57,8 @@ function dressGrouped(reading: Reading, grouped: Grouped, depth: number): RootCo
   return [node];
 }
 
-function dressBlock(reading: Reading, node: RootContent, depth: number): RootContent[] {
-  if (depth > deepest) return [asText(reading, node)];
+function dressBlock(reading: Reading, node: RootContent | RawPiece, depth: number): RootContent[] {
+  if (depth > deepest || node.type === "rawPiece") return [asText(reading, node)];
   switch (node.type) {
     case "yaml":
     case "definition":
@@ -226,10 +226,10 @@ export function placeInScalar(text: string, scalar: Extract<Yaml, { yaml: "scala
   return (index) => scalar.from + map(index);
 }
 
-function asText(reading: Reading, node: Nodes): Paragraph {
+function asText(reading: Reading, node: Nodes | RawPiece): Paragraph {
   const message = "This is nested too deeply to be set; it is shown as it is written.";
-  reading.report(reading.from(node), reading.to(node), message);
   const { position } = node;
+  reading.report(position?.start.offset ?? 0, position?.end.offset ?? 0, message);
   return { type: "paragraph", children: [{ type: "text", value: sourceOf(reading, node), position }], position };
 }
 

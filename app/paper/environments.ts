@@ -3,7 +3,7 @@ import { readAttributes, takeBrackets } from "./attributes.ts";
 import type { EnvironmentName } from "./nodes.ts";
 import type { Reading } from "./reading.ts";
 import { nearestSpelling } from "./spelling.ts";
-import type { RawFence } from "./syntax/index.ts";
+import type { RawFence, RawPiece } from "./syntax/index.ts";
 import type { Target } from "./types.ts";
 
 /** The surroundings of the language and the nouns they print. */
@@ -27,11 +27,11 @@ export function isEnvironmentName(name: string): name is EnvironmentName {
 const deepestNesting = 30;
 
 /** A node as the parser leaves it. */
-export type RawNode = RootContent | (RawFence & { position?: RootContent["position"] });
+export type RawNode = RootContent | RawPiece | (RawFence & { position?: RootContent["position"] });
 
 /** Siblings grouped: nodes as they are, and surroundings with what stands in them. */
 export type Grouped =
-  | { readonly kind: "node"; readonly node: RootContent }
+  | { readonly kind: "node"; readonly node: RootContent | RawPiece }
   | { readonly kind: "fence"; readonly fence: RawFence & { position?: RootContent["position"] } }
   | { readonly kind: "environment"; readonly opening: Opening; readonly content: readonly Grouped[] };
 

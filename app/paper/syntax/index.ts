@@ -1,10 +1,11 @@
 import type { Nodes, Root } from "mdast";
 import { Lines } from "../lines.ts";
 import { remembered } from "../memory.ts";
-import { cutIntoPieces } from "./pieces.ts";
-import { parseFrontMatter, parseParagraphs, parseTree } from "./tree.ts";
+import { cutIntoPieces, nestsTooDeeply } from "./pieces.ts";
+import type { RawPiece } from "./tree.ts";
+import { parseFrontMatter, parseParagraphs, parseTree, pushRaw } from "./tree.ts";
 
-export type { RawDirective, RawFence } from "./tree.ts";
+export type { RawDirective, RawFence, RawPiece } from "./tree.ts";
 
 /** Lengths of text, in characters, whose trees are kept: a few long papers. A tree takes some fifty times the memory. */
 const keptOfPieces = 600_000;
@@ -24,6 +25,10 @@ export function parseBlocks(text: string): Root {
   const bom = text.startsWith("\uFEFF") ? 1 : 0;
   const root: Root = { type: "root", children: [] };
   for (const piece of cutIntoPieces(text)) {
+    if (nestsTooDeeply(piece.text)) {
+      pushRaw(root, asWritten(piece.text, piece.from, lines));
+      continue;
+    }
     const before = piece.frontMatter ? "" : definitionsFor(piece.text, names);
     const tree = piece.frontMatter ? frontMatter(piece.text) : blocks(before + piece.text);
     const offset = piece.from - before.length + (piece.from === 0 && before === "" ? bom : 0);
@@ -69,8 +74,22 @@ function fold(name: string): string {
   return name.trim().replace(/\s+/g, " ").toLowerCase();
 }
 
+/** A piece that is not parsed, as one node. */
+function asWritten(text: string, from: number, lines: Lines): RawPiece {
+  const value = text.trimEnd();
+  const end = from + value.length;
+  const place = (offset: number) => {
+    const line = lines.lineAt(offset);
+    return { line, column: offset - lines.startOf(line) + 1, offset };
+  };
+  return { type: "rawPiece", value, position: { start: place(from), end: place(end) } };
+}
+
+/** Deeper than this, children are left out of a copy: what is so deep is set as it is written. */
+const deepest = 200;
+
 /** A copy of a node moved by so many characters and lines. */
-function copyAt<Node extends Nodes>(node: Node, offset: number, line: number): Node {
+function copyAt<Node extends Nodes>(node: Node, offset: number, line: number, depth = 0): Node {
   const copy: Node = { ...node };
   const position = node.position;
   if (position !== undefined) {
@@ -81,7 +100,8 @@ function copyAt<Node extends Nodes>(node: Node, offset: number, line: number): N
     };
   }
   if ("children" in copy) {
-    Object.assign(copy, { children: copy.children.map((child: Nodes) => copyAt(child, offset, line)) });
+    const children: readonly Nodes[] = depth < deepest ? copy.children : [];
+    Object.assign(copy, { children: children.map((child) => copyAt(child, offset, line, depth + 1)) });
   }
   return copy;
 }

@@ -62,6 +62,26 @@ function frontMatterEnd(text: string): number {
   return closing.exec(text) === null ? 0 : closing.lastIndex;
 }
 
+/** Deepest nesting of quotes and lists that is parsed: the parser's work grows with the cube of it. */
+const deepest = 40;
+
+/** Whether quotes and lists are nested beyond what is parsed. */
+export function nestsTooDeeply(piece: string): boolean {
+  const marks = /(?:>|(?:[-+*]|\d{1,9}[.)])(?=[ \t]|$))[ \t]*/y;
+  const indents: number[] = [];
+  for (const line of piece.split("\n")) {
+    marks.lastIndex = line.length - line.trimStart().length;
+    const indent = marks.lastIndex;
+    let count = 0;
+    while (count <= deepest && marks.test(line)) count++;
+    if (count === 0) continue;
+    while ((indents.at(-1) ?? -1) >= indent) indents.pop();
+    indents.push(indent);
+    if (count + indents.length > deepest) return true;
+  }
+  return false;
+}
+
 function beginsBlock(line: string): boolean {
   return /^[^\s]/.test(line) && !/^(?:[-+*]|\d{1,9}[.)])(?:[ \t]|$)/.test(line);
 }

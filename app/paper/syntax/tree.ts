@@ -1,4 +1,4 @@
-import type { Nodes, Root } from "mdast";
+import type { Nodes, Root, RootContent } from "mdast";
 import type { CompileContext, Extension, Token } from "mdast-util-from-markdown";
 import { fromMarkdown } from "mdast-util-from-markdown";
 import { frontmatterFromMarkdown } from "mdast-util-frontmatter";
@@ -22,6 +22,13 @@ export interface RawDirective {
 export interface RawFence {
   type: "rawFence";
   value: string;
+}
+
+/** A stretch nested too deeply to be parsed. */
+export interface RawPiece {
+  type: "rawPiece";
+  value: string;
+  position: Nodes["position"];
 }
 
 const treeOfTables = gfmTableFromMarkdown();
@@ -93,6 +100,11 @@ const treeOfPaper: Extension = {
 
 function leave(this: CompileContext, token: Token): void {
   this.exit(token);
+}
+
+/** The same outside the parser. */
+export function pushRaw(root: Root, node: RawPiece): void {
+  root.children.push(node as unknown as RootContent);
 }
 
 /** Raw nodes live only between parsing and dressing, so mdast's own union of nodes does not know them. */
