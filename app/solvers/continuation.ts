@@ -1,8 +1,8 @@
 import { type Expansion, evaluate, type PointValue, pointValue } from "./expansion.ts";
-import type { Side, TrajectoryReader } from "./reader.ts";
+import type { TrajectoryReader } from "./reader.ts";
 
 /** Analytic continuation of u along a path in the complex ξ-plane, by Taylor expansions one after another.
- *  Each call moves from where the last one ended; z = ∓e^{−ξ} leaves the real axis with ξ. */
+ *  Each call moves from where the last one ended; z = −e^{−ξ} leaves the real axis with ξ. */
 
 /** Share of an expansion's reach within which it is trusted. */
 const TRUSTED = 0.9;
@@ -12,7 +12,6 @@ const NEWTON_ROUNDS = 20;
 
 export class Continuation {
   private readonly reader: TrajectoryReader;
-  private readonly sign: 1 | -1;
   private current: Expansion;
   private spare: Expansion;
   private readonly scratch: PointValue = pointValue();
@@ -21,15 +20,14 @@ export class Continuation {
   xiRe: number;
   xiIm: number;
 
-  /** Starts on the real trajectory at ξ on one side. */
-  constructor(reader: TrajectoryReader, side: Side, xi: number) {
+  /** Starts on the real trajectory above w = 1, at ξ. */
+  constructor(reader: TrajectoryReader, xi: number) {
     this.reader = reader;
-    this.sign = side === "below" ? 1 : -1;
     this.current = reader.expander.create();
     this.spare = reader.expander.create();
     this.xiRe = xi;
     this.xiIm = 0;
-    this.restart(reader.expansionNear(side, xi));
+    this.restart(reader.expansionNear("above", xi));
   }
 
   private restart(from: Expansion): void {
@@ -44,7 +42,7 @@ export class Continuation {
   evaluate(xiRe: number, xiIm: number, out: PointValue): boolean {
     const size = Math.exp(-xiRe);
     if (size <= this.reader.seriesReach) {
-      this.reader.evaluateSeries(this.sign * size * Math.cos(xiIm), -this.sign * size * Math.sin(xiIm), out);
+      this.reader.evaluateSeries(-size * Math.cos(xiIm), size * Math.sin(xiIm), out);
       return true;
     }
     if (!this.moveTo(xiRe, xiIm)) return false;
@@ -54,6 +52,7 @@ export class Continuation {
 
   /** Re-expands along the straight line towards ξ until it lies within the trusted reach. */
   private moveTo(xiRe: number, xiIm: number): boolean {
+    if (this.reader.rays !== null) return this.takeRay(xiRe, xiIm);
     for (let move = 0; move < MOST_MOVES; move += 1) {
       const gapRe = xiRe - this.current.xiRe;
       const gapIm = xiIm - this.current.xiIm;
@@ -69,6 +68,13 @@ export class Continuation {
       [this.current, this.spare] = [this.spare, this.current];
     }
     return false;
+  }
+
+  private takeRay(xiRe: number, xiIm: number): boolean {
+    const found = this.reader.rays?.covering(xiRe, xiIm) ?? null;
+    if (found === null) return false;
+    this.current = found;
+    return true;
   }
 
   /** Moves to the ξ near the last one where u has the given value: Newton's method. @returns false where it does not converge. */

@@ -58,7 +58,7 @@ export function traceContour(reader: TrajectoryReader, reference: Reference, sha
   const radius = reference.radius[0];
   const top = reader.turning?.s0[0] === radius ? reader.topExpansion() : null;
   const start = reader.locate(radius).xi;
-  const path = new Continuation(reader, "above", start);
+  const path = new Continuation(reader, start);
   contour.xiRe[0] = start;
   for (let j = 1; j < logRe.length; j += 1) {
     // s − radius = radius (e^L − 1), so that u must fall by as much below its value where the leg starts

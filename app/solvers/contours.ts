@@ -53,14 +53,12 @@ export function contoursFor(t: Trajectory, reader: TrajectoryReader, n: number):
 const NOT_FOUND = "No contour passed its tests; the probabilities of this law cannot be vouched for.";
 
 function searchWidths(t: Trajectory, reader: TrajectoryReader, level: number): ContourPair {
-  const reference = referenceOf(t, reader, level);
-  const finest = finestScale(t, reader, reference, level);
+  const start = beginning(t, reader, level);
+  const { reference } = start;
+  const finest = finestScale(start, level);
   const tilt = Number.isFinite(obstacle(t, reader)) ? POLE_TILT : PLAIN_TILT;
   // a double short of the obstacle by a share of 1/n has lost that much of its digits
-  const accepted = Math.max(
-    ACCEPTED,
-    (ACCEPTED_UNITS * Number.EPSILON) / (obstacle(t, reader) / reference.radius[0] - 1),
-  );
+  const accepted = Math.max(ACCEPTED, (ACCEPTED_UNITS * Number.EPSILON) / (start.next / reference.radius[0] - 1));
   let best: ContourPair | null = null;
   let smallest = TOLERATED;
   for (const width of WIDTHS) {
@@ -95,23 +93,30 @@ function obstacle(t: Trajectory, reader: TrajectoryReader): number {
   return reader.law.law === "geometric" ? 1 + 1 / reader.law.mean[0] : Number.POSITIVE_INFINITY;
 }
 
-/** Where the leg starts: s0, the saddle; or, with an obstacle close by, short of both by 1/n at the largest n, where s^−n is at most e
- *  times what it is at the obstacle, and the rounding of doubles near it is not felt. */
-function referenceOf(t: Trajectory, reader: TrajectoryReader, level: number): Reference {
+/** Where the leg starts, and the next singularity it has to resolve. */
+interface Beginning {
+  readonly reference: Reference;
+  readonly next: number;
+}
+
+/** The leg starts at s0, the saddle; or, with an obstacle close by, short of both by 1/n at the largest n, where s^−n is at most e
+ *  times what it is at the first of them, and the rounding of doubles near it is not felt. */
+function beginning(t: Trajectory, reader: TrajectoryReader, level: number): Beginning {
   const near = obstacle(t, reader);
   const { turning } = reader;
   if (turning !== null && turning.s0[0] < near * (1 - 10 ** -level))
-    return { radius: turning.s0, excess: turning.excess };
-  const radius = Math.max(Math.sqrt(near), near * (1 - 10 ** -level));
-  return { radius: [radius, 0], excess: [radius - 1, 0] };
+    return { reference: { radius: turning.s0, excess: turning.excess }, next: near };
+  const next = Math.min(near, turning === null ? near : turning.s0[0]);
+  const radius = Math.max(Math.sqrt(next), next * (1 - 10 ** -level));
+  return { reference: { radius: [radius, 0], excess: [radius - 1, 0] }, next };
 }
 
-/** The leg must resolve the Gaussian e^{−nτ²}, the scale s0 − 1 on which w(x, ·) itself varies, and the distance to an obstacle. */
-function finestScale(t: Trajectory, reader: TrajectoryReader, reference: Reference, level: number): number {
+/** The leg must resolve the Gaussian e^{−nτ²}, the scale s0 − 1 on which w(x, ·) itself varies, and the distance to the next singularity. */
+function finestScale({ reference, next }: Beginning, level: number): number {
   const radius = reference.radius[0];
   const gaussian = 1 / (2 * Math.sqrt(10 ** level));
   const variation = Math.sqrt(reference.excess[0] / radius) / 4;
-  return Math.min(gaussian, variation, Math.sqrt(obstacle(t, reader) / radius - 1) / 2);
+  return Math.min(gaussian, variation, Math.sqrt(next / radius - 1) / 2);
 }
 
 function arcNodes(width: number): number {

@@ -105,9 +105,19 @@ export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstim
     const value = values[i] as number;
     const spread = Math.abs(value) * (n * law.radiusSpread + law.factorSpread + 8 * ROUNDING);
     const error = (rounding[i] as number) + Math.abs(value) * (methodError[i] as number) + spread;
-    read.push(scaledByPower(value, error, law.log2Radius, n, law.extra));
+    // a probability is not below 0: where the rounding is larger than the value, that much is known
+    read.push(
+      value < 0 && !takenOut(law, n)
+        ? scaledByPower(0, error - value, law.log2Radius, n, law.extra)
+        : scaledByPower(value, error, law.log2Radius, n, law.extra),
+    );
   }
   return read;
+}
+
+/** Where the sum is P(K = 1) − 1. */
+function takenOut(law: PreparedLaw, n: number): boolean {
+  return n < law.first;
 }
 
 /** Values of n between which the relative difference of the contours is carried over, as a share of n. */

@@ -1,5 +1,5 @@
 import { SolverError } from "./errors.ts";
-import { pointValue } from "./expansion.ts";
+import { type PointValue, pointValue } from "./expansion.ts";
 import { toNumber } from "./pairs.ts";
 import { type Place, ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
 import type { Answer, Estimate, Pair, ProfileConstants, Refusal, Trajectory } from "./types.ts";
@@ -28,7 +28,7 @@ export function profileComplementAt(t: Trajectory, x: number, s: number): Answer
  *  @throws SolverError "bad_parameter" where x < 0 or an argument is not finite. */
 export function profileSlopeAt(t: Trajectory, x: number, s: number): Answer<Estimate> {
   const read = readProfile(t, x, s);
-  return "refused" in read ? read : { value: read.slope, error: read.slopeError };
+  return "refused" in read ? read : read.slope();
 }
 
 /** s0 (pure number), ∂w/∂x at x = 0, s = 0 [1/length], amplitude B_0 = lim e^{decay x} (1 − w(x, 0)) (pure number), decay [1/length].
@@ -57,8 +57,7 @@ function constant(x: Pair, spread: number): Estimate {
 interface Reading {
   readonly u: number;
   readonly error: number;
-  readonly slope: number;
-  readonly slopeError: number;
+  readonly slope: () => Estimate;
 }
 
 function readProfile(t: Trajectory, x: number, s: number): Reading | Refusal {
@@ -67,7 +66,7 @@ function readProfile(t: Trajectory, x: number, s: number): Reading | Refusal {
   if (!Number.isFinite(s)) throw new SolverError("bad_parameter", `s is ${s}; it must be a finite number.`);
   const reader = readerOf(t);
   if (s < -1) return { refused: `w(x, s) is given for s from −1 up to s0; s = ${s} is below −1.` };
-  if (s === 1) return { u: 0, error: 0, slope: 0, slopeError: 0 };
+  if (s === 1) return { u: 0, error: 0, slope: () => ({ value: 0, error: 0 }) };
   if (reader.sterile) return withoutBranching(t, x, s);
   if (s > reader.largest * (1 + 2 * Number.EPSILON))
     return {
@@ -89,20 +88,19 @@ function shifted(t: Trajectory, reader: TrajectoryReader, place: Place, x: numbe
   const known = place.error + ROUNDING * (2 * way + Math.abs(xi));
   const inputs = way * t.decaySpread + Math.min(1, way) * amplitudeSpread;
   const error = rounding + Math.abs(at.slopeRe) * (known + inputs);
-  const slope = -reader.decay * at.slopeRe;
-  const second = Math.abs(secondDerivative(reader, xi, place.side));
-  const slopeError =
-    reader.decay * (rounding * SLOPE_AMPLIFICATION + second * (known + inputs)) +
-    Math.abs(slope) * (t.decaySpread + 4 * ROUNDING);
-  return { u: at.re, error, slope, slopeError };
+  const slope = () => {
+    const value = -reader.decay * at.slopeRe;
+    const second = Math.abs(secondDerivative(reader, xi, at));
+    const fromPlace = reader.decay * (rounding * SLOPE_AMPLIFICATION + second * (known + inputs));
+    return { value, error: fromPlace + Math.abs(value) * (t.decaySpread + 4 * ROUNDING) };
+  };
+  return { u: at.re, error, slope };
 }
 
 /** Derivatives of a Taylor polynomial lose this factor over its values, on steps of a fifth of the radius. */
 const SLOPE_AMPLIFICATION = 8;
 
-function secondDerivative(reader: TrajectoryReader, xi: number, side: Place["side"]): number {
-  const at = pointValue();
-  reader.evaluateAt(side, xi, at);
+function secondDerivative(reader: TrajectoryReader, xi: number, at: PointValue): number {
   const c = reader.expander.create();
   reader.expander.expand(xi, 0, at, c);
   return 2 * (c.re[2] as number);
@@ -113,10 +111,9 @@ function withoutBranching(t: Trajectory, x: number, s: number): Reading {
   const decay = toNumber(t.decay);
   const u = (1 - s) * Math.exp(-decay * x);
   const error = Math.abs(u) * (decay * x * (t.decaySpread + 2 * ROUNDING) + 4 * ROUNDING);
-  return {
-    u,
-    error,
-    slope: decay * u,
-    slopeError: decay * error + Math.abs(decay * u) * (t.decaySpread + 2 * ROUNDING),
-  };
+  const slope = () => ({
+    value: decay * u,
+    error: decay * error + Math.abs(decay * u) * (t.decaySpread + 2 * ROUNDING),
+  });
+  return { u, error, slope };
 }

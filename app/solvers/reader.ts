@@ -1,6 +1,7 @@
 import { Expander, type Expansion, evaluate, type PointValue, pointValue } from "./expansion.ts";
 import { type Branching, prepareOffspring } from "./offspring.ts";
 import { toNumber } from "./pairs.ts";
+import { Rays } from "./rays.ts";
 import type { Knot, Trajectory, Turning } from "./types.ts";
 
 /** Which side of w = 1: below (w < 1, z > 0) or above (w > 1, z < 0). */
@@ -19,6 +20,8 @@ export const ROUNDING = 2 ** -53;
 /** Roundings that one evaluation of a Taylor polynomial may cost. */
 const EVALUATION_ROUNDINGS = 8;
 const NEWTON_ROUNDS = 60;
+/** Slow over fast rate below which continuing against the damping would lose digits. */
+const STIFF_RATIO = -1.5;
 
 /** A trajectory made ready for reading: the expansions at its knots, made when first needed. */
 export class TrajectoryReader {
@@ -30,6 +33,8 @@ export class TrajectoryReader {
   readonly sterile: boolean;
   /** largest s at which w(x, s) is given: s0, or just short of where a trajectory without turning point ends */
   readonly largest: number;
+  /** set where continuation must keep to decreasing Re ξ */
+  readonly rays: Rays | null;
   private readonly t: Trajectory;
   private readonly expansions: Record<Side, (Expansion | undefined)[]> = { below: [], above: [] };
   private readonly scratch: PointValue = pointValue();
@@ -40,6 +45,7 @@ export class TrajectoryReader {
     this.decay = toNumber(t.decay);
     this.expander = new Expander(t, this.law);
     this.turning = "refused" in t.turning ? null : t.turning;
+    this.rays = t.ratio[0] < STIFF_RATIO ? new Rays(this) : null;
     this.sterile = this.turning === null && t.edge === null;
     if (this.sterile) this.largest = Number.POSITIVE_INFINITY;
     else this.largest = this.turning === null ? 1 - (t.above.at(-1) as Knot).u : toNumber(this.turning.s0);

@@ -4,7 +4,6 @@ import type { Pair, ScaledEstimate } from "./types.ts";
 /** (value ± error)·2^−power for a power given as n·log2 with log2 a pair: the mantissa keeps its digits at any n.
  *  @param extra a further power of two, as a double */
 export function scaledByPower(value: number, error: number, log2: Pair, n: number, extra = 0): ScaledEstimate {
-  if (value === 0) return { mantissa: 0, exponent: 0, error };
   const [high, low] = exactProduct(log2[0], -n);
   const [total, rest] = exactSum(high, extra);
   const whole = Math.round(total);

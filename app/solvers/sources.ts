@@ -63,7 +63,7 @@ function singleValues(reader: TrajectoryReader, contour: Contour, position: numb
   const re = new Float64Array(count);
   const im = new Float64Array(count);
   const way = reader.decay * position;
-  const path = new Continuation(reader, "above", (contour.xiRe[0] as number) + way);
+  const path = new Continuation(reader, (contour.xiRe[0] as number) + way);
   const at = pointValue();
   for (let j = 0; j < count; j += 1) {
     if (!path.evaluate((contour.xiRe[j] as number) + way, contour.xiIm[j] as number, at)) return null;
@@ -81,7 +81,7 @@ export function differenceValues(reader: TrajectoryReader, contour: Contour, way
   const count = contour.xiRe.length;
   const re = new Float64Array(count);
   const im = new Float64Array(count);
-  const path = new Continuation(reader, "above", contour.xiRe[0] as number);
+  const path = new Continuation(reader, contour.xiRe[0] as number);
   const local = reader.expander.create();
   const at = pointValue();
   for (let j = 0; j < count; j += 1) {

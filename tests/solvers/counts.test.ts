@@ -192,6 +192,28 @@ describe("laws of other kinds", () => {
   });
 });
 
+describe("mean offspring below 1", () => {
+  test.each([
+    ["drift away", 1.5, { law: "poisson", mean: 0.7 }],
+    ["drift toward, turning back beyond the second fixed point", -0.4, { law: "geometric", mean: 0.5 }],
+    ["drift toward, ending at the second fixed point", -3, { law: "finite", probabilities: [0.6, 0, 0.4] }],
+    ["strong drift toward", -6, { law: "poisson", mean: 0.8 }],
+  ] as const)("%s: the law sums to w(x, s)", (_, drift, offspring) => {
+    // Source: definition of w; E K = e^{−decay x}.
+    const t = trajectoryOf({ ...binary(drift), offspring });
+    const law = values(t, one(0.6), 250).map(toDouble);
+    const above = toDouble(given(absorbedAbove(t, one(0.6), 250)));
+    expect(above).toBeLessThan(1e-13);
+    for (const s of [-1, 0, 0.5, 0.99, 1, 1.05]) {
+      const sum = law.reduce((total, p, n) => total + p * s ** n, 0);
+      expect(sum).toBeCloseTo(given(profileAt(t, 0.6, s)).value, 12);
+    }
+    const mean = law.reduce((total, p, n) => total + n * p, 0);
+    expect(mean / absorbedMoments(t, one(0.6)).mean.value).toBeCloseTo(1, 11);
+    for (const p of law) expect(p).toBeGreaterThanOrEqual(0);
+  });
+});
+
 describe("misuse", () => {
   const t = trajectoryOf(binary(2));
   test.each([
