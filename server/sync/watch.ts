@@ -74,11 +74,13 @@ export class TextWatch {
     clearTimeout(timer);
     watched.burst = null;
     const former = watched.sources;
-    watched.sources = parameterSources(watched.cells);
+    const now = parameterSources(watched.cells);
+    // One that is away (its line is being rewritten, or the cell cannot be read just now) keeps what it had.
+    watched.sources = new Map([...former, ...now]);
     // What another process took in, it has told itself.
     if (!author) return;
     const changes: Record<string, ParameterChange> = {};
-    for (const [name, source] of watched.sources) {
+    for (const [name, source] of now) {
       const was = former.get(name);
       if (was !== undefined && was !== source) changes[name] = { by: author.name, at: new Date().toISOString(), was };
     }

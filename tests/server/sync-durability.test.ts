@@ -1,15 +1,16 @@
 import { type ChildProcess, spawn } from "node:child_process";
-import { resolve } from "node:path";
 import { expect, onTestFinished, test } from "vitest";
 import { connect } from "../../db/index.server.ts";
+import { bundled } from "../support/bundled.ts";
 import { freshDatabaseUrl } from "../support/database.ts";
 import { inventPaper, inventPerson, Page, startLiveServer, until } from "../support/live.ts";
 
 const ROUNDS = 4;
+/** Each round starts a process. */
+const PATIENCE_MS = 120_000;
 
 async function startProcess(databaseUrl: string): Promise<{ child: ChildProcess; url: string }> {
-  const script = resolve(import.meta.dirname, "../support/live-process.ts");
-  const child = spawn(process.execPath, ["--import", "tsx", script, databaseUrl], {
+  const child = spawn(process.execPath, [bundled("live-process.ts"), databaseUrl], {
     stdio: ["ignore", "pipe", "inherit"],
   });
   onTestFinished(() => {
@@ -22,7 +23,9 @@ async function startProcess(databaseUrl: string): Promise<{ child: ChildProcess;
   return { child, url };
 }
 
-test("an edit that was told as kept is found after the server is killed in that instant", async () => {
+test("an edit that was told as kept is found after the server is killed in that instant", {
+  timeout: PATIENCE_MS,
+}, async () => {
   const databaseUrl = await freshDatabaseUrl();
   const knex = connect(databaseUrl);
   onTestFinished(() => knex.destroy());

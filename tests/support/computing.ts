@@ -1,10 +1,8 @@
-import { renameSync } from "node:fs";
-import { resolve } from "node:path";
-import { buildSync } from "esbuild";
 import type { Knex } from "knex";
 import type { CellWork, ShownCell } from "../../app/cells/types.ts";
 import { connect, openDatabase } from "../../db/index.server.ts";
 import { Computations, type ComputeOptions } from "../../server/compute/index.ts";
+import { bundled } from "./bundled.ts";
 import { freshDatabaseUrl } from "./database.ts";
 import { type Invented, inventPaper, inventPerson, type LiveServer, startLiveServer, until } from "./live.ts";
 
@@ -34,7 +32,7 @@ export async function startComputing(
     cellLimitMs: 60_000,
     heapMb: 256,
     secondsAnHour: 600,
-    worker: bundledWorker(),
+    worker: bundled("unruly-worker.ts"),
     onProblem: (error, where) => problems.push({ where, error }),
     ...options,
   });
@@ -115,27 +113,4 @@ export class Desk {
   async records(): Promise<{ seconds: number; cells: string[] }[]> {
     return this.computing.knex("computations").where({ paper_id: this.paperId }).orderBy("id");
   }
-}
-
-/**
- * The unruly worker as one file of JavaScript: threads that vitest starts have no loader for the sources. It stays
- * where it is, since a thread may still be starting when its test is over.
- */
-function bundledWorker(): string {
-  // Within the project, so that it finds the packages.
-  const folder = resolve(import.meta.dirname, "../../node_modules/.cache/halfline");
-  const outfile = resolve(folder, "unruly-worker.mjs");
-  const own = resolve(folder, `unruly-worker.${process.pid}.mjs`);
-  buildSync({
-    entryPoints: [resolve(import.meta.dirname, "unruly-worker.ts")],
-    outfile: own,
-    bundle: true,
-    packages: "external",
-    platform: "node",
-    format: "esm",
-    target: "node20",
-  });
-  // At once, for test files that run beside this one.
-  renameSync(own, outfile);
-  return outfile;
 }

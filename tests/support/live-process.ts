@@ -1,4 +1,4 @@
-/** A live-text server as a process of its own, to be killed: `node --import tsx tests/support/live-process.ts <database URL>`. */
+/** A live-text server as a process of its own, to be killed. Its argument is the database's URL; it prints its own. */
 import { connect } from "../../db/index.server.ts";
 import { startLiveServer } from "./live.ts";
 
