@@ -91,7 +91,7 @@ test("changes by two people are told apart, however close", async () => {
   await first.allKept();
   await until(() => second.text.toString().includes("beta: 1.5"), "the first change to arrive");
   retype(second, "1.90", "2.5");
-  await until(async () => Object.keys(await changes()).length === 2, "both changes to be told"); });
+  await until(async () => Object.keys(await changes()).length === 2, "both changes to be told");
   expect(await changes()).toMatchObject({ beta: { by: "Inês", was: "1" }, mu: { by: "Tormod", was: "1.90" } });
 });
 
