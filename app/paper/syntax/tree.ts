@@ -1,6 +1,5 @@
 import type { Nodes, Root, RootContent } from "mdast";
 import type { CompileContext, Extension, Token } from "mdast-util-from-markdown";
-import { fromMarkdown } from "mdast-util-from-markdown";
 import { frontmatterFromMarkdown } from "mdast-util-frontmatter";
 import { gfmFootnoteFromMarkdown } from "mdast-util-gfm-footnote";
 import { gfmTableFromMarkdown } from "mdast-util-gfm-table";
@@ -8,6 +7,8 @@ import { frontmatter } from "micromark-extension-frontmatter";
 import { gfmFootnote } from "micromark-extension-gfm-footnote";
 import { gfmTable } from "micromark-extension-gfm-table";
 import type { Extension as SyntaxExtension } from "micromark-util-types";
+import remarkParse from "remark-parse";
+import { unified } from "unified";
 import { comments } from "./comments.ts";
 import { directive, environmentFence } from "./directives.ts";
 import { displayIn, mathAmongWords } from "./dollars.ts";
@@ -35,17 +36,20 @@ const treeOfTables = gfmTableFromMarkdown();
 const treeOfFootnotes = gfmFootnoteFromMarkdown();
 const treeOfFrontMatter = frontmatterFromMarkdown(["yaml"]);
 
+/** A remark parser with these constructs and no others. They may depend on the text, hence one parser a text. */
+function remark(syntax: SyntaxExtension[], tree: Extension[]) {
+  return unified().use(remarkParse).data({ micromarkExtensions: syntax, fromMarkdownExtensions: tree });
+}
+
 /** A text without front matter as an mdast tree. */
 export function parseTree(text: string): Root {
-  return fromMarkdown(text, {
-    extensions: [gfmTable(), gfmFootnote(), paperSyntax(text)],
-    mdastExtensions: [treeOfTables, treeOfFootnotes, treeOfPaper],
-  });
+  const syntax = [gfmTable(), gfmFootnote(), paperSyntax(text)];
+  return remark(syntax, [treeOfTables, treeOfFootnotes, treeOfPaper]).parse(text);
 }
 
 /** Front matter alone, as one `yaml` node. */
 export function parseFrontMatter(text: string): Root {
-  return fromMarkdown(text, { extensions: [frontmatter(["yaml"])], mdastExtensions: [treeOfFrontMatter] });
+  return remark([frontmatter(["yaml"])], [treeOfFrontMatter]).parse(text);
 }
 
 const blockConstructs = [
@@ -63,10 +67,7 @@ const blockConstructs = [
 
 /** Paragraphs alone: marks of headings, lists and other blocks are plain characters. */
 export function parseParagraphs(text: string): Root {
-  return fromMarkdown(text, {
-    extensions: [paperSyntax(text), { disable: { null: blockConstructs } }],
-    mdastExtensions: [treeOfPaper],
-  });
+  return remark([paperSyntax(text), { disable: { null: blockConstructs } }], [treeOfPaper]).parse(text);
 }
 
 function paperSyntax(text: string): SyntaxExtension {
