@@ -37,10 +37,12 @@ export const CLOSE = {
   /** The person may not open this paper (any more), or sent an update without being an author. */
   noAccess: 4403,
   noSuchPaper: 4404,
+  /** The person's role on the paper is another one now: the page is to be loaded again. */
+  roleChanged: 4409,
   /** A frame or the whole text is larger than is allowed. */
   tooLarge: 4413,
   /** A frame could not be read. */
   unreadable: 4422,
-  /** Try again: the role changed, the server closes, too much came at once. */
+  /** Try again: the server closes, too much came at once, the words could not be kept. */
   again: 4500,
 } as const;

@@ -86,10 +86,10 @@ test("a visitor tries parameters of the specimen, sees all follow, and nothing i
   await page.keyboard.press("ArrowRight");
   await page.keyboard.press("Enter");
   await sheet.plate("Figure 1", "tried privately");
-  expect(await mu.innerText()).toBe("1.65");
+  expect(await mu.textContent()).toBe("1.65");
   await page.reload();
   await sheet.isThere();
-  expect(await sheet.parameter("mu").innerText()).toBe("1.60");
+  expect(await sheet.parameter("mu").textContent()).toBe("1.60");
   expect(await sheet.command("Recompute all").count()).toBe(0);
 });
 

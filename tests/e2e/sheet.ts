@@ -53,7 +53,7 @@ export class SheetOnPage {
 
   /** Scrolls down the paper until something is drawn, from the top. */
   async scrollUntil(wanted: Locator): Promise<void> {
-    const deadline = Date.now() + 60_000;
+    const deadline = Date.now() + 30_000;
     for (let y = 0; Date.now() < deadline; ) {
       if ((await wanted.count()) > 0) {
         await wanted.first().scrollIntoViewIfNeeded();

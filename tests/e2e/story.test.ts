@@ -2,7 +2,7 @@ import { execFileSync } from "node:child_process";
 import { mkdtempSync, readFileSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
-import type { Browser } from "playwright-core";
+import type { Browser, Locator } from "playwright-core";
 import { afterAll, beforeAll, expect, inject, test } from "vitest";
 import { openBrowser, signedIn, type Visitor } from "./people.ts";
 import { SheetOnPage } from "./sheet.ts";
@@ -21,6 +21,11 @@ const BETA = 1;
  */
 function meanSettlers(mu: number): string {
   return Math.exp(-START * (mu + Math.sqrt(mu * mu - 2 * BETA))).toPrecision(5);
+}
+
+/** A printed number without the spaces between its digits. */
+async function digits(number: Locator): Promise<string> {
+  return ((await number.textContent()) ?? "").replace(/[\s\u2009\u202f]/g, "");
 }
 
 let browser: Browser;
@@ -50,21 +55,29 @@ test("the specimen paper opens from the shelf, typeset and current", async () =>
   }
   for (const each of [sheet, other]) {
     await each.isThere();
-    await expect.poll(() => each.tail.innerText(), { timeout: 60_000 }).toContain("Errata none");
+    await expect.poll(() => each.tail.textContent(), { timeout: 60_000 }).toContain("Errata none");
   }
   const mean = await sheet.numberAfter("a family sends");
-  expect((await mean.innerText()).replace(/[\s\u2009\u202f]/g, "")).toBe(meanSettlers(1.6));
+  expect(await digits(mean)).toBe(meanSettlers(1.6));
 });
 
 test("while a parameter is tried, what follows shows on this page alone, and Esc puts it back", async () => {
-  const mu = sheet.parameter("mu");
-  await mu.focus();
-  await ines.page.keyboard.press("ArrowRight");
-  await sheet.plate("Figure 1", "tried privately");
-  expect(await other.parameter("mu").innerText()).toBe("1.60");
-  await mu.press("Escape");
   await sheet.plate("Figure 1", "current");
-  expect(await mu.innerText()).toBe("1.60");
+  const mu = sheet.parameter("mu");
+  const { mouse, keyboard } = ines.page;
+  const box = await mu.boundingBox();
+  if (box === null) throw new Error("The rule is not drawn.");
+  const [x, y] = [box.x + box.width / 2, box.y + box.height / 2];
+  await mouse.move(x, y);
+  await mouse.down();
+  await mouse.move(x + 20, y, { steps: 4 });
+  await sheet.plate("Figure 1", "tried privately");
+  expect(await mu.textContent()).not.toBe("1.60");
+  expect(await other.parameter("mu").textContent()).toBe("1.60");
+  await keyboard.press("Escape");
+  await mouse.up();
+  await sheet.plate("Figure 1", "current");
+  expect(await mu.textContent()).toBe("1.60");
 });
 
 test("a parameter that is set makes out of date what hangs from it, for both, with the cause", async () => {
@@ -77,29 +90,29 @@ test("a parameter that is set makes out of date what hangs from it, for both, wi
   for (const each of [sheet, other]) {
     const plate = await each.plate("Figure 1", "out of date");
     await expect
-      .poll(() => plate.innerText())
+      .poll(() => plate.textContent())
       .toMatch(/† Out of date\. Set with μ\s*μ? = 1\.60; μ\s*μ? is now 1\.70 \(Inês Valadão, \d\d:\d\d\)/);
-    expect(await each.parameter("mu").innerText()).toBe("1.70");
-    expect(await each.page.getByRole("region", { name: "Parameters" }).innerText()).toContain("was 1.60");
+    expect(await each.parameter("mu").textContent()).toBe("1.70");
+    expect(await each.page.getByRole("region", { name: "Parameters" }).textContent()).toContain("was 1.60");
     const mean = await each.numberAfter("a family sends");
     expect(await mean.getAttribute("class")).toContain("hl-number-outOfDate");
-    expect((await mean.innerText()).replace(/[\s\u2009\u202f]/g, "")).toBe(meanSettlers(1.6));
-    await expect.poll(() => each.tail.innerText()).toMatch(/Errata\s+\d+/);
+    expect(await digits(mean)).toBe(meanSettlers(1.6));
+    await expect.poll(() => each.tail.textContent()).toMatch(/Errata \d+/);
   }
 });
 
 test("recomputed, the figure, the table and the sentence are new, for both", async () => {
   const before = await (await other.plate("Figure 1", "out of date")).getByRole("img").getAttribute("aria-label");
-  const rowsBefore = await (await other.plate("Table 1", "out of date")).getByRole("table").innerText();
+  const rowsBefore = await (await other.plate("Table 1", "out of date")).getByRole("table").textContent();
   await sheet.command("Recompute all").click();
   for (const each of [sheet, other]) {
-    await expect.poll(() => each.tail.innerText(), { timeout: 60_000 }).toContain("Errata none");
+    await expect.poll(() => each.tail.textContent(), { timeout: 60_000 }).toContain("Errata none");
     const figure = (await each.plate("Figure 1", "current")).getByRole("img");
     await expect.poll(() => figure.getAttribute("aria-label")).not.toBe(before);
     const rows = (await each.plate("Table 1", "current")).getByRole("table");
-    await expect.poll(() => rows.innerText()).not.toBe(rowsBefore);
+    await expect.poll(() => rows.textContent()).not.toBe(rowsBefore);
     const mean = await each.numberAfter("a family sends");
-    await expect.poll(async () => (await mean.innerText()).replace(/[\s\u2009\u202f]/g, "")).toBe(meanSettlers(1.7));
+    await expect.poll(() => digits(mean)).toBe(meanSettlers(1.7));
   }
 });
 
@@ -114,12 +127,12 @@ test("what one writes appears before the other, with the name of who writes", as
   await page.keyboard.type("Tormod was here. ");
   const seen = ines.page.locator(".hl-text .cm-line", { hasText: "Tormod was here." });
   await sheet.scrollUntil(seen);
-  await expect.poll(() => ines.page.locator(".hl-remote-name").innerText()).toBe("Tormod Hagelund");
-  await expect.poll(() => other.tail.innerText()).toMatch(/All changes kept, \d\d:\d\d/);
+  await expect.poll(() => ines.page.locator(".hl-remote-name").textContent()).toBe("Tormod Hagelund");
+  await expect.poll(() => other.tail.textContent()).toMatch(/All changes kept, \d\d:\d\d/);
   // One's own edits alone are undone.
   await page.keyboard.press("Control+z");
   await expect.poll(() => seen.count()).toBe(0);
-  expect(await other.parameter("mu").innerText()).toBe("1.70");
+  expect(await other.parameter("mu").textContent()).toBe("1.70");
 });
 
 test("set back, results that are kept appear by themselves", async () => {
@@ -129,10 +142,10 @@ test("set back, results that are kept appear by themselves", async () => {
   await ines.page.keyboard.press("ArrowLeft");
   await ines.page.keyboard.press("Enter");
   for (const each of [sheet, other]) {
-    await expect.poll(() => each.parameter("mu").innerText()).toBe("1.60");
-    await expect.poll(() => each.tail.innerText(), { timeout: 60_000 }).toContain("Errata none");
+    await expect.poll(() => each.parameter("mu").textContent()).toBe("1.60");
+    await expect.poll(() => each.tail.textContent(), { timeout: 60_000 }).toContain("Errata none");
     const mean = await each.numberAfter("a family sends");
-    await expect.poll(async () => (await mean.innerText()).replace(/[\s\u2009\u202f]/g, "")).toBe(meanSettlers(1.6));
+    await expect.poll(() => digits(mean)).toBe(meanSettlers(1.6));
   }
 });
 
@@ -141,10 +154,10 @@ test("a typed value is one edit, and one undo takes it back", async () => {
   await mu.focus();
   await ines.page.keyboard.type("2");
   await ines.page.keyboard.press("Enter");
-  await expect.poll(() => mu.innerText()).toBe("2.00");
+  await expect.poll(() => mu.textContent()).toBe("2.00");
   await ines.page.locator(".hl-text .cm-content").focus();
   await ines.page.keyboard.press("Control+z");
-  await expect.poll(() => mu.innerText()).toBe("1.60");
+  await expect.poll(() => mu.textContent()).toBe("1.60");
 });
 
 test("the print has the numbers of the sheet", async () => {
@@ -165,7 +178,7 @@ test("the print has the numbers of the sheet", async () => {
   writeFileSync(join(folder, "paper.pdf"), await pdf.body());
   execFileSync("pdftotext", ["-layout", join(folder, "paper.pdf"), join(folder, "paper.txt")]);
   const printed = readFileSync(join(folder, "paper.txt"), "utf8");
-  expect(printed).toContain("How many reach the shore?");
+  expect(printed.toLowerCase()).toContain("how many reach the shore?");
   expect(printed).toContain(meanSettlers(1.6));
 });
 

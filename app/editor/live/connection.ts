@@ -15,7 +15,7 @@ export type Connection =
 /** What a closed tie means, and the way out of it. */
 export interface Closing {
   readonly words: string;
-  readonly way: { readonly label: string; readonly to: "sign-in" | "shelf" | "again" };
+  readonly way: { readonly label: string; readonly to: "sign-in" | "shelf" | "again" | "reload" };
   /** The private copy of the text in this browser goes with the access. */
   readonly forgets: boolean;
 }
@@ -35,6 +35,11 @@ const CLOSINGS: Readonly<Record<number, Closing>> = {
     words: "This paper has been removed. What is on the sheet can still be read and copied.",
     way: { label: "Back to the shelf", to: "shelf" },
     forgets: true,
+  },
+  [CLOSE.roleChanged]: {
+    words: "Your role on this paper has changed.",
+    way: { label: "Open the paper again", to: "reload" },
+    forgets: false,
   },
   [CLOSE.tooLarge]: {
     words: "The text is longer than a paper may be. Take the last piece out, and join again.",

@@ -13,8 +13,8 @@ export function ClosedNotice({ code, onAgain }: Props) {
     <div className="hl-notice" role="alert">
       <b aria-hidden="true">‡ </b>
       {words}{" "}
-      {way.to === "again" ? (
-        <Command onClick={onAgain}>{way.label}</Command>
+      {way.to === "again" || way.to === "reload" ? (
+        <Command onClick={way.to === "again" ? onAgain : () => window.location.reload()}>{way.label}</Command>
       ) : (
         <CommandLink
           to={way.to === "shelf" ? "/shelf" : `/sign-in?returnTo=${encodeURIComponent(window.location.pathname)}`}

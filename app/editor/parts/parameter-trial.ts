@@ -3,7 +3,7 @@ import { sourceOf } from "../model/scale.ts";
 import type { ParameterFace } from "../model/types.ts";
 
 /** How long after the last arrow key a value is let stand, in ms: a burst of steps is one edit. */
-const SETTLE_MS = 500;
+const SETTLE_MS = 900;
 
 export interface Trial {
   /** The value being tried, or null at rest. */
