@@ -1,5 +1,5 @@
 import type { CellResult, Plan, ShownPaper } from "../cells/index.ts";
-import { type Author, type FrontMatter, type Paper, readInline } from "../paper/index.ts";
+import { type Author, type FrontMatter, type Paper, plainText, readInline } from "../paper/index.ts";
 import { setPaper } from "../print/index.ts";
 import { bibliographyTex } from "./bibliography.ts";
 import { writeBlocks } from "./blocks.ts";
@@ -7,6 +7,7 @@ import { writeInline } from "./inline.ts";
 import { paperMacros } from "./macros.ts";
 import { preamble } from "./preamble.ts";
 import { type LatexFile, Printing } from "./printing.ts";
+import { textTex } from "./text.ts";
 import { LatexWriter, type PrintProblem } from "./writer.ts";
 
 /** A paper as LaTeX source. */
@@ -47,6 +48,7 @@ export function paperToLatex(
   for (const problem of macros.problems) printing.problem(paper.front.span?.line ?? 1, problem);
   const body = new LatexWriter();
   body.line("\\begin{document}");
+  body.line(`\\hypersetup{pdftitle={${documentText(paper.front.title)}}}`);
   if (options.lineNumbers) body.line("\\linenumbers");
   writeFront(options.anonymous ? withoutNames(paper.front) : paper.front, printing, body);
   writeBlocks(paper.root.children, printing, body);
@@ -81,6 +83,12 @@ export function paperToLatex(
     },
     problems: [...printing.problems].sort((a, b) => a.line - b.line),
   };
+}
+
+/** The title as the PDF itself bears it: words alone, in the letters that every reader of PDF has. */
+function documentText(title: string): string {
+  const words = plainText(readInline(title, 0)).replace(/[^\p{Script=Latin}\p{N} .,:;?!'()-]+/gu, " ");
+  return textTex(words.replace(/\s+/g, " ").trim()).tex;
 }
 
 const withoutNames = (front: FrontMatter): FrontMatter => ({ ...front, authors: [] });

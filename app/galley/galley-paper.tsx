@@ -6,7 +6,7 @@ import { setPaper } from "../print/index.ts";
 import { ProseBlocks } from "./blocks.tsx";
 import { Formula, Inline, Words } from "./inline.tsx";
 import { anchor, type Foot, footOf, makeSetting, type Setting } from "./setting.ts";
-import { partIntoStrips, type Strip } from "./strips.ts";
+import { captionHeight, partIntoStrips, type Strip } from "./strips.ts";
 
 export interface GalleyPaperProps {
   readonly paper: Paper;
@@ -19,7 +19,7 @@ export interface GalleyPaperProps {
 /** A paper typeset for reading, in galleys: strips that stand two by two in a wide window. Needs no script. */
 export function GalleyPaper({ paper, plan, results, shown }: GalleyPaperProps) {
   const setting = makeSetting(setPaper(paper, plan, results, shown));
-  const strips = partIntoStrips(paper.root.children, (node) => cellHeight(node, setting));
+  const strips = partIntoStrips(paper.root.children, (node) => cellHeight(node, setting), frontHeight(paper.front));
   const seen = new Set<string>();
   const cited = paper.bibliography
     .filter((entry) => entry.number !== null)
@@ -39,14 +39,27 @@ export function GalleyPaper({ paper, plan, results, shown }: GalleyPaperProps) {
   );
 }
 
+/** Lines of an abstract hold fewer words, since it is set narrower. */
+function frontHeight(front: FrontMatter): number {
+  const abstract = Math.ceil(front.abstract.length / 60) * 21;
+  return (
+    80 + 46 * front.authors.length + abstract + (front.keywords.length > 0 ? 40 : 0) + (front.msc.length > 0 ? 20 : 0)
+  );
+}
+
 function cellHeight(node: RootContent, setting: Setting): number {
   if (node.type !== "cell") return 0;
   const { view } = setting.set.cell(node.cell);
   return node.parts.reduce((height, part) => {
     if (part.part === "figure")
-      return height + 84 + (view?.figure ? layoutFigure(view.figure, { width: 500 }).height : 40);
+      return (
+        height +
+        32 +
+        captionHeight(node.caption) +
+        (view?.figure ? layoutFigure(view.figure, { width: 500 }).height : 40)
+      );
     const table = part.part === "points" ? view?.points : view?.table;
-    return height + 110 + 24 * (table?.rows.length ?? 1);
+    return height + 80 + captionHeight(node.caption) + 24 * (table?.rows.length ?? 1);
   }, 0);
 }
 

@@ -1,4 +1,5 @@
 import type { RootContent } from "mdast";
+import { type PaperNode, plainText } from "../paper/index.ts";
 
 /** A galley: a strip of the paper long enough to fill a window beside its neighbour. */
 export interface Strip {
@@ -8,24 +9,27 @@ export interface Strip {
 }
 
 /** About what one galley holds, in pixels at its width of 500. */
-const STRIP_HEIGHT = 860;
-const CHARACTERS_A_LINE = 66;
+const STRIP_HEIGHT = 960;
+const CHARACTERS_A_LINE = 68;
 const LINE_HEIGHT = 23.5;
+const CAPTION_LINE_HEIGHT = 20;
 
 /**
  * Parts a paper into galleys of about one height, between blocks, never after a heading.
  * @param heightOf height of what a cell prints; 0 where it prints nothing
+ * @param headHeight height of the title and what stands with it, at the head of the first galley
  */
 export function partIntoStrips(
   nodes: readonly RootContent[],
   heightOf: (node: RootContent) => number,
+  headHeight: number,
 ): readonly Strip[] {
   const printed = nodes.filter(
     (node) => node.type !== "footnoteDefinition" && node.type !== "definition" && node.type !== "yaml",
   );
   const strips: RootContent[][] = [];
   let strip: RootContent[] = [];
-  let height = 0;
+  let height = headHeight;
   printed.forEach((node, i) => {
     const own = estimatedHeight(node, heightOf);
     const afterHeading = strip.at(-1)?.type === "heading";
@@ -47,27 +51,42 @@ export function partIntoStrips(
   }));
 }
 
+/** Height of running text. @param lineHeight pixels */
+export function textHeight(nodes: readonly PaperNode[], lineHeight = LINE_HEIGHT): number {
+  // TeX is longer than what it sets: a command is about one sign, and marks of structure are none.
+  const words = plainText(nodes, () => "5.43688")
+    .replace(/\\[A-Za-z]+\s*/g, "x")
+    .replace(/[{}_^\\]/g, "");
+  return Math.ceil(words.length / CHARACTERS_A_LINE) * lineHeight;
+}
+
+/** Height of a caption with its provenance line. */
+export function captionHeight(nodes: readonly PaperNode[]): number {
+  return 60 + textHeight(nodes, CAPTION_LINE_HEIGHT);
+}
+
 function estimatedHeight(node: RootContent | undefined, heightOf: (node: RootContent) => number): number {
   if (!node) return 0;
-  const length = (node.position?.end.offset ?? 0) - (node.position?.start.offset ?? 0);
   const lines = (node.position?.end.line ?? 0) - (node.position?.start.line ?? 0) + 1;
   switch (node.type) {
     case "cell":
       return heightOf(node);
     case "heading":
-      return 46;
+      return 48;
     case "math":
-      return 34 + 24 * Math.max(1, node.value.split("\\\\").length);
+      return (
+        22 + 26 * Math.max(1, node.value.split("\\\\").length) + (/\\(?:d?frac|sum|int|prod)/.test(node.value) ? 16 : 0)
+      );
     case "code":
-      return 20 + 18 * lines;
+      return 20 + 19 * lines;
     case "table":
       return 30 + 24 * lines;
     case "environment":
     case "list":
     case "listItem":
     case "blockquote":
-      return 16 + node.children.reduce((sum, child) => sum + estimatedHeight(child, heightOf), 0);
+      return 14 + node.children.reduce((sum, child) => sum + estimatedHeight(child, heightOf), 0);
     default:
-      return Math.ceil(length / CHARACTERS_A_LINE) * LINE_HEIGHT;
+      return textHeight([node]);
   }
 }

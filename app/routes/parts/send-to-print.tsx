@@ -1,3 +1,4 @@
+import type { ReactNode } from "react";
 import type { Doubts } from "../../print/index.ts";
 import { Button, CommandLink } from "../../ui/index.ts";
 
@@ -73,10 +74,26 @@ function Problems({ problems, sheet }: Pick<Props, "problems" | "sheet">) {
       </p>
       <ul>
         {problems.map(({ line, message }) => (
-          <li key={`${line} ${message}`}>{line > 0 ? `Line ${line}: ${message}` : `Bibliography: ${message}`}</li>
+          <li key={`${line} ${message}`}>
+            {line > 0 ? `Line ${line}: ` : "Bibliography: "}
+            <WordsWithCode words={message} />
+          </li>
         ))}
       </ul>
       <CommandLink to={sheet}>Back to the sheet</CommandLink>
     </div>
+  );
+}
+
+/** Words of ours in which names of the paper stand between backticks. */
+function WordsWithCode({ words }: { readonly words: string }): ReactNode {
+  const [before = "", code, ...after] = words.split("`");
+  if (code === undefined) return before;
+  return (
+    <>
+      {before}
+      <code>{code}</code>
+      <WordsWithCode words={after.join("`")} />
+    </>
   );
 }
