@@ -23,18 +23,21 @@ export async function readSession(
   return person ? { person, hash } : null;
 }
 
-/** Begins a session, ends the one the browser had, and returns the `Set-Cookie` header. */
+/**
+ * Begins a session and ends the one the browser had, so that a session known before the sign-in is worth nothing after.
+ * @returns the `Set-Cookie` header, and the hash of the session that has ended
+ */
 export async function beginSession(
   config: AppConfig,
   database: Database,
   personId: string,
   cookieHeader: string | null,
-): Promise<string> {
+): Promise<{ readonly setCookie: string; readonly former: string | null }> {
   const former = await sessionHash(config, cookieHeader);
   if (former !== null) await database.sessions.end(former);
   const secret = randomBytes(SECRET_BYTES).toString("base64url");
   await database.sessions.begin(hashOf(secret), personId, SESSION_LIFETIME_DAYS);
-  return sessionCookie(config).serialize(secret);
+  return { setCookie: await sessionCookie(config).serialize(secret), former };
 }
 
 /** The `Set-Cookie` header that takes the session's cookie away. */

@@ -68,7 +68,7 @@ export default function Shelf({ loaderData, actionData }: Route.ComponentProps) 
             {group.papers.length > 0 ? (
               <ul>
                 {group.papers.map((paper) => (
-                  <ShelfPaperRow key={paper.id} paper={paper} now={now} />
+                  <ShelfPaperRow key={paper.id} paper={paper} you={name} now={now} />
                 ))}
               </ul>
             ) : (

@@ -5,7 +5,7 @@ import type { Route } from "./+types/sign-in.github.callback";
 
 /** GitHub sends the browser back here. */
 export async function loader({ request, context }: Route.LoaderArgs) {
-  const { config, log } = context.get(servicesContext);
+  const { config, log, texts } = context.get(servicesContext);
   const database = context.get(databaseContext);
   const headers = new Headers({ "Set-Cookie": await forgetAttempt(config), "Cache-Control": "no-store" });
 
@@ -15,6 +15,8 @@ export async function loader({ request, context }: Route.LoaderArgs) {
     return redirect(`/sign-in?problem=${outcome.problem}`, { headers });
   }
   const person = await database.people.signIn(outcome.identity);
-  headers.append("Set-Cookie", await beginSession(config, database, person.id, request.headers.get("Cookie")));
+  const { setCookie, former } = await beginSession(config, database, person.id, request.headers.get("Cookie"));
+  headers.append("Set-Cookie", setCookie);
+  if (former !== null) await texts.closeSession(former);
   return redirect(outcome.returnTo, { headers });
 }

@@ -65,6 +65,20 @@ test("a whole sign-in leads to the person and to where they wanted to go", async
   });
 });
 
+test("over TLS every cookie is for this host and for TLS alone", async () => {
+  const secure = { ...config, standIn: false, publicOrigin: "https://halfline.example", secureCookies: true };
+  const request = new Request("http://localhost:4180/sign-in/github", { method: "POST" });
+  const answer = await beginSignIn(secure, request, "/shelf");
+  const cookies = answer.headers.getSetCookie();
+  expect(cookies.map((cookie) => cookie.split("=")[0]).sort()).toEqual([
+    "__Host-halfline-sign-in",
+    "__Host-halfline-state",
+  ]);
+  for (const cookie of cookies) expect(cookie).toMatch(/; Secure/i);
+  const back = new URL(answer.headers.get("Location") ?? "").searchParams.get("redirect_uri");
+  expect(back).toBe("https://halfline.example/sign-in/github/callback");
+});
+
 test("the way back to another site is forgotten at the beginning", async () => {
   const attempt = await begin("https://evil.test/");
   const back = await choose(attempt.authorize, "9001");

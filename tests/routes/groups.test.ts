@@ -1,6 +1,6 @@
 import { expect, test } from "vitest";
 import { groupPeople } from "../../app/routes/parts/people-groups.ts";
-import { groupShelf, type ShelfPaper } from "../../app/routes/parts/shelf-groups.ts";
+import { authorsInWords, groupShelf, type ShelfPaper } from "../../app/routes/parts/shelf-groups.ts";
 
 function paper(id: string, changed: Partial<ShelfPaper>): ShelfPaper {
   return {
@@ -51,4 +51,14 @@ test("those who write know everybody; referees and readers know the authors and 
   expect(known("author")).toEqual(known("owner"));
   expect(known("referee")).toEqual([["owner", "author"], ["referee"], []]);
   expect(known("reader")).toEqual([["owner", "author"], [], ["reader"]]);
+});
+
+test.each([
+  ["Inês Valadão", "by you alone"],
+  ["Inês Valadão, Tormod Hagelund", "with Tormod Hagelund"],
+  ["Tormod Hagelund, Inês Valadão, Wanjiru Kamande", "with Tormod Hagelund and Wanjiru Kamande"],
+  ["Marguerite Ostrander, Dipankar Lahiri", "Marguerite Ostrander and Dipankar Lahiri"],
+  ["", ""],
+])("the authors %j are, for Inês, %j", (authors, words) => {
+  expect(authorsInWords(authors, "Inês Valadão")).toBe(words);
 });

@@ -23,3 +23,16 @@ export function groupShelf(papers: readonly ShelfPaper[]): readonly ShelfGroup[]
   ];
   return groups.filter((group) => group.name === "On the desk" || group.papers.length > 0);
 }
+
+const AND = new Intl.ListFormat("en-GB", { type: "conjunction" });
+
+/**
+ * The authors' line of a paper, as its reader would say it: "with Tormod Hagelund", "by you alone".
+ * @param authors names parted by commas, as the front matter has them
+ */
+export function authorsInWords(authors: string, you: string): string {
+  const names = authors.split(", ").filter((name) => name !== "");
+  const others = names.filter((name) => name !== you);
+  if (others.length === names.length) return AND.format(names);
+  return others.length === 0 ? "by you alone" : `with ${AND.format(others)}`;
+}

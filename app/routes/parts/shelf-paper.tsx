@@ -1,6 +1,6 @@
 import { Form, Link } from "react-router";
 import { Command, CommandLink, When } from "../../ui/index.ts";
-import type { ShelfPaper } from "./shelf-groups.ts";
+import { authorsInWords, type ShelfPaper } from "./shelf-groups.ts";
 
 const STANDING: Readonly<Record<ShelfPaper["role"], string>> = {
   owner: "",
@@ -10,7 +10,16 @@ const STANDING: Readonly<Record<ShelfPaper["role"], string>> = {
 };
 
 /** A paper on the shelf, with what may be done with it. */
-export function ShelfPaperRow({ paper, now }: { readonly paper: ShelfPaper; readonly now: string }) {
+export function ShelfPaperRow({
+  paper,
+  you,
+  now,
+}: {
+  readonly paper: ShelfPaper;
+  /** Name of whose shelf it is. */
+  readonly you: string;
+  readonly now: string;
+}) {
   const { id, title, authors, role, putBy, changedAt } = paper;
   return (
     <li className="shelf-paper">
@@ -18,7 +27,7 @@ export function ShelfPaperRow({ paper, now }: { readonly paper: ShelfPaper; read
         <h3 className="shelf-title">
           <Link to={`/papers/${id}`}>{title}</Link>
         </h3>
-        {authors ? <p className="shelf-authors">{authors}</p> : null}
+        {authors ? <p className="shelf-authors">{authorsInWords(authors, you)}</p> : null}
       </div>
       <div className="shelf-state">
         <p>
