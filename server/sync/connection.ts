@@ -2,7 +2,16 @@ import type { WebSocket } from "ws";
 import { CLOSE } from "../../app/editor/protocol.ts";
 import type { Admission } from "./admission.ts";
 import type { Companion, Company } from "./company.ts";
-import { type Frame, HEARTBEAT_FRAME, keptFrame, missingFrame, readFrame, stateFrame, updateFrame } from "./frames.ts";
+import {
+  checkUpdate,
+  type Frame,
+  HEARTBEAT_FRAME,
+  keptFrame,
+  missingFrame,
+  readFrame,
+  stateFrame,
+  updateFrame,
+} from "./frames.ts";
 import { TokenBucket } from "./rate.ts";
 import type { Peer, Room } from "./room.ts";
 
@@ -11,9 +20,16 @@ const FRAMES_BURST = 2_000;
 const FRAMES_PER_SECOND = 200;
 const BYTES_BURST = 24 * 1024 * 1024;
 const BYTES_PER_SECOND = 1024 * 1024;
+/** How often a page may ask for all it lacks, which is once a connection: a burst, and each second. */
+const STATES_BURST = 20;
+const STATES_PER_SECOND = 0.5;
+/** Bytes of a frame of a page that does not write: it has little to say. */
+const LARGEST_FRAME_OF_READER = 64 * 1024;
 /** A page that reads so slowly that more than this waits for it is let go; it comes back and asks for what it lacks. */
 const MOST_WAITING_BYTES = 32 * 1024 * 1024;
 const HEARTBEAT_MS = 15_000;
+/** Characters of a closing's reason: the protocol has room for 123 bytes. */
+const LONGEST_REASON = 60;
 
 /**
  * One page's socket in a room.
@@ -31,6 +47,7 @@ export class Connection implements Peer, Companion {
   readonly #company: Company | null;
   readonly #frames = new TokenBucket(FRAMES_BURST, FRAMES_PER_SECOND, Date.now());
   readonly #bytes = new TokenBucket(BYTES_BURST, BYTES_PER_SECOND, Date.now());
+  readonly #states = new TokenBucket(STATES_BURST, STATES_PER_SECOND, Date.now());
   readonly #heartbeat: NodeJS.Timeout;
   readonly #onLeave: (connection: Connection) => void;
   #answered = true;
@@ -84,30 +101,40 @@ export class Connection implements Peer, Companion {
   #hear(data: Buffer): void {
     if (this.#gone) return;
     const now = Date.now();
+    if (!this.admission.writes && data.byteLength > LARGEST_FRAME_OF_READER) {
+      this.close(CLOSE.tooLarge, "A page that only reads has less to say.");
+      return;
+    }
     if (!this.#frames.take(1, now) || !this.#bytes.take(data.byteLength, now)) {
       this.close(CLOSE.again, "Too much came at once.");
       return;
     }
+    const frame = this.#understand(() => readFrame(new Uint8Array(data.buffer, data.byteOffset, data.byteLength)));
+    if (frame) this.#answer(frame);
+  }
+
+  /** What `read` gives; null when the page sent something that cannot be read, and is closed for it. */
+  #understand<T>(read: () => T): T | null {
     try {
-      this.#answer(readFrame(new Uint8Array(data.buffer, data.byteOffset, data.byteLength)));
+      return read();
     } catch (error) {
-      this.close(
-        CLOSE.unreadable,
-        `A frame could not be read. ${error instanceof Error ? error.message : ""}`.slice(0, 120),
-      );
+      const words = error instanceof Error ? error.message : "";
+      this.close(CLOSE.unreadable, `A frame could not be read. ${words}`.slice(0, LONGEST_REASON));
+      return null;
     }
   }
 
   #answer(frame: Frame): void {
     switch (frame.frame) {
       case "state":
-        this.send(missingFrame(this.#room.doc, frame.stateVector));
+        if (this.#states.take(1, Date.now())) this.send(missingFrame(this.#room.doc, frame.stateVector));
+        else this.close(CLOSE.again, "The whole text was asked for too often.");
         break;
       case "update":
         this.#takeUpdate(frame.update, frame.joining);
         break;
       case "presence":
-        this.#company?.hear(this, frame.presence);
+        this.#understand(() => this.#company?.hear(this, frame.presence));
         break;
       case "askPresence":
         this.#company?.greet(this);
@@ -121,6 +148,7 @@ export class Connection implements Peer, Companion {
       this.close(CLOSE.noAccess, "Only the authors of this paper write in it.");
       return;
     }
+    if (!this.#understand(() => checkUpdate(update))) return;
     if (this.#room.isTooLarge(update)) {
       this.close(CLOSE.tooLarge, "The paper would become larger than is allowed.");
       return;

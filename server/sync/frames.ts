@@ -17,7 +17,11 @@ const SYNC_STEP_1 = 0;
 const SYNC_STEP_2 = 1;
 const SYNC_UPDATE = 2;
 
-/** Reads one frame. Decoder in, value out: nothing is applied. @throws Error when it is none of ours. */
+/**
+ * Reads one frame. Decoder in, value out: nothing is applied, and an update's own bytes are not looked at yet
+ * (`checkUpdate`), since that costs time that only a writer may take.
+ * @throws Error when it is none of ours
+ */
 export function readFrame(bytes: Uint8Array): Frame {
   const decoder = createDecoder(bytes);
   const type = readVarUint(decoder);
@@ -33,8 +37,13 @@ export function readFrame(bytes: Uint8Array): Frame {
     return { frame: "state", stateVector: body };
   }
   if (step !== SYNC_STEP_2 && step !== SYNC_UPDATE) throw new Error(`Sync step ${step} does not exist.`);
-  Y.decodeUpdate(body);
   return { frame: "update", update: body, joining: step === SYNC_STEP_2 };
+}
+
+/** True. @throws Error when the bytes are no update that can be read */
+export function checkUpdate(update: Uint8Array): true {
+  Y.decodeUpdate(update);
+  return true;
 }
 
 /** "This is how far the server is." */

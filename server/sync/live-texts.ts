@@ -176,7 +176,7 @@ export class LiveTexts implements TextService {
     }
     const now = await admitVisitor(admission, visitor, papers);
     if (!now.admitted) connection.close(now.code, now.reason);
-    else if (now.role !== admission.role) connection.close(CLOSE.again, "The role on this paper has changed.");
+    else if (now.role !== admission.role) connection.close(CLOSE.roleChanged, "The role on this paper has changed.");
   }
 
   async #recordChanges(paperId: string, changes: Readonly<Record<string, ParameterChange>>): Promise<void> {

@@ -4,7 +4,7 @@ import { WebSocket } from "ws";
 import * as Y from "yjs";
 import { CLOSE } from "../../app/editor/protocol.ts";
 import { connect } from "../../db/index.server.ts";
-import { updateFrame } from "../../server/sync/frames.ts";
+import { stateFrame, updateFrame } from "../../server/sync/frames.ts";
 import { freshDatabaseUrl } from "../support/database.ts";
 import {
   type Invented,
@@ -147,15 +147,15 @@ test("the sockets of a removed member are closed", async () => {
   expect((await writing.refused()).code).toBe(CLOSE.noAccess);
 });
 
-test("an author who becomes a reader is connected again, and writes no more", async () => {
+test("an author who becomes a reader is told so, and writes no more", async () => {
   const demoted = await page(paperId, author.session).synced();
   const others = await page(paperId, owner.session).synced();
   await knex("members").where({ paper_id: paperId, person_id: author.id }).update({ role: "reader" });
   await server.texts.closeSockets(paperId, author.id);
-  await until(() => !demoted.provider.synced, "the socket to be closed");
-  await demoted.synced();
-  demoted.text.insert(0, "Too late. ");
-  expect((await demoted.refused()).code).toBe(CLOSE.noAccess);
+  expect((await demoted.refused()).code).toBe(CLOSE.roleChanged);
+  const again = await page(paperId, author.session).synced();
+  again.text.insert(0, "Too late. ");
+  expect((await again.refused()).code).toBe(CLOSE.noAccess);
   expect(others.closed).toBeNull();
   expect((await server.texts.read(paperId)).text).toBe("The words.");
 });
@@ -201,6 +201,17 @@ test("a flood of frames is stopped, and the page may come back", async () => {
     for (let i = 0; i < 4_000; i++) socket.send(updateFrame(Y.encodeStateAsUpdate(new Y.Doc())));
   });
   expect(await closed).toBe(CLOSE.again);
+});
+
+test("a reader's large frames, and asking for the whole text over and over, are stopped", async () => {
+  const large = rawSocket(reader.session);
+  large.socket.on("open", () => large.socket.send(updateFrame(new Uint8Array(100_000))));
+  expect(await large.closed).toBe(CLOSE.tooLarge);
+  const asking = rawSocket(reader.session);
+  asking.socket.on("open", () => {
+    for (let i = 0; i < 100; i++) asking.socket.send(stateFrame(new Y.Doc()));
+  });
+  expect(await asking.closed).toBe(CLOSE.again);
 });
 
 test("nobody appears under another's name or client id", async () => {
