@@ -91,7 +91,7 @@ test("a parameter that is set makes out of date what hangs from it, for both, wi
     const plate = await each.plate("Figure 1", "out of date");
     await expect
       .poll(() => plate.textContent())
-      .toMatch(/† Out of date\. Set with μ\s*μ? = 1\.60; μ\s*μ? is now 1\.70 \(Inês Valadão, \d\d:\d\d\)/);
+      .toMatch(/† Out of date\. Set with \S*μ\S* = 1\.60; \S*μ\S* is now 1\.70 \(Inês Valadão, \d\d:\d\d\)/);
     expect(await each.parameter("mu").textContent()).toBe("1.70");
     expect(await each.page.getByRole("region", { name: "Parameters" }).textContent()).toContain("was 1.60");
     const mean = await each.numberAfter("a family sends");
