@@ -7,7 +7,11 @@ import { Board, type Computable } from "./board.ts";
 import { claimOf, type Follower, type JobEnd, Jobs } from "./jobs.ts";
 import { Pool, type PoolOptions, StoppedError } from "./pool.ts";
 import { Quota } from "./quota.ts";
+import { isComputable, unmet, withNeeds } from "./selection.ts";
 import type { PlannedWork } from "./worker.ts";
+
+/** Characters of a text and its bibliography that are read here; a long paper has a tenth of it. */
+const LONGEST_TEXT = 2_000_000;
 
 export interface ComputeOptions extends PoolOptions {
   readonly database: Database;
@@ -152,6 +156,9 @@ export class Computations implements ComputeService {
   }
 
   async #plan(text: ComputeRequest["text"]): Promise<PlannedWork[] | { refused: string }> {
+    if (text.text.length + text.bibliography.length > LONGEST_TEXT) {
+      return { refused: `The text is longer than ${LONGEST_TEXT} characters, the limit for computing.` };
+    }
     try {
       return await this.#pool.plan(text);
     } catch (error) {
@@ -274,22 +281,4 @@ export class Computations implements ComputeService {
       }
     }
   }
-}
-
-function isComputable(cell: PlannedWork): cell is Computable {
-  return cell.key !== null && cell.task !== null && cell.workingKey !== null;
-}
-
-/** The cells asked for, and all that they read, themselves or through others, in the plan's order. */
-function withNeeds(planned: readonly PlannedWork[], asked: ReadonlySet<string>): PlannedWork[] {
-  const wanted = new Set(asked);
-  for (const cell of planned.toReversed()) {
-    if (wanted.has(cell.id)) for (const need of cell.needs) wanted.add(need);
-  }
-  return planned.filter((cell) => wanted.has(cell.id));
-}
-
-/** Ids of the cells that `cell` reads and that have to be computed first. */
-function unmet(cell: Computable, absent: readonly Computable[]): string[] {
-  return absent.filter(({ id }) => cell.needs.includes(id)).map(({ id }) => id);
 }
