@@ -94,11 +94,20 @@ function addNode(
   let re = a * firstRe - b * firstIm;
   let im = a * firstIm + b * firstRe;
   const shrink = Math.exp(-rate);
-  const factorRe = shrink * Math.cos(angle);
-  const factorIm = -shrink * Math.sin(angle);
   // without tilt a leg's term is the real part alone; the angle nθ is rounded like the rest
   const bulk = angle === 0 ? Math.abs(a) : Math.abs(a) + Math.abs(b);
   let size = ROUNDING * first * bulk * (TERM_ROUNDINGS + BLOCK + (n + BLOCK) * (rate + angle));
+  if (angle === 0) {
+    for (let i = start; i < end; i += 1) {
+      values[i] = (values[i] as number) + re;
+      rounding[i] = (rounding[i] as number) + size;
+      re *= shrink;
+      size *= shrink;
+    }
+    return;
+  }
+  const factorRe = shrink * Math.cos(angle);
+  const factorIm = -shrink * Math.sin(angle);
   for (let i = start; i < end; i += 1) {
     values[i] = (values[i] as number) + re;
     rounding[i] = (rounding[i] as number) + size;
