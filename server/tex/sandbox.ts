@@ -62,17 +62,26 @@ const MAKE_PDF = [
   "exit $status",
 ].join("\n");
 
+/** Where and how something runs confined. */
+export interface Confined {
+  /** Folder that is seen, read-only, as /in (by its own name where there are no namespaces). */
+  readonly input: string;
+  readonly confinement: Confinement;
+  /** Folder to work in where there are no namespaces. */
+  readonly scratch: string;
+  readonly limits: Limits;
+}
+
 /** Runs the making of a PDF over the files of a folder. */
-export function makePdf(
-  input: string,
-  confinement: Confinement,
-  scratch: string,
-  limits: Limits = LIMITS,
-): Promise<Ran> {
-  const limited = ["prlimit", ...limitArguments(limits), "--", "sh", "-c", MAKE_PDF, "sh"];
-  if (confinement === "limits") {
+export function makePdf(confined: Confined): Promise<Ran> {
+  return runConfined(MAKE_PDF, confined);
+}
+
+/** Runs a shell script, the folder of the input its `$1`, confined as TeX is. */
+export function runConfined(script: string, { input, confinement, scratch, limits }: Confined): Promise<Ran> {
+  const limited = ["prlimit", ...limitArguments(limits), "--", "sh", "-c", script, "sh"];
+  if (confinement === "limits")
     return run(["env", "-i", ...environmentWords(scratch), ...limited, input], scratch, limits);
-  }
   return run(["bwrap", ...namespaces(input, limits), "--", ...limited, "/in"], "/", limits);
 }
 

@@ -1,3 +1,4 @@
+import { createHash } from "node:crypto";
 import { mkdir, mkdtemp, rm, writeFile } from "node:fs/promises";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
@@ -5,6 +6,8 @@ import type { LatexSource, Log, PdfService } from "../../app/context.ts";
 import { type TexFault, texFaults } from "./faults.ts";
 import { type Confinement, findConfinement, LIMITS, type Limits, makePdf, type Ran } from "./sandbox.ts";
 
+/** PDFs kept for whoever asks for the same again. */
+const KEPT = 6;
 /** At most this many papers are set at once, and this many more wait. */
 const AT_ONCE = 1;
 const MOST_WAITING = 8;
@@ -16,6 +19,7 @@ export class TexPdfService implements PdfService {
   private readonly log: Log;
   private readonly limits: Limits;
   private confinement: Promise<Confinement> | null = null;
+  private readonly kept = new Map<string, Promise<Typeset>>();
   private running = 0;
   private readonly waiting: (() => void)[] = [];
 
@@ -24,7 +28,22 @@ export class TexPdfService implements PdfService {
     this.limits = options.limits ?? LIMITS;
   }
 
-  async typeset(source: LatexSource): Promise<Typeset> {
+  /** The same source, asked for twice, is set once. */
+  typeset(source: LatexSource): Promise<Typeset> {
+    const key = createHash("sha256").update(JSON.stringify(source.files)).digest("hex");
+    const known = this.kept.get(key);
+    if (known) return known;
+    const made = this.setNew(source);
+    this.kept.set(key, made);
+    const [oldest] = this.kept.keys();
+    if (this.kept.size > KEPT && oldest !== undefined) this.kept.delete(oldest);
+    // Only a PDF is worth keeping: what failed may have failed for want of time.
+    const forget = () => this.kept.delete(key);
+    made.then((result) => result.ok || forget(), forget);
+    return made;
+  }
+
+  private async setNew(source: LatexSource): Promise<Typeset> {
     if (this.waiting.length >= MOST_WAITING)
       return failure(`${MOST_WAITING} papers wait to be set. Try again in a minute.`);
     await this.begin();
@@ -46,7 +65,7 @@ export class TexPdfService implements PdfService {
         throw new Error(`"${file.name}" cannot name a file of a LaTeX source.`);
       await writeFile(join(input, file.name), file.text);
     }
-    const ran = await makePdf(input, await this.confined(), scratch, this.limits);
+    const ran = await makePdf({ input, confinement: await this.confined(), scratch, limits: this.limits });
     if (ran.status === 0 && ran.output.subarray(0, 5).toString("latin1") === "%PDF-")
       return { ok: true, pdf: new Uint8Array(ran.output) };
     const problems = this.problemsOf(ran, source);
