@@ -63,10 +63,19 @@ export function openSession(options: SessionOptions): PaperSession {
       text.insert(0, options.first.text);
       bibliography.insert(0, options.first.bibliography);
     });
-    options.onConnection({ state: "still" });
-    options.onText();
-    options.onShown(options.first.shown);
-    return { ...session, joinAgain: () => {}, end: ending };
+    let ended = false;
+    // As late as the answers of a live session, which come when its owner has it in hand.
+    queueMicrotask(() => {
+      if (ended) return;
+      options.onConnection({ state: "still" });
+      options.onShown(options.first.shown);
+      options.onText();
+    });
+    const end = () => {
+      ended = true;
+      ending();
+    };
+    return { ...session, joinAgain: () => {}, end };
   }
   awareness.setLocalStateField("user", { name: options.person.name });
   const stops = [
