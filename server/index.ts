@@ -2,28 +2,30 @@ import { pino } from "pino";
 import { EnvironmentError, readEnvironment } from "./env.server.ts";
 import { startServer } from "./start.ts";
 
-/** The process: reads its environment, starts, and ends in order when asked to. */
+/** The process: reads its environment, starts, and ends in order when asked to, also while it is still starting. */
 async function main(): Promise<void> {
   const environment = readEnvironment(process.env);
   const log = pino({ level: environment.logLevel });
-  const server = await startServer(environment, log);
-  process.stdout.write(`Halfline is ready: ${server.url}\n`);
+  const starting = startServer(environment, log);
 
   let ending = false;
   const end = async (signal: NodeJS.Signals) => {
     if (ending) return;
     ending = true;
     log.info({ signal }, "ending");
-    await server.close();
+    await (await starting).close();
     process.exit(0);
   };
-  process.on("SIGINT", end);
-  process.on("SIGTERM", end);
+  for (const signal of ["SIGINT", "SIGTERM"] as const) process.on(signal, () => void end(signal).catch(failed));
+
+  process.stdout.write(`Halfline is ready: ${(await starting).url}\n`);
 }
 
-main().catch((error: unknown) => {
+function failed(error: unknown): void {
   const words =
     error instanceof EnvironmentError ? error.message : error instanceof Error ? error.stack : String(error);
-  process.stderr.write(`Halfline did not start.\n${words}\n`);
+  process.stderr.write(`Halfline stopped.\n${words}\n`);
   process.exit(1);
-});
+}
+
+main().catch(failed);

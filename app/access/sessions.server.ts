@@ -40,9 +40,12 @@ export async function beginSession(
   return { setCookie: await sessionCookie(config).serialize(secret), former };
 }
 
-/** The `Set-Cookie` header that takes the session's cookie away. */
-export async function forgetSession(config: AppConfig): Promise<string> {
-  return sessionCookie(config).serialize("", { maxAge: 0 });
+/** Takes the session's cookie away, and with it the private copies of texts that the browser keeps for this person. */
+export async function signedOutHeaders(config: AppConfig): Promise<Record<string, string>> {
+  return {
+    "Set-Cookie": await sessionCookie(config).serialize("", { maxAge: 0 }),
+    "Clear-Site-Data": '"storage"',
+  };
 }
 
 /** Hash of the session named by a `Cookie` header, live or not; null when it names none. */

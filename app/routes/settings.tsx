@@ -1,5 +1,5 @@
 import { data, Form, redirect } from "react-router";
-import { forgetSession, refusal, requirePerson, themeCookie } from "../access/index.server.ts";
+import { refusal, requirePerson, signedOutHeaders, themeCookie } from "../access/index.server.ts";
 import { databaseContext, servicesContext } from "../context.ts";
 import { Button, Choice, Command, Field, RunningHead } from "../ui/index.ts";
 import type { Route } from "./+types/settings";
@@ -35,7 +35,7 @@ export async function action({ request, context }: Route.ActionArgs) {
   }
   if (intent === "sign-out-everywhere") {
     for (const hash of await database.sessions.endAll(person.id)) await texts.closeSession(hash);
-    return redirect("/", { headers: { "Set-Cookie": await forgetSession(config) } });
+    return redirect("/", { headers: await signedOutHeaders(config) });
   }
   throw refusal(400, "The form says nothing to be done.");
 }

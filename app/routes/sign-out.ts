@@ -1,5 +1,5 @@
 import { redirect } from "react-router";
-import { forgetSession, sessionHash } from "../access/index.server.ts";
+import { sessionHash, signedOutHeaders } from "../access/index.server.ts";
 import { databaseContext, servicesContext } from "../context.ts";
 import type { Route } from "./+types/sign-out";
 
@@ -11,7 +11,7 @@ export async function action({ request, context }: Route.ActionArgs) {
     await context.get(databaseContext).sessions.end(hash);
     await texts.closeSession(hash);
   }
-  return redirect("/", { headers: { "Set-Cookie": await forgetSession(config), "Clear-Site-Data": '"storage"' } });
+  return redirect("/", { headers: await signedOutHeaders(config) });
 }
 
 /** Somebody who opens the address of the form. */
