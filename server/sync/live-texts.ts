@@ -33,6 +33,7 @@ export class LiveTexts implements TextService {
   readonly connections = new Set<Connection>();
   readonly #options: LiveTextsOptions;
   readonly #listeners = new Set<SignalListener>();
+  readonly #telling = new Set<Promise<void>>();
   readonly #shownListeners = new Set<ShownListener>();
   readonly #recheck: NodeJS.Timeout;
 
@@ -53,6 +54,13 @@ export class LiveTexts implements TextService {
       },
       onCommit: (commit, room) => watch.committed(commit, room),
       onUnload: (room) => watch.end(room),
+      tellPresence: (paperId, presence) => {
+        const words = presence && Buffer.from(presence).toString("base64");
+        const told = this.send({ signal: "presence", paperId, presence: words })
+          .catch((error) => onProblem(error, "presence"))
+          .finally(() => this.#telling.delete(told));
+        this.#telling.add(told);
+      },
       onProblem,
     });
     this.signals = new SignalLine(options.databaseUrl, {
@@ -132,16 +140,22 @@ export class LiveTexts implements TextService {
     clearInterval(this.#recheck);
     for (const connection of this.connections) connection.close(CLOSE.again, "The server closes for a moment.");
     await this.rooms.close();
+    await Promise.all(this.#telling);
     await this.signals.close();
   }
 
   #hear(signal: Signal): void {
     if (signal.sender === this.processName) return;
-    const { paperId, doc, last, personId, sessionHash } = signal;
+    const { paperId, doc, last, personId, sessionHash, presence } = signal;
     if (signal.signal === "updates" && typeof paperId === "string" && (doc === "text" || doc === "shown")) {
       this.rooms
         .heard(paperId, doc, Number(last))
         .catch((error) => this.#options.onProblem(error, "updates of another process"));
+    } else if (signal.signal === "presence" && typeof paperId === "string") {
+      const words = typeof presence === "string" ? Uint8Array.from(Buffer.from(presence, "base64")) : null;
+      this.rooms
+        .heardPresence(paperId, words)
+        .catch((error) => this.#options.onProblem(error, "presence of another process"));
     } else if (signal.signal === "access" && typeof paperId === "string") {
       const person = typeof personId === "string" ? personId : null;
       void this.#recheckSockets((connection) => isOn(connection, paperId, person));

@@ -4,8 +4,8 @@ import type { Author } from "./room.ts";
 
 /** A page is one client; one that was reloaded in the same connection may bring a second. */
 const MOST_CLIENTS = 4;
-/** Characters of a page's state: where its caret is, and little more. */
-const LONGEST_STATE = 4_000;
+/** Characters of a page's state: where its caret is, and little more. Fits, as base64, into a signal (8,000 bytes). */
+const LONGEST_STATE = 1_500;
 
 /** Which client ids of a room belong to which connection: the first that speaks for an id has it. */
 export interface Claims {
@@ -54,6 +54,13 @@ export function certifyPresence(
     writeVarString(encoder, state);
   }
   return toUint8Array(encoder);
+}
+
+/** The client that a presence of one client speaks of. */
+export function clientOf(presence: Uint8Array): number {
+  const decoder = createDecoder(presence);
+  readVarUint(decoder);
+  return readVarUint(decoder);
 }
 
 function certifyState(json: string, person: Author): string {

@@ -1,5 +1,5 @@
 import type { DocumentName } from "../../db/index.server.ts";
-import { Company } from "./company.ts";
+import { Company, type TellElsewhere } from "./company.ts";
 import { Room, type RoomOptions } from "./room.ts";
 import { Writer } from "./writer.ts";
 
@@ -9,11 +9,12 @@ const LINGER_MS = 30_000;
 /** A loaded room with what hangs on it. */
 export class OpenRoom {
   readonly room: Room;
-  readonly company = new Company();
+  readonly company: Company;
   #writer: Writer | null = null;
 
-  constructor(room: Room) {
+  constructor(room: Room, tellElsewhere: TellElsewhere) {
     this.room = room;
+    this.company = new Company(tellElsewhere);
   }
 
   /** The server's own hand in the room. */
@@ -39,6 +40,8 @@ interface Entry {
 export type RoomsOptions = Pick<RoomOptions, "store" | "sender" | "onCommit" | "onProblem"> & {
   readonly onLoad?: (room: Room) => void;
   readonly onUnload?: (room: Room) => void;
+  /** Tells the other processes who is in a paper; see TellElsewhere. */
+  readonly tellPresence: (paperId: string, presence: Uint8Array | null) => void;
 };
 
 /** The rooms of this process: each document of each paper is loaded once, however many use it. */
@@ -57,7 +60,7 @@ export class Rooms {
     if (!entry) {
       const opened = Room.load({ ...this.#options, paperId, name }).then((room) => {
         this.#options.onLoad?.(room);
-        return new OpenRoom(room);
+        return new OpenRoom(room, (presence) => this.#options.tellPresence(paperId, presence));
       });
       entry = { opened, users: 0, linger: null };
       this.#entries.set(id, entry);
@@ -96,6 +99,15 @@ export class Rooms {
   async heard(paperId: string, name: DocumentName, last: number): Promise<void> {
     const entry = this.#entries.get(idOf(paperId, name));
     if (entry) (await entry.opened).room.catchUp(last);
+  }
+
+  /** Another process tells who is in a paper there, or asks who is here. */
+  async heardPresence(paperId: string, presence: Uint8Array | null): Promise<void> {
+    const entry = this.#entries.get(idOf(paperId, "text"));
+    if (!entry) return;
+    const { company } = await entry.opened;
+    if (presence) company.hearElsewhere(presence);
+    else company.answerElsewhere();
   }
 
   /** After a break in the signals every room may be behind. */

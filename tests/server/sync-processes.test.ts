@@ -71,3 +71,22 @@ test("a server whose signals were cut off catches up when it hears again", async
   const reported = servers.flatMap(({ problems }) => problems) as { where: string }[];
   expect(reported.every(({ where }) => where === "signals")).toBe(true);
 });
+
+test("people at two servers see each other come, move and go", async () => {
+  const { servers, knex, paperId, first, second } = await twoServers();
+  const caretOf = (page: Page, at: Page) => at.provider.awareness.getStates().get(page.doc.clientID)?.cursor;
+  first.provider.awareness.setLocalStateField("cursor", { anchor: 1, head: 1 });
+  await until(() => caretOf(first, second) !== undefined, "the first caret");
+  first.provider.awareness.setLocalStateField("cursor", { anchor: 2, head: 2 });
+  await until(() => caretOf(first, second)?.anchor === 2, "the caret to move");
+  expect(second.provider.awareness.getStates().get(first.doc.clientID)?.user).toEqual({ name: "Author" });
+
+  const reader = await inventPerson(knex, "Late");
+  await knex("members").insert({ paper_id: paperId, person_id: reader.id, role: "reader" });
+  const late = new Page(servers[1], paperId, reader.session);
+  onTestFinished(() => late.leave());
+  await late.synced();
+  await until(() => caretOf(first, late) !== undefined, "one who comes late to see the caret");
+  first.provider.ws?.close();
+  await until(() => caretOf(first, late) === undefined, "the caret to go");
+});
