@@ -67,7 +67,7 @@ function writeCaption(
   out.startLine();
   out.write("\\caption{");
   printing.moving = true;
-  if (set.note) out.write(`\\textsuperscript{${set.note.mark}}~`);
+  if (set.note && node.caption.length > 0 && first) out.write(`\\textsuperscript{${set.note.mark}}~`);
   if (first) writeInline(node.caption, printing, out, line);
   const remarks = part.part === "figure" ? (set.view?.figure?.remarks ?? []) : (tableOf(part, set)?.remarks ?? []);
   for (const remark of remarks) out.write(` ${wordsTex(remark, printing, line)}`);

@@ -113,10 +113,7 @@ function numberTex(node: BoundNumberNode, printing: Printing, line: number): str
   }
   const tex = printedTex(set.printed, printing, line);
   if (!set.note) return tex;
-  const first = noteText(set.note, printing, line);
-  return first === ""
-    ? `${tex}\\textsuperscript{${set.note.mark}}`
-    : `${tex}\\textsuperscript{${set.note.mark}}${first}`;
+  return `${tex}\\textsuperscript{${set.note.mark}}${noteText(set.note, printing, line)}`;
 }
 
 /** siunitx sets the number; a unit or per cent sign after it is TeX of a formula; words such as "away" are set as words. */

@@ -101,8 +101,9 @@ function writeFront(front: FrontMatter, printing: Printing, out: LatexWriter): v
     printing.moving = true;
     writeInline(readInline(text, 0, printing.paper.paper), printing, out, line);
     printing.moving = false;
-    out.line("}");
     out.from(line);
+    out.write("}");
+    out.startLine();
   };
   inline("title", front.title.trim() === "" ? "Untitled" : front.title);
   for (const author of front.authors) writeAuthor(author, printing, out, line);

@@ -40,8 +40,8 @@ export function preamble(needs: PreambleNeeds): readonly string[] {
     "\\providecommand{\\lt}{<}",
     "\\providecommand{\\gt}{>}",
     ...theorems(),
-    "% A number whose result is out of date: a dagger, and once what it was set with.",
-    "\\newcommand{\\outofdate}[2]{\\textsuperscript{#1}\\begingroup\\renewcommand{\\thefootnote}{#1}\\footnotetext{#2}\\endgroup}",
+    "% What a number that is out of date was set with; the dagger stands at the number.",
+    "\\newcommand{\\outofdate}[2]{\\begingroup\\renewcommand{\\thefootnote}{#1}\\footnotetext{#2}\\endgroup}",
     ...needs.macros,
   ];
 }

@@ -64,13 +64,17 @@ export function placeSeries(series: Series, colour: Colour, figure: Figure, plac
     p.x <= inner.right + 0.5 &&
     p.y >= inner.top - 0.5 &&
     p.y <= inner.bottom + 0.5;
-  const marks = lined
-    ? []
-    : points.flatMap((p, i): Mark[] =>
-        inside(p) ? [{ x: p.x, y: p.y, bar: series.low && series.high ? interval(i) : null }] : [],
-      );
+  const inView = lined ? [] : points.flatMap((p, i) => (inside(p) ? [{ ...p, i }] : []));
   const spacing =
-    marks.length > 1 ? ((marks.at(-1)?.x ?? 0) - (marks[0]?.x ?? 0)) / (marks.length - 1) : Number.POSITIVE_INFINITY;
+    inView.length > 1
+      ? ((inView.at(-1)?.x ?? 0) - (inView[0]?.x ?? 0)) / (inView.length - 1)
+      : Number.POSITIVE_INFINITY;
+  const radius = Math.max(1, Math.min(3.3, spacing * 0.4)) * unit;
+  const marks = inView.map(({ x, y, i }): Mark => {
+    const bar = series.low && series.high ? interval(i) : null;
+    // A bar that its mark hides is not drawn.
+    return { x, y, bar: bar && Math.abs(bar[0] - bar[1]) > 2 * radius ? bar : null };
+  });
   const first = points[0];
   return {
     name: series.name,
@@ -81,7 +85,7 @@ export function placeSeries(series: Series, colour: Colour, figure: Figure, plac
     line: lined ? curvePath(piecesWithin(points, inner)) : "",
     band: lined && series.low && series.high ? visibleBand(series, points, interval, placing) : "",
     marks,
-    radius: Math.max(1, Math.min(3.3, spacing * 0.4)) * unit,
+    radius,
     ring: series.mark === "points" && series.low !== undefined,
     foot: series.mark === "stems" && spacing >= CLOSEST_STEMS * unit ? inner.bottom : null,
     start:

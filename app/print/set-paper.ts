@@ -2,7 +2,6 @@ import {
   type CellResult,
   type CellState,
   type CellView,
-  causesOf,
   causeWords,
   cellState,
   evaluateNumber,
@@ -126,7 +125,7 @@ function setCell(
   const state = cellState(planned, shownCell, shown.work.get(planned.slot), plan, shown);
   if (!result)
     return { planned, state: state.state, view: null, note: null, reason: reasonOf(state, planned), provenance: null };
-  const causes = planned.key === null || state.state === "failed" ? [] : causesOf(planned, shownCell, plan, shown);
+  const causes = state.state === "failed" ? [] : state.causes;
   const words = [...new Set(causes.map((cause) => causeWords(cause, PRINTED_CAUSE)).map(withoutBrackets))];
   return {
     planned,

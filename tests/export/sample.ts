@@ -123,3 +123,24 @@ export function computed(text: string, bibliography = ""): Computed {
   for (const [id, outcome] of computePlan(plan)) if (outcome.status === "computed") results.set(id, outcome.result);
   return { paper, plan, results };
 }
+
+/** What a paper shows after everything in it was computed. */
+export function shownAs({ plan, results }: Computed): ShownPaper {
+  const cells = plan.cells.flatMap((cell) => {
+    const result = results.get(cell.id);
+    if (!result) return [];
+    const { key, seconds, solver } = result;
+    const { parameterValues, workingKey } = cell;
+    const shown = {
+      key,
+      seconds,
+      solver,
+      parameterValues,
+      workingKey: workingKey ?? "",
+      at: "2026-12-01T14:31:00Z",
+      by: "Inês",
+    };
+    return [[cell.slot, shown] as const];
+  });
+  return { cells: new Map(cells), work: new Map(), changes: new Map() };
+}
