@@ -28,11 +28,6 @@ export async function list(knex: Knex, paperId: string): Promise<MemberRow[]> {
     });
 }
 
-export async function roleOf(knex: Knex, paperId: string, personId: string): Promise<Role | null> {
-  const row = await knex("members").where({ paper_id: paperId, person_id: personId }).first("role");
-  return row ? row.role : null;
-}
-
 export async function add(
   knex: Knex,
   paperId: string,

@@ -16,11 +16,3 @@ const RIGHTS: Readonly<Record<Standing, readonly Right[]>> = {
 export function may(standing: Standing, right: Right): boolean {
   return RIGHTS[standing].includes(right);
 }
-
-/** The headings of the title page, and what those under each may do. */
-export const STANDING_WORDS: Readonly<Record<Exclude<Standing, "visitor">, { noun: string; may: string }>> = {
-  owner: { noun: "Owner", may: "an author who may also add and remove people, and delete the paper" },
-  author: { noun: "Author", may: "writes, changes parameters, recomputes" },
-  referee: { noun: "Referee", may: "reads the sheet and the galley" },
-  reader: { noun: "Reader", may: "reads the sheet and the galley, tries parameters" },
-};
