@@ -1,5 +1,4 @@
 /** The sheet: where a paper is written. Routes render SheetPage; the server speaks the words of protocol.ts. */
 
 export type { ShownRecords } from "./live/paper-session.ts";
-export { forgetPrivateCopies } from "./live/private-copies.ts";
 export { SheetPage, type SheetPageProps } from "./parts/sheet-page.tsx";

@@ -9,6 +9,7 @@ import { sheetField, showWorking } from "../text/sheet-field.ts";
 import { Announcer } from "./announcer.ts";
 import type { Connection } from "./connection.ts";
 import { openSession, type PaperSession, type SessionOptions, type ShownRecords } from "./paper-session.ts";
+import { forgetPrivateCopies } from "./private-copies.ts";
 import { Reading } from "./reading.ts";
 import { requestsOf } from "./requests.ts";
 import { ResultFetcher } from "./result-fetcher.ts";
@@ -79,6 +80,7 @@ export class Desk {
       columnWidth: 660,
     };
     this.fetcher = new ResultFetcher(this.requests, (results) => this.reading?.tellResults(results));
+    if (options.person !== null) void forgetPrivateCopies(options.person.id);
     this.session = openSession({
       ...options,
       onText: () => this.begin(),

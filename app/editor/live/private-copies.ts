@@ -1,6 +1,7 @@
 /**
  * The copy of a paper's text that this browser keeps for a person, so that a reload or a spell without connection
- * loses nothing. It is removed at sign-out, at loss of access, and when another person signs in here.
+ * loses nothing. Signing out removes it (the server asks the browser to clear what it stores), so does the loss of
+ * access, and so does another person who opens a sheet here.
  */
 const PREFIX = "halfline/";
 
@@ -9,12 +10,12 @@ export function privateCopyName(paperId: string, personId: string): string {
   return `${PREFIX}${personId}/${paperId}`;
 }
 
-/** Removes the private copies of everyone but `personId` (null: of all). Resolves when they are gone or were never there. */
-export async function forgetPrivateCopies(personId: string | null): Promise<void> {
+/** Removes the private copies of everyone but `personId`. Resolves when they are gone or were never there. */
+export async function forgetPrivateCopies(personId: string): Promise<void> {
   if (typeof indexedDB === "undefined" || typeof indexedDB.databases !== "function") return;
-  const keep = personId === null ? null : `${PREFIX}${personId}/`;
+  const keep = `${PREFIX}${personId}/`;
   const names = (await indexedDB.databases()).flatMap(({ name }) => (name?.startsWith(PREFIX) ? [name] : []));
-  await Promise.all(names.filter((name) => keep === null || !name.startsWith(keep)).map(removeDatabase));
+  await Promise.all(names.filter((name) => !name.startsWith(keep)).map(removeDatabase));
 }
 
 /** Removes one paper's private copy. */

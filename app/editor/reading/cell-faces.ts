@@ -2,6 +2,7 @@ import {
   type CellResult,
   type CellState,
   type CellWork,
+  KINDS,
   type Plan,
   type PlannedCell,
   provenance,
@@ -128,7 +129,7 @@ function provenanceRuns(
   printed: (name: string, words: string) => string,
   now: Date,
 ): CellFace["provenance"] {
-  if (result === undefined || awaited) return [];
+  if (result === undefined || awaited || KINDS.get(planned.kind)?.knownAtPlanning === true) return [];
   const { words, by, at } = provenance(planned, result, shown);
   if (!previewed) {
     const who = [by, at === null ? null : moment(at, now)].filter((part) => part !== null).join(", ");
