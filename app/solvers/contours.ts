@@ -31,6 +31,10 @@ const CHECK_PANEL_NODES = 20;
 /** Relative agreement asked of the two contours, and of their total with 1. */
 const ACCEPTED = 1e-12;
 const ACCEPTED_UNITS = 64;
+/** What ends the search once a width and its refinements are through: a narrower arc takes many more nodes for the last digits. */
+const GOOD_ENOUGH = 1e-11;
+/** The same where continuation runs along rays: P(K = n) may fall far below the rounding of its sum there, which no contour mends. */
+const GOOD_ON_RAYS = 1e-8;
 /** What is still accepted from the best attempt, with its error stated. */
 const TOLERATED = 1e-6;
 
@@ -59,6 +63,7 @@ function searchWidths(t: Trajectory, reader: TrajectoryReader, level: number): C
   const tilt = Number.isFinite(obstacle(t, reader)) ? POLE_TILT : PLAIN_TILT;
   // a double short of the obstacle by a share of 1/n has lost that much of its digits
   const accepted = Math.max(ACCEPTED, (ACCEPTED_UNITS * Number.EPSILON) / (start.next / reference.radius[0] - 1));
+  const good = reader.rays === null ? GOOD_ENOUGH : GOOD_ON_RAYS;
   let best: ContourPair | null = null;
   let smallest = TOLERATED;
   for (const width of WIDTHS) {
@@ -82,6 +87,7 @@ function searchWidths(t: Trajectory, reader: TrajectoryReader, level: number): C
         best = pair;
       }
     }
+    if (best !== null && smallest < good) return best;
   }
   if (best !== null) return best;
   throw new SolverError("not_converged", NOT_FOUND);

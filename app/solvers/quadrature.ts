@@ -6,6 +6,8 @@ export interface Rule {
 
 const rules = new Map<number, Rule>();
 const NEWTON_ROUNDS = 12;
+/** The square of this step is beyond the double's accuracy. */
+const CONVERGED = 1e-10;
 
 /** The Gauss–Legendre rule with n nodes, in increasing order; exact for polynomials of degree 2n − 1.
  *  Method: Newton's method on the Legendre polynomial from Tricomi's approximation of its roots.
@@ -23,7 +25,7 @@ export function gaussLegendre(n: number): Rule {
       slope = derivative;
       const step = value / derivative;
       x -= step;
-      if (Math.abs(step) < Number.EPSILON / 4) break;
+      if (Math.abs(step) < CONVERGED) break;
     }
     slope = legendre(n, x).derivative;
     nodes[n - 1 - i] = x;

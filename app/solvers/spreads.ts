@@ -12,7 +12,7 @@ const COARSE_WALK: WalkSettings = { order: 16, tolerance: 2 ** -44 };
 /** Shift of √(drift² − 4 D f'(1)) for the sensitivity, relative to the drift: the trajectory is analytic in it, even at 0. */
 const SHIFT = 2 ** -14;
 /** The two walks may differ by this; more means that one of them went wrong. */
-const AGREEMENT = 1e-9;
+const AGREEMENT = 1e-7;
 
 /** Bounds on the relative changes of a trajectory's constants when every input moves within its rounding. */
 export interface Spreads {

@@ -35,6 +35,9 @@ export interface OriginSeries {
 /** Largest |z| at which the series hands over to the steps, below B_0 and B_{s0} whenever the law hardly branches. */
 const REACH_CAP = 1 / 8;
 
+/** A series that must be cut off nearer to 0 than this is none. */
+const SMALLEST_REACH = 1e-200;
+
 /** Series of u at z = 0. The bracket (k − 1)(k − ratio) > 0 for k ≥ 2, so no drift ≥ critical is resonant.
  *  Source: substitution of the power series into the equation; Koenigs' linearisation of the flow at w = 1. */
 export function originSeries(n: Normalised, settings: WalkSettings): OriginSeries {
@@ -60,7 +63,14 @@ export function originSeries(n: Normalised, settings: WalkSettings): OriginSerie
   );
   // On both sides the hand-over must come well before u = 1 and before the turning point.
   const slopeAt = (z: number) => toNumber(series.evaluate(pair(z / unit), order).derivative) / unit;
-  while (!(slopeAt(reach) < 2 && slopeAt(-reach) > 1 / 2 && slopeAt(reach) > 1 / 2)) reach /= 2;
+  while (!(slopeAt(reach) < 2 && slopeAt(-reach) > 1 / 2 && slopeAt(reach) > 1 / 2)) {
+    reach /= 2;
+    if (!(reach > SMALLEST_REACH))
+      throw new SolverError(
+        "not_converged",
+        "The power series near w = 1 has no usable radius; the parameters are too far apart in size.",
+      );
+  }
   return { scale: unit, series, reach: 2 ** Math.floor(Math.log2(reach)) };
 }
 
