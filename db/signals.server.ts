@@ -34,6 +34,8 @@ export class SignalLine {
   readonly #handlers: SignalHandlers;
   readonly #claims = new Set<string>();
   #client: pg.Client | null = null;
+  /** The last question asked: one connection answers one at a time. */
+  #asked: Promise<unknown> = Promise.resolve();
   #retry: NodeJS.Timeout | null = null;
   #ended = false;
 
@@ -66,11 +68,9 @@ export class SignalLine {
   /** True when this process now holds `name`, and no other does. A name that it holds already is refused. */
   async claim(name: string): Promise<boolean> {
     if (this.#claims.has(name)) return false;
-    if (!this.#client) throw new Error("The database's signals cannot be reached; they are being tried again.");
     this.#claims.add(name);
     try {
-      const { rows } = await this.#client.query<{ held: boolean }>(...lock("pg_try_advisory_lock", name));
-      if (rows[0]?.held) return true;
+      if (await this.#ask("pg_try_advisory_lock", name)) return true;
     } catch (error) {
       this.#claims.delete(name);
       throw error;
@@ -81,7 +81,7 @@ export class SignalLine {
 
   async release(name: string): Promise<void> {
     if (!this.#claims.delete(name) || !this.#client) return;
-    await this.#client.query(...lock("pg_advisory_unlock", name));
+    await this.#ask("pg_advisory_unlock", name);
   }
 
   async close(): Promise<void> {
@@ -90,6 +90,16 @@ export class SignalLine {
     const client = this.#client;
     this.#client = null;
     await client?.end();
+  }
+
+  #ask(call: LockFunction, name: string): Promise<boolean> {
+    const answer = this.#asked.then(async () => {
+      if (!this.#client) throw new Error("The database's signals cannot be reached; they are being tried again.");
+      const { rows } = await this.#client.query<{ held: boolean }>(...lock(call, name));
+      return rows[0]?.held ?? false;
+    });
+    this.#asked = answer.catch(() => undefined);
+    return answer;
   }
 
   #lost(wait = FIRST_RETRY_MS): void {
