@@ -1,5 +1,6 @@
 import { type Contour, type Reference, traceContour } from "./contour.ts";
 import { SolverError } from "./errors.ts";
+import { upperFixedPoint } from "./offspring.ts";
 import type { TrajectoryReader } from "./reader.ts";
 import { nodeValues } from "./sources.ts";
 import { sumRange, sumsOf } from "./sums.ts";
@@ -60,7 +61,7 @@ function searchWidths(t: Trajectory, reader: TrajectoryReader, level: number): C
   const start = beginning(t, reader, level);
   const { reference } = start;
   const finest = finestScale(start, level);
-  const tilt = Number.isFinite(obstacle(t, reader)) ? POLE_TILT : PLAIN_TILT;
+  const tilt = Number.isFinite(start.next) ? POLE_TILT : PLAIN_TILT;
   // a double short of the obstacle by a share of 1/n has lost that much of its digits
   const accepted = Math.max(ACCEPTED, (ACCEPTED_UNITS * Number.EPSILON) / (start.next / reference.radius[0] - 1));
   const good = reader.rays === null ? GOOD_ENOUGH : GOOD_ON_RAYS;
@@ -93,36 +94,36 @@ function searchWidths(t: Trajectory, reader: TrajectoryReader, level: number): C
   throw new SolverError("not_converged", NOT_FOUND);
 }
 
-/** The first singularity beyond the trajectory's upper end, if one is known: the pole of a geometric law, or a fixed point. */
-function obstacle(t: Trajectory, reader: TrajectoryReader): number {
-  if (t.edge !== null) return t.edge.s;
-  return reader.law.law === "geometric" ? 1 + 1 / reader.law.mean[0] : Number.POSITIVE_INFINITY;
-}
-
-/** Where the leg starts, and the next singularity it has to resolve. */
+/** Where the leg starts, the next singularity, and the scale on which w(x, ·) varies there. */
 interface Beginning {
   readonly reference: Reference;
   readonly next: number;
+  readonly variation: number;
 }
 
-/** The leg starts at s0, the saddle; or, with an obstacle close by, short of both by 1/n at the largest n, where s^−n is at most e
- *  times what it is at the first of them, and the rounding of doubles near it is not felt. */
+/** The leg starts at s0, the saddle; or, where the pole of a geometric law or a second fixed point of G is within 1/n of it at the
+ *  largest n (or ends the trajectory), short of all by 1/n: s^−n is then at most e times what it is at the first of them, and the
+ *  rounding of doubles next to them is not felt. */
 function beginning(t: Trajectory, reader: TrajectoryReader, level: number): Beginning {
-  const near = obstacle(t, reader);
+  const apart = 10 ** -level;
+  const pole = reader.law.law === "geometric" ? 1 + 1 / reader.law.mean[0] : Number.POSITIVE_INFINITY;
   const { turning } = reader;
-  if (turning !== null && turning.s0[0] < near * (1 - 10 ** -level))
-    return { reference: { radius: turning.s0, excess: turning.excess }, next: near };
-  const next = Math.min(near, turning === null ? near : turning.s0[0]);
-  const radius = Math.max(Math.sqrt(next), next * (1 - 10 ** -level));
-  return { reference: { radius: [radius, 0], excess: [radius - 1, 0] }, next };
+  if (turning !== null) {
+    const s0 = turning.s0[0];
+    const fixed = reader.law.excess[0] < 0 && t.ratio[0] < -1 ? upperFixedPoint(reader.law) : 1;
+    if (s0 < pole * (1 - apart) && s0 > fixed * (1 + apart))
+      return { reference: { radius: turning.s0, excess: turning.excess }, next: pole, variation: s0 - fixed };
+  }
+  const next = Math.min(pole, turning === null ? (t.edge?.s ?? pole) : turning.s0[0]);
+  const radius = Math.max(Math.sqrt(next), next * (1 - apart));
+  return { reference: { radius: [radius, 0], excess: [radius - 1, 0] }, next, variation: radius - 1 };
 }
 
-/** The leg must resolve the Gaussian e^{−nτ²}, the scale s0 − 1 on which w(x, ·) itself varies, and the distance to the next singularity. */
-function finestScale({ reference, next }: Beginning, level: number): number {
+/** The leg must resolve the Gaussian e^{−nτ²}, the variation of w(x, ·) itself, and the distance to the next singularity. */
+function finestScale({ reference, next, variation }: Beginning, level: number): number {
   const radius = reference.radius[0];
   const gaussian = 1 / (2 * Math.sqrt(10 ** level));
-  const variation = Math.sqrt(reference.excess[0] / radius) / 4;
-  return Math.min(gaussian, variation, Math.sqrt(next / radius - 1) / 2);
+  return Math.min(gaussian, Math.sqrt(variation / radius) / 4, Math.sqrt(next / radius - 1) / 2);
 }
 
 function arcNodes(width: number): number {
