@@ -92,6 +92,17 @@ test("signing out everywhere ends the other browsers' sessions", async () => {
   expect((await other.browser.open(`${server.url}/shelf`)).at).toContain("/sign-in");
 });
 
+test("one's name is as one writes it, and stays so at the next sign-in", async () => {
+  const { browser } = await signedIn("9004");
+  const keep = (name: string) =>
+    browser.open(`${server.url}/settings`, form({ intent: "keep", name, theme: "machine" }));
+  expect((await keep("  ")).status).toBe(422);
+  expect((await keep("x".repeat(101))).status).toBe(422);
+  expect(await (await keep("  R.   Sim ")).text()).toContain('value="R. Sim"');
+  const again = await signedIn("9004", "/settings");
+  expect(await (await again.browser.open(`${server.url}/settings`)).text()).toContain('value="R. Sim"');
+});
+
 test("a sign-in that failed says why", async () => {
   const stale = await new Browser().open(`${server.url}/sign-in/github/callback?code=x&state=y`);
   expect(await stale.text()).toContain("begun in another window");
