@@ -1,3 +1,4 @@
+import type { CellWork } from "../../app/cells/types.ts";
 import type { Computable } from "./board.ts";
 import type { PlannedWork } from "./worker.ts";
 
@@ -18,4 +19,11 @@ export function withNeeds(planned: readonly PlannedWork[], asked: ReadonlySet<st
 /** Ids of the cells that `cell` reads and that have to be computed first. */
 export function unmet(cell: Computable, absent: readonly Computable[]): string[] {
   return absent.filter(({ id }) => cell.needs.includes(id)).map(({ id }) => id);
+}
+
+/** True of work that waits, itself or through others, for a cell that failed: nobody is at it, and it is not stale. */
+export function isBlocked(work: Readonly<Record<string, CellWork>>, slot: string): boolean {
+  const own = work[slot];
+  // Only named cells are read by others, and the slot of a named cell is its name.
+  return own?.state === "waiting" && own.needs.some((need) => work[need]?.state === "failed" || isBlocked(work, need));
 }

@@ -7,7 +7,7 @@ import { Board, type Computable } from "./board.ts";
 import { claimOf, type Follower, type JobEnd, Jobs } from "./jobs.ts";
 import { Pool, type PoolOptions, StoppedError } from "./pool.ts";
 import { Quota } from "./quota.ts";
-import { isComputable, unmet, withNeeds } from "./selection.ts";
+import { isBlocked, isComputable, unmet, withNeeds } from "./selection.ts";
 import type { PlannedWork } from "./worker.ts";
 
 /** Characters of a text and its bibliography that are read here; a long paper has a tenth of it. */
@@ -269,7 +269,8 @@ export class Computations implements ComputeService {
     const { texts } = this.#options;
     const { work } = await texts.shown(paperId);
     for (const [slot, { key, state }] of Object.entries(work)) {
-      if ((state !== "waiting" && state !== "computing") || this.#jobs.isRunning(key)) continue;
+      if ((state !== "waiting" && state !== "computing") || this.#jobs.isRunning(key) || isBlocked(work, slot))
+        continue;
       if (!(await texts.signals.claim(claimOf(key)))) continue;
       try {
         await texts.show(paperId, (maps) => {

@@ -98,6 +98,9 @@ test("a cell that fails is told with its line, what reads it waits, the rest com
   expect(work.message.length).toBeGreaterThan(20);
   expect(await desk.work("after")).toMatchObject({ state: "waiting", needs: ["L"] });
   expect(await desk.shown("K")).toBeDefined();
+  // Nobody is at it, but it is no leftover of a killed process either.
+  await desk.cancel("all");
+  expect(await desk.work("after")).toMatchObject({ state: "waiting", needs: ["L"] });
 });
 
 test("two cells of equal key are both shown", async () => {
