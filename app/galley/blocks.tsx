@@ -116,10 +116,9 @@ function EnvironmentBlock({ node, setting }: { readonly node: EnvironmentNode; r
   const endsInDisplay = isProof && last?.type === "math";
   const title = node.title.length > 0 ? <Inline nodes={node.title} setting={setting} /> : null;
   return (
-    <section
+    <div
       className={UPRIGHT.has(node.environment) ? "g-environment" : "g-environment g-statement"}
       id={node.label ? anchor.label(node.label) : undefined}
-      aria-label={`${noun}${node.number === null ? "" : ` ${node.number}`}`}
     >
       <p>
         <span className={QUIET.has(node.environment) ? "g-head-quiet" : "g-head"}>
@@ -139,7 +138,7 @@ function EnvironmentBlock({ node, setting }: { readonly node: EnvironmentNode; r
           <Box />
         </p>
       ) : null}
-    </section>
+    </div>
   );
 }
 
@@ -165,11 +164,14 @@ function Item({ node, setting }: { readonly node: ListItem; readonly setting: Se
   );
 }
 
+/** A wide table scrolls by itself; Tab reaches it, so that the arrows can move it. */
+const reachable = { tabIndex: 0 };
+
 function TableBlock({ node, setting }: { readonly node: Table; readonly setting: Setting }) {
   const [head, ...rows] = node.children;
   const side = (k: number) => ({ textAlign: node.align?.[k] ?? "left" }) as const;
   return (
-    <div className="g-grid">
+    <section className="g-grid" aria-label={`Table in line ${node.position?.start.line ?? 0}`} {...reachable}>
       <table className="g-table">
         <thead>
           <tr>
@@ -192,6 +194,6 @@ function TableBlock({ node, setting }: { readonly node: Table; readonly setting:
           ))}
         </tbody>
       </table>
-    </div>
+    </section>
   );
 }

@@ -1,4 +1,4 @@
-import { type Figure, FigurePlate, type TableData } from "../figures/index.ts";
+import { type Figure, FigurePlate, labelText, type TableData } from "../figures/index.ts";
 import type { CellNode, PrintedPart } from "../paper/index.ts";
 import { provenanceLine, type SetCell } from "../print/index.ts";
 import { Formula, Inline, NumberText, Words } from "./inline.tsx";
@@ -26,7 +26,11 @@ export function CellParts({ node, setting }: { readonly node: CellNode; readonly
     return (
       <figure key={part.part} className="g-figure" id={id}>
         <figcaption>{caption}</figcaption>
-        {table ? <ResultTable table={table} setting={setting} /> : <Absent part={part} set={set} />}
+        {table ? (
+          <ResultTable name={`${part.noun} ${part.number}`} table={table} setting={setting} />
+        ) : (
+          <Absent part={part} set={set} />
+        )}
       </figure>
     );
   });
@@ -86,14 +90,23 @@ function Caption({ node, part, set, first, setting }: CaptionProps) {
   );
 }
 
-function ResultTable({ table, setting }: { readonly table: TableData; readonly setting: Setting }) {
+/** A wide table scrolls by itself; Tab reaches it, so that the arrows can move it. */
+const reachable = { tabIndex: 0 };
+
+interface ResultTableProps {
+  readonly name: string;
+  readonly table: TableData;
+  readonly setting: Setting;
+}
+
+function ResultTable({ name, table, setting }: ResultTableProps) {
   return (
-    <div className="g-grid">
+    <section className="g-grid" aria-label={name} {...reachable}>
       <table className="g-table g-results">
         <thead>
           <tr>
             {table.columns.map((column) => (
-              <th key={column.name} scope="col">
+              <th key={column.name} scope="col" aria-label={column.tex ? labelText(column.head) : undefined}>
                 {column.tex ? <Formula tex={column.head} setting={setting} /> : column.head}
               </th>
             ))}
@@ -111,6 +124,6 @@ function ResultTable({ table, setting }: { readonly table: TableData; readonly s
           ))}
         </tbody>
       </table>
-    </div>
+    </section>
   );
 }

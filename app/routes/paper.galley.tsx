@@ -42,12 +42,12 @@ export default function Galley({ loaderData }: Route.ComponentProps) {
         <div {...ourMarkup(galley)} />
         <SendToPrint sheet={sheet} doubts={doubts} problems={problems} />
       </main>
-      <div className="g-to-print">
+      <nav className="g-to-print" aria-label="Ways on">
         <a className="button" href="#send-to-print">
           Send to print
         </a>
         <CommandLink to={sheet}>Back to the sheet</CommandLink>
-      </div>
+      </nav>
       <TailLine left={`Galleys of lines 1 to ${lines}`} right="Set in Lora" />
     </>
   );
