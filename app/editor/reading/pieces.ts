@@ -179,7 +179,10 @@ function lines(node: Nodes, into: Collecting, dress: string): void {
   if (from >= 0) into.pieces.push({ piece: "lines", from, to, dress });
 }
 
-/** Blank lines that part blocks are set low; those within workings and code keep their height. */
+/**
+ * The blank line that parts two blocks is set low. Further ones keep their height, since that is where somebody writes;
+ * so do those within workings and code.
+ */
 function blankLines(paper: Paper, into: Collecting): void {
   const inside = [
     ...paper.cells.map(({ span }) => span),
@@ -195,6 +198,12 @@ function blankLines(paper: Paper, into: Collecting): void {
     const at = found.index;
     while (next < inside.length && (inside[next]?.to ?? 0) < at) next += 1;
     const block = inside[next];
-    if (block === undefined || at < block.from) into.blanks.push(at);
+    const parts = at < paper.text.length && at > 0 && !blankBefore(paper.text, at);
+    if (parts && (block === undefined || at < block.from)) into.blanks.push(at);
   }
+}
+
+/** Whether the line before the one that begins at `at` is blank too. */
+function blankBefore(source: string, at: number): boolean {
+  return source.slice(lineStart(source, at - 1), at - 1).trim() === "";
 }

@@ -84,6 +84,9 @@ const DRAWINGS: { readonly [Name in Piece["piece"]]: Drawing<PieceOf<Name>> } = 
   parameter: { closed: () => [], opened: () => [] },
 };
 
+/** Class of the blank line between two blocks. */
+export const BLANK = "hl-blank";
+
 /** All that is drawn of the pieces while the caret is outside of them, and their joins and blank lines. */
 export function closedDecorations(
   pieces: readonly Piece[],
@@ -102,7 +105,7 @@ export function closedDecorations(
     const [from, to] = [joins[k] ?? 0, joins[k + 1] ?? 0];
     if (to <= doc.length && from < to) made.push(join.range(from, to));
   }
-  const blank = Decoration.line({ class: "hl-blank" });
+  const blank = Decoration.line({ class: BLANK });
   for (const at of blanks) if (at <= doc.length) made.push(blank.range(doc.lineAt(at).from));
   return made;
 }

@@ -1,7 +1,7 @@
 import { type ChangeDesc, type EditorState, RangeSet, StateEffect, StateField, type Text } from "@codemirror/state";
 import { Decoration, type DecorationSet, EditorView } from "@codemirror/view";
 import type { CellFace, Piece, SheetModel } from "../model/types.ts";
-import { closedDecorations, openedDecorations, type Workshop } from "./decorate.ts";
+import { BLANK, closedDecorations, openedDecorations, type Workshop } from "./decorate.ts";
 import { type Place, placesOf, touched } from "./places.ts";
 import { WidgetStore } from "./widgets.ts";
 
@@ -52,7 +52,7 @@ export const sheetField = StateField.define<Sheet>({
     let { model, workshop, places, closed, workings, attention, pressed } = before;
     if (transaction.docChanged) {
       places = places.map(transaction.changes);
-      closed = closed.map(transaction.changes);
+      closed = withoutFilledBlanks(closed.map(transaction.changes), transaction.changes, transaction.newDoc);
     }
     for (const effect of transaction.effects) {
       if (effect.is(applyModel)) {
@@ -80,6 +80,19 @@ export const sheetField = StateField.define<Sheet>({
   },
   provide: (field) => EditorView.decorations.from(field, (sheet) => sheet.shown),
 });
+
+/** A blank line on which something is written is no longer set low, without waiting for the next answer. */
+function withoutFilledBlanks(closed: DecorationSet, changes: ChangeDesc, doc: Text): DecorationSet {
+  let left = closed;
+  changes.iterChangedRanges((_fromA, _toA, fromB, toB) => {
+    left = left.update({
+      filter: (from, _to, mark) => mark.spec.class !== BLANK || doc.lineAt(from).length === 0,
+      filterFrom: doc.lineAt(fromB).from,
+      filterTo: doc.lineAt(toB).to,
+    });
+  });
+  return left;
+}
 
 function facesOf(cells: readonly CellFace[]): Map<string, CellFace> {
   return new Map(cells.map((face) => [face.slot, face]));

@@ -1,0 +1,155 @@
+// @vitest-environment jsdom
+import { EditorState } from "@codemirror/state";
+import { EditorView } from "@codemirror/view";
+import { afterEach, beforeAll, beforeEach, expect, test, vi } from "vitest";
+import { type Reader, Reading } from "../../app/editor/live/reading.ts";
+import type { FromWorker, ToWorker } from "../../app/editor/model/messages.ts";
+import type { SheetModel } from "../../app/editor/model/types.ts";
+import { SheetReader } from "../../app/editor/reading/sheet-reader.ts";
+import { glossField } from "../../app/editor/text/glosses.ts";
+import { sheetField } from "../../app/editor/text/sheet-field.ts";
+import { likeABrowser } from "./dom.ts";
+
+/** A worker that answers when the test says so. */
+class SlowReader implements Reader {
+  onmessage: Reader["onmessage"] = null;
+  readonly heard: ToWorker[] = [];
+  private readonly reader = new SheetReader();
+  private waiting = 0;
+  ended = false;
+
+  postMessage(message: ToWorker): void {
+    this.heard.push(message);
+    this.reader.hear(message);
+    this.waiting += 1;
+  }
+
+  answer(change: Partial<SheetModel> = {}): void {
+    const data: FromWorker = {
+      tell: "sheet",
+      answers: this.waiting,
+      model: { ...this.reader.sheet(), ...change },
+      seconds: 0,
+    };
+    this.waiting = 0;
+    this.onmessage?.(new MessageEvent("message", { data }));
+  }
+
+  terminate(): void {
+    this.ended = true;
+  }
+
+  texts(): string[] {
+    return this.heard.flatMap((message) => (message.tell === "text" ? [message.text] : []));
+  }
+}
+
+beforeAll(likeABrowser);
+beforeEach(() => vi.useFakeTimers());
+
+const ends: (() => void)[] = [];
+afterEach(() => {
+  for (const end of ends.splice(0)) end();
+  vi.useRealTimers();
+});
+
+function begin(text: string) {
+  const reader = new SlowReader();
+  const models: SheetModel[] = [];
+  let reading: Reading | null = null;
+  const view = new EditorView({
+    parent: document.body,
+    state: EditorState.create({
+      doc: text,
+      extensions: [sheetField, glossField, EditorView.updateListener.of((update) => reading?.onUpdate(update))],
+    }),
+  });
+  reading = new Reading(
+    view,
+    reader,
+    () => "",
+    (model) => models.push(model),
+  );
+  ends.push(() => {
+    reading?.end();
+    view.destroy();
+  });
+  const type = (insert: string) => {
+    view.dispatch({ changes: { from: view.state.doc.length, insert } });
+    vi.advanceTimersByTime(50);
+  };
+  return { reader, reading, view, models, type };
+}
+
+/** Where the first piece of math stands on the sheet. */
+function mathAt(view: EditorView): string | null {
+  for (const cursor = view.state.field(sheetField).places.iter(); cursor.value !== null; cursor.next()) {
+    if (cursor.value.piece.piece === "set") return view.state.sliceDoc(cursor.from, cursor.to);
+  }
+  return null;
+}
+
+test("one text at a time is with the worker, and then the newest", () => {
+  const { reader, type } = begin("a");
+  type("b");
+  type("c");
+  expect(reader.texts()).toEqual(["a"]);
+  reader.answer();
+  expect(reader.texts()).toEqual(["a", "abc"]);
+  reader.answer();
+  expect(reader.texts()).toEqual(["a", "abc"]);
+});
+
+test("a late answer is set where its text has gone in the meantime", () => {
+  const { reader, view } = begin("So $x$ it is.");
+  view.dispatch({ changes: { from: 0, insert: "Well. " } });
+  reader.answer();
+  expect(mathAt(view)).toBe("$x$");
+});
+
+test("an answer to an older text than was asked last is dropped", () => {
+  const { reader, models, view } = begin("So $x$ it is.");
+  reader.answer({ version: 0 });
+  expect(models).toEqual([]);
+  expect(mathAt(view)).toBeNull();
+});
+
+test("of the values passed through in a drag only the newest is tried", () => {
+  const { reader, reading } = begin("a");
+  for (const mu of ["1", "2", "3"]) reading.tellPreview({}, { mu });
+  expect(reader.heard.filter(({ tell }) => tell === "preview")).toEqual([]);
+  reader.answer();
+  expect(reader.heard.filter(({ tell }) => tell === "preview")).toEqual([
+    { tell: "preview", settled: {}, trial: { mu: "3" } },
+  ]);
+});
+
+test("faults wait until the writing rests", () => {
+  const { reader, view, type } = begin("x ");
+  reader.answer();
+  type(":ref[nowhere]");
+  reader.answer();
+  expect(view.state.field(glossField).problems).toEqual([]);
+  vi.advanceTimersByTime(1000);
+  expect(view.state.field(glossField).problems).toHaveLength(1);
+  expect(view.contentDOM.querySelector(".hl-gloss-error")?.textContent).toContain("nowhere");
+});
+
+test("a text that cannot be read keeps the sheet as it was", () => {
+  const { reader, view } = begin("So $x$ it is.");
+  reader.answer();
+  const said = vi.spyOn(console, "error").mockImplementation(() => {});
+  reader.postMessage({ tell: "results", results: [] });
+  reader.onmessage?.(
+    new MessageEvent("message", { data: { tell: "fault", answers: 0, message: "out of memory" } as const }),
+  );
+  expect(mathAt(view)).toBe("$x$");
+  expect(said).toHaveBeenCalledWith(expect.stringContaining("out of memory"));
+  said.mockClear();
+});
+
+test("its end ends the worker", () => {
+  const { reader, reading } = begin("a");
+  reading.end();
+  expect(reader.ended).toBe(true);
+});
