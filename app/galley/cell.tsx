@@ -106,8 +106,8 @@ function ResultTable({ name, table, setting }: ResultTableProps) {
         <thead>
           <tr>
             {table.columns.map((column) => (
-              <th key={column.name} scope="col" aria-label={column.tex ? labelText(column.head) : undefined}>
-                {column.tex ? <Formula tex={column.head} setting={setting} /> : column.head}
+              <th key={column.name} scope="col">
+                {column.tex ? <FormulaHead tex={column.head} setting={setting} /> : column.head}
               </th>
             ))}
           </tr>
@@ -125,5 +125,17 @@ function ResultTable({ name, table, setting }: ResultTableProps) {
         </tbody>
       </table>
     </section>
+  );
+}
+
+/** A head that is a formula is also said in words, since a head of MathML alone is silent to some readers. */
+function FormulaHead({ tex, setting }: { readonly tex: string; readonly setting: Setting }) {
+  return (
+    <>
+      <span className="sr-only">{labelText(tex)}</span>
+      <span aria-hidden="true">
+        <Formula tex={tex} setting={setting} />
+      </span>
+    </>
   );
 }
