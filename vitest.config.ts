@@ -8,7 +8,9 @@ export default defineConfig({
       {
         test: {
           name: "unit",
-          include: ["tests/{formulas,paper,cells,solvers,figures,print,galley,export,editor,ui,project}/**/*.test.{ts,tsx}"],
+          include: [
+            "tests/{formulas,paper,cells,solvers,figures,print,galley,export,editor,ui,project}/**/*.test.{ts,tsx}",
+          ],
           setupFiles: ["./tests/support/noise-fails.ts"],
           testTimeout: 20_000,
         },

@@ -56,10 +56,10 @@ export function printNumber(q: Quantity, options: PrintOptions = {}): PrintedNum
 function supportedPlace(uncertainty: number, exponent: number): number {
   if (uncertainty === 0) return Number.NEGATIVE_INFINITY;
   const twice = scaled(uncertainty, exponent + 1, 0);
-  const place = leadingPlace(twice);
-  // 10^p is large enough where it is 2·uncertainty itself, or else the next place is.
-  const isPowerOfTen = /^10*$/.test(shortest(twice).digits) && twice.exponent === 0;
-  return isPowerOfTen ? place : place + 1;
+  // 10^p is large enough where it is 2·uncertainty itself, as an error of 0.05 means; or else the next place is.
+  const written = shortest(twice);
+  const isPowerOfTen = /^10*$/.test(written.digits) && twice.exponent === 0;
+  return isPowerOfTen ? written.exponent : leadingPlace(twice) + 1;
 }
 
 function askedPlace(q: Quantity, first: number | null, isBracketed: boolean, options: PrintOptions): number {
