@@ -53,12 +53,20 @@ function Block({ node, setting }: { readonly node: RootContent; readonly setting
   }
 }
 
-function ParagraphBlock({ node, setting }: { readonly node: Paragraph; readonly setting: Setting }) {
+/** @param end the box of a proof that ends in this paragraph */
+function ParagraphBlock({ node, setting, end = false }: EndedProps<Paragraph>) {
   return (
     <p className={node.data?.continues ? "g-continues" : undefined}>
       <Inline nodes={node.children} setting={setting} />
+      {end ? <Box /> : null}
     </p>
   );
+}
+
+interface EndedProps<Node> {
+  readonly node: Node;
+  readonly setting: Setting;
+  readonly end?: boolean;
 }
 
 function HeadingBlock({ node, setting }: { readonly node: Heading; readonly setting: Setting }) {
@@ -77,15 +85,7 @@ function HeadingBlock({ node, setting }: { readonly node: Heading; readonly sett
 type DisplayMath = Extract<RootContent, { type: "math" }>;
 
 /** @param end the box of a proof that ends in this display */
-function Equation({
-  node,
-  setting,
-  end = false,
-}: {
-  readonly node: DisplayMath;
-  readonly setting: Setting;
-  readonly end?: boolean;
-}) {
+function Equation({ node, setting, end = false }: EndedProps<DisplayMath>) {
   const { number, label } = node.data ?? {};
   return (
     <div className="g-equation" id={number !== undefined && label ? anchor.label(label) : undefined}>
@@ -113,7 +113,7 @@ function EnvironmentBlock({ node, setting }: { readonly node: EnvironmentNode; r
   const opening = first?.type === "paragraph" ? first : null;
   const following = opening ? rest : node.children;
   const last = following.at(-1);
-  const endsInDisplay = isProof && last?.type === "math";
+  const boxed = isProof && (last?.type === "math" || last?.type === "paragraph") ? last : null;
   const title = node.title.length > 0 ? <Inline nodes={node.title} setting={setting} /> : null;
   return (
     <div
@@ -131,9 +131,10 @@ function EnvironmentBlock({ node, setting }: { readonly node: EnvironmentNode; r
         {opening ? <Inline nodes={opening.children} setting={setting} /> : null}
         {isProof && following.length === 0 ? <Box /> : null}
       </p>
-      <ProseBlocks nodes={endsInDisplay ? following.slice(0, -1) : following} setting={setting} />
-      {endsInDisplay && last.type === "math" ? <Equation node={last} setting={setting} end /> : null}
-      {isProof && following.length > 0 && !endsInDisplay ? (
+      <ProseBlocks nodes={boxed ? following.slice(0, -1) : following} setting={setting} />
+      {boxed?.type === "math" ? <Equation node={boxed} setting={setting} end /> : null}
+      {boxed?.type === "paragraph" ? <ParagraphBlock node={boxed} setting={setting} end /> : null}
+      {isProof && following.length > 0 && !boxed ? (
         <p className="g-box-line">
           <Box />
         </p>

@@ -55,6 +55,8 @@ describe("a galley", () => {
 
   it("ends a proof with a box, in its last display where it ends in one", () => {
     expect(galleyOf(":::proof\nWords.\n:::\n").match(/end of proof/g)).toHaveLength(1);
+    expect(galleyOf(":::proof\nOne.\n\nTwo.\n:::\n")).toMatch(/Two\.<span class="g-box"/);
+    expect(galleyOf(":::proof\n- One.\n:::\n").match(/end of proof/g)).toHaveLength(1);
     const inDisplay = galleyOf(":::proof\nSo\n$$ x=y $$\n:::\n");
     expect(inDisplay).toMatch(/g-equation"[\s\S]*end of proof/);
     expect(inDisplay.match(/end of proof/g)).toHaveLength(1);
