@@ -29,6 +29,9 @@ const MAY_IMPORT = {
   server: ["db", "app/paper", "app/cells", "app/export", "app/access", "app/context", "app/editor"],
 };
 
+/** Of these, types alone: the rows of the database come to routes through the context, and their shapes by name. */
+const TYPES_ALONE = { "app/routes": ["^db/index\\.server\\.ts$"] };
+
 const folder = (name) => `^${name}(/|\\.tsx?$)`;
 
 const layers = Object.entries(MAY_IMPORT).map(([name, allowed]) => ({
@@ -38,7 +41,7 @@ const layers = Object.entries(MAY_IMPORT).map(([name, allowed]) => ({
   from: { path: `^${name}/` },
   to: {
     path: "^(app|server|db|scripts|tests|bench)/",
-    pathNot: [folder(name), ...allowed.map(folder)],
+    pathNot: [folder(name), ...allowed.map(folder), ...(TYPES_ALONE[name] ?? [])],
   },
 }));
 
@@ -89,6 +92,12 @@ module.exports = {
         dependencyTypesNot: ["type-only", "npm-peer"],
         pathNot: "@react-router/dev|^node_modules/@types/",
       },
+    },
+    {
+      name: "routes-reach-the-database-through-the-context",
+      severity: "error",
+      from: { path: "^app/routes/" },
+      to: { path: "^db/", dependencyTypesNot: ["type-only"] },
     },
     ...layers,
     ...indexed,

@@ -1,6 +1,6 @@
 import { createContext } from "react-router";
 import type { Database } from "../db/index.server.ts";
-import type { CellResult, CellWork, ParameterChange, ShownCell } from "./cells/types.ts";
+import type { CellResult, CellWork, ParameterChange, ShownCell } from "./cells/index.ts";
 
 /**
  * What a request needs, set in one place (server/app.ts) and read by guards and routes.

@@ -1,4 +1,4 @@
-import type { CellResult, CellWork, ShownCell } from "../../app/cells/types.ts";
+import type { CellResult, CellWork, ShownCell } from "../../app/cells/index.ts";
 import type { LiveTexts, ShownMaps } from "../sync/index.ts";
 import type { PlannedWork } from "./worker.ts";
 

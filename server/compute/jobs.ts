@@ -1,4 +1,4 @@
-import type { CellResult, CellTask } from "../../app/cells/types.ts";
+import type { CellResult, CellTask } from "../../app/cells/index.ts";
 import type { Database, SignalLine } from "../../db/index.server.ts";
 import { unlessAborted } from "./abandon.ts";
 import { type ComputeHooks, type Pool, StoppedError } from "./pool.ts";

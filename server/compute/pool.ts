@@ -1,7 +1,7 @@
 import { fileURLToPath } from "node:url";
 import { MessageChannel } from "node:worker_threads";
 import { Piscina } from "piscina";
-import type { CellResult, CellTask, Outcome } from "../../app/cells/types.ts";
+import type { CellResult, CellTask, Outcome } from "../../app/cells/index.ts";
 import type { PaperText } from "../../app/context.ts";
 import type { ComputeJob, PlannedWork } from "./worker.ts";
 

@@ -1,4 +1,4 @@
-import type { CellWork } from "../../app/cells/types.ts";
+import type { CellWork } from "../../app/cells/index.ts";
 import type { Computable } from "./board.ts";
 import type { PlannedWork } from "./worker.ts";
 

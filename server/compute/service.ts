@@ -1,4 +1,4 @@
-import type { CellResult } from "../../app/cells/types.ts";
+import type { CellResult } from "../../app/cells/index.ts";
 import type { ComputeRequest, ComputeService, Person } from "../../app/context.ts";
 import type { Database } from "../../db/index.server.ts";
 import type { LiveTexts } from "../sync/index.ts";

@@ -1,6 +1,6 @@
 import type { MessagePort } from "node:worker_threads";
+import type { CellResult, CellTask, Outcome, PlannedCell } from "../../app/cells/index.ts";
 import { computeCell, planPaper } from "../../app/cells/index.ts";
-import type { CellResult, CellTask, Outcome, PlannedCell } from "../../app/cells/types.ts";
 import { readPaper } from "../../app/paper/index.ts";
 
 /** The entry of the worker threads. Both functions are pure; a thread may be ended at any moment. */

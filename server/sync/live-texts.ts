@@ -1,6 +1,6 @@
 import { randomUUID } from "node:crypto";
 import type * as Y from "yjs";
-import type { CellWork, ParameterChange, ShownCell } from "../../app/cells/types.ts";
+import type { CellWork, ParameterChange, ShownCell } from "../../app/cells/index.ts";
 import type { PaperText, ShownPaper, TextService } from "../../app/context.ts";
 import { BIBLIOGRAPHY_NAME, CLOSE, SHOWN_NAMES, TEXT_NAME } from "../../app/editor/protocol.ts";
 import { type Database, type Signal, SignalLine } from "../../db/index.server.ts";

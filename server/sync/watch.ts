@@ -1,5 +1,5 @@
+import type { ParameterChange } from "../../app/cells/index.ts";
 import { planPaper } from "../../app/cells/index.ts";
-import type { ParameterChange } from "../../app/cells/types.ts";
 import { BIBLIOGRAPHY_NAME, TEXT_NAME } from "../../app/editor/protocol.ts";
 import { readPaper } from "../../app/paper/index.ts";
 import type { Author, Commit, Room } from "./room.ts";
