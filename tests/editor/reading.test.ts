@@ -3,7 +3,7 @@ import { EditorState } from "@codemirror/state";
 import { EditorView } from "@codemirror/view";
 import { afterEach, beforeAll, beforeEach, expect, test, vi } from "vitest";
 import { type Reader, Reading } from "../../app/editor/live/reading.ts";
-import type { FromWorker, ToWorker } from "../../app/editor/model/messages.ts";
+import type { FromWorker, Told, ToWorker } from "../../app/editor/model/messages.ts";
 import type { SheetModel } from "../../app/editor/model/types.ts";
 import { SheetReader } from "../../app/editor/reading/sheet-reader.ts";
 import { glossField } from "../../app/editor/text/glosses.ts";
@@ -18,9 +18,9 @@ class SlowReader implements Reader {
   private waiting = 0;
   ended = false;
 
-  postMessage(message: ToWorker): void {
+  postMessage({ message, have }: Told): void {
     this.heard.push(message);
-    this.reader.hear(message);
+    this.reader.hear(message, have);
     this.waiting += 1;
   }
 
@@ -139,7 +139,7 @@ test("a text that cannot be read keeps the sheet as it was", () => {
   const { reader, view } = begin("So $x$ it is.");
   reader.answer();
   const said = vi.spyOn(console, "error").mockImplementation(() => {});
-  reader.postMessage({ tell: "results", results: [] });
+  reader.postMessage({ message: { tell: "results", results: [] }, have: 0 });
   reader.onmessage?.(
     new MessageEvent("message", { data: { tell: "fault", answers: 0, message: "out of memory" } as const }),
   );

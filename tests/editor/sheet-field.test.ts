@@ -1,5 +1,5 @@
 // @vitest-environment jsdom
-import { EditorSelection, EditorState } from "@codemirror/state";
+import { type ChangeSet, EditorSelection, EditorState, type Text } from "@codemirror/state";
 import { EditorView } from "@codemirror/view";
 import fc from "fast-check";
 import { afterEach, beforeAll, describe, expect, test, vi } from "vitest";
@@ -154,6 +154,59 @@ describe("changes between two answers", () => {
     view.dispatch({ changes: { from: 5, insert: "x" } });
     expect(drawn(view).join()).not.toContain("hl-blank");
   });
+
+  test("of the next answer only what is new is drawn", () => {
+    const { view, host } = sheetOf(SAMPLE);
+    const reader = new SheetReader();
+    reader.hear(tellText(SAMPLE));
+    apply(view, reader.sheet(), host);
+    const before = view.state.field(sheetField).pieces;
+    view.dispatch({ changes: { from: SAMPLE.indexOf("The mean"), insert: "$y$ " } });
+    reader.hear(tellText(view.state.doc.toString(), 2), view.state.field(sheetField).number);
+    const model = reader.sheet();
+    expect(model.pieces.base).toBe(1);
+    expect(model.pieces.middle.length).toBeLessThan(4);
+    apply(view, model, host);
+    const after = view.state.field(sheetField).pieces;
+    expect(after).toHaveLength(before.length + 1);
+    expect(after.filter((piece) => before.includes(piece)).length).toBeGreaterThan(before.length - 4);
+    const now = sheetOf(view.state.doc.toString());
+    apply(now.view, read(view.state.doc.toString()), now.host);
+    expect(drawn(view)).toEqual(drawn(now.view));
+  });
+
+  test("answers that build on each other make the same sheet as one answer", () => {
+    const put = fc.constantFrom("", "x", "\n", "\n\n", "$", "```", "**", ":::", "a b\nc", "$z$", ":value[mu]");
+    const change = fc.record({ at: fc.nat(10_000), gone: fc.nat(60), put, answered: fc.boolean() });
+    fc.assert(
+      fc.property(fc.array(change, { minLength: 1, maxLength: 10 }), (changes) => {
+        const { view, host } = sheetOf(SAMPLE);
+        const reader = new SheetReader();
+        let version = 0;
+        const answer = (doc: Text, since: ChangeSet) => {
+          version += 1;
+          reader.hear(tellText(doc.toString(), version), view.state.field(sheetField).number);
+          apply(view, reader.sheet(), host, doc, since);
+        };
+        answer(view.state.doc, view.state.changes());
+        for (const { at, gone, put: insert, answered } of changes) {
+          const asked = view.state.doc;
+          const from = at % (asked.length + 1);
+          const transaction = view.state.update({ changes: { from, to: Math.min(asked.length, from + gone), insert } });
+          view.dispatch(transaction);
+          // An answer to the text before this change, which is late by it.
+          if (answered) answer(asked, transaction.changes);
+        }
+        answer(view.state.doc, view.state.changes());
+        const whole = sheetOf(view.state.doc.toString());
+        const fresh = new SheetReader();
+        fresh.hear(tellText(view.state.doc.toString()));
+        apply(whole.view, fresh.sheet(), whole.host);
+        expect(drawn(view)).toEqual(drawn(whole.view));
+      }),
+      { numRuns: 20 },
+    );
+  }, 60_000);
 
   test("any changes whatever keep the sheet standing, and the next answer makes it as if nothing had been", () => {
     const change = fc.record({

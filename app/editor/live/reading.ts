@@ -1,15 +1,15 @@
 import { ChangeSet, type Text } from "@codemirror/state";
 import type { EditorView, ViewUpdate } from "@codemirror/view";
 import type { CellResult } from "../../cells/index.ts";
-import type { FromWorker, ToWorker } from "../model/messages.ts";
+import type { FromWorker, Told, ToWorker } from "../model/messages.ts";
 import type { SheetModel } from "../model/types.ts";
 import { setProblems } from "../text/glosses.ts";
-import { applyModel } from "../text/sheet-field.ts";
+import { applyModel, sheetField } from "../text/sheet-field.ts";
 import type { ShownRecords } from "./paper-session.ts";
 
 /** The part of a Worker that reading needs; a test gives its own. */
 export interface Reader {
-  postMessage(message: ToWorker): void;
+  postMessage(told: Told): void;
   onmessage: ((event: MessageEvent<FromWorker>) => void) | null;
   terminate(): void;
 }
@@ -103,7 +103,7 @@ export class Reading {
 
   private send(message: ToWorker): void {
     this.open += 1;
-    this.reader.postMessage(message);
+    this.reader.postMessage({ message, have: this.view.state.field(sheetField).number });
   }
 
   private hear(message: FromWorker): void {

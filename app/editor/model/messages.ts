@@ -24,6 +24,13 @@ export type ToWorker =
       readonly trial: Readonly<Record<string, string>>;
     };
 
+/** A message as it is posted. */
+export interface Told {
+  readonly message: ToWorker;
+  /** Number of the answer whose pieces the page has; 0: none. */
+  readonly have: number;
+}
+
 export type FromWorker =
   | { readonly tell: "sheet"; readonly answers: number; readonly model: SheetModel; readonly seconds: number }
   /** The sheet could not be made; the one before stays. */

@@ -12,12 +12,8 @@ export interface SheetModel {
   readonly version: number;
   readonly front: FrontFace;
   readonly macros: Readonly<Record<string, string>>;
-  /** In order of `from`; they may nest (a heading holds math) but never cross. */
-  readonly pieces: readonly Piece[];
-  /** Pairs from, to: line breaks within a paragraph, with the indentation after them; set as a space. */
-  readonly joins: Int32Array;
-  /** Starts of the blank lines between blocks. */
-  readonly blanks: Int32Array;
+  /** Everything typeset, or what of it is new since an earlier answer. */
+  readonly pieces: PieceDelta;
   readonly parameters: readonly ParameterFace[];
   readonly cells: readonly CellFace[];
   /** Views that changed since the last answer, by slot; null: nothing to show any more. */
@@ -30,6 +26,20 @@ export interface SheetModel {
   readonly errata: readonly Erratum[];
   /** Set while parameters are tried privately. */
   readonly preview: boolean;
+}
+
+/**
+ * The pieces in order of `from` (they may nest, as a heading holds math, but never cross), told as a change of those of
+ * the answer `base` (0: of none): the first `head` and the last `tail` of them stay, `middle` comes between.
+ */
+export interface PieceDelta {
+  readonly number: number;
+  readonly base: number;
+  readonly head: number;
+  readonly tail: number;
+  readonly middle: readonly Piece[];
+  /** Where each of all the pieces begins now. */
+  readonly starts: Int32Array;
 }
 
 /** Text set in line: what a caption, a title or an entry of the bibliography consists of. */
@@ -46,8 +56,8 @@ export type Content =
   | { readonly content: "math"; readonly tex: string }
   | { readonly content: "display"; readonly tex: string; readonly number: string }
   | { readonly content: "number"; readonly number: NumberFace }
-  /** A reference or a citation; `target` is where it leads in the text, or null. `amiss`: it leads nowhere. */
-  | { readonly content: "pointer"; readonly text: string; readonly target: number | null; readonly amiss: boolean }
+  /** A reference or a citation. `amiss`: it leads nowhere. */
+  | { readonly content: "pointer"; readonly text: string; readonly amiss: boolean }
   | { readonly content: "words"; readonly runs: readonly Run[]; readonly dress: string }
   | {
       readonly content: "grid";
@@ -82,6 +92,10 @@ export type Piece =
   /** A class on every line from..to. */
   | { readonly piece: "lines"; readonly from: number; readonly to: number; readonly dress: string }
   | { readonly piece: "cell"; readonly from: number; readonly to: number; readonly slot: string }
+  /** A line break within a paragraph, with the indentation after it; set as a space. */
+  | { readonly piece: "join"; readonly from: number; readonly to: number }
+  /** The blank line between two blocks, at its start. */
+  | { readonly piece: "blank"; readonly from: number; readonly to: number }
   /** Not shown: where the rule edits a parameter. */
   | { readonly piece: "parameter"; readonly from: number; readonly to: number; readonly name: string };
 

@@ -2,16 +2,9 @@ import type { Nodes, Parent } from "mdast";
 import type { Content, Piece, Run } from "../model/types.ts";
 import type { NumberFaces } from "./number-faces.ts";
 
-/** Everything typeset of a paper, by place. */
-export interface Pieces {
-  readonly pieces: Piece[];
-  /** Pairs from, to. */
-  readonly joins: number[];
-  readonly blanks: number[];
-}
-
 /** What the drawers of nodes need: the source, the numbers, and where pieces go. */
-export interface Collecting extends Pieces {
+export interface Collecting {
+  readonly pieces: Piece[];
   readonly text: string;
   readonly numbers: NumberFaces;
   /** How deep in lists. */

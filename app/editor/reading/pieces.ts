@@ -1,7 +1,7 @@
 import type { Nodes, Parent } from "mdast";
 import { citationText, mathTex, type Paper } from "../../paper/index.ts";
-import type { Content } from "../model/types.ts";
-import { type Collecting, lineEnd, lineStart, type Pieces, placeOf, text, words } from "./collecting.ts";
+import type { Content, Piece } from "../model/types.ts";
+import { type Collecting, lineEnd, lineStart, placeOf, text, words } from "./collecting.ts";
 import { environmentPieces } from "./environment-pieces.ts";
 import type { NumberFaces } from "./number-faces.ts";
 import { referenceText, runsOf } from "./runs.ts";
@@ -10,17 +10,16 @@ type NodeOf<Name extends Nodes["type"]> = Extract<Nodes, { type: Name }>;
 type Drawers = { readonly [Name in Nodes["type"]]?: (node: NodeOf<Name>, into: Collecting) => void };
 
 /** Draws up the pieces of a paper from its tree. Front matter and parameters are added by the caller. */
-export function collectPieces(paper: Paper, numbers: NumberFaces): Pieces {
-  const into = collecting(paper.text, numbers, { pieces: [], joins: [], blanks: [] }, 0);
+export function collectPieces(paper: Paper, numbers: NumberFaces): Piece[] {
+  const into = collecting(paper.text, numbers, [], 0);
   collect(paper.root, into);
   blankLines(paper, into);
-  into.pieces.sort((a, b) => a.from - b.from || b.to - a.to);
-  return into;
+  return into.pieces;
 }
 
-function collecting(source: string, numbers: NumberFaces, pieces: Pieces, depth: number): Collecting {
+function collecting(source: string, numbers: NumberFaces, pieces: Piece[], depth: number): Collecting {
   const into: Collecting = {
-    ...pieces,
+    pieces,
     text: source,
     numbers,
     depth,
@@ -57,7 +56,8 @@ const DRAWERS: Drawers = {
     if (from < 0) return;
     const source = into.text.slice(from, to);
     for (const found of source.matchAll(/[ \t]*\n[ \t>]*/g)) {
-      into.joins.push(from + found.index, from + found.index + found[0].length);
+      const at = from + found.index;
+      into.pieces.push({ piece: "join", from: at, to: at + found[0].length });
     }
   },
   inlineMath(node, into) {
@@ -76,13 +76,12 @@ const DRAWERS: Drawers = {
   },
   reference(node, into) {
     const { target, label } = node;
-    const at = target?.span.from ?? null;
-    set(node, into, { content: "pointer", text: referenceText(target, label), target: at, amiss: target === null });
+    set(node, into, { content: "pointer", text: referenceText(target, label), amiss: target === null });
   },
   citation(node, into) {
     const told = citationText(node.entries, { at: node.at, as: node.as });
     const amiss = node.entries.length < node.keys.length;
-    set(node, into, { content: "pointer", text: amiss ? node.keys.join(", ") : told, target: null, amiss });
+    set(node, into, { content: "pointer", text: amiss ? node.keys.join(", ") : told, amiss });
   },
   emphasis: (node, into) => dressed(node, into, "hl-emphasis"),
   strong: (node, into) => dressed(node, into, "hl-strong"),
@@ -199,7 +198,7 @@ function blankLines(paper: Paper, into: Collecting): void {
     while (next < inside.length && (inside[next]?.to ?? 0) < at) next += 1;
     const block = inside[next];
     const parts = at < paper.text.length && at > 0 && !blankBefore(paper.text, at);
-    if (parts && (block === undefined || at < block.from)) into.blanks.push(at);
+    if (parts && (block === undefined || at < block.from)) into.pieces.push({ piece: "blank", from: at, to: at });
   }
 }
 

@@ -16,6 +16,7 @@ import { errataOf } from "./errata.ts";
 import { frontFace, frontPieces } from "./front-face.ts";
 import { type CellStanding, numberFaces } from "./number-faces.ts";
 import { parameterFaces, parameterPieces } from "./parameter-faces.ts";
+import { byPlace, PieceStore } from "./piece-store.ts";
 import { collectPieces } from "./pieces.ts";
 import { bibliographyFaces, problemFaces } from "./problem-faces.ts";
 import { ResultStore } from "./result-store.ts";
@@ -41,8 +42,12 @@ export class SheetReader {
   private readonly plans = new Map<string, Plan>();
   private readonly results = new ResultStore();
   private readonly views = new ViewStore();
+  private readonly pieces = new PieceStore();
+  /** The answer whose pieces the page has. */
+  private have = 0;
 
-  hear(message: ToWorker): void {
+  hear(message: ToWorker, have = 0): void {
+    this.have = have;
     switch (message.tell) {
       case "text":
         this.version = message.version;
@@ -90,21 +95,17 @@ export class SheetReader {
       standings.set(planned.id, { state: previewed ? "preview" : awaited ? "computing" : state.state, title });
     }
     const numbers = numberFaces(plan, results, standings, names);
-    const { pieces, joins, blanks } = collectPieces(paper, numbers);
     // The rule shows by itself what is under the hand; in the model its parameter stays as it was.
     const resting = Object.keys(this.trial).length === 0 ? plan : this.planWith(paper, this.settled);
     const cells = cellFaces(tellings, { plan, nodes, titles, numbers, tried: names });
     const front = frontFace(paper, numbers);
     const problems = problemFaces(paper, plan);
+    const pieces = [...frontPieces(front), ...parameterPieces(resting), ...collectPieces(paper, numbers)].sort(byPlace);
     return {
       version: this.version,
       front,
       macros: paper.front.macros,
-      pieces: [...frontPieces(front), ...parameterPieces(resting), ...pieces].sort(
-        (a, b) => a.from - b.from || b.to - a.to,
-      ),
-      joins: Int32Array.from(joins),
-      blanks: Int32Array.from(blanks),
+      pieces: this.pieces.since(this.have, pieces),
       parameters: parameterFaces(resting, tellings),
       cells,
       views: this.views.changed(plan, results, cells),

@@ -20,7 +20,7 @@ export class CellWidget extends WidgetType {
     super();
     this.face = face;
     this.open = open;
-    this.sign = signOf(face);
+    this.sign = lookOf(face);
   }
 
   override eq(other: CellWidget): boolean {
@@ -73,6 +73,6 @@ export class CellWidget extends WidgetType {
 }
 
 /** What a cell looks like depends on all of its face but where it stands, so that text above it may grow. */
-function signOf(face: CellFace): string {
+export function lookOf(face: CellFace): string {
   return JSON.stringify({ ...face, from: 0, to: 0, line: 0 });
 }

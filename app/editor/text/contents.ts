@@ -14,11 +14,7 @@ const SETTERS: Setters = {
     return element("div", "hl-display", [math(content.tex, true, macros), ...number]);
   },
   number: (content) => number(content.number),
-  pointer: (content) => {
-    const made = element("span", content.amiss ? "hl-pointer hl-amiss" : "hl-pointer", [content.text]);
-    if (content.target !== null) made.dataset.target = String(content.target);
-    return made;
-  },
+  pointer: ({ text, amiss }) => element("span", amiss ? "hl-pointer hl-amiss" : "hl-pointer", [text]),
   words: (content, macros) => element("span", content.dress, [runs(content.runs, macros)]),
   grid: (content, macros) => grid(content.head, content.rows, content.align, macros),
   image: (content) => element("div", "hl-image", [element("span", "hl-image-name", [content.name]), content.caption]),

@@ -23,13 +23,16 @@ interface Drawing<P extends Piece> {
   opened(piece: P, from: number, to: number, doc: Text, workshop: Workshop): Marks;
 }
 
+/** Class of the blank line between two blocks. */
+export const BLANK = "hl-blank";
+
 const DRAWINGS: { readonly [Name in Piece["piece"]]: Drawing<PieceOf<Name>> } = {
   set: {
     closed(piece, doc, { store }) {
       const { from, to } = piece.block ? wholeLines(doc, piece.from, piece.to) : piece;
       if (from === to) return [];
       const widget = store.widget(piece.content, piece.block);
-      return [Decoration.replace({ widget, block: piece.block, piece }).range(from, to)];
+      return [Decoration.replace({ widget, block: piece.block, piece, of: piece }).range(from, to)];
     },
     opened(piece, from, to, doc, { store }) {
       if (!piece.block) return from === to ? [] : [Decoration.mark({ class: "hl-source" }).range(from, to)];
@@ -51,9 +54,9 @@ const DRAWINGS: { readonly [Name in Piece["piece"]]: Drawing<PieceOf<Name>> } = 
       }
       if (piece.inFrom > piece.from) {
         const widget = piece.before === undefined ? undefined : store.widget(piece.before, false);
-        made.push(Decoration.replace({ widget, piece }).range(piece.from, piece.inFrom));
+        made.push(Decoration.replace({ widget, piece, of: piece }).range(piece.from, piece.inFrom));
       }
-      if (piece.to > piece.inTo) made.push(Decoration.replace({ piece }).range(piece.inTo, piece.to));
+      if (piece.to > piece.inTo) made.push(Decoration.replace({ piece, of: piece }).range(piece.inTo, piece.to));
       return made;
     },
     opened(piece, from, to) {
@@ -64,7 +67,7 @@ const DRAWINGS: { readonly [Name in Piece["piece"]]: Drawing<PieceOf<Name>> } = 
     },
   },
   lines: {
-    closed: (piece, doc) => lines(doc, piece.from, piece.to, piece.dress),
+    closed: (piece, doc) => lines(doc, piece.from, piece.to, piece.dress, piece),
     opened: () => [],
   },
   cell: {
@@ -72,7 +75,9 @@ const DRAWINGS: { readonly [Name in Piece["piece"]]: Drawing<PieceOf<Name>> } = 
       const face = faces.get(piece.slot);
       if (face === undefined) return [];
       const { from, to } = wholeLines(doc, piece.from, piece.to);
-      return [Decoration.replace({ widget: new CellWidget(face, false), block: true, piece }).range(from, to)];
+      return [
+        Decoration.replace({ widget: new CellWidget(face, false), block: true, piece, of: piece }).range(from, to),
+      ];
     },
     opened(piece, from, to, doc, { faces }) {
       const face = faces.get(piece.slot);
@@ -81,33 +86,24 @@ const DRAWINGS: { readonly [Name in Piece["piece"]]: Drawing<PieceOf<Name>> } = 
       return [plate.range(doc.lineAt(from).from), ...working(doc, from, to)];
     },
   },
+  join: {
+    closed: (piece) => [Decoration.replace({ widget: SPACE, of: piece }).range(piece.from, piece.to)],
+    opened: () => [],
+  },
+  blank: {
+    closed: (piece, doc) => [Decoration.line({ class: BLANK, of: piece }).range(doc.lineAt(piece.from).from)],
+    opened: () => [],
+  },
   parameter: { closed: () => [], opened: () => [] },
 };
 
-/** Class of the blank line between two blocks. */
-export const BLANK = "hl-blank";
-
-/** All that is drawn of the pieces while the caret is outside of them, and their joins and blank lines. */
-export function closedDecorations(
-  pieces: readonly Piece[],
-  joins: Int32Array,
-  blanks: Int32Array,
-  doc: Text,
-  workshop: Workshop,
-): Marks {
-  const made: Marks = [];
-  for (const piece of pieces) {
-    if (piece.to > doc.length || piece.from > piece.to) continue;
-    made.push(...drawing(piece).closed(piece, doc, workshop));
-  }
-  const join = Decoration.replace({ widget: SPACE });
-  for (let k = 0; k + 1 < joins.length; k += 2) {
-    const [from, to] = [joins[k] ?? 0, joins[k + 1] ?? 0];
-    if (to <= doc.length && from < to) made.push(join.range(from, to));
-  }
-  const blank = Decoration.line({ class: BLANK });
-  for (const at of blanks) if (at <= doc.length) made.push(blank.range(doc.lineAt(at).from));
-  return made;
+/**
+ * All that is drawn of pieces while the caret is outside of them. Each mark has `of` in its spec, the piece it belongs to.
+ */
+export function closedDecorations(pieces: readonly Piece[], doc: Text, workshop: Workshop): Marks {
+  return pieces.flatMap((piece) =>
+    piece.to > doc.length || piece.from > piece.to ? [] : drawing(piece).closed(piece, doc, workshop),
+  );
 }
 
 /** What is drawn of a piece in which the caret is; from..to is where it stands now. */
@@ -122,13 +118,13 @@ function drawing<P extends Piece>(piece: P): Drawing<P> {
 
 function dress(piece: PieceOf<"dressed">): Decoration {
   return piece.url === undefined
-    ? Decoration.mark({ class: piece.dress })
-    : Decoration.mark({ class: piece.dress, attributes: { title: piece.url, "data-url": piece.url } });
+    ? Decoration.mark({ class: piece.dress, of: piece })
+    : Decoration.mark({ class: piece.dress, of: piece, attributes: { title: piece.url, "data-url": piece.url } });
 }
 
-function lines(doc: Text, from: number, to: number, className: string): Marks {
+function lines(doc: Text, from: number, to: number, className: string, of?: Piece): Marks {
   const made: Marks = [];
-  const mark = Decoration.line({ class: className });
+  const mark = Decoration.line({ class: className, of });
   for (let at = doc.lineAt(from); ; at = doc.line(at.number + 1)) {
     made.push(mark.range(at.from));
     if (at.to >= to || at.number === doc.lines) return made;

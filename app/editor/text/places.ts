@@ -1,4 +1,4 @@
-import { type EditorState, RangeSet, RangeValue, type Text } from "@codemirror/state";
+import { type EditorState, type Range, type RangeSet, RangeValue, type Text } from "@codemirror/state";
 import type { Piece } from "../model/types.ts";
 
 /** A piece of the sheet where it stands now: moved through every change until the worker's next answer. */
@@ -10,12 +10,10 @@ export class Place extends RangeValue {
   }
 }
 
-export function placesOf(pieces: readonly Piece[], length: number): RangeSet<Place> {
-  const within = pieces.filter((piece) => piece.from >= 0 && piece.to <= length && piece.from <= piece.to);
-  return RangeSet.of(
-    within.map((piece) => new Place(piece).range(piece.from, piece.to)),
-    true,
-  );
+export function placesOf(pieces: readonly Piece[], length: number): Range<Place>[] {
+  return pieces
+    .filter((piece) => piece.from >= 0 && piece.to <= length && piece.from <= piece.to)
+    .map((piece) => new Place(piece).range(piece.from, piece.to));
 }
 
 /** Where a piece is that answers `wanted`; null when the text has none any more. */
@@ -39,11 +37,13 @@ export function touched(places: RangeSet<Place>, state: EditorState): Set<Piece>
     places.between(range.from, range.to, (from, to, place) => {
       const headTouches = range.head >= from && range.head <= to;
       const crosses = (range.from > from && range.from < to) || (range.to > from && range.to < to);
-      if (headTouches || crosses) opened.add(place.piece);
+      if (OPENABLE.has(place.piece.piece) && (headTouches || crosses)) opened.add(place.piece);
     });
   }
   return opened;
 }
+
+const OPENABLE: ReadonlySet<Piece["piece"]> = new Set<Piece["piece"]>(["set", "dressed", "cell"]);
 
 /** Widens from..to to whole lines, as blocks need. */
 export function wholeLines(doc: Text, from: number, to: number): { from: number; to: number } {

@@ -1,7 +1,18 @@
-import { type ChangeDesc, type EditorState, RangeSet, StateEffect, StateField, type Text } from "@codemirror/state";
+import {
+  type ChangeDesc,
+  type EditorState,
+  type Range,
+  RangeSet,
+  type RangeValue,
+  StateEffect,
+  StateField,
+  type Text,
+} from "@codemirror/state";
 import { Decoration, type DecorationSet, EditorView } from "@codemirror/view";
 import type { CellFace, Piece, SheetModel } from "../model/types.ts";
+import { lookOf } from "./cell-widget.tsx";
 import { BLANK, closedDecorations, openedDecorations, type Workshop } from "./decorate.ts";
+import { afterDelta } from "./piece-list.ts";
 import { type Place, placesOf, touched } from "./places.ts";
 import { WidgetStore } from "./widgets.ts";
 
@@ -16,6 +27,11 @@ export const setPressed = StateEffect.define<boolean>();
 
 interface Sheet {
   readonly model: SheetModel | null;
+  /** Of the answer whose pieces these are; 0: none yet. */
+  readonly number: number;
+  readonly pieces: readonly Piece[];
+  /** Pieces that changes of the text have met since that answer: what is drawn of them is not to be relied on. */
+  readonly met: ReadonlySet<Piece>;
   readonly workshop: Workshop;
   readonly places: RangeSet<Place>;
   /** Drawn while nothing is open. */
@@ -34,11 +50,15 @@ const NOTHING: ReadonlySet<Piece> = new Set();
  * The typeset sheet over the text:
  *
  *     answer ──▶ closed ──(pieces under the caret taken out, their source dressed)──▶ shown
- *     change ──▶ places and closed are moved through it; the next answer replaces them
+ *     change ──▶ places and closed are moved through it, pieces that it meets are noted
+ *     next answer ──▶ of its pieces those that are new, or were met, are drawn; the others stay as they are
  */
 export const sheetField = StateField.define<Sheet>({
   create: () => ({
     model: null,
+    number: 0,
+    pieces: [],
+    met: NOTHING,
     workshop: { store: new WidgetStore(), faces: new Map() },
     places: RangeSet.empty,
     closed: Decoration.none,
@@ -49,20 +69,31 @@ export const sheetField = StateField.define<Sheet>({
     pressed: false,
   }),
   update(before, transaction) {
-    let { model, workshop, places, closed, workings, attention, pressed } = before;
+    let { model, number, pieces, met, workshop, places, closed, workings, attention, pressed } = before;
     if (transaction.docChanged) {
+      met = withMet(met, places, transaction.changes);
       places = places.map(transaction.changes);
       closed = withoutFilledBlanks(closed.map(transaction.changes), transaction.changes, transaction.newDoc);
     }
     for (const effect of transaction.effects) {
       if (effect.is(applyModel)) {
-        model = effect.value.model;
-        workshop = { store: workshop.store, faces: facesOf(model.cells) };
-        workshop.store.begin(model.macros);
         const { doc, since } = effect.value;
-        const marks = closedDecorations(model.pieces, model.joins, model.blanks, doc, workshop);
-        closed = Decoration.set(marks, true).map(since);
-        places = placesOf(model.pieces, doc.length).map(since);
+        const faces = facesOf(effect.value.model.cells);
+        const whole = !workshop.store.begin(effect.value.model.macros);
+        const delta = effect.value.model.pieces;
+        if (delta.base !== 0 && delta.base !== number) continue;
+        const cellsChanged = pieces.filter(
+          (piece) => piece.piece === "cell" && changedLook(piece.slot, workshop.faces, faces),
+        );
+        const list = afterDelta(pieces, delta, whole ? new Set(pieces) : new Set([...met, ...cellsChanged]));
+        model = effect.value.model;
+        workshop = { store: workshop.store, faces };
+        ({ number, pieces } = list);
+        met = NOTHING;
+        const marks = Decoration.set(closedDecorations(list.fresh, doc, workshop), true).map(since);
+        const fresh = RangeSet.of(placesOf(list.fresh, doc.length), true).map(since);
+        closed = merged(closed, (mark) => list.gone.has(mark.spec.of), marks);
+        places = merged(places, (place) => list.gone.has(place.piece), fresh);
       } else if (effect.is(showWorking)) {
         const next = new Set(workings);
         if (effect.value.open) next.add(effect.value.slot);
@@ -71,7 +102,7 @@ export const sheetField = StateField.define<Sheet>({
       } else if (effect.is(setAttention)) attention = effect.value;
       else if (effect.is(setPressed)) pressed = effect.value;
     }
-    const next = { model, workshop, places, closed, workings, attention, pressed };
+    const next = { model, number, pieces, met, workshop, places, closed, workings, attention, pressed };
     if (pressed && before.pressed && closed === before.closed)
       return { ...next, opened: before.opened, shown: before.shown };
     const opened = openPieces(next, transaction.state, before);
@@ -80,6 +111,31 @@ export const sheetField = StateField.define<Sheet>({
   },
   provide: (field) => EditorView.decorations.from(field, (sheet) => sheet.shown),
 });
+
+/** Takes out what is gone, puts in what is new. */
+function merged<T extends RangeValue>(set: RangeSet<T>, gone: (value: T) => boolean, fresh: RangeSet<T>): RangeSet<T> {
+  const add: Range<T>[] = [];
+  for (const cursor = fresh.iter(); cursor.value !== null; cursor.next()) {
+    add.push(cursor.value.range(cursor.from, cursor.to) as Range<T>);
+  }
+  return set.update({ filter: (_from, _to, value) => !gone(value), add, sort: true });
+}
+
+/** The pieces that a change meets, besides those met before. */
+function withMet(met: ReadonlySet<Piece>, places: RangeSet<Place>, changes: ChangeDesc): ReadonlySet<Piece> {
+  const now = new Set(met);
+  changes.iterChangedRanges((from, to) => {
+    places.between(from, to, (_from, _to, { piece }) => {
+      now.add(piece);
+    });
+  });
+  return now;
+}
+
+function changedLook(slot: string, before: Workshop["faces"], after: Workshop["faces"]): boolean {
+  const [was, is] = [before.get(slot), after.get(slot)];
+  return was === undefined || is === undefined || lookOf(was) !== lookOf(is);
+}
 
 /** A blank line on which something is written is no longer set low, without waiting for the next answer. */
 function withoutFilledBlanks(closed: DecorationSet, changes: ChangeDesc, doc: Text): DecorationSet {

@@ -70,12 +70,17 @@ export class WidgetStore {
   private now = new Map<string, ContentWidget>();
   private macros = "";
 
-  /** Begins an answer; what it does not use is forgotten at the next. */
-  begin(macros: Readonly<Record<string, string>>): void {
+  /**
+   * Begins an answer; what neither it nor the one before uses is forgotten.
+   * @returns false when the macros are others, so that nothing drawn before is good any more
+   */
+  begin(macros: Readonly<Record<string, string>>): boolean {
     const sign = JSON.stringify(macros);
-    this.before = sign === this.macros ? this.now : new Map();
+    const same = sign === this.macros;
+    this.before = same ? this.now : new Map();
     this.macros = sign;
     this.now = new Map();
+    return same;
   }
 
   widget(content: Content, block: boolean): ContentWidget {
