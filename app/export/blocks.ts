@@ -92,7 +92,8 @@ function writeHeading(node: Heading, printing: Printing, out: LatexWriter, line:
 
 type DisplayMath = Extract<RootContent, { type: "math" }>;
 
-function writeDisplay(node: DisplayMath, printing: Printing, out: LatexWriter, line: number): void {
+/** @param ending `\qedhere` in the last display of a proof: its box stands there and not on a line of its own */
+function writeDisplay(node: DisplayMath, printing: Printing, out: LatexWriter, line: number, ending = ""): void {
   const notes: Note[] = [];
   const tex = printing.math(
     readMathTex(node, (number) => numberInMath(number, printing, notes)),
@@ -104,6 +105,8 @@ function writeDisplay(node: DisplayMath, printing: Printing, out: LatexWriter, l
     out.from(line + i + 1);
     out.line(part);
   });
+  // Beside an equation's number there is no room for the box.
+  if (ending !== "" && label === undefined) out.line(ending);
   out.line(label === undefined ? "\\]" : "\\end{equation}");
   for (const note of notes) out.write(noteText(note, printing, line));
 }
@@ -127,18 +130,19 @@ function writeEnvironment(node: EnvironmentNode, printing: Printing, out: LatexW
   out.paragraph();
 }
 
-/** The box that ends a proof stands in its last display, where it ends in one. */
 function writeEnvironmentBody(node: EnvironmentNode, printing: Printing, out: LatexWriter): void {
-  const [first, ...rest] = node.children;
-  if (first?.type === "paragraph") {
-    out.from(first.position?.start.line ?? 0);
-    writeInline(first.children, printing, out, first.position?.start.line ?? 0);
+  const [first] = node.children;
+  const last = node.children.at(-1);
+  const opening = first?.type === "paragraph" ? first : null;
+  const closing = node.environment === "proof" && last?.type === "math" ? last : null;
+  if (opening) {
+    const line = opening.position?.start.line ?? 0;
+    out.from(line);
+    writeInline(opening.children, printing, out, line);
     out.startLine();
-    writeBlocks(rest, printing, out);
-  } else {
-    if (first) out.line("\\leavevmode");
-    writeBlocks(node.children, printing, out);
-  }
+  } else if (first) out.line("\\leavevmode");
+  writeBlocks(node.children.slice(opening ? 1 : 0, closing ? -1 : undefined), printing, out);
+  if (closing) writeDisplay(closing, printing, out, closing.position?.start.line ?? 0, "\\qedhere");
 }
 
 function writeList(node: List, printing: Printing, out: LatexWriter, line: number): void {

@@ -32,6 +32,7 @@ describe("a paper as LaTeX", () => {
     );
     expect(main).toContain("\\cite[{Theorem 1.2}]{maduro}");
     expect(main).toContain("Castellane and Thorvik (2009)");
+    expect(main).toContain("\\qedhere\n\\]\n\\end{proof}");
   });
 
   it("prints every number by its cell's result, in prose and in formulas", () => {
