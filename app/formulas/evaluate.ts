@@ -2,7 +2,7 @@ import { add, type Computed, divide, isAtMost, isEqual, isLess, multiply, negate
 import { bindEvaluator } from "./binders.ts";
 import { newBudget, spend } from "./budget.ts";
 import { numericFunction } from "./functions.ts";
-import { chooseCost } from "./gammaFunction.ts";
+import { chooseCost } from "./gamma-function.ts";
 import { power } from "./powers.ts";
 import { approximate, exact } from "./quantity.ts";
 import { nearestSpelling } from "./spelling.ts";

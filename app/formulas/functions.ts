@@ -1,7 +1,7 @@
 import { absolute, type Computed, inWords, larger, smaller, withChance } from "./arithmetic.ts";
 import { ROUNDOFF } from "./doubles.ts";
-import { complementaryErrorFunction, errorFunction } from "./errorFunction.ts";
-import { choose, gammaFunction, logGamma } from "./gammaFunction.ts";
+import { complementaryErrorFunction, errorFunction } from "./error-function.ts";
+import { choose, gammaFunction, logGamma } from "./gamma-function.ts";
 import { exponential, logarithm, logarithm10, squareRoot } from "./powers.ts";
 import { exact, inUnit, roundedUp, scaled } from "./quantity.ts";
 import type { Quantity } from "./types.ts";

@@ -1,6 +1,6 @@
 import { create, type MathNode, parseDependencies } from "mathjs/number";
 import { checkOrder } from "./grammar.ts";
-import { child, children, field, placeholderIndex } from "./mathNode.ts";
+import { child, children, field, placeholderIndex } from "./math-node.ts";
 import { nearestSpelling } from "./spelling.ts";
 import { isBracketed, readTokens, type Token } from "./tokens.ts";
 import { isIf, isTruth } from "./truths.ts";
