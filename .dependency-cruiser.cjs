@@ -4,11 +4,12 @@
  */
 const MAY_IMPORT = {
   "app/solvers": [],
-  "app/formulas": [],
+  "app/spelling": [],
+  "app/formulas": ["app/spelling"],
   "app/figures": [],
   "app/ui": [],
-  "app/paper": [],
-  "app/cells": ["app/paper", "app/formulas", "app/solvers", "app/figures"],
+  "app/paper": ["app/spelling"],
+  "app/cells": ["app/spelling", "app/paper", "app/formulas", "app/solvers", "app/figures"],
   "app/print": ["app/paper", "app/cells", "app/formulas"],
   "app/export": ["app/print", "app/paper", "app/cells", "app/figures", "app/formulas"],
   "app/galley": ["app/print", "app/paper", "app/cells", "app/figures", "app/formulas", "app/ui"],
@@ -48,6 +49,7 @@ const layers = Object.entries(MAY_IMPORT).map(([name, allowed]) => ({
 /** Reached by its index (or, for the server's own parts, its folder's index). */
 const indexed = [
   "app/solvers",
+  "app/spelling",
   "app/formulas",
   "app/figures",
   "app/paper",

@@ -1,6 +1,6 @@
 import type { Formula } from "../formulas/index.ts";
-import { nearestSpelling } from "../formulas/index.ts";
 import type { Problem } from "../paper/index.ts";
+import { nearestSpelling } from "../spelling/index.ts";
 import type { Place } from "./body.ts";
 import type { Members } from "./kind.ts";
 import { didYouMean, listOfNames } from "./names.ts";

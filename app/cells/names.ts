@@ -1,5 +1,5 @@
-import { nearestSpelling } from "../formulas/index.ts";
 import type { Problem } from "../paper/index.ts";
+import { nearestSpelling } from "../spelling/index.ts";
 
 /** Names of parameters, cells, columns and dummies: letters, digits and underscores, starting with a letter. */
 export function isName(text: string): boolean {

@@ -1,11 +1,11 @@
+import { nearestSpelling } from "../spelling/index.ts";
 import { add, type Computed, divide, isAtMost, isEqual, isLess, multiply, negate, subtract } from "./arithmetic.ts";
 import { bindEvaluator } from "./binders.ts";
-import { newBudget, spend } from "./budget.ts";
+import { spend } from "./budget.ts";
 import { numericFunction } from "./functions.ts";
 import { chooseCost } from "./gamma-function.ts";
 import { power } from "./powers.ts";
 import { approximate, exact } from "./quantity.ts";
-import { nearestSpelling } from "./spelling.ts";
 import type { Budget, Formula, Quantity, Scope, Value } from "./types.ts";
 import { notANumber, notATruth, refuse, truth } from "./values.ts";
 import { FUNCTIONS } from "./words.ts";
@@ -42,11 +42,6 @@ const COMPARISONS: ReadonlyMap<string, (a: Quantity, b: Quantity) => boolean | n
   ["eq", isEqual],
   ["ne", (a, b) => !isEqual(a, b)],
 ]);
-
-/** Evaluates a formula once; see `compileFormula` for many times. */
-export function evaluateFormula(formula: Formula, scope: Scope, budget: Budget = newBudget()): Value {
-  return compileFormula(formula)(scope, budget);
-}
 
 /**
  * Turns a checked tree into closures. A refused operand refuses the whole, with its own reason; `if`, `and`, `or`

@@ -1,7 +1,7 @@
 import { create, type MathNode, parseDependencies } from "mathjs/number";
+import { nearestSpelling } from "../spelling/index.ts";
 import { checkOrder } from "./grammar.ts";
 import { child, children, field, placeholderIndex } from "./math-node.ts";
-import { nearestSpelling } from "./spelling.ts";
 import { isBracketed, readTokens, type Token } from "./tokens.ts";
 import { isIf, isTruth } from "./truths.ts";
 import type { Formula, FormulaProblem, ParsedFormula } from "./types.ts";

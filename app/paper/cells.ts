@@ -1,8 +1,8 @@
 import type { Code } from "mdast";
+import { nearestSpelling } from "../spelling/index.ts";
 import type { Lines } from "./lines.ts";
 import { sourceMap } from "./lines.ts";
 import { PRINTED_PARTS } from "./printed.ts";
-import { nearestSpelling } from "./spelling.ts";
 import type { Cell, Problem } from "./types.ts";
 import { readYaml } from "./yaml-tree.ts";
 

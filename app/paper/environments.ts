@@ -1,8 +1,8 @@
 import type { RootContent } from "mdast";
+import { nearestSpelling } from "../spelling/index.ts";
 import { readAttributes, takeBrackets } from "./attributes.ts";
 import type { EnvironmentName } from "./nodes.ts";
 import type { Reading } from "./reading.ts";
-import { nearestSpelling } from "./spelling.ts";
 import type { RawFence, RawPiece } from "./syntax/index.ts";
 import type { Target } from "./types.ts";
 

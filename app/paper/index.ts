@@ -14,12 +14,9 @@ export type {
   PrintedPart,
   ReferenceNode,
 } from "./nodes.ts";
-export type { OutlineEntry } from "./outline.ts";
-export { outline } from "./outline.ts";
 export { plainText, referenceText } from "./plain-text.ts";
 export { PRINTED_PARTS, printedParts } from "./printed.ts";
 export { readPaper } from "./read.ts";
-export { didYouMean, nearestSpelling } from "./spelling.ts";
 export type {
   Author,
   BibliographyEntry,
@@ -35,5 +32,3 @@ export type {
 } from "./types.ts";
 export type { PaperNode } from "./walk.ts";
 export { walk } from "./walk.ts";
-export type { PaperWord } from "./words.ts";
-export { PAPER_WORDS } from "./words.ts";

@@ -1,6 +1,6 @@
 import type { Text } from "mdast";
+import { nearestSpelling } from "../spelling/index.ts";
 import type { Reading } from "./reading.ts";
-import { nearestSpelling } from "./spelling.ts";
 
 const directiveNames = ["value", "ref", "cite"];
 

@@ -1,5 +1,5 @@
 import {
-  evaluateFormula,
+  compileFormula,
   newBudget,
   parseFormula,
   type Quantity,
@@ -24,7 +24,7 @@ export function scopeOf(names: Readonly<Record<string, Quantity | Value>> = {}):
 export function valueOfSource(source: string, scope: Scope = scopeOf(), operations?: number): Value {
   const parsed = parseFormula(source);
   if (!parsed.ok) throw new Error(`${source}: ${parsed.problem.message}`);
-  return evaluateFormula(parsed.formula, scope, newBudget(operations));
+  return compileFormula(parsed.formula)(scope, newBudget(operations));
 }
 
 export function quantityOf(source: string, scope?: Scope): Quantity {

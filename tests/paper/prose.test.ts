@@ -1,6 +1,6 @@
 import { describe, expect, test } from "vitest";
 import type { PaperNode } from "../../app/paper/index.ts";
-import { mathTex, outline, plainText, readInline, readPaper, walk } from "../../app/paper/index.ts";
+import { mathTex, plainText, readInline, readPaper, walk } from "../../app/paper/index.ts";
 
 /** The tree in short: types and words, without positions. */
 function short(nodes: readonly PaperNode[]): unknown[] {
@@ -235,18 +235,4 @@ describe("surroundings", () => {
     expect(cells).toHaveLength(1);
     expect(root.children).toHaveLength(1);
   });
-});
-
-test("the outline names sections, surroundings, figures and tables", () => {
-  const paper = readPaper(
-    "## A $x$ {#a}\n\n:::theorem[Shift]\nT\n:::\n\n### B\n\n```counts K\nof: a\ncaption: The *law*\n```\n\n```table\nrows: {n: 1}\n```\n",
-    "",
-  );
-  expect(outline(paper).map(({ kind, level, name, text }) => [kind, level, name, text])).toEqual([
-    ["section", 0, "Section 1", "A x"],
-    ["environment", 1, "Theorem 1.1", "Shift"],
-    ["section", 1, "Section 1.1", "B"],
-    ["figure", 2, "Figure 1", "The law"],
-    ["table", 2, "Table 1", ""],
-  ]);
 });

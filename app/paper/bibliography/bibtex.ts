@@ -1,5 +1,6 @@
+import { nearestSpelling } from "../../spelling/index.ts";
 import { Lines } from "../lines.ts";
-import { didYouMean, nearestSpelling } from "../spelling.ts";
+import { didYouMean } from "../spelling.ts";
 import type { BibliographyEntry, Problem } from "../types.ts";
 import { numberCited } from "./order.ts";
 
