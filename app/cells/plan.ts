@@ -1,4 +1,3 @@
-import { toDouble } from "../formulas/index.ts";
 import type { BoundNumber, Paper, Problem } from "../paper/index.ts";
 import { parsedFormula } from "./body.ts";
 import { planningContext } from "./compute.ts";
@@ -130,10 +129,4 @@ function withoutRepeats(problems: readonly Problem[], found: readonly Problem[])
     return !seen.has(mark) && seen.add(mark);
   });
   return kept.sort((a, b) => a.from - b.from);
-}
-
-/** A parameter's value as a double, or null when it has none. */
-export function parameterNumber(plan: Plan, name: string): number | null {
-  const value = plan.parameters.find((parameter) => parameter.name === name)?.value;
-  return value?.type === "number" ? toDouble(value.quantity) : null;
 }
