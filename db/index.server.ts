@@ -8,17 +8,14 @@ import * as sessions from "./sessions.server.ts";
 import { type Signal, send } from "./signals.server.ts";
 import * as texts from "./texts.server.ts";
 
-export type { Bound } from "./bind.server.ts";
-export { bind } from "./bind.server.ts";
 export { connect } from "./connection.server.ts";
-export type { MemberRefusal, MemberRow, Role } from "./members.server.ts";
+export type { MemberRow, Role } from "./members.server.ts";
 export { migrateToLatest } from "./migrate.server.ts";
 export type { PaperRow, ShelfRow } from "./papers.server.ts";
 export type { Identity, PersonRow } from "./people.server.ts";
-export type { StoredResult } from "./results.server.ts";
-export type { Signal, SignalHandlers } from "./signals.server.ts";
+export type { Signal } from "./signals.server.ts";
 export { SignalLine } from "./signals.server.ts";
-export type { Appended, DocumentName, NewUpdate, StoredUpdate } from "./texts.server.ts";
+export type { DocumentName, NewUpdate, StoredUpdate } from "./texts.server.ts";
 
 /** All aggregates, bound to one connection pool. */
 export interface Database {

@@ -1,3 +1,3 @@
 export { safeReturnTo } from "./return-to.ts";
-export type { Right, Standing } from "./roles.ts";
+export type { Standing } from "./roles.ts";
 export { may } from "./roles.ts";

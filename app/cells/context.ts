@@ -90,7 +90,7 @@ export class ComputeContext {
 }
 
 /** `locals` before what the scope knows. */
-export function withLocals(scope: Scope, locals: Readonly<Record<string, Value>>): Scope {
+function withLocals(scope: Scope, locals: Readonly<Record<string, Value>>): Scope {
   return {
     name: (name) => (Object.hasOwn(locals, name) ? locals[name] : scope.name(name)),
     member: (of, member) => scope.member(of, member),

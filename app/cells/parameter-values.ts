@@ -156,7 +156,7 @@ function rangeProblems(parameter: PlannedParameter, names: Declarations): Proble
   const warn = (message: string): Problem[] => [{ from, to, line, severity: "warning", message, cell: draft?.cell.id }];
   if (min !== null && max !== null && min >= max)
     return warn(
-      `The scale of \`${name}\` runs from ${printExact(min)} to ${printExact(max)}; \`min\` must be below \`max\`.`,
+      `The scale of \`${name}\` goes from ${printExact(min)} to ${printExact(max)}; \`min\` must be below \`max\`.`,
     );
   if (step !== null && step <= 0) return warn(`\`step\` of \`${name}\` is ${printExact(step)}; it must be above 0.`);
   if (value.type !== "number") return [];

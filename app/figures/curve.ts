@@ -74,7 +74,7 @@ function clipSegment(from: Point, to: Point, frame: Frame): readonly [Point, Poi
 }
 
 /** Leaves out points that lie on the line between those kept (Douglas and Peucker, with a stack instead of recursion). */
-export function withoutFlatPoints(points: readonly Point[], tolerance = FLATNESS_PX): readonly Point[] {
+function withoutFlatPoints(points: readonly Point[], tolerance = FLATNESS_PX): readonly Point[] {
   const keep = new Uint8Array(points.length);
   keep[0] = 1;
   keep[points.length - 1] = 1;

@@ -38,7 +38,7 @@ export interface LabelFrame {
 }
 
 /** Labels stand at least this far apart (at the page's font size). */
-export const LABEL_GAP = 14;
+const LABEL_GAP = 14;
 /** A label moved less than this needs no line to say what it names. */
 const LEADER_FROM = 3;
 

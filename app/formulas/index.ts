@@ -7,10 +7,8 @@ export type { QuantityJson } from "./quantity.ts";
 export { approximate, exact, log10Of, quantityToJson, scaled, toDouble } from "./quantity.ts";
 export { freeNames } from "./tree.ts";
 export type {
-  Budget,
   Formula,
   FormulaProblem,
-  ParsedFormula,
   PrintedNumber,
   PrintOptions,
   Quantity,

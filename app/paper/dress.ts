@@ -106,7 +106,7 @@ function isBlock(node: RootContent): node is BlockContent | DefinitionContent {
 }
 
 /** Words with displays among them taken as math in the line: where no display can stand (headings, captions). */
-export function dressPhrasing(reading: Reading, nodes: readonly RawPhrasing[], depth = 0): PhrasingContent[] {
+function dressPhrasing(reading: Reading, nodes: readonly RawPhrasing[], depth = 0): PhrasingContent[] {
   return dressWords(reading, nodes, depth).map((node) => {
     if (node.type !== "math") return node;
     reading.report(

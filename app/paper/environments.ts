@@ -20,7 +20,7 @@ export const ENVIRONMENTS: Readonly<Record<EnvironmentName, Exclude<Target["noun
   proof: "Proof",
 };
 
-export function isEnvironmentName(name: string): name is EnvironmentName {
+function isEnvironmentName(name: string): name is EnvironmentName {
   return Object.hasOwn(ENVIRONMENTS, name);
 }
 

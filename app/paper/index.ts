@@ -1,4 +1,3 @@
-export type { ItemRun } from "./bibliography/index.ts";
 export { bibliographyItem, citationText } from "./bibliography/index.ts";
 export { ENVIRONMENTS } from "./environments.ts";
 export { readInline } from "./inline.ts";
@@ -8,14 +7,12 @@ export type {
   BoundNumberNode,
   CellNode,
   CitationNode,
-  EnvironmentName,
   EnvironmentNode,
-  NumberInMath,
   PrintedPart,
   ReferenceNode,
 } from "./nodes.ts";
 export { plainText, referenceText } from "./plain-text.ts";
-export { PRINTED_PARTS, printedParts } from "./printed.ts";
+export { PRINTED_PARTS } from "./printed.ts";
 export { readPaper } from "./read.ts";
 export type {
   Author,

@@ -40,7 +40,7 @@ function hasChildren(node: unknown): node is { children: readonly unknown[] } {
  * The address of a link as it may be followed: http, https, mailto, or a DOI (made an https address). null for any
  * other, which could run something or lead into the program itself.
  */
-export function allowedUrl(url: string): string | null {
+function allowedUrl(url: string): string | null {
   const trimmed = url.trim();
   if (/^(https?:\/\/|mailto:)[^\s]+$/i.test(trimmed)) return trimmed;
   const doi = /^doi:\s*(10\.\S+)$/i.exec(trimmed)?.[1];

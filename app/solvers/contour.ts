@@ -49,7 +49,7 @@ export interface ContourShape {
 const TRUSTED = 0.9;
 const NEWTON_ROUNDS = 30;
 /** At θ = π, s is real and so must ξ + iπ be: the path has come round on the right sheet. */
-export const CLOSING_TOLERANCE = 1e-9;
+const CLOSING_TOLERANCE = 1e-9;
 
 /** Finds ξ at all nodes. @returns null where the continuation fails or does not close: the circle meets a singularity. */
 export function traceContour(reader: TrajectoryReader, reference: Reference, shape: ContourShape): Contour | null {

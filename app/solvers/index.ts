@@ -1,7 +1,6 @@
 /** The half-line solver: one trajectory, from which every answer is read. */
 
 export { absorbedAbove, absorbedLaw, absorbedProbability } from "./counts.ts";
-export type { SolverErrorCode } from "./errors.ts";
 export { SolverError } from "./errors.ts";
 export { absorbedMoments, factorialMoment } from "./moments.ts";
 export { describeProcess } from "./process.ts";
@@ -11,21 +10,16 @@ export { tailLaw, tailProbability } from "./tail.ts";
 export { solveTrajectory } from "./trajectory.ts";
 export type {
   AbsorbedLaw,
-  AbsorbedMoments,
   Answer,
   Estimate,
   Offspring,
   Pair,
-  ProcessDescription,
   ProcessModel,
-  ProfileConstants,
   Refusal,
-  Regime,
   ScaledEstimate,
   Start,
   Starts,
   TailLaw,
-  TailProbability,
   Trajectory,
 } from "./types.ts";
 export { SOLVER_VERSIONS } from "./versions.ts";

@@ -97,7 +97,7 @@ export function expand(n: Normalised, knot: PairKnot, order: number): PairSeries
 }
 
 /** Length of the step over which the expansion's last terms stay below the tolerance relative to u, and the fast damping is resolved. */
-export function stepLength(c: PairSeries, n: Normalised, settings: WalkSettings): number {
+function stepLength(c: PairSeries, n: Normalised, settings: WalkSettings): number {
   const { order, tolerance } = settings;
   const size = Math.abs(c.high[0] as number);
   let length = order / (4 * (1 + Math.abs(n.ratio[0])));

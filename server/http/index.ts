@@ -7,7 +7,6 @@ import { exactOrigin, loopbackOrigin, type OwnOrigin, onlyFromOwnPages } from ".
 import { refuse } from "./refusal.ts";
 import { loggedRequests } from "./requests.ts";
 
-export type { OwnOrigin };
 export { exactOrigin, loopbackOrigin };
 
 export interface HttpParts {

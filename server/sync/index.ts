@@ -1,5 +1,5 @@
 export type { Identify, Visitor } from "./admission.ts";
-export type { LiveTextsOptions, ShownMaps } from "./live-texts.ts";
+export type { ShownMaps } from "./live-texts.ts";
 export { LiveTexts } from "./live-texts.ts";
 export type { SocketsOptions } from "./sockets.ts";
 export { attachSockets } from "./sockets.ts";

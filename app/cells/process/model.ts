@@ -87,7 +87,7 @@ export function trajectoryOf(reference: { readonly cell: string }, context: Comp
 }
 
 /** What a `process` cell keeps. Sound because planning lets `of` name process cells only. */
-export function processData(reference: { readonly cell: string }, context: ComputeContext): ProcessData {
+function processData(reference: { readonly cell: string }, context: ComputeContext): ProcessData {
   return context.result(reference, "of").data as ProcessData;
 }
 

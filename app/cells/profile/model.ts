@@ -110,7 +110,7 @@ function rangeOf(range: { from: Formula; to: Formula }, context: ComputeContext)
   const from = context.number(range.from, "x", { least: 0 });
   const to = context.number(range.to, "x", { least: 0 });
   if (from < to) return [from, to];
-  throw new CellFault("x", `\`x\` runs from ${from} to ${to}; the second end must be the larger one.`);
+  throw new CellFault("x", `\`x\` goes from ${from} to ${to}; the second end must be the larger one.`);
 }
 
 /** Parts the values of s into those that have a curve and the words about those that have none. */

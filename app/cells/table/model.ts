@@ -158,7 +158,7 @@ function steps(values: { from: Formula; to: Formula }, path: string, context: Co
   const from = context.number(values.from, path, {});
   const to = context.number(values.to, path, {});
   if (to < from)
-    throw new CellFault(path, `\`${path}\` runs from ${from} to ${to}; the second end must be the larger one.`);
+    throw new CellFault(path, `\`${path}\` goes from ${from} to ${to}; the second end must be the larger one.`);
   if (to - from >= MOST_ROWS)
     throw new CellFault(
       path,
