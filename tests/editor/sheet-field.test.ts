@@ -69,13 +69,13 @@ function apply(
   view.dispatch({ effects: applyModel.of({ model, doc, since: since.desc }) });
 }
 
-/** What is drawn, by place and what it is. */
+/** What is drawn, by place and what it is; in any order, since layers of marks at one place are in none. */
 function drawn(view: EditorView): string[] {
   const found: string[] = [];
   view.state.field(sheetField).shown.between(0, view.state.doc.length, (from, to, { spec }) => {
     found.push(`${from}-${to} ${spec.class ?? spec.widget?.constructor.name ?? "hidden"}${spec.block ? " block" : ""}`);
   });
-  return found;
+  return found.sort();
 }
 
 describe("source shows under the caret alone", () => {
