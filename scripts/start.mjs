@@ -34,7 +34,8 @@ const databaseUrl = await ensureDatabase(cluster, "halfline");
 const command = dev ? ["--import", "tsx", "server/index.ts"] : ["build/index.js"];
 const server = spawn(process.execPath, command, {
   cwd: root,
-  stdio: "inherit",
+  // The channel tells the server when this process is killed, so that it does not stay behind on the port.
+  stdio: ["inherit", "inherit", "inherit", "ipc"],
   env: {
     ...process.env,
     HALFLINE_MODE: "demo",

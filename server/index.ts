@@ -9,14 +9,16 @@ async function main(): Promise<void> {
   const starting = startServer(environment, log);
 
   let ending = false;
-  const end = async (signal: NodeJS.Signals) => {
+  const end = async (reason: string) => {
     if (ending) return;
     ending = true;
-    log.info({ signal }, "ending");
+    log.info({ reason }, "ending");
     await (await starting).close();
     process.exit(0);
   };
   for (const signal of ["SIGINT", "SIGTERM"] as const) process.on(signal, () => void end(signal).catch(failed));
+  // Only where whoever started this process holds a channel to it, as scripts/start.mjs does.
+  process.once("disconnect", () => void end("the process that started this one is gone").catch(failed));
 
   process.stdout.write(`Halfline is ready: ${(await starting).url}\n`);
 }

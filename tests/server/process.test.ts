@@ -10,6 +10,12 @@ test("asked to end, it ends with status 0 and frees its port", async () => {
   await expect(fetch(`${own.url}/healthz`)).rejects.toThrow();
 });
 
+test("it ends too when the process that started it is killed", async () => {
+  const own = await startBuiltServer();
+  expect(await own.abandon()).toBe(0);
+  await expect(fetch(`${own.url}/healthz`)).rejects.toThrow();
+});
+
 test("in production it leads to GitHub itself, with a code challenge, and has no stand-in", async () => {
   const port = await freePort();
   const production = await startBuiltServer({

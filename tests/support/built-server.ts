@@ -9,6 +9,8 @@ export interface BuiltServer {
   /** All it has printed on both streams. */
   output(): string;
   stop(signal?: NodeJS.Signals): Promise<number | null>;
+  /** What the server sees when the process that started it is killed. Resolves with the server's status at its end. */
+  abandon(): Promise<number | null>;
 }
 
 const START_TIMEOUT_MS = 60_000;
@@ -30,13 +32,13 @@ export async function startBuiltServer(variables: Readonly<Record<string, string
       DATABASE_URL: databaseUrl,
       ...variables,
     },
-    stdio: ["ignore", "pipe", "pipe"],
+    stdio: ["ignore", "pipe", "pipe", "ipc"],
   });
   let output = "";
   const ended = new Promise<number | null>((done) => child.once("exit", done));
   const ready = new Promise<string>((done, fail) => {
     for (const stream of [child.stdout, child.stderr]) {
-      stream.on("data", (chunk) => {
+      stream?.on("data", (chunk) => {
         output += chunk;
         const url = /Halfline is ready: (\S+)/.exec(output)?.[1];
         if (url) done(url);
@@ -51,6 +53,10 @@ export async function startBuiltServer(variables: Readonly<Record<string, string
     output: () => output,
     stop: (signal = "SIGTERM") => {
       child.kill(signal);
+      return ended;
+    },
+    abandon: () => {
+      child.disconnect();
       return ended;
     },
   };
