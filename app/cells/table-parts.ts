@@ -1,7 +1,6 @@
 import type { Figure, Series, TableColumn, TableData, TableEntry } from "../figures/index.ts";
-import type { PrintOptions, Value } from "../formulas/index.ts";
-import { approximate, exact, printNumber } from "../formulas/index.ts";
-import { decimalText, errorText } from "./decimal.ts";
+import type { PrintOptions, Quantity, Value } from "../formulas/index.ts";
+import { approximate, decimalText, exact, printNumber, scaled } from "../formulas/index.ts";
 
 /** A value as a table prints it. Refused and missing values are gaps; why is said in the remarks. */
 export function tableEntry(value: Value, options: PrintOptions = {}): TableEntry {
@@ -42,6 +41,12 @@ function pointEntry(series: Series, index: number | undefined): TableEntry {
   const high = series.high?.[index];
   const error = high === null || high === undefined ? 0 : Math.abs(high - y);
   return tableEntry({ type: "number", quantity: error === 0 ? exact(y) : approximate(y, error) });
+}
+
+/** The larger of a quantity's error bound and standard error, to two digits; "" for exact numbers. */
+function errorText({ error, se, exponent }: Quantity): string {
+  const larger = Math.max(error, se);
+  return larger === 0 ? "" : decimalText(scaled(larger, exponent, 0), 2);
 }
 
 function wordEntry(text: string): TableEntry {

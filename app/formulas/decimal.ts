@@ -79,7 +79,25 @@ export function shortest(q: Quantity): Decimal {
   return { negative: q.mantissa < 0, digits: mantissa.replace(".", ""), exponent: Number(exponent) };
 }
 
-/** Digits of a decimal from its first down to the place; "" where there are none. */
+/** Digits that tell one double from the next. */
+const DOUBLE_DIGITS = 17;
+/** Doubles below lose digits to underflow soon: they are converted exactly instead. */
+const SMALLEST_SAFE = 1e-290;
+
+/**
+ * The number as decimal text that any program reads: "5.436877834061", "2.5803124411e-741".
+ * @param digits significant digits, 1 to 17; all that tell the double from the next where they are left out
+ */
+export function decimalText(q: Quantity, digits: number = DOUBLE_DIGITS): string {
+  const plain = toDouble(q);
+  const isSafe = q.exponent === 0 || q.mantissa === 0 || (Number.isFinite(plain) && Math.abs(plain) > SMALLEST_SAFE);
+  if (isSafe) return String(digits === DOUBLE_DIGITS ? plain : Number(plain.toPrecision(digits)));
+  const rounded = withoutTrailingZeros(roundToPlace(q, leadingPlace(q) - (digits - 1)));
+  const rest = rounded.digits.slice(1);
+  return `${rounded.negative ? "-" : ""}${rounded.digits.charAt(0)}${rest === "" ? "" : `.${rest}`}e${rounded.exponent}`;
+}
+
+/** The decimal without the zeros at its end; digits are "" where it had no others. */
 export function withoutTrailingZeros(d: Decimal): Decimal {
   return { ...d, digits: d.digits.replace(/0+$/, "") };
 }

@@ -1,4 +1,5 @@
 export { newBudget } from "./budget.ts";
+export { decimalText } from "./decimal.ts";
 export { FormulaError } from "./errors.ts";
 export { compileFormula } from "./evaluate.ts";
 export { parseFormula } from "./parse.ts";

@@ -1,6 +1,14 @@
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
-import { approximate, exact, type PrintOptions, printNumber, type Quantity, scaled } from "../../app/formulas/index.ts";
+import {
+  approximate,
+  decimalText,
+  exact,
+  type PrintOptions,
+  printNumber,
+  type Quantity,
+  scaled,
+} from "../../app/formulas/index.ts";
 import { quantityOf } from "./evaluating.ts";
 import { atMost, decimal, fractionOf, minus, plus, size, times } from "./fraction.ts";
 
@@ -168,5 +176,27 @@ describe("properties", () => {
         expect(Number(asDecimal(sheet.known + sheet.unknown + sheet.rest))).toBe(Number(asDecimal(whole.text)));
       }),
     );
+  });
+});
+
+describe("a number as text for other programs", () => {
+  // Computed by an independent method: decimal arithmetic of 60 digits, outside this program.
+  test.each<[Quantity, number | undefined, string]>([
+    [exact(0), undefined, "0"],
+    [approximate(5.436877834061, 1e-12), undefined, "5.436877834061"],
+    [approximate(5.436877834061, 1e-12), 2, "5.4"],
+    [scaled(1, -3000, 0), undefined, "8.1285486255577354e-904"],
+    [scaled(0.75, 4000, 0), undefined, "9.8865307007320733e1203"],
+    [scaled(-5, -1100, 0), undefined, "-3.6810759145114313e-331"],
+    [scaled(-5, -1100, 0), 2, "-3.7e-331"],
+    [scaled(2 ** -10, -1000, 0), undefined, "9.1139025244454969e-305"],
+  ])("%o to %s digits is %s", (q, digits, expected) => {
+    expect(decimalText(q, digits)).toBe(expected);
+  });
+
+  test("digits that round up to a power of ten carry into the exponent", () => {
+    // 9.99e-1000 = 9.99·10^-1000, rounded to one digit.
+    const q = quantityOf("9.99*10^(-1000)");
+    expect(decimalText(q, 1)).toBe("1e-999");
   });
 });
