@@ -31,6 +31,7 @@ export interface Database {
   answers(): Promise<void>;
 }
 
+/** Binds every aggregate to the pool; whoever opened the pool closes it. */
 export function openDatabase(knex: Knex): Database {
   return {
     people: bind(knex, people),

@@ -28,6 +28,7 @@ export async function list(knex: Knex, paperId: string): Promise<MemberRow[]> {
     });
 }
 
+/** Gives a person a role on a paper; refused when they have one, which then stays as it is. */
 export async function add(
   knex: Knex,
   paperId: string,

@@ -37,6 +37,7 @@ export async function create(
   });
 }
 
+/** The paper's row, if there is such a paper; who may see it is not asked here. */
 export async function find(knex: Knex, id: string): Promise<PaperRow | undefined> {
   return knex("papers").where({ id }).first(PAPER);
 }

@@ -56,6 +56,7 @@ export async function findByLogin(knex: Knex, provider: string, login: string): 
     .first(PERSON);
 }
 
+/** Changes the name that coauthors see. */
 export async function rename(knex: Knex, personId: string, name: string): Promise<void> {
   await knex("people").where({ id: personId }).update({ name });
 }

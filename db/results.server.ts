@@ -67,6 +67,7 @@ export async function addSeconds(knex: Knex, id: number, seconds: number): Promi
   await knex("computations").where({ id }).increment("seconds", seconds);
 }
 
+/** Notes that nothing of the computation is under way any more. */
 export async function closeComputation(knex: Knex, id: number): Promise<void> {
   await knex("computations").where({ id }).update({ ended_at: knex.fn.now() });
 }

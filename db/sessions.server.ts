@@ -31,6 +31,7 @@ export async function findPerson(knex: Knex, hash: string): Promise<PersonRow | 
   return { id: row.id, name: row.name, email: row.email };
 }
 
+/** Ends a session; nothing happens where it has ended before. */
 export async function end(knex: Knex, hash: string): Promise<void> {
   await knex("sessions").where({ id_hash: hash }).delete();
 }

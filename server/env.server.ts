@@ -54,6 +54,7 @@ export interface Environment {
   readonly logLevel: NonNullable<z.infer<typeof shape>["LOG_LEVEL"]>;
 }
 
+/** The environment does not fit: every fault at once, each with what would do. */
 export class EnvironmentError extends Error {
   readonly faults: readonly string[];
   constructor(faults: readonly string[]) {

@@ -17,18 +17,22 @@ export function scaledValue(answer: Answer<ScaledEstimate>): Value {
   return "refused" in answer ? refusedValue(answer.refused) : numberValue(scaledQuantity(answer));
 }
 
+/** A solver's number of any size as a quantity. */
 export function scaledQuantity(estimate: ScaledEstimate): Quantity {
   return scaled(estimate.mantissa, estimate.exponent, estimate.error);
 }
 
+/** A number as a value. */
 export function numberValue(quantity: Quantity): Value {
   return { type: "number", quantity };
 }
 
+/** A word as a value: a regime, say. */
 export function textValue(text: string): Value {
   return { type: "text", text };
 }
 
+/** No value, and why. */
 export function refusedValue(reason: string): Value {
   return { type: "refused", reason };
 }

@@ -75,6 +75,7 @@ function sizeExponent(q: Quantity): number {
   return size === 0 ? Number.NEGATIVE_INFINITY : exponentOf(size) + q.exponent;
 }
 
+/** a − b. */
 export function subtract(a: Quantity, b: Quantity): Quantity {
   return add(a, negate(b));
 }
@@ -131,6 +132,7 @@ export function larger(a: Quantity, b: Quantity): Quantity {
   return scaled(mantissa, unit, widest, se, sources);
 }
 
+/** min(a, b), with the error of the larger of both where they cannot be told apart. */
 export function smaller(a: Quantity, b: Quantity): Quantity {
   return negate(larger(negate(a), negate(b)));
 }

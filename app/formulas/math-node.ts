@@ -5,10 +5,12 @@ export function field(node: MathNode, name: string): unknown {
   return Reflect.get(node, name);
 }
 
+/** A field that holds a node: the kind of `node` is the caller's warrant that it does. */
 export function child(node: MathNode, name: string): MathNode {
   return field(node, name) as MathNode;
 }
 
+/** A field that holds nodes, likewise. */
 export function children(node: MathNode, name: string): readonly MathNode[] {
   return field(node, name) as readonly MathNode[];
 }

@@ -9,6 +9,7 @@ export function isTruth(formula: Formula): boolean {
   return TRUTHS.has(formula.name);
 }
 
+/** Whether a formula chooses between two others. */
 export function isIf(formula: Formula): boolean {
   return formula.node === "apply" && formula.name === "if";
 }

@@ -1,14 +1,17 @@
 import { inWords } from "./arithmetic.ts";
 import type { Quantity, Value } from "./types.ts";
 
+/** No value, and why. @param reason a clause without a full stop */
 export function refuse(reason: string): Value {
   return { type: "refused", reason };
 }
 
+/** What a comparison gives; null: the errors leave it open. */
 export function truth(holds: boolean | null): Value {
   return { type: "truth", holds };
 }
 
+/** A number as a value. */
 export function number(quantity: Quantity): Value {
   return { type: "number", quantity };
 }

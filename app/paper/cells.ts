@@ -12,6 +12,7 @@ export interface CellCount {
   readonly unnamed: Map<string, number>;
 }
 
+/** Nothing counted yet. */
 export function newCellCount(): CellCount {
   return { names: new Set(), unnamed: new Map() };
 }

@@ -8,6 +8,7 @@ export interface ComplexSeries {
   readonly im: Float64Array;
 }
 
+/** A series of zeros. */
 export function complexSeries(length: number): ComplexSeries {
   return { re: new Float64Array(length), im: new Float64Array(length) };
 }

@@ -1,15 +1,14 @@
 import { type Expansion, evaluate, type PointValue, pointValue } from "./expansion.ts";
 import type { TrajectoryReader } from "./reader.ts";
 
-/** Analytic continuation of u along a path in the complex ξ-plane, by Taylor expansions one after another.
- *  Each call moves from where the last one ended; z = −e^{−ξ} leaves the real axis with ξ. */
-
 /** Share of an expansion's reach within which it is trusted. */
 const TRUSTED = 0.9;
 /** More expansions than any move between neighbouring nodes needs. */
 const MOST_MOVES = 200;
 const NEWTON_ROUNDS = 20;
 
+/** Analytic continuation of u along a path in the complex ξ-plane, by Taylor expansions one after another.
+ *  Each call moves from where the last one ended; z = −e^{−ξ} leaves the real axis with ξ. */
 export class Continuation {
   private readonly reader: TrajectoryReader;
   private current: Expansion;

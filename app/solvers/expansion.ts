@@ -25,6 +25,7 @@ export interface PointValue {
   slopeIm: number;
 }
 
+/** A place for what an expansion gives at a point: filled again and again, so that loops allocate nothing. */
 export function pointValue(): PointValue {
   return { re: 0, im: 0, slopeRe: 0, slopeIm: 0 };
 }

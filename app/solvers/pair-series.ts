@@ -65,6 +65,7 @@ export function cauchy(a: PairSeries, b: PairSeries, k: number, from: number, to
  *  At u_0 = 0 the answer does not depend on u_k, because M has no linear part: ask with u_k = 0, set u_k, ask again. */
 export type PairComposer = (k: number) => Pair;
 
+/** The composer of an offspring law for the series u, which its caller fills term by term. */
 export function pairComposer(law: Branching, u: PairSeries): PairComposer {
   switch (law.law) {
     case "geometric":

@@ -14,6 +14,7 @@ export const PAIR_EPSILON = 2 ** -100;
 export const ZERO: Pair = [0, 0];
 export const ONE: Pair = [1, 0];
 
+/** A double as a pair, exactly. */
 export function pair(x: number): Pair {
   return [x, 0];
 }
@@ -43,6 +44,7 @@ export function exactProduct(a: number, b: number): Pair {
   return [product, a1 * b1 - product + a1 * b2 + a2 * b1 + a2 * b2];
 }
 
+/** a + b, to 2^−104 or so of |a| + |b|. */
 export function add(a: Pair, b: Pair): Pair {
   const [s, e] = exactSum(a[0], b[0]);
   const [t, f] = exactSum(a[1], b[1]);
@@ -50,14 +52,17 @@ export function add(a: Pair, b: Pair): Pair {
   return quick(high, low + f);
 }
 
+/** −a, exactly. */
 export function negate(a: Pair): Pair {
   return [-a[0], -a[1]];
 }
 
+/** a − b, to 2^−104 or so of |a| + |b|. */
 export function subtract(a: Pair, b: Pair): Pair {
   return add(a, negate(b));
 }
 
+/** a·b, to a few times 2^−104 of itself. */
 export function multiply(a: Pair, b: Pair): Pair {
   const [p, e] = exactProduct(a[0], b[0]);
   return quick(p, e + (a[0] * b[1] + a[1] * b[0]));
@@ -69,6 +74,7 @@ export function scale(a: Pair, b: number): Pair {
   return quick(p, e + a[1] * b);
 }
 
+/** a/b for b ≠ 0, to a few times 2^−104 of itself: three digits of a long division, each a double. */
 export function divide(a: Pair, b: Pair): Pair {
   const first = a[0] / b[0];
   const rest = subtract(a, scale(b, first));
@@ -123,6 +129,7 @@ function scaleByPower(a: Pair, power: number): Pair {
   return [a[0] * factor, a[1] * factor];
 }
 
+/** The nearest double. */
 export function toNumber(a: Pair): number {
   return a[0] + a[1];
 }

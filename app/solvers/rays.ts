@@ -1,10 +1,7 @@
 import { type Expansion, evaluate, type PointValue, pointValue } from "./expansion.ts";
 import type { TrajectoryReader } from "./reader.ts";
 
-/** Expansions along lines Im ξ = constant, each walked from the series at z = 0 towards decreasing Re ξ.
- *
- *  Where f'(1) is negative and the drift toward the barrier, the fast damping makes every other direction unstable: a step of Re ξ by h > 0
- *  multiplies errors by e^{|ratio| h}. Along these lines errors die out. Lines are kept and shared by all who continue. */
+/** One line. */
 interface Ray {
   readonly im: number;
   /** in order of decreasing Re ξ */
@@ -17,6 +14,11 @@ const STEP = 0.6;
 /** More steps than any ray needs. */
 const MOST_STEPS = 2000;
 
+/** Expansions along lines Im ξ = constant, each walked from the series at z = 0 towards decreasing Re ξ.
+ *
+ *  Where f'(1) is negative and the drift toward the barrier, the fast damping makes every other direction unstable: a step
+ *  of Re ξ by h > 0 multiplies errors by e^{|ratio| h}. Along these lines errors die out. Lines are kept and shared by all
+ *  who continue. */
 export class Rays {
   private readonly reader: TrajectoryReader;
   private readonly rays: Ray[] = [];

@@ -1,5 +1,6 @@
 /** Power series in double precision, for the expansion at the square-root singularity. All are cut after `order`. */
 
+/** a·b. */
 export function multiplied(a: Float64Array, b: Float64Array, order: number): Float64Array {
   const product = new Float64Array(order + 1);
   for (let i = 0; i <= order && i < a.length; i += 1)

@@ -22,6 +22,7 @@ export type PlannedWork = Pick<
 /** More often than this nobody wants to know how far a cell is. */
 const PROGRESS_EVERY_MS = 100;
 
+/** Computes one cell in this thread. The first message says that it has begun; the others how far it is. */
 export function compute({ task, results, progress }: ComputeJob): Outcome {
   progress.postMessage(null);
   let told = 0;

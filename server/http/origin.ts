@@ -16,6 +16,7 @@ export function loopbackOrigin(port: () => number): OwnOrigin {
   };
 }
 
+/** The one address at which people reach this program. */
 export function exactOrigin(own: string): OwnOrigin {
   return (origin) => origin === own;
 }

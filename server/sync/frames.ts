@@ -62,6 +62,7 @@ export function missingFrame(doc: Y.Doc, stateVector: Uint8Array): Uint8Array {
   return toUint8Array(encoder);
 }
 
+/** Something new in the document. */
 export function updateFrame(update: Uint8Array): Uint8Array {
   const encoder = createEncoder();
   writeVarUint(encoder, MESSAGE_SYNC);
@@ -69,6 +70,7 @@ export function updateFrame(update: Uint8Array): Uint8Array {
   return toUint8Array(encoder);
 }
 
+/** Who is here and where their carets stand, as y-protocols encodes it. */
 export function presenceFrame(presence: Uint8Array): Uint8Array {
   const encoder = createEncoder();
   writeVarUint(encoder, MESSAGE_AWARENESS);

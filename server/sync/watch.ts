@@ -99,10 +99,12 @@ export class TextWatch {
   }
 }
 
+/** The paper's Markdown as this process holds it. */
 export function textOf(room: Room): string {
   return room.doc.getText(TEXT_NAME).toString();
 }
 
+/** The paper's BibTeX, likewise. */
 export function bibliographyOf(room: Room): string {
   return room.doc.getText(BIBLIOGRAPHY_NAME).toString();
 }

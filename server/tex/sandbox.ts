@@ -19,6 +19,7 @@ export interface Limits {
   readonly pdfMiB: number;
 }
 
+/** What setting one paper may take. */
 export const LIMITS: Limits = { seconds: 60, memoryMiB: 2048, fileMiB: 64, pdfMiB: 40 };
 
 /** How TeX is confined on this machine. */
