@@ -1,6 +1,7 @@
 /**
  * Times the parts of the program that a reader waits for, and the main job's solves beside a general integrator in the
- * same run, so that the ratio does not depend on the machine: npm run bench
+ * same run, so that the ratio does not depend on the machine; then a keystroke in a long paper beside one in the bare
+ * editing component, in Chromium: npm run bench [-- keystroke], which leaves out all but the last.
  */
 import { type CellResult, computePlan, evaluateNumber, planPaper } from "../app/cells/index.ts";
 import { readPaper } from "../app/paper/index.ts";
@@ -13,6 +14,7 @@ import {
   type Trajectory,
   tailLaw,
 } from "../app/solvers/index.ts";
+import { printKeystrokes } from "./keystroke.ts";
 import { integrateTrajectory } from "./odex-trajectory.ts";
 import { generatePaper } from "./paper-generator.ts";
 import { type Timing, timed } from "./timing.ts";
@@ -127,5 +129,8 @@ function print(rows: readonly Row[]): void {
   }
 }
 
-print([...solverRows(), ...paperRows()]);
-console.log(`\n${agreement()}`);
+if (process.argv[2] !== "keystroke") {
+  print([...solverRows(), ...paperRows()]);
+  console.log(`\n${agreement()}`);
+}
+await printKeystrokes(generatePaper(PAPER_BYTES, PAPER_CELLS, SEED));
