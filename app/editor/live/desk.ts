@@ -1,4 +1,4 @@
-import type { EditorView } from "@codemirror/view";
+import { EditorView } from "@codemirror/view";
 import type { Kept } from "../kept.ts";
 import { yamlScalar } from "../model/scale.ts";
 import type { CellFace, SheetModel, ShownView } from "../model/types.ts";
@@ -169,6 +169,12 @@ export class Desk {
 
   cancelAll(): void {
     void this.ask(this.requests.cancel("all"));
+  }
+
+  /** Brings a place of the text into view and leaves the caret where it is. */
+  show(position: number): void {
+    const { view } = this;
+    view?.dispatch({ effects: EditorView.scrollIntoView(Math.min(position, view.state.doc.length), { y: "center" }) });
   }
 
   goTo(position: number): void {

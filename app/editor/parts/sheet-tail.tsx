@@ -57,7 +57,9 @@ function Errata({
     const found = errata.find(({ from }) => from > last.current) ?? errata[0];
     if (found === undefined) return;
     last.current = found.from;
-    desk.goTo(found.from);
+    // A plate is shown as it stands; in a sentence the caret goes to what is amiss.
+    if (found.what === "cell") desk.show(found.from);
+    else desk.goTo(found.from);
   };
   return (
     <span className="hl-errata">

@@ -76,6 +76,10 @@ export function createSourceEditor(
   });
 }
 
+/** Heights of the rule at the top and of the tail line, with room, under which the caret must not be lost. */
+const RULE_PX = 108;
+const TAIL_PX = 68;
+
 /** What both have. Tab is not taken, so that it leaves the text; the caret is drawn in ink. */
 function ground(nonce: string, writes: boolean, label: string): Extension {
   return [
@@ -83,6 +87,7 @@ function ground(nonce: string, writes: boolean, label: string): Extension {
     EditorState.readOnly.of(!writes),
     EditorView.editable.of(writes),
     EditorView.lineWrapping,
+    EditorView.scrollMargins.of(() => ({ top: RULE_PX, bottom: TAIL_PX })),
     drawSelection(),
     EditorView.contentAttributes.of({
       "aria-label": label,
