@@ -46,28 +46,37 @@ const layers = Object.entries(MAY_IMPORT).map(([name, allowed]) => ({
   },
 }));
 
-/** Reached by its index (or, for the server's own parts, its folder's index). */
-const indexed = [
-  "app/solvers",
-  "app/spelling",
-  "app/formulas",
-  "app/figures",
-  "app/paper",
-  "app/cells",
-  "app/print",
-  "app/export",
-  "app/galley",
-  "app/editor",
-  "app/access",
-].map((name) => ({
-  name: `${name.replace("/", "-")}-through-index`,
-  comment: `Import ${name} through its index.`,
+/**
+ * Files by which a folder is entered, beside its index. The protocol is constants alone, for both ends of a socket;
+ * mathematics and markup stand apart so that a page without formulas does not load KaTeX.
+ */
+const ENTRANCES = { "app/editor": ["protocol"], "app/ui": ["math", "markup"] };
+
+/** Every layer but the server, whose own parts keep the same rule among themselves. */
+const indexed = Object.keys(MAY_IMPORT)
+  .filter((name) => name !== "server" && name !== "app/routes")
+  .map((name) => ({
+    name: `${name.replace("/", "-")}-through-index`,
+    comment: `Import ${name} through its index.`,
+    severity: "error",
+    from: { pathNot: `^(${name}|tests)/` },
+    to: {
+      path: `^${name}/`,
+      pathNot: [
+        `^${name}/(${["index", ...(ENTRANCES[name] ?? [])].join("|")})(\\.server|\\.client)?\\.tsx?$`,
+        "\\.css$",
+        "\\.worker\\.ts$",
+      ],
+    },
+  }));
+
+/** The server's parts reach each other through their indexes. */
+const serverParts = ["compute", "fakes", "http", "sync", "tex"].map((part) => ({
+  name: `server-${part}-through-index`,
+  comment: `Import server/${part} through its index.`,
   severity: "error",
-  from: { pathNot: `^(${name}|tests)/` },
-  to: {
-    path: `^${name}/`,
-    pathNot: [`^${name}/(index|protocol)(\\.server|\\.client)?\\.tsx?$`, "\\.css$", "\\.worker\\.ts$"],
-  },
+  from: { path: "^server/", pathNot: `^server/${part}/` },
+  to: { path: `^server/${part}/`, pathNot: `^server/${part}/index\\.ts$` },
 }));
 
 module.exports = {
@@ -103,6 +112,7 @@ module.exports = {
     },
     ...layers,
     ...indexed,
+    ...serverParts,
   ],
   options: {
     doNotFollow: { path: "node_modules" },

@@ -55,9 +55,10 @@ describe("computing a plan", () => {
   });
 
   test("known results are not computed again", () => {
-    const { results } = computed(PAPER);
+    const { results, outcomes } = computed(PAPER);
     const byKey = new Map([...results.values()].map((result) => [result.key, result]));
     const again = computePlan(planOf(PAPER), { known: (key) => byKey.get(key) });
+    expect([...again.keys()]).toEqual([...outcomes.keys()]);
     for (const [id, outcome] of again) {
       if (outcome.status !== "computed") throw new Error(`${id}: ${outcome.status}`);
       expect(outcome.result).toBe(results.get(id));

@@ -98,7 +98,7 @@ const CASES: readonly Case[] = [
     text: LARVAE + cell("formula f", "a: 2*(mu + 1"),
     at: "(",
     line: "a: 2*(mu",
-    says: [],
+    says: ["never closed"],
   },
   {
     what: "a rate that is none",

@@ -49,6 +49,7 @@ describe("profiles", () => {
     const figure = figureIn(cell("profile w", "of: larvae", "x: 0 to 1.6"), "w");
     const [curve] = figure.series;
     expect([curve?.x[0], curve?.x.at(-1)]).toEqual([0, 1.6]);
+    expect(curve?.y.length).toBe(curve?.x.length);
     for (const [index, y] of (curve?.y ?? []).entries()) {
       expect(curve?.low?.[index]).toBeLessThanOrEqual(y ?? 0);
       expect(curve?.high?.[index]).toBeGreaterThanOrEqual(y ?? 0);
