@@ -1,7 +1,8 @@
 import { type Figure, FigurePlate, labelText, type TableData } from "../figures/index.ts";
 import type { CellNode, PrintedPart } from "../paper/index.ts";
 import { provenanceLine, type SetCell } from "../print/index.ts";
-import { Formula, Inline, NumberText, Words } from "./inline.tsx";
+import { NumberText } from "../ui/number-text.tsx";
+import { Formula, Inline, Words } from "./inline.tsx";
 import { anchor, type Setting } from "./setting.ts";
 
 /** Widths a plate is laid out for: text in it keeps its size, so a narrow window gets a plate of its own. */

@@ -5,6 +5,7 @@ import { citationText, mathTex, readInline, referenceText } from "../paper/index
 import type { Note } from "../print/index.ts";
 import { ourMarkup } from "../ui/markup.ts";
 import { renderMath } from "../ui/math.ts";
+import { NumberText } from "../ui/number-text.tsx";
 import { anchor, type Setting } from "./setting.ts";
 
 interface InlineProps {
@@ -104,23 +105,6 @@ function BoundNumberText({ number, setting }: { readonly number: BoundNumber; re
       <NumberText text={printed.text} />
       {note ? <NoteMark note={note} /> : null}
     </span>
-  );
-}
-
-const RAISED = "⁰¹²³⁴⁵⁶⁷⁸⁹⁻";
-const RAISED_PLAIN = "0123456789−";
-
-/** A printed number; the exponent's own characters differ from face to face, so the digits are raised instead. */
-export function NumberText({ text }: { readonly text: string }): ReactNode {
-  const at = text.search(/[⁰¹²³⁴⁵⁶⁷⁸⁹⁻]/);
-  if (at < 0) return text;
-  const exponent = /^[⁰¹²³⁴⁵⁶⁷⁸⁹⁻]+/.exec(text.slice(at))?.[0] ?? "";
-  return (
-    <>
-      {text.slice(0, at)}
-      <sup>{[...exponent].map((char) => RAISED_PLAIN[RAISED.indexOf(char)]).join("")}</sup>
-      {text.slice(at + exponent.length)}
-    </>
   );
 }
 

@@ -1,6 +1,6 @@
 import { memo, type ReactNode, useCallback, useState } from "react";
 import type { CellView } from "../../cells/index.ts";
-import { type Figure, FigurePlate, type TableData } from "../../figures/index.ts";
+import { type Figure, FigurePlate } from "../../figures/index.ts";
 import type { CellFace } from "../model/types.ts";
 import type { SheetHost } from "../text/host.ts";
 import { Runs } from "./runs.tsx";
@@ -35,7 +35,7 @@ const Plate = memo(({ figure, width }: PlateProps) => {
     </div>
   );
 });
-const Rows = memo(({ table }: { readonly table: TableData }) => <TablePlate table={table} />);
+const Rows = memo(TablePlate);
 
 /** A cell as it stands on the sheet: what it prints, its caption, and how it came to be. */
 export function CellPlate({ face, view, open, host }: Props) {
@@ -49,7 +49,7 @@ export function CellPlate({ face, view, open, host }: Props) {
   }
   return (
     <section className={`hl-plate hl-plate-${face.state}`} aria-label={`${first.title}, ${STATE_WORDS[face.state]}`}>
-      <Part part={first.part} view={view} face={face} width={host.columnWidth}>
+      <Part part={first.part} view={view} face={face} host={host}>
         <p className="hl-caption">
           <b>{first.title}.</b>
           {MARKED[face.state] ? <span className="hl-dagger">{MARKED[face.state]}</span> : null}{" "}
@@ -58,7 +58,7 @@ export function CellPlate({ face, view, open, host }: Props) {
         <StateLine face={face} open={open} host={host} />
       </Part>
       {others.map(({ part, title }) => (
-        <Part key={part} part={part} view={view} face={face} width={host.columnWidth}>
+        <Part key={part} part={part} view={view} face={face} host={host}>
           <p className="hl-caption">
             <b>{title}.</b>
           </p>
@@ -77,17 +77,17 @@ interface PartProps {
   readonly part: "figure" | "table" | "points";
   readonly view: CellView | null;
   readonly face: CellFace;
-  readonly width: number;
+  readonly host: SheetHost;
   readonly children: ReactNode;
 }
 
 /** A figure has its caption beneath it, a table above. */
-function Part({ part, view, face, width, children }: PartProps) {
+function Part({ part, view, face, host, children }: PartProps) {
   if (part === "figure") {
     return (
       <>
         <div className="hl-figure">
-          {view?.figure ? <Plate figure={view.figure} width={width} /> : <Frame face={face} />}
+          {view?.figure ? <Plate figure={view.figure} width={host.columnWidth} /> : <Frame face={face} />}
         </div>
         {children}
       </>
@@ -97,7 +97,7 @@ function Part({ part, view, face, width, children }: PartProps) {
   return (
     <>
       {children}
-      <div className="hl-rows">{table ? <Rows table={table} /> : <Frame face={face} />}</div>
+      <div className="hl-rows">{table ? <Rows table={table} macros={host.macros} /> : <Frame face={face} />}</div>
     </>
   );
 }

@@ -1,8 +1,14 @@
 import type { TableColumn, TableData } from "../../figures/index.ts";
+import { NumberText } from "../../ui/number-text.tsx";
 import { Runs } from "./runs.tsx";
 
+interface TablePlateProps {
+  readonly table: TableData;
+  readonly macros: Readonly<Record<string, string>>;
+}
+
 /** A table of results: rules above, below and under the head, numbers to the right, unsupported digits grey. */
-export function TablePlate({ table }: { readonly table: TableData }) {
+export function TablePlate({ table, macros }: TablePlateProps) {
   return (
     <section className="hl-grid" aria-label="Table" ref={reachable}>
       <table className="hl-table hl-results">
@@ -10,7 +16,7 @@ export function TablePlate({ table }: { readonly table: TableData }) {
           <tr>
             {table.columns.map((column) => (
               <th key={column.name} scope="col">
-                <Head column={column} />
+                <Head column={column} macros={macros} />
               </th>
             ))}
           </tr>
@@ -20,7 +26,7 @@ export function TablePlate({ table }: { readonly table: TableData }) {
             <tr key={row[0]?.full ?? at}>
               {row.map((entry, column) => (
                 <td key={table.columns[column]?.name ?? column}>
-                  {entry.text}
+                  <NumberText text={entry.text} />
                   {entry.unsupported === "" ? null : <span className="hl-unknown">{entry.unsupported}</span>}
                 </td>
               ))}
@@ -37,9 +43,7 @@ function reachable(place: HTMLElement | null): void {
   if (place !== null) place.tabIndex = 0;
 }
 
-function Head({ column }: { readonly column: TableColumn }) {
+function Head({ column, macros }: { readonly column: TableColumn } & Pick<TablePlateProps, "macros">) {
   if (!column.tex) return column.head;
-  return <Runs runs={[{ run: "math", tex: column.head }]} macros={NO_MACROS} />;
+  return <Runs runs={[{ run: "math", tex: column.head }]} macros={macros} />;
 }
-
-const NO_MACROS = {};

@@ -32,7 +32,8 @@ const DRAWINGS: { readonly [Name in Piece["piece"]]: Drawing<PieceOf<Name>> } = 
       const { from, to } = piece.block ? wholeLines(doc, piece.from, piece.to) : piece;
       if (from === to) return [];
       const widget = store.widget(piece.content, piece.block);
-      return [Decoration.replace({ widget, block: piece.block, piece, of: piece }).range(from, to)];
+      const set = Decoration.replace({ widget, block: piece.block, piece, of: piece }).range(from, to);
+      return piece.block ? [set] : [set, ...together(piece, doc)];
     },
     opened(piece, from, to, doc, { store }) {
       if (!piece.block) return from === to ? [] : [Decoration.mark({ class: "hl-source" }).range(from, to)];
@@ -121,6 +122,20 @@ function dress(piece: PieceOf<"dressed">): Decoration {
     ? Decoration.mark({ class: piece.dress, of: piece })
     : Decoration.mark({ class: piece.dress, of: piece, attributes: { title: piece.url, "data-url": piece.url } });
 }
+
+/** No line ends between what is set and the bracket or stop beside it; browsers would break there. */
+function together(piece: PieceOf<"set">, doc: Text): Marks {
+  if (piece.to - piece.from > LONGEST_TOGETHER) return [];
+  const before = OPENING.test(doc.sliceString(Math.max(0, piece.from - 1), piece.from)) ? 1 : 0;
+  const after = CLOSING.test(doc.sliceString(piece.to, piece.to + 1)) ? 1 : 0;
+  if (before + after === 0) return [];
+  return [Decoration.mark({ class: "hl-together", of: piece }).range(piece.from - before, piece.to + after)];
+}
+
+/** Length of source, in characters. What is longer may have to break within. */
+const LONGEST_TOGETHER = 40;
+const OPENING = /[([{“‘„«]/;
+const CLOSING = /[.,;:!?)\]}’”»–-]/;
 
 function lines(doc: Text, from: number, to: number, className: string, of?: Piece): Marks {
   const made: Marks = [];
