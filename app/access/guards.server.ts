@@ -4,7 +4,7 @@ import { databaseContext, type Person, pageRequestContext, personContext } from 
 import { may, type Right, type Standing } from "./roles.ts";
 
 /** The parts of a loader's or an action's arguments that guards look at. */
-interface Asked {
+export interface Asked {
   readonly request: Request;
   readonly context: Readonly<RouterContextProvider>;
 }

@@ -1,5 +1,6 @@
-import { markdownLineEnding, markdownSpace } from "micromark-util-character";
+import { markdownLineEnding } from "micromark-util-character";
 import type { Code, Construct, Effects, State, TokenizeContext } from "micromark-util-types";
+import { blankRestOfLine } from "./rest-of-line.ts";
 import { SourceRun } from "./source-run.ts";
 
 const opening = [60, 33, 45, 45]; // <!--
@@ -60,7 +61,7 @@ function commentConstruct(inLines: boolean, lastClosing: number): Construct {
         run.consume(code);
         run.close();
         effects.exit("paperComment");
-        return inLines ? end : ok;
+        return inLines ? blankRestOfLine(effects, ok, nok) : ok;
       }
       dashes = code === dash ? dashes + 1 : 0;
       if (markdownLineEnding(code)) {
@@ -73,15 +74,6 @@ function commentConstruct(inLines: boolean, lastClosing: number): Construct {
 
     function lineStart(code: Code): State | undefined {
       return parser.lazy[now().line] ? nok(code) : inside(code);
-    }
-
-    function end(code: Code): State | undefined {
-      if (code === null || markdownLineEnding(code)) return ok(code);
-      if (!markdownSpace(code)) return nok(code);
-      effects.enter("whitespace");
-      effects.consume(code);
-      effects.exit("whitespace");
-      return end;
     }
   }
 

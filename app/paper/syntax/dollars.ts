@@ -1,5 +1,6 @@
 import { markdownLineEnding, markdownSpace } from "micromark-util-character";
 import type { Code, Construct, Effects, State, TokenizeContext } from "micromark-util-types";
+import { blankRestOfLine } from "./rest-of-line.ts";
 import { SourceRun } from "./source-run.ts";
 
 const dollar = 36;
@@ -166,16 +167,7 @@ function tokenizeDisplay(this: TokenizeContext, effects: Effects, ok: State, nok
     run.consume(code);
     run.close();
     effects.exit("paperDisplay");
-    return end;
-  }
-
-  function end(code: Code): State | undefined {
-    if (code === null || markdownLineEnding(code)) return ok(code);
-    if (!markdownSpace(code)) return nok(code);
-    effects.enter("whitespace");
-    effects.consume(code);
-    effects.exit("whitespace");
-    return end;
+    return blankRestOfLine(effects, ok, nok);
   }
 }
 

@@ -1,12 +1,6 @@
-import type { RouterContextProvider } from "react-router";
 import { z } from "zod";
-import { refusal, requirePaper } from "../../access/index.server.ts";
+import { type Asked, refusal, requirePaper } from "../../access/index.server.ts";
 import { databaseContext, servicesContext } from "../../context.ts";
-
-interface Asked {
-  readonly request: Request;
-  readonly context: Readonly<RouterContextProvider>;
-}
 
 /** What is wrong with the form, at its field; null when it was done. */
 export type PeopleFault = { readonly at: "login" | "member"; readonly message: string } | null;

@@ -1,13 +1,8 @@
-import { data, type RouterContextProvider, redirect } from "react-router";
-import { refusal, requirePaper, requirePerson } from "../../access/index.server.ts";
+import { data, redirect } from "react-router";
+import { type Asked, refusal, requirePaper, requirePerson } from "../../access/index.server.ts";
 import { databaseContext, servicesContext } from "../../context.ts";
 import { copyOf, emptyPaper, UNTITLED } from "./new-paper.ts";
 import { placePaper } from "./place-paper.server.ts";
-
-interface Asked {
-  readonly request: Request;
-  readonly context: Readonly<RouterContextProvider>;
-}
 
 type ShelfAction = (asked: Asked, form: FormData) => Promise<unknown>;
 
