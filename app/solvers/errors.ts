@@ -1,5 +1,5 @@
 /** The ways in which a solver call dies. A question that has no finite answer is not among them: that is a Refusal. */
-export type SolverErrorCode = "bad_parameter" | "not_converged" | "cancelled";
+export type SolverErrorCode = "bad_parameter" | "not_converged";
 
 /** Thrown for misuse of a solver, and where a computation cannot vouch for its own result. */
 export class SolverError extends Error {
