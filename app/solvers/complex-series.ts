@@ -61,7 +61,7 @@ function composeFinite(law: Branching & { law: "finite" }, u: ComplexSeries): Co
   return (k, out) => {
     const re = u.re[k] as number;
     const im = u.im[k] as number;
-    if (k === 0) nearOne = 1 + Math.hypot(re, im) < FORM_FACTOR * Math.max(1, Math.hypot(1 - re, im));
+    if (k === 0) nearOne = law.fromZero || 1 + Math.hypot(re, im) < FORM_FACTOR * Math.max(1, Math.hypot(1 - re, im));
     if (nearOne) {
       aboutOne(k, out);
       return;

@@ -13,6 +13,8 @@ import type { Pair } from "./types.ts";
  *  On the arc it is smaller by e^{−n width}, so that the arc needs to resolve e^{−inθ} only for small n. L is known exactly
  *  at every node; what is found by continuation is ξ(s), with w(ξ) = s. A tilt keeps clear of further singularities on the slit.
  *
+ *  Where K lives on a lattice of step d, s0 has d images on its circle, all alike: θ ends at π/d, and the sector counts d times.
+ *
  *  Layout: node 0 is s0 itself, with weight 0; then the nodes of the leg in order of τ; then those of the arc in order of θ. */
 export interface Contour {
   readonly legNodes: number;
@@ -26,10 +28,10 @@ export interface Contour {
   readonly xiIm: Float64Array;
 }
 
-/** Where the leg starts, and what L = ln(s/radius) is measured from: s0, or a point just short of the end of a trajectory that does not turn. */
+/** Where the leg starts (in units of the base's scale), and what L = ln(s/radius) is measured from: s0, or a point just short of the end of a trajectory that does not turn. */
 export interface Reference {
   readonly radius: Pair;
-  /** radius − 1 */
+  /** radius − centre, see Base */
   readonly excess: Pair;
 }
 
@@ -48,16 +50,19 @@ export interface ContourShape {
 /** Share of the turning point's expansion that is used on the leg. */
 const TRUSTED = 0.9;
 const NEWTON_ROUNDS = 30;
-/** At θ = π, s is real and so must ξ + iπ be: the path has come round on the right sheet. */
+/** At θ = π, s is real and so must ξ + iπ be (at π/d, ξ + iπ/d): the path has come round on the right sheet. */
 const CLOSING_TOLERANCE = 1e-9;
 
 /** Finds ξ at all nodes. @returns null where the continuation fails or does not close: the circle meets a singularity. */
 export function traceContour(reader: TrajectoryReader, reference: Reference, shape: ContourShape): Contour | null {
-  const contour = layNodes(shape);
+  const { centre, period } = reader.base;
+  const end = Math.PI / period;
+  if (shape.width * Math.tan(shape.tilt) > end / 2) return null;
+  const contour = layNodes(shape, end);
   const { logRe, logIm, legNodes } = contour;
   const radius = reference.radius[0];
   const top = reader.turning?.s0[0] === radius ? reader.topExpansion() : null;
-  const start = reader.locate(radius).xi;
+  const start = reader.locate(-reference.excess[0]).xi;
   const path = new Continuation(reader, start);
   contour.xiRe[0] = start;
   for (let j = 1; j < logRe.length; j += 1) {
@@ -73,11 +78,12 @@ export function traceContour(reader: TrajectoryReader, reference: Reference, sha
     contour.xiRe[j] = path.xiRe;
     contour.xiIm[j] = path.xiIm;
   }
-  if (!path.solve(1 + radius * Math.exp(shape.width), 0)) return null;
-  return Math.abs(path.xiIm + Math.PI) < CLOSING_TOLERANCE ? contour : null;
+  const size = radius * Math.exp(shape.width);
+  const closed = period === 1 ? path.solve(centre + size, 0) : path.solve(-size * Math.cos(end), -size * Math.sin(end));
+  return closed && Math.abs(path.xiIm + end) < CLOSING_TOLERANCE ? contour : null;
 }
 
-function layNodes(shape: ContourShape): Contour {
+function layNodes(shape: ContourShape, end: number): Contour {
   const { width, tilt } = shape;
   const leg = legRule(shape);
   const arc = gaussLegendre(shape.arcNodes);
@@ -101,7 +107,7 @@ function layNodes(shape: ContourShape): Contour {
     c.weightIm[i + 1] = weight * Math.sin(tilt);
   });
   const from = width * Math.tan(tilt);
-  const half = (Math.PI - from) / 2;
+  const half = (end - from) / 2;
   arc.nodes.forEach((node, i) => {
     const j = 1 + c.legNodes + i;
     c.logRe[j] = width;

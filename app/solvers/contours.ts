@@ -108,15 +108,18 @@ function beginning(t: Trajectory, reader: TrajectoryReader, level: number): Begi
   const apart = 10 ** -level;
   const pole = reader.law.law === "geometric" ? 1 + 1 / reader.law.mean[0] : Number.POSITIVE_INFINITY;
   const { turning } = reader;
+  const { centre } = reader.base;
+  // P(K > n) has a pole at s = 1, which the leg must leave behind
+  const one = t.regime === "away" ? 1 : 1 / reader.base.scale[0];
   if (turning !== null) {
     const s0 = turning.s0[0];
-    const fixed = reader.law.excess[0] < 0 && t.ratio[0] < -1 ? upperFixedPoint(reader.law) : 1;
+    const fixed = reader.law.excess[0] < 0 && t.ratio[0] < -1 ? upperFixedPoint(reader.law) : one;
     if (s0 < pole * (1 - apart) && s0 > fixed * (1 + apart))
       return { reference: { radius: turning.s0, excess: turning.excess }, next: pole, variation: s0 - fixed };
   }
   const next = Math.min(pole, turning === null ? (t.edge?.s ?? pole) : turning.s0[0]);
-  const radius = Math.max(Math.sqrt(next), next * (1 - apart));
-  return { reference: { radius: [radius, 0], excess: [radius - 1, 0] }, next, variation: radius - 1 };
+  const radius = Math.max(Math.sqrt(one * next), next * (1 - apart));
+  return { reference: { radius: [radius, 0], excess: [radius - centre, 0] }, next, variation: radius - one };
 }
 
 /** The leg must resolve the Gaussian e^{−nτ²}, the variation of w(x, ·) itself, and the distance to the next singularity. */
@@ -138,19 +141,22 @@ function compare(t: Trajectory, reader: TrajectoryReader, pair: ContourPair): nu
   const u = nodeValues(t, reader, pair.fine, "far");
   const v = nodeValues(t, reader, pair.check, "far");
   if (u === null || v === null) return Number.POSITIVE_INFINITY;
-  const fine = sumsOf(pair.fine, pair.reference, u, "each");
-  const check = sumsOf(pair.check, pair.reference, v, "each");
+  const { centre, period } = reader.base;
+  const lattice = { base: reader.base, offset: 1 };
+  const fine = sumsOf(pair.fine, pair.reference, u, lattice, "each");
+  const check = sumsOf(pair.check, pair.reference, v, lattice, "each");
   const atTop = u.re[0] as number;
   let worst = 0;
   for (const n of SAMPLES) {
+    if (period > 1 && n % period !== 1) continue;
     const a = sumRange(fine, n, n);
     const b = sumRange(check, n, n);
     const value = a.values[0] as number;
     const gap = Math.abs(value - (b.values[0] as number));
     const excused = (a.rounding[0] as number) + (b.rounding[0] as number);
     worst = Math.max(worst, Math.max(0, gap - excused) / Math.abs(value));
-    // at n = 0 the formula gives u(s0) − u(0), and u(0) = 1
-    if (n === 0) worst = Math.max(worst, Math.abs(value - (atTop - 1)) / Math.abs(value) - excused);
+    // at n = 0 the formula gives u(s0) − u(0), and u(0) = 1, or 0 where nobody dies childless
+    if (n === 0) worst = Math.max(worst, Math.abs(value - (atTop - centre)) / Math.abs(value) - excused);
   }
   return Number.isFinite(worst) ? worst : Number.POSITIVE_INFINITY;
 }

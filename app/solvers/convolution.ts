@@ -39,7 +39,7 @@ function singleWeights(
   const values = new Float64Array(upTo + 1);
   const zero = zeroOf(t, [{ position, particles: 1 }]).zero;
   values[0] = zero.mantissa * 2 ** zero.exponent;
-  let relative = zero.error / zero.mantissa;
+  let relative = zero.mantissa === 0 ? 0 : zero.error / zero.mantissa;
   for (let n = 1; n <= upTo; n += 1) {
     const v = read[n - 1] as ScaledEstimate;
     let back = scaledByPower(v.mantissa, v.error, log2Radius, -n, v.exponent);
@@ -47,6 +47,7 @@ function singleWeights(
       const radius = 2 ** log2Radius[0];
       back = normalise(radius + back.mantissa * 2 ** back.exponent, (back.error + ROUNDING) * 2 ** back.exponent, 0);
     }
+    if (back.mantissa === 0 && back.error === 0) continue;
     values[n] = back.mantissa * 2 ** back.exponent;
     relative = Math.max(relative, back.error / Math.abs(back.mantissa));
   }

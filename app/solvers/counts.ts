@@ -1,11 +1,12 @@
 import { convolvedLaw, sterileLaw } from "./convolution.ts";
 import { SolverError } from "./errors.ts";
+import { infiniteProbability } from "./finite-moments.ts";
 import { type PreparedLaw, prepareLaw, readLaw, zeroOf } from "./prepared.ts";
-import { readerOf } from "./reader.ts";
+import { ROUNDING, readerOf } from "./reader.ts";
 import { normalise } from "./scaled.ts";
 import { checkStarts } from "./sources.ts";
 import type { Wanted } from "./sums.ts";
-import type { AbsorbedLaw, Answer, ScaledEstimate, Start, Starts, Trajectory } from "./types.ts";
+import type { AbsorbedLaw, Answer, Estimate, ScaledEstimate, Start, Starts, Trajectory } from "./types.ts";
 
 /** Largest n of a whole law; single probabilities go on beyond it. */
 const MOST = 1_000_000;
@@ -17,6 +18,7 @@ const ONE: ScaledEstimate = { mantissa: 1 / 2, exponent: 1, error: 0 };
  *  @throws SolverError "bad_parameter" for a start or upTo that is none, "not_converged" where no contour passes its tests. */
 export function absorbedLaw(t: Trajectory, starts: Starts, upTo: number): Answer<AbsorbedLaw> {
   requireCount("upTo", upTo);
+  if (starts === "far" && t.regime !== "away") return { refused: noLimitLaw(t) };
   if (upTo > MOST)
     throw new SolverError(
       "bad_parameter",
@@ -51,6 +53,7 @@ export function absorbedLaw(t: Trajectory, starts: Starts, upTo: number): Answer
  *  @throws SolverError as absorbedLaw. */
 export function absorbedProbability(t: Trajectory, starts: Starts, n: number): Answer<ScaledEstimate> {
   requireCount("n", n);
+  if (starts === "far" && t.regime !== "away") return { refused: noLimitLaw(t) };
   const { shift, rest, sterile } = pose(t, starts);
   const m = n - shift;
   if (m < 0) return ZERO;
@@ -59,18 +62,29 @@ export function absorbedProbability(t: Trajectory, starts: Starts, n: number): A
   return single(t, rest, m, "each");
 }
 
-/** P(K > n), one n without the others.
+/** P(K > n), one n without the others; K = ∞ is beyond every n.
  *  Source: as absorbedLaw, with Σ_{k > n} s^{−k−1} = s^{−n−1}/(s − 1).
  *  @throws SolverError as absorbedLaw. */
 export function absorbedAbove(t: Trajectory, starts: Starts, n: number): Answer<ScaledEstimate> {
   requireCount("n", n);
+  if (starts === "far" && t.regime !== "away") return { refused: noLimitLaw(t) };
   const { shift, rest, sterile } = pose(t, starts);
   const m = n - shift;
   if (m < 0) return ONE;
   if (rest !== "far" && rest.length === 0) return ZERO;
   if (sterile) return sterileAbove(t, rest, m);
   if (m === 0) return rest === "far" ? ONE : zeroOf(t, rest).complement;
-  return single(t, rest, m, "above");
+  const { period } = t.base;
+  const particles = rest === "far" ? 1 : rest.reduce((sum, s) => sum + s.particles, 0);
+  if (m < particles && t.base.centre === 0) return ONE;
+  // on a lattice, the last n of it that is not above m
+  const onLattice = m - ((((m - particles) % period) + period) % period);
+  const finite = single(t, rest, onLattice, "above");
+  return rest === "far" ? finite : plus(finite, infiniteProbability(t, rest));
+}
+
+function noLimitLaw(t: Trajectory): string {
+  return `The law of K from far away, given absorption, is one of a drift away from the barrier; here the regime is ${t.regime}.`;
 }
 
 /** A checked question: particles already at the barrier count at once, the rest have the law to be computed. */
@@ -86,6 +100,13 @@ function pose(t: Trajectory, starts: Starts): Question {
   const checked = checkStarts(starts);
   const atBarrier = checked.filter((s) => s.position === 0).reduce((sum, s) => sum + s.particles, 0);
   return { shift: atBarrier, rest: checked.filter((s) => s.position > 0), sterile };
+}
+
+function plus(a: ScaledEstimate, b: Estimate): ScaledEstimate {
+  if (b.value === 0 && b.error === 0) return a;
+  const size = 2 ** a.exponent;
+  const value = a.mantissa * size + b.value;
+  return normalise(value, a.error * size + b.error + ROUNDING * value, 0);
 }
 
 function requireCount(name: string, n: number): void {
@@ -115,7 +136,10 @@ function single(t: Trajectory, rest: Starts, n: number, wanted: Wanted): ScaledE
   const read = wanted === "each" && n < law.first ? plusOne(value) : value;
   if (!isSeveral(rest) || !isCancelled(read) || n > CONVOLVED_UP_TO) return read;
   const convolved = convolvedLaw(t, rest, n);
-  return better(read, wanted === "each" ? (convolved[n] as ScaledEstimate) : complementOf(convolved));
+  return better(
+    read,
+    wanted === "each" ? (convolved[n] as ScaledEstimate) : complementOf(convolved, infiniteProbability(t, rest)),
+  );
 }
 
 /** Up to here a law of many particles is convolved from that of one where its contour cancels. */
@@ -123,10 +147,10 @@ const CONVOLVED_UP_TO = 4000;
 /** Relative error beyond which another method is tried. */
 const CANCELLED = 1e-11;
 
-/** 1 − Σ, where the contour cancels: n is then not far in the tail, and the complement not small. */
-function complementOf(law: readonly ScaledEstimate[]): ScaledEstimate {
-  let value = 1;
-  let error = law.length * Number.EPSILON;
+/** P(K finite) − Σ, where the contour cancels: n is then not far in the tail, and the complement not small. */
+function complementOf(law: readonly ScaledEstimate[], infinite: Estimate): ScaledEstimate {
+  let value = 1 - infinite.value;
+  let error = law.length * Number.EPSILON + infinite.error;
   for (const v of law) {
     value -= v.mantissa * 2 ** v.exponent;
     error += v.error * 2 ** v.exponent;

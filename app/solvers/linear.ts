@@ -66,6 +66,10 @@ export interface Normalised {
   readonly decay: Pair;
   readonly ratio: Pair;
   readonly strength: Pair;
+  /** u as far as the trajectory is followed below w = 1: s = −1 */
+  readonly lowest?: number;
+  /** Whether the trajectory must turn back, however near a fixed point it passes. */
+  readonly turns?: true;
 }
 
 /** decay, ratio = f'(1)/(D decay²) and strength = rate/(D decay²) in the regime `away`. */

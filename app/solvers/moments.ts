@@ -1,4 +1,5 @@
 import { SolverError } from "./errors.ts";
+import { finiteFactorialMoment, finiteMoments, infiniteProbability, MOST_FINITE_MOMENTS } from "./finite-moments.ts";
 import type { Normalised } from "./linear.ts";
 import { cauchy, PairSeries } from "./pair-series.ts";
 import {
@@ -25,11 +26,15 @@ import { originSeries } from "./walk.ts";
 /** Highest factorial moment given. */
 const MOST_MOMENTS = 40;
 
-/** P(K = 0), E K and Var K; for "far" those of the limit law given K > 0.
+/** P(K = 0), P(K = ∞), E K and Var K, both given that K is finite; for "far" those of the limit law given K > 0.
  *  Source: J. Berestycki, É. Brunet, S. C. Harris, P. Miłoś, J. Funct. Anal. 273 (2017) 2107–2143: E_x K = e^{−decay x}; the variance from
  *  two derivatives of w(x, s) = W(B_s e^{−decay x}) at s = 1.
  *  @throws SolverError "bad_parameter" for a start that is none. */
 export function absorbedMoments(t: Trajectory, starts: Starts): AbsorbedMoments {
+  if (t.regime === "between" && starts !== "far") {
+    const infinite = infiniteProbability(t, starts);
+    return { zero: zeroEstimate(t, starts), ...finiteMoments(t, starts), infinite };
+  }
   const [, mean, second] = factorialSeries(t, starts, 2) as [Expanded, Expanded, Expanded];
   const variance = add(scale(second.value, 2), subtract(mean.value, multiply(mean.value, mean.value)));
   const first = toEstimate(mean);
@@ -38,6 +43,7 @@ export function absorbedMoments(t: Trajectory, starts: Starts): AbsorbedMoments 
     zero: starts === "far" ? { value: 0, error: 0 } : zeroEstimate(t, starts),
     mean: first,
     variance: { value: toNumber(variance), error: varianceSpread + ROUNDING * Math.abs(variance[0]) },
+    infinite: { value: 0, error: 0 },
   };
 }
 
@@ -50,6 +56,12 @@ export function factorialMoment(t: Trajectory, starts: Starts, j: number): Answe
       "bad_parameter",
       `The factorial moment of order ${j} is asked for; orders from 1 to ${MOST_MOMENTS} are given.`,
     );
+  if (t.regime === "between" && starts !== "far") {
+    if (j <= MOST_FINITE_MOMENTS) return finiteFactorialMoment(t, starts, j);
+    return {
+      refused: `Where K may be infinite, factorial moments given that it is finite are found up to order ${MOST_FINITE_MOMENTS}; ${j} is beyond.`,
+    };
+  }
   const coefficient = toEstimate(factorialSeries(t, starts, j)[j] as Expanded);
   let factorial = 1;
   for (let k = 2; k <= j; k += 1) factorial *= k;

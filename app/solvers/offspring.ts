@@ -13,6 +13,8 @@ export type Branching =
       readonly aboutZero: readonly Pair[];
       /** 0, 0, c_2, … of M(u) = Σ c_j u^j, c_j = (−1)^j Σ_k p_k binomial(k, j) */
       readonly aboutOne: readonly Pair[];
+      /** u = −w is measured from w = 0 (see saddle.ts), where `aboutOne` alone serves */
+      readonly fromZero?: true;
     }
   | { readonly law: "geometric" | "poisson"; readonly mean: Pair; readonly excess: Pair };
 
@@ -74,7 +76,7 @@ function prepareFinite(probabilities: readonly number[]): Branching {
 }
 
 /** c_j = (−1)^j Σ_k p_k binomial(k, j) for j ≥ 2, with c_0 = c_1 = 0. */
-function shiftToOne(probabilities: readonly Pair[]): Pair[] {
+export function shiftToOne(probabilities: readonly Pair[]): Pair[] {
   const shifted: Pair[] = [];
   // binomials[k] = binomial(k, j), raised from j to j + 1 in each round
   let binomials = probabilities.map(() => ONE);
@@ -104,7 +106,7 @@ export function nonlinearity(law: Branching, u: number): { value: number; deriva
     return { value: (q * q) / one, derivative: (mean * q * (2 + q)) / (one * one) };
   }
   if (law.law !== "finite") return { value: exponentialRest(q), derivative: -mean * Math.expm1(-q) };
-  if (1 + Math.abs(u) < FORM_FACTOR * Math.max(1, Math.abs(1 - u))) return horner(law.aboutOne, u);
+  if (law.fromZero || 1 + Math.abs(u) < FORM_FACTOR * Math.max(1, Math.abs(1 - u))) return horner(law.aboutOne, u);
   const g = horner(law.aboutZero, 1 - u);
   return { value: g.value - 1 + q, derivative: mean - g.derivative };
 }
@@ -112,6 +114,7 @@ export function nonlinearity(law: Branching, u: number): { value: number; deriva
 /** The root s > 1 of G(s) = s, where mean < 1: 1 − u with M(u) = (mean − 1) u, u < 0, by Newton's method on a convex function. */
 export function upperFixedPoint(law: Branching): number {
   const excess = law.excess[0];
+  if (law.law === "finite" && law.fromZero) return 1;
   if (law.law === "geometric") return 1 / law.mean[0];
   let u = excess;
   while (nonlinearity(law, u).value < excess * u) u *= 2;

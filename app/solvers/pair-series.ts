@@ -79,7 +79,8 @@ export function pairComposer(law: Branching, u: PairSeries): PairComposer {
 
 function composeFinite(law: Branching & { law: "finite" }, u: PairSeries): PairComposer {
   const u0 = u.high[0] as number;
-  if (1 + Math.abs(u0) < FORM_FACTOR * Math.max(1, Math.abs(1 - u0))) return composePolynomial(law.aboutOne, u);
+  if (law.fromZero || 1 + Math.abs(u0) < FORM_FACTOR * Math.max(1, Math.abs(1 - u0)))
+    return composePolynomial(law.aboutOne, u);
   const w = new PairSeries(u.high.length);
   const composeG = composePolynomial(law.aboutZero, w);
   return (k) => {

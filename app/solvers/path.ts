@@ -38,10 +38,11 @@ export function follow(n: Normalised, settings: WalkSettings): Path {
   const { knots: above, top } = followAbove(n, first, settings, edge);
   if (top === null) return { ...shared, above, turning: null, edge };
   const excess = negate(top.u);
+  const centre = n.law.law === "finite" && n.law.fromZero ? ZERO : ONE;
   return {
     ...shared,
     above,
-    turning: { s0: add(ONE, excess), excess, amplitude: exponential(negate(top.xi)) },
+    turning: { s0: add(centre, excess), excess, amplitude: exponential(negate(top.xi)) },
     edge: null,
   };
 }
@@ -52,13 +53,14 @@ function plain(knot: PairKnot): Knot {
 
 /** From w near 1 down past w = −1; |w(x, s)| ≤ w(x, |s|) keeps the trajectory falling until there. */
 function followBelow(n: Normalised, first: PairKnot, settings: WalkSettings): { knots: Knot[]; barrier: PairKnot } {
+  const lowest = n.lowest ?? 2;
   const knots = [plain(first)];
   let barrier: PairKnot | null = null;
   walk(
     n,
     first,
     settings,
-    (knot) => knot.u[0] >= 2,
+    (knot) => knot.u[0] >= lowest,
     (from, c, to) => {
       knots.push(plain(to));
       if (barrier !== null || to.u[0] < 1) return;
@@ -74,7 +76,7 @@ function followBelow(n: Normalised, first: PairKnot, settings: WalkSettings): { 
 function edgeOf(n: Normalised): Edge | null {
   if (n.law.law === "geometric" && n.law.excess[0] >= 0) return { kind: "pole", s: 1 + 1 / n.law.mean[0] };
   // a negative damping turns the trajectory back before any fixed point
-  if (n.law.excess[0] < 0 && 1 + n.ratio[0] < 0) return { kind: "fixed point", s: upperFixedPoint(n.law) };
+  if (n.law.excess[0] < 0 && 1 + n.ratio[0] < 0 && !n.turns) return { kind: "fixed point", s: upperFixedPoint(n.law) };
   return n.law.law === "geometric" ? { kind: "pole", s: 1 + 1 / n.law.mean[0] } : null;
 }
 

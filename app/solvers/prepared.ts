@@ -3,12 +3,12 @@ import { contoursFor } from "./contours.ts";
 import { SolverError } from "./errors.ts";
 import { lawUnit } from "./input-rounding.ts";
 import { nonlinearity } from "./offspring.ts";
-import { divide, LN2, logarithm } from "./pairs.ts";
+import { divide, LN2, logarithm, multiply, toNumber } from "./pairs.ts";
 import { profileComplementAt } from "./profile.ts";
 import { ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
 import { scaledByPower } from "./scaled.ts";
 import { differenceValues, nodeValues } from "./sources.ts";
-import { type Sums, sumRange, sumsOf, type Wanted } from "./sums.ts";
+import { type Lattice, type Sums, sumRange, sumsOf, type Wanted } from "./sums.ts";
 import type { Pair, ScaledEstimate, Start, Starts, Trajectory } from "./types.ts";
 
 /** A law made ready for reading at any n up to some bound. */
@@ -23,6 +23,7 @@ export interface PreparedLaw {
   readonly factorSpread: number;
   /** the first n for which the sums are the law itself: 2 where a multiple of s was taken out of E[s^K] */
   readonly first: number;
+  readonly lattice: Lattice;
   readonly method: string;
 }
 
@@ -38,9 +39,12 @@ export function prepareLaw(t: Trajectory, starts: Starts, n: number, wanted: Wan
   const contours = contoursFor(t, reader, n);
   const nearest = starts === "far" ? 0 : reader.decay * (starts[0] as Start).position;
   const distant = starts !== "far" && nearest > FAR;
+  if (distant && reader.base.centre === 0 && !isSingle(starts)) throw new SolverError("not_converged", TOO_FAR);
   const source: Starts = distant ? "far" : starts;
   const near = source !== "far" && isSingle(source) && nearest < NEAR ? nearest : null;
   const { fine, check, reference } = contours;
+  const particles = starts === "far" ? 1 : starts.reduce((sum, s) => sum + s.particles, 0);
+  const lattice = { base: reader.base, offset: particles };
   const both = [fine, check];
   const differences = near === null ? [null] : both.map((contour) => differenceValues(reader, contour, near));
   const close = differences.every((values) => values !== null);
@@ -48,19 +52,25 @@ export function prepareLaw(t: Trajectory, starts: Starts, n: number, wanted: Wan
     const values = close ? differences[i] : nodeValues(t, reader, contour, source);
     if (!values)
       throw new SolverError("not_converged", "The law could not be continued along its contour from this start.");
-    return sumsOf(contour, reference, values, wanted);
+    return { sums: sumsOf(contour, reference, values, lattice, wanted), power: values.power ?? 0 };
   };
+  const [first, second] = [read(fine, 0), read(check, 1)];
+  const scale = reader.base.scale[0] === 1 ? 0 : particles * toNumber(divide(logarithm(reader.base.scale), LN2));
   return {
-    fine: read(fine, 0),
-    check: read(check, 1),
-    extra: distant ? farSize(t, reader, starts) : 0,
-    log2Radius: divide(logarithm(reference.radius), LN2),
+    fine: first.sums,
+    check: second.sums,
+    extra: (distant ? farSize(t, reader, starts) : 0) + scale + first.power,
+    log2Radius: divide(logarithm(multiply(reference.radius, reader.base.scale)), LN2),
     radiusSpread: radiusSpread(t, reader),
     factorSpread: factorSpread(t, reader, starts),
     first: close ? 2 : 1,
+    lattice,
     method: `Cauchy's integral along the slit from s0, ${fine.legNodes} + ${fine.arcNodes} nodes`,
   };
 }
+
+const TOO_FAR =
+  "The particles start so far away that the probability that all their lines are absorbed is below the double's range.";
 
 function isSingle(starts: readonly Start[]): boolean {
   return starts.length === 1 && starts[0]?.particles === 1;
@@ -92,8 +102,19 @@ function factorSpread(t: Trajectory, reader: TrajectoryReader, starts: Starts): 
     (sum, s) => sum + s.particles * (base + reader.decay * s.position * (t.decaySpread + 2 * ROUNDING)),
     0,
   );
-  return base + perParticle;
+  return base + perParticle + ownRoundings(t, starts);
 }
+
+const NONE: ScaledEstimate = { mantissa: 0, exponent: 0, error: 0 };
+
+/** Of a product of many factors that are not near 1, and of the scale's power. */
+function ownRoundings(t: Trajectory, starts: readonly Start[]): number {
+  if (t.regime === "away") return 0;
+  const particles = starts.reduce((sum, s) => sum + s.particles, 0);
+  return particles * (FACTOR_ROUNDINGS * ROUNDING * (1 + Math.abs(Math.log2(t.base.scale[0]))) + t.base.scaleSpread);
+}
+
+const FACTOR_ROUNDINGS = 8;
 
 /** Values at from, …, to with all errors: rounding, difference of the two contours, spread of the inputs. */
 export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstimate[] {
@@ -102,6 +123,10 @@ export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstim
   const read: ScaledEstimate[] = [];
   for (let i = 0; i < values.length; i += 1) {
     const n = from + i;
+    if ((n - law.lattice.offset) % law.lattice.base.period !== 0) {
+      read.push(NONE);
+      continue;
+    }
     const value = values[i] as number;
     const spread = Math.abs(value) * (n * law.radiusSpread + law.factorSpread + 8 * ROUNDING);
     const error = (rounding[i] as number) + Math.abs(value) * (methodError[i] as number) + spread;
@@ -142,7 +167,9 @@ function differences(law: PreparedLaw, from: number, to: number): Float64Array {
   return relative;
 }
 
-function differenceAt(law: PreparedLaw, n: number): number {
+function differenceAt(law: PreparedLaw, at: number): number {
+  const { base, offset } = law.lattice;
+  const n = at + ((((offset - at) % base.period) + base.period) % base.period);
   const a = sumRange(law.fine, n, n).values[0] as number;
   const b = sumRange(law.check, n, n).values[0] as number;
   return a === b ? 0 : Math.abs(a - b) / Math.max(Math.abs(a), Number.MIN_VALUE);
@@ -150,6 +177,7 @@ function differenceAt(law: PreparedLaw, n: number): number {
 
 /** P(K = 0) and 1 − P(K = 0) for particles at given positions, to full relative accuracy each. */
 export function zeroOf(t: Trajectory, starts: readonly Start[]): { zero: ScaledEstimate; complement: ScaledEstimate } {
+  if (t.base.centre === 0) return { zero: NONE, complement: { mantissa: 1 / 2, exponent: 1, error: 0 } };
   let log = 0;
   let error = 0;
   for (const { position, particles } of starts) {

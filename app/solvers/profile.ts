@@ -1,8 +1,9 @@
 import { SolverError } from "./errors.ts";
 import { type PointValue, pointValue } from "./expansion.ts";
-import { toNumber } from "./pairs.ts";
+import { multiply, toNumber } from "./pairs.ts";
 import { type Place, ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
-import type { Answer, Estimate, Pair, ProfileConstants, Refusal, Trajectory } from "./types.ts";
+import { deviationOf } from "./saddle.ts";
+import type { Answer, Base, Estimate, Pair, ProfileConstants, Refusal, Trajectory, Turning } from "./types.ts";
 
 /** w(x, s) = E_x[s^K], a pure number.
  *  Source: the flow of the trajectory, w(x, s) = W(B_s e^{−decay x}); G. Koenigs, Ann. Sci. Éc. Norm. Sup. 1 (1884), for W.
@@ -11,8 +12,9 @@ import type { Answer, Estimate, Pair, ProfileConstants, Refusal, Trajectory } fr
 export function profileAt(t: Trajectory, x: number, s: number): Answer<Estimate> {
   const read = readProfile(t, x, s);
   if ("refused" in read) return read;
-  const value = 1 - read.u;
-  return { value, error: read.error + ROUNDING * Math.abs(value) };
+  const { centre, scale, scaleSpread } = t.base;
+  const value = scale[0] * (centre - read.u);
+  return { value, error: scale[0] * read.error + Math.abs(value) * (ROUNDINGS_OF_SCALE * ROUNDING + scaleSpread) };
 }
 
 /** 1 − w(x, s), a pure number, with full relative accuracy however small it is.
@@ -20,8 +22,14 @@ export function profileAt(t: Trajectory, x: number, s: number): Answer<Estimate>
  *  @throws SolverError "bad_parameter" where x < 0 or an argument is not finite. */
 export function profileComplementAt(t: Trajectory, x: number, s: number): Answer<Estimate> {
   const read = readProfile(t, x, s);
-  return "refused" in read ? read : { value: read.u, error: read.error };
+  if ("refused" in read || t.regime === "away") return "refused" in read ? read : { value: read.u, error: read.error };
+  const { centre, scale, scaleSpread } = t.base;
+  const value = 1 - scale[0] * centre + scale[0] * read.u;
+  const terms = scale[0] * (centre + Math.abs(read.u));
+  return { value, error: scale[0] * read.error + terms * (ROUNDINGS_OF_SCALE * ROUNDING + scaleSpread) };
 }
+
+const ROUNDINGS_OF_SCALE = 3;
 
 /** ∂w(x, s)/∂x [1/length].
  *  Source: as profileAt.
@@ -35,17 +43,27 @@ export function profileSlopeAt(t: Trajectory, x: number, s: number): Answer<Esti
  *  Source: J. Berestycki, É. Brunet, S. C. Harris, P. Miłoś, J. Funct. Anal. 273 (2017) 2107–2143. */
 export function profileConstants(t: Trajectory): ProfileConstants {
   return {
-    s0: "refused" in t.turning ? t.turning : radius(t.turning),
+    limit: limitOf(t),
+    s0: "refused" in t.turning ? t.turning : radius(t.turning, t.base),
     slopeAtBarrier: constant(t.slopeAtBarrier, t.slopeSpread),
-    amplitude: constant(t.amplitude, t.amplitudeSpread),
-    decay: constant(t.decay, t.decaySpread),
+    amplitude: t.regime === "away" ? constant(t.amplitude, t.amplitudeSpread) : { refused: noDecay(t, "amplitude") },
+    decay: t.regime === "away" ? constant(t.decay, t.decaySpread) : { refused: noDecay(t, "decay rate") },
   };
 }
 
+function limitOf({ base }: Trajectory): Estimate {
+  if (base.centre === 0 || base.scale[0] === 1) return { value: base.centre, error: 0 };
+  return constant(base.scale, base.scaleSpread);
+}
+
 /** s0 with its error. */
-export function radius(turning: { readonly s0: Pair; readonly excess: Pair; readonly excessSpread: number }): Estimate {
-  const value = toNumber(turning.s0);
-  return { value, error: ROUNDING * value + turning.excessSpread * turning.excess[0] };
+export function radius(turning: Turning, base: Base): Estimate {
+  const value = toNumber(multiply(turning.s0, base.scale));
+  return { value, error: ROUNDING * value + turning.excessSpread * turning.excess[0] * base.scale[0] };
+}
+
+function noDecay(t: Trajectory, what: string): string {
+  return `The ${what} belongs to a drift away from the barrier, where w(x, s) tends to 1; here the regime is ${t.regime}.`;
 }
 
 /** A pair read as a double: its rounding, and the spread of the inputs. */
@@ -66,33 +84,36 @@ function readProfile(t: Trajectory, x: number, s: number): Reading | Refusal {
   if (!Number.isFinite(s)) throw new SolverError("bad_parameter", `s is ${s}; it must be a finite number.`);
   const reader = readerOf(t);
   if (s < -1) return { refused: `w(x, s) is given for s from −1 up to s0; s = ${s} is below −1.` };
-  if (s === 1) return { u: 0, error: 0, slope: () => ({ value: 0, error: 0 }) };
+  const u = deviationOf(t.base, s);
+  if (u === 0) return { u: 0, error: 0, slope: () => ({ value: 0, error: 0 }) };
   if (reader.sterile) return withoutBranching(t, x, s);
-  if (s > reader.largest * (1 + 2 * Number.EPSILON))
+  const largest = reader.largest * t.base.scale[0];
+  if (s > largest * (1 + 2 * Number.EPSILON))
     return {
       refused:
         reader.turning === null
-          ? `w(x, s) is given for s up to ${reader.largest}, where its trajectory ends; s = ${s} is beyond.`
-          : `The series in s diverges beyond s0 = ${reader.largest}: E[s^K] is infinite at s = ${s}. Take s up to s0.`,
+          ? `w(x, s) is given for s up to ${largest}, where its trajectory ends; s = ${s} is beyond.`
+          : `The series in s diverges beyond s0 = ${largest}: E[s^K] is infinite at s = ${s}. Take s up to s0.`,
     };
-  return shifted(t, reader, reader.locate(s), x, s);
+  return shifted(t, reader, reader.locate(u), x, u);
 }
 
 /** Reads u at the place of s, moved by decay·x. */
-function shifted(t: Trajectory, reader: TrajectoryReader, place: Place, x: number, s: number): Reading {
+function shifted(t: Trajectory, reader: TrajectoryReader, place: Place, x: number, u: number): Reading {
   const way = reader.decay * x;
   const xi = place.xi + way;
   const at = pointValue();
   const rounding = reader.evaluateAt(place.side, xi, at);
-  const amplitudeSpread = s > 1 && reader.turning !== null ? reader.turning.amplitudeSpread : t.amplitudeSpread;
+  const amplitudeSpread = u < 0 && reader.turning !== null ? reader.turning.amplitudeSpread : t.amplitudeSpread;
   const known = place.error + ROUNDING * (2 * way + Math.abs(xi));
   const inputs = way * t.decaySpread + Math.min(1, way) * amplitudeSpread;
   const error = rounding + Math.abs(at.slopeRe) * (known + inputs);
+  const unit = reader.decay * t.base.scale[0];
   const slope = () => {
-    const value = -reader.decay * at.slopeRe;
+    const value = -unit * at.slopeRe;
     const second = Math.abs(secondDerivative(reader, xi, at));
-    const fromPlace = reader.decay * (rounding * SLOPE_AMPLIFICATION + second * (known + inputs));
-    return { value, error: fromPlace + Math.abs(value) * (t.decaySpread + 4 * ROUNDING) };
+    const fromPlace = unit * (rounding * SLOPE_AMPLIFICATION + second * (known + inputs));
+    return { value, error: fromPlace + Math.abs(value) * (t.decaySpread + t.base.scaleSpread + 5 * ROUNDING) };
   };
   return { u: at.re, error, slope };
 }

@@ -2,7 +2,8 @@ import { Expander, type Expansion, evaluate, type PointValue, pointValue } from 
 import { type Branching, prepareOffspring } from "./offspring.ts";
 import { toNumber } from "./pairs.ts";
 import { Rays } from "./rays.ts";
-import type { Knot, Trajectory, Turning } from "./types.ts";
+import { saddleOf } from "./saddle.ts";
+import type { Base, Knot, Trajectory, Turning } from "./types.ts";
 
 /** Which side of w = 1: below (w < 1, z > 0) or above (w > 1, z < 0). */
 export type Side = "below" | "above";
@@ -25,13 +26,15 @@ const STIFF_RATIO = -1.5;
 
 /** A trajectory made ready for reading: the expansions at its knots, made when first needed. */
 export class TrajectoryReader {
+  /** the law of offspring in the trajectory's own coordinates, see Base */
   readonly law: Branching;
+  readonly base: Base;
   readonly decay: number;
   readonly expander: Expander;
   readonly turning: Turning | null;
   /** no particle can ever have two or more children: u = z exactly */
   readonly sterile: boolean;
-  /** largest s at which w(x, s) is given: s0, or just short of where a trajectory without turning point ends */
+  /** largest s, in units of the base's scale, at which w(x, s) is given: s0, or just short of where a trajectory without turning point ends */
   readonly largest: number;
   /** set where continuation must keep to decreasing Re ξ */
   readonly rays: Rays | null;
@@ -41,14 +44,17 @@ export class TrajectoryReader {
 
   constructor(t: Trajectory) {
     this.t = t;
-    this.law = prepareOffspring(t.model.offspring);
+    const law = prepareOffspring(t.model.offspring);
+    this.law = t.regime === "away" ? law : saddleOf(law).law;
+    this.base = t.base;
     this.decay = toNumber(t.decay);
     this.expander = new Expander(t, this.law);
     this.turning = "refused" in t.turning ? null : t.turning;
     this.rays = t.ratio[0] < STIFF_RATIO ? new Rays(this) : null;
     this.sterile = this.turning === null && t.edge === null;
     if (this.sterile) this.largest = Number.POSITIVE_INFINITY;
-    else this.largest = this.turning === null ? 1 - (t.above.at(-1) as Knot).u : toNumber(this.turning.s0);
+    else
+      this.largest = this.turning === null ? this.base.centre - (t.above.at(-1) as Knot).u : toNumber(this.turning.s0);
   }
 
   /** Largest |z| at which the power series at z = 0 is used. */
@@ -123,12 +129,11 @@ export class TrajectoryReader {
     return this.expansionAt("above", this.t.above.length - 1);
   }
 
-  /** The place where w = s, for −1 ≤ s ≤ s0, s ≠ 1. At s within two units of s0, the turning point itself. */
-  locate(s: number): Place {
-    const u = 1 - s;
+  /** The place where u takes a value, not 0, down to that at s0. Within a few units of s0, the turning point itself. */
+  locate(u: number): Place {
     if (u < 0 && this.turning !== null) {
-      const gap = this.turning.excess[0] - (s - 1) + this.turning.excess[1];
-      if (gap <= 2 * Number.EPSILON * s) {
+      const gap = this.turning.excess[0] + u + this.turning.excess[1];
+      if (gap <= this.unitsAtTop() * Number.EPSILON * this.turning.s0[0]) {
         const xi = (this.t.above.at(-1) as Knot).xi;
         return { side: "above", xi, error: ROUNDING * (1 + Math.abs(xi)) };
       }
@@ -137,6 +142,11 @@ export class TrajectoryReader {
     }
     const side: Side = u > 0 ? "below" : "above";
     return this.refine(side, u, this.bracket(side, u));
+  }
+
+  /** A value of s scaled by a double-double has its own rounding. */
+  private unitsAtTop(): number {
+    return this.base.scale[0] === 1 ? 2 : 4;
   }
 
   /** Solves u(ξ0 + y) − u(ξ0) = gap for small y > 0, where u rises as y². */

@@ -9,6 +9,8 @@ import type { Start, Starts, Trajectory } from "./types.ts";
 export interface NodeValues {
   readonly re: Float64Array;
   readonly im: Float64Array;
+  /** a power of two that was taken out */
+  readonly power?: number;
 }
 
 /** Checks the starts; merges equal positions and sorts by position.
@@ -101,23 +103,35 @@ function productValues(reader: TrajectoryReader, contour: Contour, starts: reado
   const count = contour.xiRe.length;
   const logRe = new Float64Array(count);
   const logIm = new Float64Array(count);
+  const { centre } = reader.base;
+  const fromZero = centre === 0;
   for (const { position, particles } of starts) {
     const u = singleValues(reader, contour, position);
     if (u === null) return null;
     for (let j = 0; j < count; j += 1) {
       const a = u.re[j] as number;
       const b = u.im[j] as number;
-      // ln(1 − u)
-      logRe[j] = (logRe[j] as number) + (particles * Math.log1p(a * a + b * b - 2 * a)) / 2;
-      logIm[j] = (logIm[j] as number) + particles * Math.atan2(-b, 1 - a);
+      // ln w; the branch of its imaginary part drops out of the integer power
+      const square = fromZero ? Math.log(a * a + b * b) : Math.log1p(a * a + b * b - 2 * a);
+      logRe[j] = (logRe[j] as number) + (particles * square) / 2;
+      logIm[j] = (logIm[j] as number) + particles * Math.atan2(-b, centre - a);
     }
   }
+  const top = fromZero ? (logRe[0] as number) : 0;
   for (let j = 0; j < count; j += 1) {
+    if (fromZero) {
+      // −e^{l − top}: a product of many small numbers stays within the double's range
+      const size = -Math.exp((logRe[j] as number) - top);
+      const angle = logIm[j] as number;
+      logRe[j] = size * Math.cos(angle);
+      logIm[j] = size * Math.sin(angle);
+      continue;
+    }
     // 1 − e^l
     const a = logRe[j] as number;
     const b = logIm[j] as number;
     logRe[j] = -Math.expm1(a) * Math.cos(b) + 2 * Math.sin(b / 2) ** 2;
     logIm[j] = -Math.exp(a) * Math.sin(b);
   }
-  return { re: logRe, im: logIm };
+  return { re: logRe, im: logIm, power: top / Math.LN2 };
 }

@@ -1,6 +1,8 @@
 import type { Contour, Reference } from "./contour.ts";
+import { multiply, ONE, subtract } from "./pairs.ts";
 import { ROUNDING } from "./reader.ts";
 import type { NodeValues } from "./sources.ts";
+import type { Base, Pair } from "./types.ts";
 
 /** Cauchy's formula on a contour as a sum over amplitudes that do not depend on n:
  *
@@ -8,7 +10,8 @@ import type { NodeValues } from "./sources.ts";
  *
  *  Source: P(K = n) = (1/2πi) ∮ E[s^K] s^{−n} ds/s with u = 1 − E[s^K]; the lower half of the contour is the mirror image of
  *  the upper; a constant adds nothing for n ≥ 1, and taking u(radius) out leaves only what the law is made of.
- *  For P(K > n) the factor s/(s − 1)·1/s enters: Σ_{k > n} s^{−k−1} = s^{−n−1}/(s − 1) for |s| > 1. */
+ *  For P(n < K < ∞) the factor s/(s − 1)·1/s enters: Σ_{k > n} s^{−k−1} = s^{−n−1}/(s − 1) for |s| > 1; on a lattice of step d,
+ *  s^{−n−1}/(s^d − 1) for an n on it. */
 export interface Sums {
   readonly logRe: Float64Array;
   readonly logIm: Float64Array;
@@ -19,32 +22,59 @@ export interface Sums {
 /** "each": P(K = n), n ≥ 1. "above": P(K > n), n ≥ 0. */
 export type Wanted = "each" | "above";
 
+/** K lives on offset + base.period·ℕ. */
+export interface Lattice {
+  readonly base: Base;
+  readonly offset: number;
+}
+
 /** Amplitudes of a law whose values u = 1 − E[s^K] are known at the nodes (for n ≥ 2 a multiple of s may be added to u at will). */
-export function sumsOf(contour: Contour, reference: Reference, u: NodeValues, wanted: Wanted): Sums {
+export function sumsOf(contour: Contour, reference: Reference, u: NodeValues, lattice: Lattice, wanted: Wanted): Sums {
   const { logRe, logIm, weightRe, weightIm } = contour;
   const count = logRe.length;
   const re = new Float64Array(count);
   const im = new Float64Array(count);
+  const { period } = lattice.base;
   const atTop = u.re[0] as number;
+  // what is taken out must be alike on all images of s0, and nothing that a law contains: a power of s below 0
+  const removed = period === 1 ? 0 : (lattice.offset % period) - period;
   for (let j = 1; j < count; j += 1) {
-    const a = ((u.re[j] as number) - atTop) / Math.PI;
-    const b = (u.im[j] as number) / Math.PI;
+    const size = removed === 0 ? atTop : atTop * Math.exp(removed * (logRe[j] as number));
+    const turn = removed * (logIm[j] as number);
+    const a = (period * ((u.re[j] as number) - size * Math.cos(turn))) / Math.PI;
+    const b = (period * ((u.im[j] as number) - size * Math.sin(turn))) / Math.PI;
     const p = weightRe[j] as number;
     const q = weightIm[j] as number;
     re[j] = -(a * q + b * p);
     im[j] = a * p - b * q;
   }
-  if (wanted === "above") overExcess(contour, reference, re, im);
+  if (wanted === "above") overExcess(contour, poleOf(reference, lattice.base), period, re, im);
   return { logRe, logIm, re, im };
 }
 
-/** Divides by s − 1 = (radius − 1) + radius (e^L − 1). */
-function overExcess(contour: Contour, reference: Reference, re: Float64Array, im: Float64Array): void {
-  const radius = reference.radius[0];
+/** s^period on the circle through the reference, and its excess over 1. */
+function poleOf(reference: Reference, base: Base): { power: Pair; excess: Pair } {
+  const { radius } = reference;
+  if (base.centre === 1 && base.scale[0] === 1) return { power: radius, excess: reference.excess };
+  const s = multiply(radius, base.scale);
+  let power = s;
+  for (let k = 1; k < base.period; k += 1) power = multiply(power, s);
+  return { power, excess: subtract(power, ONE) };
+}
+
+/** Divides by s^period − 1 = (power − 1) + power (e^{period L} − 1). */
+function overExcess(
+  contour: Contour,
+  { power, excess }: { power: Pair; excess: Pair },
+  period: number,
+  re: Float64Array,
+  im: Float64Array,
+): void {
+  const radius = power[0];
   for (let j = 1; j < re.length; j += 1) {
-    const a = contour.logRe[j] as number;
-    const b = contour.logIm[j] as number;
-    const dRe = reference.excess[0] + radius * (Math.expm1(a) * Math.cos(b) - 2 * Math.sin(b / 2) ** 2);
+    const a = period * (contour.logRe[j] as number);
+    const b = period * (contour.logIm[j] as number);
+    const dRe = excess[0] + radius * (Math.expm1(a) * Math.cos(b) - 2 * Math.sin(b / 2) ** 2);
     const dIm = radius * Math.exp(a) * Math.sin(b);
     const size = dRe * dRe + dIm * dIm;
     const x = re[j] as number;

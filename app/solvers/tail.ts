@@ -1,6 +1,6 @@
 import { SolverError } from "./errors.ts";
-import { divide, LN2, logarithm } from "./pairs.ts";
-import { profileSlopeAt, radius } from "./profile.ts";
+import { divide, LN2, logarithm, multiply } from "./pairs.ts";
+import { profileConstants, profileSlopeAt, radius } from "./profile.ts";
 import { ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
 import { scaledByPower } from "./scaled.ts";
 import { checkStarts } from "./sources.ts";
@@ -28,17 +28,22 @@ export function tailLaw(t: Trajectory, starts: Starts, terms: number): Answer<Ta
   if (shares === null)
     return { refused: "Every particle starts at the barrier and is absorbed at once: K is certain and has no tail." };
   const inverse = inversePowers(shares);
-  const value = inverse[0] as number;
+  const { period, scale } = t.base;
+  const particles = starts === "far" ? 1 : starts.reduce((sum, s) => sum + s.particles, 0);
+  // P(K = n) = scale^{particles − n} P̂(K = n), and every image of s0 gives the same
+  const leading = inverse[0] as number;
+  const value = leading * period * scale[0] ** particles;
   const relative =
     CONSTANT_ROUNDINGS * ROUNDING + turning.excessSpread + turning.amplitudeSpread + spreadOfStarts(t, reader, starts);
   return {
-    s0: radius(turning),
-    slopeAtStart: slopeAtStart(t, starts, turning),
+    s0: radius(turning, t.base),
+    slopeAtStart: slopeAtStart(t, starts),
     constant: { value, error: Math.abs(value) * relative },
-    period: 1,
+    period,
+    offset: particles,
     terms,
-    corrections: inverse.map((c) => c / value),
-    log2s0: divide(logarithm(turning.s0), LN2),
+    corrections: inverse.map((c) => c / leading),
+    log2s0: divide(logarithm(multiply(turning.s0, scale)), LN2),
     spread: (turning.excessSpread * turning.excess[0]) / turning.s0[0],
   };
 }
@@ -49,6 +54,7 @@ export function tailLaw(t: Trajectory, starts: Starts, terms: number): Answer<Ta
 export function tailProbability(law: TailLaw, n: number): TailProbability {
   if (!(Number.isSafeInteger(n) && n >= 1))
     throw new SolverError("bad_parameter", `The tail is asked for at n = ${n}; n must be an integer, at least 1.`);
+  if ((n - law.offset) % law.period !== 0) return { probability: { mantissa: 0, exponent: 0, error: 0 }, omitted: 0 };
   let sum = 0;
   for (let k = law.terms - 1; k >= 0; k -= 1) sum = sum / n + (law.corrections[k] as number);
   const value = law.constant.value * n ** -1.5 * sum;
@@ -73,14 +79,15 @@ function turningSpread(reader: TrajectoryReader): number {
   return reader.turning === null ? 0 : reader.turning.excessSpread + reader.turning.amplitudeSpread;
 }
 
-function slopeAtStart(t: Trajectory, starts: Starts, turning: Turning): Answer<Estimate> {
+function slopeAtStart(t: Trajectory, starts: Starts): Answer<Estimate> {
   const only = starts === "far" ? undefined : starts[0];
   if (starts === "far" || starts.length !== 1 || only?.particles !== 1)
     return {
       refused:
         "The slope at the start is that of one particle; here the law is of several, or of the limit from far away.",
     };
-  return profileSlopeAt(t, only.position, turning.s0[0]);
+  const { s0 } = profileConstants(t);
+  return "refused" in s0 ? s0 : profileSlopeAt(t, only.position, s0.value);
 }
 
 /** Coefficients F_1, F_3, F_5, … of E[s^K] in powers of √(1 − s/s0), `count` of them; null for a law without them. */
@@ -122,7 +129,7 @@ function profileExpansion(reader: TrajectoryReader, position: number): Float64Ar
   const c = reader.expander.create();
   reader.expander.expand(xi, 0, at, c);
   const w = c.re.map((v) => -v);
-  w[0] = 1 - at.re;
+  w[0] = reader.base.centre - at.re;
   return w;
 }
 

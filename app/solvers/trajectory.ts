@@ -1,11 +1,14 @@
 import { type Linearised, linearise, normalise } from "./linear.ts";
-import { multiply, negate, toNumber } from "./pairs.ts";
+import { multiply, negate, ONE, toNumber, ZERO } from "./pairs.ts";
 import { follow } from "./path.ts";
+import { FROM_ONE } from "./saddle.ts";
+import { followSaddle } from "./saddle-path.ts";
 import { constantSpreads } from "./spreads.ts";
 import type { Answer, Edge, ProcessModel, Trajectory } from "./types.ts";
 import { FULL_WALK } from "./walk.ts";
 
-/** Solves the trajectory of D w″ + drift w′ + f(w) = 0 that leaves w = 1 along its fast direction, in the regime `away`.
+/** Solves the trajectory of D w″ + drift w′ + f(w) = 0 that leaves w = 1 along its fast direction, in the regime `away`; in the
+ *  regime `between` the one that leaves the saddle q, on which w(x, s) = E_x[s^K; K finite] passes through 1 and turns back at s0.
  *
  *  Method: power series of u = 1 − w in z = e^{−decay x}, then Taylor steps towards the barrier, the stable direction,
  *  in double-doubles; on z > 0 past w = 0 (amplitude B_0, slope at the barrier), on z < 0 up to where w turns back (s0).
@@ -14,12 +17,15 @@ import { FULL_WALK } from "./walk.ts";
  *  @throws SolverError "bad_parameter" on misuse, "not_converged" where the walk does not end or fails its check. */
 export function solveTrajectory(model: ProcessModel): Answer<Trajectory> {
   const linear = linearise(model);
+  if (linear.regime === "between") return solveBetween(model, linear);
   if (linear.regime !== "away") return { refused: refusal(model, linear) };
   const n = normalise(model, linear);
   const path = follow(n, FULL_WALK);
   const spread = constantSpreads(model, linear, path);
   return {
     model,
+    regime: "away",
+    base: FROM_ONE,
     decay: n.decay,
     ratio: n.ratio,
     strength: n.strength,
@@ -35,6 +41,32 @@ export function solveTrajectory(model: ProcessModel): Answer<Trajectory> {
     decaySpread: spread.decay,
     amplitudeSpread: spread.amplitude,
     slopeSpread: spread.slope,
+  };
+}
+
+function solveBetween(model: ProcessModel, linear: Linearised): Trajectory {
+  const { saddle, normalised, path, spreads } = followSaddle(model, linear);
+  const fromZero = saddle.base.centre === 0;
+  return {
+    model,
+    regime: "between",
+    base: { ...saddle.base, scaleSpread: spreads.scale },
+    decay: normalised.decay,
+    ratio: normalised.ratio,
+    strength: normalised.strength,
+    series: Array.from(path.origin.series.high),
+    seriesScale: path.origin.scale,
+    seriesReach: path.origin.reach,
+    below: path.below,
+    above: path.above,
+    // w(x, 0) = 0 where nobody dies childless: no constant to tell
+    amplitude: fromZero ? ONE : path.amplitude,
+    slopeAtBarrier: fromZero ? ZERO : multiply(saddle.base.scale, multiply(negate(path.slope), normalised.decay)),
+    turning: path.turning === null ? { refused: whyNot(path.edge) } : { ...path.turning, ...spreads.turning },
+    edge: path.edge,
+    decaySpread: spreads.decay,
+    amplitudeSpread: spreads.amplitude,
+    slopeSpread: spreads.slope,
   };
 }
 

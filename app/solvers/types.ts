@@ -75,7 +75,7 @@ export interface Knot {
   readonly slope: number;
 }
 
-/** Constants of the trajectory's upper end, where w turns back; refused where no particle can branch. */
+/** Constants of the trajectory's upper end (in units of the base's scale), where w turns back; refused where no particle can branch. */
 export interface Turning {
   /** s0, the radius of convergence of w(x, ·) */
   readonly s0: Pair;
@@ -95,10 +95,23 @@ export interface Edge {
   readonly s: number;
 }
 
-/** The trajectory of D w″ + drift w′ + f(w) = 0 that leaves w = 1 along its fast direction, from which all answers are read.
+/** The state that a trajectory leaves: w = scale·(centre − u). In the regime `away`, scale = centre = 1; else scale is q, the smallest
+ *  root of G(s) = s, or, where that is 0, centre = 0 and scale = 1. */
+export interface Base {
+  readonly centre: 0 | 1;
+  readonly scale: Pair;
+  /** bound on the relative change of the scale under half a unit in the last place of the inputs */
+  readonly scaleSpread: number;
+  /** K − (number of particles at the start) is a multiple of this */
+  readonly period: number;
+}
+
+/** The trajectory of D w″ + drift w′ + f(w) = 0 that leaves w = 1 (or q, see Base) along its fast direction, from which all answers are read.
  *  In ξ = decay·x, u = 1 − w it obeys u″ + (1 + ratio) u′ + ratio u = strength·(G(1 − u) − 1 + mean u), with u = z − … at z = e^{−ξ}. */
 export interface Trajectory {
   readonly model: ProcessModel;
+  readonly regime: Regime;
+  readonly base: Base;
   readonly decay: Pair;
   /** slow rate over fast rate, f'(1)/(D decay²), at most 1 */
   readonly ratio: Pair;
@@ -127,10 +140,12 @@ export interface Trajectory {
 }
 
 export interface ProfileConstants {
+  /** lim w(x, s) as x → ∞, for s below s0 */
+  readonly limit: Estimate;
   readonly s0: Answer<Estimate>;
   readonly slopeAtBarrier: Answer<Estimate>;
   readonly amplitude: Answer<Estimate>;
-  readonly decay: Estimate;
+  readonly decay: Answer<Estimate>;
 }
 
 /** `particles` independent particles at `position` ≥ 0 [length]; 1 ≤ particles, an integer. */
@@ -155,8 +170,11 @@ export interface AbsorbedLaw {
 export interface AbsorbedMoments {
   /** P(K = 0) */
   readonly zero: Estimate;
+  /** E[K], given that K is finite */
   readonly mean: Estimate;
   readonly variance: Estimate;
+  /** P(K = ∞) */
+  readonly infinite: Estimate;
 }
 
 /** P(K = n) ~ constant·n^{−3/2} s0^{−n} (1 + corrections[1]/n + corrections[2]/n² + …), as n → ∞. */
@@ -166,8 +184,9 @@ export interface TailLaw {
   readonly slopeAtStart: Answer<Estimate>;
   /** C of P(K = n) ~ C n^{−3/2} s0^{−n} */
   readonly constant: Estimate;
-  /** K lives on a lattice of this step; 1 wherever the drift is away from the barrier */
+  /** K lives on the lattice offset + period·ℕ, and the law is 0 elsewhere; 1 wherever the drift is away from the barrier */
   readonly period: number;
+  readonly offset: number;
   /** number of terms summed: 1 means constant·n^{−3/2} s0^{−n} itself */
   readonly terms: number;
   /** corrections[0] = 1; at least `terms` + 1 of them, the next one measuring what is omitted */

@@ -66,7 +66,7 @@ describe("computing a plan", () => {
   });
 
   test("what reads a failed cell waits for it, and names it", () => {
-    const { outcomes } = computed(PAPER, { mu: "1" });
+    const { outcomes } = computed(PAPER, { mu: "-2" });
     expect(outcomes.get("larvae")?.status).toBe("computed");
     expect(outcomes.get("K")?.status).toBe("failed");
     expect(outcomes.get("f")).toEqual({ status: "waiting", needs: ["K"] });

@@ -156,22 +156,63 @@ test("errors of arguments are passed on", () => {
   expect(Math.abs(inexact.mantissa - exact.mantissa)).toBeLessThanOrEqual(inexact.error + exact.error);
 });
 
-describe("regimes without these answers", () => {
+describe("between the critical drifts", () => {
+  // Source: references of the solver's test for drift 1, computed by an independent method: 65-digit Taylor series, Cauchy integral.
+  const BETWEEN = {
+    s0: 3.801399908701495,
+    finite: 0.0735749953193315,
+    mean: 1.136922117823261,
+    constant: 0.30974971768862775,
+  };
   const slow = computed(PAPER, { mu: "1" });
+  const value = (id: string, name: string): Value | undefined => slow.results.get(id)?.values[name];
+  const read = (formula: string): Value | undefined => valueIn(PAPER, formula, { mu: "1" });
 
   test("the process stands, with its regime; what has no meaning is refused alone", () => {
-    const process = slow.results.get("larvae");
-    expect(process?.values.regime).toEqual({ type: "text", text: "between" });
-    expect(reasonOf(process?.values.decay)).toContain("between");
-    agrees(process?.values.critical_drift, Math.SQRT2);
+    expect(value("larvae", "regime")).toEqual({ type: "text", text: "between" });
+    agrees(value("larvae", "critical_drift"), Math.SQRT2);
+    for (const refused of [value("larvae", "decay"), value("w", "amplitude"), value("w", "decay")])
+      expect(reasonOf(refused)).toContain("between");
   });
+
+  test("the law is defective: mean and variance given that K is finite", () => {
+    agrees(value("K", "s0"), BETWEEN.s0);
+    agrees(value("K", "mean"), BETWEEN.mean);
+    agrees(value("K", "infinite"), 1 - BETWEEN.finite);
+    agrees(read("K(3)"), 0.001070910199632798);
+    agrees(read("K.above(3)"), 1 - 0.06508567451155654 - 0.007189130311964234 - 0.001070910199632798);
+    agrees(read("K.moment(2)"), toDouble(quantityOf(read("K.variance + K.mean^2 - K.mean"))));
+    expect(toDouble(quantityOf(value("K", "mode")))).toBe(1);
+    expect(toDouble(quantityOf(read("K.quantile(0.07)")))).toBe(2);
+    expect(reasonOf(read("K.median"))).toContain("infinite with probability 0.926");
+  });
+
+  test("profile and tail", () => {
+    agrees(read("w(1, 1)"), BETWEEN.finite);
+    agrees(read("w(1, 1/2)"), 0.034486784547580876);
+    agrees(value("w", "s0"), BETWEEN.s0);
+    agrees(value("T", "constant"), BETWEEN.constant);
+    agrees(value("T", "ratio"), 1.0001067705519175);
+  });
+
+  test("on a lattice the tail is 0 off it, and the ratio is taken on it", () => {
+    const odd = (upTo: number) =>
+      `${cell("process p", "drift: 1/2", "rate: 1", "offspring: ternary")}${cell("tail T", "of: p", "start: 1", `up_to: ${upTo}`)}`;
+    expect(toDouble(quantityOf(valueIn(odd(501), "T(500)")))).toBe(0);
+    expect(toDouble(quantityOf(valueIn(odd(501), "T.ratio")))).toBeCloseTo(1, 2);
+    expect(reasonOf(valueIn(odd(500), "T.ratio"))).toContain("a multiple of 2 more");
+  });
+});
+
+describe("a regime without these answers", () => {
+  const back = computed(PAPER, { mu: "-2" });
 
   test("profile, counts and tail fail at their `of`, with the critical drift", () => {
     for (const id of ["w", "K", "T"]) {
-      const outcome = slow.outcomes.get(id);
+      const outcome = back.outcomes.get(id);
       if (outcome?.status !== "failed") throw new Error(`${id}: ${outcome?.status}`);
       expect(outcome.failure.message).toContain("1.41421");
-      expect(outcome.failure.line).toBe((slow.plan.byId.get(id)?.line ?? 0) + 1);
+      expect(outcome.failure.line).toBe((back.plan.byId.get(id)?.line ?? 0) + 1);
     }
   });
 });

@@ -39,8 +39,8 @@ describe("numbers of the prose", () => {
 
   test("without a value say why", () => {
     const [missing, unknown, broken, refused] = printed(
-      "A :value[K.mean], a :value[L.mean], a :value[K.mean +], a :value[log(0 - mu)].",
-      { mu: "1" },
+      "A :value[K.mean], a :value[L.mean], a :value[K.mean +], a :value[log(mu)].",
+      { mu: "-2" },
     );
     expect(missing).toMatchObject({ printed: null, problem: "`K` has no result.", needs: ["K"] });
     expect(unknown?.problem).toContain("`L` is not a cell");

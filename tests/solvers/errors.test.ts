@@ -102,7 +102,7 @@ describe("errors hold", () => {
       });
       const values = contour && nodeValues(t, reader, contour, starts);
       if (contour === null || values === null) continue;
-      const sums = sumsOf(contour, reference, values, "each");
+      const sums = sumsOf(contour, reference, values, { base: t.base, offset: 1 }, "each");
       const other = sumRange(sums, 1, 300);
       for (const n of [1, 2, 3, 5, 10, 30, 100, 300]) {
         // P(K = n) s0^n, without the spread of s0 and of the inputs, which the two contours share

@@ -68,12 +68,7 @@ describe("constants of the trajectory", () => {
 });
 
 describe("where there is no trajectory", () => {
-  test.each([
-    ["between", 1],
-    ["between", 0],
-    ["between", -1],
-    ["toward", -2],
-  ] as const)("%s: drift %d", (regime, drift) => {
+  test.each([["toward", -2]] as const)("%s: drift %d", (regime, drift) => {
     const answer = solveTrajectory(binary(drift));
     expect(isRefused(answer) && answer.refused).toContain(`the regime is ${regime}`);
     expect(isRefused(answer) && answer.refused).toContain("1.41421");

@@ -9,7 +9,7 @@ import { documentedMembers } from "../kind.ts";
 import { diffusionWords, HALFLINE_SOLVER, trajectoryOf } from "../process/model.ts";
 import type { StartModel } from "../process/start.ts";
 import { readStart, startsOf } from "../process/start.ts";
-import { estimateValue, exactValue } from "../values.ts";
+import { estimateValue } from "../values.ts";
 import { callCounts } from "./callables.ts";
 import { COUNTS_DOCUMENTATION } from "./documentation.ts";
 import { withShortErrors } from "./law.ts";
@@ -81,8 +81,7 @@ function countsValues(data: CountsData): Record<string, Value> {
     median: quantileOf(data, 1 / 2),
     mode: modeOf(data),
     s0: estimateValue(profileConstants(data.trajectory).s0),
-    // Away from the barrier every line but finitely many escapes: K is finite with probability 1.
-    infinite: exactValue(0),
+    infinite: estimateValue(moments.infinite),
   };
 }
 

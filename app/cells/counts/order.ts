@@ -1,6 +1,6 @@
 import type { Value } from "../../formulas/index.ts";
-import { absorbedAbove } from "../../solvers/index.ts";
-import { exactValue, refusedValue } from "../values.ts";
+import { absorbedAbove, absorbedMoments } from "../../solvers/index.ts";
+import { exactValue, refusedValue, shortNumber } from "../values.ts";
 import { doubleProbability, probabilityAt } from "./law.ts";
 import type { CountsData } from "./model.ts";
 
@@ -17,6 +17,11 @@ export function quantileOf(data: CountsData, p: number): Value {
       return `P(K ≤ ${n}) is ${p} within its error; the quantile may be ${n} or ${n + 1}.`;
     return excess <= 0;
   };
+  const { infinite } = absorbedMoments(data.trajectory, data.starts);
+  if (p > 1 - infinite.value - infinite.error)
+    return refusedValue(
+      `K is infinite with probability ${shortNumber(infinite.value)}, so that the quantile at ${shortNumber(p)} is infinite.`,
+    );
   let low = -1;
   let high = 0;
   for (;;) {
@@ -37,8 +42,8 @@ export function quantileOf(data: CountsData, p: number): Value {
   return exactValue(high);
 }
 
-/** The n of the largest P(K = n). Refused where two of them differ by less than their errors, or it may lie beyond `up_to`. */
-export function modeOf({ law }: CountsData): Value {
+/** The n of the largest P(K = n), n finite. Refused where two of them differ by less than their errors, or it may lie beyond `up_to`. */
+export function modeOf({ law, trajectory, starts }: CountsData): Value {
   let mode = 0;
   let largest = 0;
   let error = 0;
@@ -56,7 +61,8 @@ export function modeOf({ law }: CountsData): Value {
   }
   if (largest - second <= 2 * error)
     return refusedValue("Two values of K are equally probable within the errors; there is no one mode.");
-  if (1 - counted > largest)
+  const { infinite } = absorbedMoments(trajectory, starts);
+  if (1 - infinite.value - counted > largest)
     return refusedValue(
       `More probability lies beyond n = ${law.upTo} than at any n up to it; a larger \`up_to\` would settle the mode.`,
     );

@@ -62,7 +62,7 @@ export const PROCESS: KindOf<ProcessCell, ProcessData> = {
       extinction_probability: estimateValue(description.extinctionProbability),
     };
     const trajectory = solveTrajectory(model);
-    const how = "refused" in trajectory ? "Closed forms" : "Fast manifold of 1, Taylor steps";
+    const how = "refused" in trajectory ? "Closed forms" : trajectoryWords(trajectory);
     return { values, data: { model, trajectory }, method: `${how}; ${diffusionWords(model)}` };
   },
 
@@ -73,6 +73,11 @@ export const PROCESS: KindOf<ProcessCell, ProcessData> = {
 
   view: () => ({ figure: null, table: null, points: null }),
 };
+
+/** How a trajectory was found, for provenance lines. */
+export function trajectoryWords(trajectory: Trajectory): string {
+  return trajectory.regime === "away" ? "Fast manifold of 1, Taylor steps" : "Stable manifold of q, Taylor steps";
+}
 
 /** "D = 0.5", for provenance lines. */
 export function diffusionWords(model: ProcessModel): string {

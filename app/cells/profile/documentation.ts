@@ -17,7 +17,7 @@ export const PROFILE_DOCUMENTATION: KindDocumentation = {
   ownKeys: false,
   values: [
     { name: "slope_at_barrier", meaning: "∂w/∂x at x = 0, s = 0" },
-    { name: "amplitude", meaning: "lim e^{decay x} (1 − w(x, 0))" },
+    { name: "amplitude", meaning: "lim e^{decay x} (1 − w(x, 0)); refused unless the drift is away" },
     { name: "decay", meaning: "the rate at which w(x, 0) approaches 1" },
     { name: "s0", meaning: "the turning value of s, radius of convergence of w(x, ·)" },
   ],

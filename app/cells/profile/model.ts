@@ -1,14 +1,14 @@
 import type { Formula } from "../../formulas/index.ts";
 import { freeNames } from "../../formulas/index.ts";
 import type { Trajectory } from "../../solvers/index.ts";
-import { profileAt, profileComplementAt, profileConstants } from "../../solvers/index.ts";
+import { profileAt, profileConstants } from "../../solvers/index.ts";
 import type { Body, CellReference } from "../body.ts";
 import type { ComputeContext } from "../context.ts";
 import { CellFault } from "../context.ts";
 import { shortError } from "../counts/law.ts";
 import type { KindOf } from "../kind.ts";
 import { documentedMembers } from "../kind.ts";
-import { diffusionWords, HALFLINE_SOLVER, trajectoryOf } from "../process/model.ts";
+import { diffusionWords, HALFLINE_SOLVER, trajectoryOf, trajectoryWords } from "../process/model.ts";
 import { estimateValue, shortNumber } from "../values.ts";
 import { PROFILE_DOCUMENTATION } from "./documentation.ts";
 import { profileValue } from "./value.ts";
@@ -85,7 +85,7 @@ export const PROFILE: KindOf<ProfileCell, ProfileData> = {
         s0,
       },
       data: { trajectory, x, curves, left },
-      method: `Fast manifold of 1, Taylor steps; ${diffusionWords(trajectory.model)}`,
+      method: `${trajectoryWords(trajectory)}; ${diffusionWords(trajectory.model)}`,
     };
   },
 
@@ -125,12 +125,13 @@ function sortOut(
   return { possible, left };
 }
 
-/** The least x, rounded up to two digits, from which every curve is within NEAR_LIMIT of 1. */
+/** The least x, rounded up to two digits, from which every curve is within NEAR_LIMIT of its limit. */
 function farEnough(trajectory: Trajectory, curves: readonly { s: number }[]): number {
+  const limit = profileConstants(trajectory).limit.value;
   const isNear = (x: number): boolean =>
     curves.every(({ s }) => {
-      const away = profileComplementAt(trajectory, x, s);
-      return "refused" in away || Math.abs(away.value) < NEAR_LIMIT;
+      const w = profileAt(trajectory, x, s);
+      return "refused" in w || Math.abs(w.value - limit) < NEAR_LIMIT;
     });
   let far = 1 / trajectory.decay[0];
   for (let doublings = 0; !isNear(far) && doublings < 64; doublings += 1) far *= 2;

@@ -1,4 +1,5 @@
 import type { Figure, Series } from "../../figures/index.ts";
+import { profileConstants } from "../../solvers/index.ts";
 import { labelledAxis } from "../figure-parts.ts";
 import type { Presentation } from "../presentation.ts";
 import { pointsTable } from "../table-parts.ts";
@@ -6,22 +7,23 @@ import type { CellView } from "../types.ts";
 import { shortNumber, shortTex } from "../values.ts";
 import type { ProfileCurve, ProfileData } from "./model.ts";
 
-/** Curves of w(x, s), labelled by their starting values; the one from s0 is the principal, the limit 1 a dotted level. */
+/** Curves of w(x, s), labelled by their starting values; the one from s0 is the principal, the limit (1, or q where the drift is not away) a dotted level. */
 export function viewProfile(data: ProfileData, presentation: Presentation): CellView {
-  const series = data.curves.map((curve, index) => seriesOf(curve, index, data.x));
-  const drawsOne = data.curves.some((curve) => curve.s === 1);
+  const limit = profileConstants(data.trajectory).limit.value;
+  const series = data.curves.map((curve, index) => seriesOf(curve, index, data.x, limit));
+  const drawsLimit = data.curves.some((curve) => curve.s === limit);
   const figure: Figure = {
     alternative: alternative(data),
     x: labelledAxis("x", "linear", presentation.x),
     y: labelledAxis("w", "linear", presentation.y),
     series,
-    levels: drawsOne ? [] : [{ label: "1", y: 1 }],
+    levels: drawsLimit ? [] : [{ label: shortNumber(limit), y: limit }],
     remarks: data.left,
   };
   return { figure, table: null, points: pointsTable("x", figure) };
 }
 
-function seriesOf(curve: ProfileCurve, index: number, x: readonly number[]): Series {
+function seriesOf(curve: ProfileCurve, index: number, x: readonly number[], limit: number): Series {
   const start = shortNumber(curve.s);
   const tex = startLabel(curve.s);
   const label = curve.turning ? `s_0=${tex}` : index === 0 ? `s=${tex}` : tex;
@@ -31,7 +33,7 @@ function seriesOf(curve: ProfileCurve, index: number, x: readonly number[]): Ser
     label,
     labelAt: x[0] === 0 ? "start" : "end",
     mark: "line",
-    role: curve.turning ? "principal" : curve.s === 1 ? "reference" : "ordinary",
+    role: curve.turning ? "principal" : curve.s === limit ? "reference" : "ordinary",
     x,
     y: curve.w,
     low: bound(-1),
@@ -45,7 +47,7 @@ function startLabel(s: number): string {
   return denominator === undefined || denominator === 1 ? shortTex(s) : `${Math.round(s * denominator)}/${denominator}`;
 }
 
-/** Says the finding: where the curves begin, that they tend to 1, and how the last one leaves the barrier. */
+/** Says the finding: where the curves begin, what they tend to, and how the last one leaves the barrier. */
 function alternative(data: ProfileData): string {
   const range = `for x from ${shortNumber(data.x[0] ?? 0)} to ${shortNumber(data.x.at(-1) ?? 0)}`;
   const starts = data.curves.map((curve) => shortNumber(curve.s));
@@ -58,5 +60,5 @@ function alternative(data: ProfileData): string {
     turning === undefined
       ? ""
       : ` The one from s0 = ${shortNumber(turning.s)} leaves the barrier without slope; beyond it there are none.`;
-  return `${curves}. All tend to 1 as x grows.${last}`;
+  return `${curves}. All tend to ${shortNumber(profileConstants(data.trajectory).limit.value)} as x grows.${last}`;
 }

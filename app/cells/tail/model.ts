@@ -90,10 +90,7 @@ function tailValues({ law, upTo, compared, missing }: TailData): Record<string, 
     s0: estimateValue(law.s0),
     slope_at_start: estimateValue(law.slopeAtStart),
     constant: estimateValue(law.constant),
-    ratio:
-      last === undefined
-        ? refusedValue(missing ?? `No probability was computed at n = ${upTo}.`)
-        : ratioOf(last, missing),
+    ratio: last === undefined ? refusedValue(missing ?? notReached(law, upTo)) : ratioOf(last, missing),
     omitted: exactValue(tailProbability(law, upTo).omitted),
   };
 }
@@ -106,13 +103,20 @@ function compare(
 ): Pick<TailData, "compared" | "missing"> {
   const together = absorbedLaw(trajectory, starts, Math.min(upTo, TOGETHER_TO));
   let missing: string | null = null;
-  const compared = comparedCounts(upTo).map((n) => {
+  const onLattice = comparedCounts(upTo).filter((n) => (n - law.offset) % law.period === 0);
+  const compared = onLattice.map((n) => {
     const known = "refused" in together ? undefined : probabilityAt(together, n);
     const exact = known ?? absorbedProbability(trajectory, starts, n);
     if ("refused" in exact) missing = exact.refused;
     return { n, exact: "refused" in exact ? null : exact, law: tailProbability(law, n).probability };
   });
   return { compared, missing };
+}
+
+function notReached({ period, offset }: TailLaw, n: number): string {
+  return period === 1
+    ? `No probability was computed at n = ${n}.`
+    : `K is ${offset} and a multiple of ${period} more, so that it is never ${n}; \`up_to\` should be such a number.`;
 }
 
 function upToOf(formula: Formula, context: ComputeContext): number {
