@@ -1,9 +1,9 @@
 import { describe, expect, test } from "vitest";
 import type { CellState, CellWork, ShownCell } from "../../app/cells/index.ts";
 import { closingOf } from "../../app/editor/live/connection.ts";
-import type { Erratum, Run } from "../../app/editor/model/types.ts";
+import type { CellFace, Erratum, Run } from "../../app/editor/model/types.ts";
 import { plainBlocks } from "../../app/editor/parts/sheet-preface.tsx";
-import { errataWords, keptWords } from "../../app/editor/parts/sheet-tail.tsx";
+import { errataWords, isUnderWay, keptWords } from "../../app/editor/parts/sheet-tail.tsx";
 import { aboutSeconds } from "../../app/editor/parts/words.ts";
 import { CLOSE } from "../../app/editor/protocol.ts";
 import { moment, stateWords } from "../../app/editor/reading/cell-words.ts";
@@ -136,6 +136,20 @@ describe("the tail line", () => {
     expect(errataWords([cell("Figure 1"), cell("Table 1", "‡")])).toBe("Figure 1 is out of date; Table 1 to be mended");
     expect(errataWords(["1", "2", "3", "4"].map((n) => cell(`Figure ${n}`)))).toBe("4 cells are out of date");
   });
+});
+
+test("a cell that waits for a failed one is not under way", () => {
+  const cell = (slot: string, state: CellFace["state"], needs: string | null = null) =>
+    ({ slot, state, needs: needs === null ? null : { slot: needs, title: needs } }) as CellFace;
+  const cells = [
+    cell("a", "failed"),
+    cell("b", "waiting", "a"),
+    cell("c", "waiting", "b"),
+    cell("d", "computing"),
+    cell("e", "waiting", "d"),
+    cell("f", "waiting"),
+  ];
+  expect(cells.filter((each) => isUnderWay(each, cells)).map(({ slot }) => slot)).toEqual(["d", "e", "f"]);
 });
 
 test("every refusal of a socket has words and a way out", () => {

@@ -1,7 +1,7 @@
 import { useRef } from "react";
 import { Command, TailLine } from "../../ui/index.ts";
 import type { Desk, DeskView } from "../live/desk.ts";
-import type { Erratum, SheetModel } from "../model/types.ts";
+import type { CellFace, Erratum, SheetModel } from "../model/types.ts";
 import { clock, counted, listed } from "./words.ts";
 
 interface Props {
@@ -50,7 +50,7 @@ function Errata({
 }) {
   const last = useRef(-1);
   const { errata, cells } = model;
-  const working = cells.filter(({ state }) => state === "computing" || state === "waiting").length;
+  const working = cells.filter((cell) => isUnderWay(cell, cells)).length;
   const due = cells.some((cell) => cell.sound && RECOMPUTED.has(cell.state));
   if (errata.length === 0 && working === 0 && !due) return <span>Errata none</span>;
   const next = () => {
@@ -73,6 +73,16 @@ function Errata({
       {writes && working > 0 ? <Command onClick={() => desk.cancelAll()}>Cancel</Command> : null}
       {writes && due ? <Command onClick={() => desk.recomputeAll()}>Recompute all</Command> : null}
     </span>
+  );
+}
+
+/** Being computed, or in the queue behind what is. A cell that waits for a failed one waits for a person. */
+export function isUnderWay(cell: CellFace, cells: readonly CellFace[]): boolean {
+  if (cell.state === "computing") return true;
+  if (cell.state !== "waiting") return false;
+  const needed = cell.needs === null ? undefined : cells.find(({ slot }) => slot === cell.needs?.slot);
+  return (
+    needed === undefined || (needed.state !== "failed" && (needed.state !== "waiting" || isUnderWay(needed, cells)))
   );
 }
 
