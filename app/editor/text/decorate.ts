@@ -129,7 +129,10 @@ function together(piece: PieceOf<"set">, doc: Text): Marks {
   const before = OPENING.test(doc.sliceString(Math.max(0, piece.from - 1), piece.from)) ? 1 : 0;
   const after = CLOSING.test(doc.sliceString(piece.to, piece.to + 1)) ? 1 : 0;
   if (before + after === 0) return [];
-  return [Decoration.mark({ class: "hl-together", of: piece }).range(piece.from - before, piece.to + after)];
+  // Inclusive, so that the mark begins before what is set and not after it.
+  return [
+    Decoration.mark({ class: "hl-together", inclusive: true, of: piece }).range(piece.from - before, piece.to + after),
+  ];
 }
 
 /** Length of source, in characters. What is longer may have to break within. */
