@@ -1,7 +1,7 @@
 import { type Figure, FigurePlate, labelText, type TableData } from "../figures/index.ts";
 import type { CellNode, PrintedPart } from "../paper/index.ts";
 import { provenanceLine, type SetCell } from "../print/index.ts";
-import { NumberText } from "../ui/number-text.tsx";
+import { NumberText } from "../ui/index.ts";
 import { Formula, Inline, Words } from "./inline.tsx";
 import { anchor, type Setting } from "./setting.ts";
 

@@ -3,9 +3,9 @@ import type { ReactNode } from "react";
 import type { BoundNumber, CitationNode, ReferenceNode } from "../paper/index.ts";
 import { citationText, mathTex, readInline, referenceText } from "../paper/index.ts";
 import type { Note } from "../print/index.ts";
+import { NumberText } from "../ui/index.ts";
 import { ourMarkup } from "../ui/markup.ts";
 import { renderMath } from "../ui/math.ts";
-import { NumberText } from "../ui/number-text.tsx";
 import { anchor, type Setting } from "./setting.ts";
 
 interface InlineProps {

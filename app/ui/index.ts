@@ -5,4 +5,5 @@ export { Choice, Field } from "./field.tsx";
 export { RunningHead, TailLine } from "./frame.tsx";
 export { Mark } from "./mark.tsx";
 export { NonceProvider, useNonce } from "./nonce.tsx";
+export { NumberText } from "./number-text.tsx";
 export { momentInWords, When } from "./when.tsx";

@@ -1,5 +1,5 @@
 import type { TableColumn, TableData } from "../../figures/index.ts";
-import { NumberText } from "../../ui/number-text.tsx";
+import { NumberText } from "../../ui/index.ts";
 import { Runs } from "./runs.tsx";
 
 interface TablePlateProps {
