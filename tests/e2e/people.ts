@@ -34,7 +34,8 @@ export async function visitor(browser: Browser, application: string): Promise<Vi
 export async function signedIn(browser: Browser, application: string, name: string): Promise<Visitor> {
   const someone = await visitor(browser, application);
   const { page } = someone;
-  await page.goto("/sign-in");
+  // Until the page's scripts have taken hold of it: a press on a button that is just being replaced is lost.
+  await page.goto("/sign-in", { waitUntil: "networkidle" });
   await page.getByRole("button", { name: /GitHub/ }).click();
   await page.getByRole("button", { name }).click();
   await page.waitForURL("**/shelf");
