@@ -144,7 +144,7 @@ describe("errors hold", () => {
     const random = new SeededRandom(14);
     for (let i = 0; i < 100; i += 1) {
       const t = trajectoryOf(randomModel(random));
-      const decay = profileConstants(t).decay.value;
+      const decay = given(profileConstants(t).decay).value;
       const [x, y] = [random.next() / decay, random.next() / decay];
       const s = 2 * random.next() - 1;
       const inner = given(profileAt(t, y, s));

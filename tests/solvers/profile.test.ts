@@ -73,7 +73,7 @@ describe("the profile w(x, s)", () => {
     const t = trajectoryOf(binary(2));
     const { amplitude, decay } = profileConstants(t);
     const far = given(profileComplementAt(t, 40, 0));
-    expect(far.value / (given(amplitude).value * Math.exp(-40 * decay.value))).toBeCloseTo(1, 13);
+    expect(far.value / (given(amplitude).value * Math.exp(-40 * given(decay).value))).toBeCloseTo(1, 13);
     expect(far.error / far.value).toBeLessThan(1e-13);
   });
 

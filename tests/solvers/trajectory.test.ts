@@ -13,7 +13,7 @@ describe("constants of the trajectory", () => {
     expectClose(given(constants.s0), r.s0, REACHED);
     expectClose(given(constants.slopeAtBarrier), r.slopeAtBarrier, REACHED);
     expectClose(given(constants.amplitude), r.amplitude, REACHED);
-    expectClose(constants.decay, r.decay, REACHED);
+    expectClose(given(constants.decay), r.decay, REACHED);
     const turning = given(trajectoryOf(r.model).turning);
     expect(Math.abs(relativeGap(scaled(-turning.amplitude[0]), r.amplitudeAtS0))).toBeLessThan(REACHED);
   });
