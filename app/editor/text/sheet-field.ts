@@ -73,7 +73,8 @@ export const sheetField = StateField.define<Sheet>({
     if (transaction.docChanged) {
       met = withMet(met, places, transaction.changes);
       places = places.map(transaction.changes);
-      closed = withoutFilledBlanks(closed.map(transaction.changes), transaction.changes, transaction.newDoc);
+      const moved = withoutEmptied(closed.map(transaction.changes));
+      closed = withoutFilledBlanks(moved, transaction.changes, transaction.newDoc);
     }
     for (const effect of transaction.effects) {
       if (effect.is(applyModel)) {
@@ -89,9 +90,11 @@ export const sheetField = StateField.define<Sheet>({
         model = effect.value.model;
         workshop = { store: workshop.store, faces };
         ({ number, pieces } = list);
-        met = NOTHING;
-        const marks = Decoration.set(closedDecorations(list.fresh, doc, workshop), true).map(since);
-        const fresh = RangeSet.of(placesOf(list.fresh, doc.length), true).map(since);
+        const marks = withoutEmptied(Decoration.set(closedDecorations(list.fresh, doc, workshop), true).map(since));
+        const drawn = RangeSet.of(placesOf(list.fresh, doc.length), true);
+        // What is drawn late has been met already by what changed since it was asked for.
+        met = withMet(NOTHING, drawn, since);
+        const fresh = drawn.map(since);
         closed = merged(closed, (mark) => list.gone.has(mark.spec.of), marks);
         places = merged(places, (place) => list.gone.has(place.piece), fresh);
       } else if (effect.is(showWorking)) {
@@ -111,6 +114,11 @@ export const sheetField = StateField.define<Sheet>({
   },
   provide: (field) => EditorView.decorations.from(field, (sheet) => sheet.shown),
 });
+
+/** Without the marks whose words a change has taken away. */
+function withoutEmptied(marks: DecorationSet): DecorationSet {
+  return marks.update({ filter: (from, to, mark) => mark.point || from < to });
+}
 
 /** Takes out what is gone, puts in what is new. */
 function merged<T extends RangeValue>(set: RangeSet<T>, gone: (value: T) => boolean, fresh: RangeSet<T>): RangeSet<T> {
