@@ -117,7 +117,7 @@ test("solver seconds are counted to the person, and the refusal says when there 
     // One request cannot outrun the quota: what is queued behind it is refused in its turn.
     const last = await Desk.invent(sparing);
     const three = ["Slow3", "Slow4", "Slow5"];
-    await last.computed(three.map(formula).join(""));
+    await last.computed(three.map((name) => formula(name)).join(""));
     const afterwards = (await Promise.all(three.map((name) => last.work(name)))).filter((work) => work !== undefined);
     // Two use more than the half second up, in whatever order the three come to their turn.
     expect(afterwards).toMatchObject([{ state: "failed", message: expect.stringMatching(/used up/) }]);
