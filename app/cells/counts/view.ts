@@ -30,7 +30,8 @@ export function viewCounts(data: CountsData, presentation: Presentation): CellVi
   };
 }
 
-function stems(data: CountsData, plotted: readonly number[], name: string): Series {
+/** A law as stems, each with its error. */
+export function stems(data: Pick<CountsData, "law">, plotted: readonly number[], name: string): Series {
   const kept = plotted.flatMap((n) => {
     const probability = probabilityAt(data.law, n);
     return probability === undefined ? [] : [{ n, probability }];
@@ -51,12 +52,15 @@ function stems(data: CountsData, plotted: readonly number[], name: string): Seri
   };
 }
 
-function countsTable(data: CountsData, rows: readonly number[], withAbove: boolean): TableData {
-  const columns = [
-    { name: "n", head: "n", tex: true },
-    { name: "P(K=n)", head: "P(K=n)", tex: true },
-    { name: "P(K>n)", head: "P(K>n)", tex: true },
-  ];
+/** Rows of a law; `letter` is what is counted. */
+export function countsTable(
+  data: Pick<CountsData, "law" | "beyond">,
+  rows: readonly number[],
+  withAbove: boolean,
+  letter = "K",
+): TableData {
+  const heads = ["n", `P(${letter}=n)`, `P(${letter}>n)`];
+  const columns = heads.map((head) => ({ name: head, head, tex: true }));
   const beyond = withAbove ? (data.beyond ?? null) : null;
   const above = beyond === null ? null : probabilitiesAbove(data.law, beyond, rows);
   const entries = rows.map((n) => {
