@@ -5,4 +5,17 @@ export { type FigureLayout, layoutFigure, type PlateSize } from "./layout.ts";
 export type { Theme } from "./palette.ts";
 export { figureToPgfplots, type PgfplotsFigure, type PgfplotsOptions } from "./pgfplots.ts";
 export { FigurePlate, type FigurePlateProps } from "./plate.tsx";
-export type { Axis, Figure, Level, Series, TableColumn, TableData, TableEntry } from "./types.ts";
+export type {
+  Axis,
+  Corner,
+  Dot,
+  Figure,
+  Inset,
+  Level,
+  Panel,
+  Series,
+  TableColumn,
+  TableData,
+  TableEntry,
+  Vertical,
+} from "./types.ts";

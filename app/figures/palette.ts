@@ -78,7 +78,7 @@ export function seriesColours(figure: Figure): readonly Colour[] {
   let given = 0;
   return figure.series.map((series) => {
     if (series.role === "principal") return "ink";
-    if (series.role === "reference") return "edge";
+    if (series.role === "reference" || series.role === "thin") return "edge";
     const colour = order[given % order.length] ?? "ink";
     given += 1;
     return colour;

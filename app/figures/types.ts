@@ -8,10 +8,16 @@ export interface Figure {
   readonly x: Axis;
   readonly y: Axis;
   readonly series: readonly Series[];
-  /** Dotted horizontal references, e.g. the level 1. */
+  /** Horizontal references, e.g. the level 1. */
   readonly levels: readonly Level[];
+  /** Vertical references, e.g. the critical drift. */
+  readonly verticals?: readonly Vertical[];
   /** Said in the caption: gaps and why, bands thinner than the line. */
   readonly remarks: readonly string[];
+  /** A smaller figure in a corner that the curves leave free; under the figure where the plate is too narrow for it. */
+  readonly inset?: Inset;
+  /** Figures side by side, lettered (a), (b), …, one under the other on a narrow plate. The figure itself then draws nothing of its own. */
+  readonly panels?: readonly Panel[];
 }
 
 export interface Axis {
@@ -28,21 +34,71 @@ export interface Series {
   /** TeX, set at the series' end or start in its own colour: "s_0=5.437". */
   readonly label: string;
   readonly labelAt: "start" | "end";
-  readonly mark: "line" | "points" | "stems";
-  /** "principal" is drawn in ink, 2.4 wide; "reference" dotted; others take the colours in order. */
-  readonly role: "ordinary" | "principal" | "reference";
+  /** `band`: the area between `low` and `high` without a line; its `y` may be all null. */
+  readonly mark: "line" | "points" | "stems" | "band";
+  /**
+   * "principal" is drawn in ink, 2.4 wide; "reference" dotted; "thin" fine and grey (further orbits of a portrait); others
+   * take the colours in order.
+   */
+  readonly role: "ordinary" | "principal" | "reference" | "thin";
+  /** Takes the colour of the series of this name: points that belong to a curve. */
+  readonly colourOf?: string;
+  /** Increasing, unless `parametric`. */
   readonly x: readonly number[];
   readonly y: readonly (number | null)[];
   /** Where |y| passes below the double's range: log10 of y, used on a log axis. */
   readonly log10y?: readonly (number | null)[];
-  /** Band or bars: numerical error or interval, same length as y. */
+  /**
+   * Band or bars: numerical error or interval, same length as y. Points that have these are rings, those whose ends are null
+   * too (no interval is to be had). On a log axis a bar from 0 reaches down to the frame.
+   */
   readonly low?: readonly (number | null)[];
   readonly high?: readonly (number | null)[];
+  readonly log10low?: readonly (number | null)[];
+  readonly log10high?: readonly (number | null)[];
+  /** A curve in the plane: x need not increase, and the table and CSV give it an x of its own. */
+  readonly parametric?: boolean;
+  /** An arrowhead half-way along the curve shows where it goes. */
+  readonly arrow?: boolean;
+  /** Points of the series that bear a dot, or a label of their own. */
+  readonly dots?: readonly Dot[];
+}
+
+/** A single point of a series, set apart: the end of a curve at a jump, a fixed point. */
+export interface Dot {
+  /** Index into the series. */
+  readonly at: number;
+  /** TeX or words, set beside the point where room is; "" for none. */
+  readonly label: string;
+  /** A ring: the value is not attained there. */
+  readonly hollow: boolean;
 }
 
 export interface Level {
   readonly label: string;
   readonly y: number;
+  /** Dotted when left out; `fine`: a thin whole line, an axis through a portrait. */
+  readonly line?: "dotted" | "fine";
+}
+
+export interface Vertical {
+  readonly label: string;
+  readonly x: number;
+  readonly line?: "dotted" | "fine";
+}
+
+export type Corner = "top left" | "top right" | "bottom left" | "bottom right";
+
+export interface Inset {
+  readonly figure: Figure;
+  /** null: the corner that is freest. */
+  readonly corner: Corner | null;
+}
+
+export interface Panel {
+  /** Stands beside its letter: words or TeX; "" for the letter alone. */
+  readonly title: string;
+  readonly figure: Figure;
 }
 
 /** A table of results: each cell is a printed number or text. */
