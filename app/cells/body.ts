@@ -194,6 +194,21 @@ export class Body {
       );
   }
 
+  /** A name alone under a key, `vary: mu`: a parameter, which is then varied, or a new name. "" where none can be read. */
+  variedName(key: string): string {
+    const node = this.node(key);
+    const name = node === null ? null : this.scalar(node, "the name of a parameter, or a new name");
+    if (node === null || name === null) return "";
+    if (isName(name))
+      this.introduced.push({ name, varies: true, path: key, from: node.from, to: node.to, line: node.line });
+    else
+      this.problem(
+        node,
+        `\`${name}\` is not a name: names are letters, digits and underscores, starting with a letter.`,
+      );
+    return name;
+  }
+
   /** A name that has a meaning of its own under this key; a parameter or cell of that name would be hidden by it. */
   introduceWord(name: string, node: Yaml, path: string): void {
     this.introduced.push({ name, varies: false, path, from: node.from, to: node.to, line: node.line });

@@ -172,7 +172,7 @@ function checkVariedRows(
       [...reads.outside].some((outside) => outside === name || values.reads.get(outside)?.has(name) === true) ||
       [...reads.outsideCells].some((cell) => known.get(cell)?.parameters.has(name) === true);
     if (!depends) continue;
-    const place = draft.body?.placeOf(`rows.${name}`) ?? draft.cell.span;
+    const place = draft.body?.introduced.find((given) => given.name === name) ?? draft.cell.span;
     draft.faults.push(
       faultAt(
         draft,
