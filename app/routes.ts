@@ -15,6 +15,8 @@ export default [
   route("papers/:paperId/galley", "routes/paper.galley.tsx"),
   route("papers/:paperId/latex.zip", "routes/paper.latex.ts"),
   route("papers/:paperId/paper.pdf", "routes/paper.pdf.ts"),
+  route("papers/:paperId/plates/:cell", "routes/paper.plate.tsx"),
+  route("papers/:paperId/plates/:cell/:file", "routes/paper.plate.files.ts"),
   route("papers/:paperId/compute", "routes/paper.compute.ts"),
   route("papers/:paperId/cancel", "routes/paper.cancel.ts"),
   route("papers/:paperId/stand", "routes/paper.stand.ts"),

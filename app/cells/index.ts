@@ -9,6 +9,8 @@ export { planPaper } from "./plan.ts";
 export { captionOf } from "./presentation.ts";
 export type { Provenance } from "./provenance.ts";
 export { durationWords, provenance } from "./provenance.ts";
+export type { CellRecord } from "./record.ts";
+export { cellRecord } from "./record.ts";
 export { KINDS } from "./registry.ts";
 export type { Report, ReportedCell, ReportedValue } from "./report.ts";
 export { reportPaper } from "./report.ts";

@@ -108,7 +108,8 @@ function failureLine(cell: Cell, outcome: Outcome | undefined): number {
   return outcome?.status === "failed" ? outcome.failure.line : cell.span.line;
 }
 
-function reportedValue(value: Value): ReportedValue {
+/** A value as JSON tells it. */
+export function reportedValue(value: Value): ReportedValue {
   switch (value.type) {
     case "number":
       return quantityToJson(value.quantity);

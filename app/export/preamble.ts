@@ -2,6 +2,8 @@ import { CYRILLIC } from "./characters.ts";
 
 /** What the body of a paper needs of its preamble. */
 export interface PreambleNeeds {
+  /** A page as large as what stands on it, instead of a paper's pages. */
+  readonly cropped?: boolean;
   readonly greek: boolean;
   readonly cyrillic: boolean;
   readonly lineNumbers: boolean;
@@ -19,8 +21,10 @@ const ENVIRONMENTS: readonly (readonly [style: string, names: readonly string[]]
 /** Everything before `\begin{document}`, a line an entry. */
 export function preamble(needs: PreambleNeeds): readonly string[] {
   return [
-    "% A paper written with Halfline. Set it with:  latexmk -pdf main.tex",
-    "\\documentclass[a4paper,11pt]{amsart}",
+    "% Written with Halfline. Set it with:  latexmk -pdf main.tex",
+    needs.cropped
+      ? "\\documentclass[class=amsart,11pt,border=2mm]{standalone}"
+      : "\\documentclass[a4paper,11pt]{amsart}",
     "\\usepackage[T1]{fontenc}",
     "\\usepackage[utf8]{inputenc}",
     "\\usepackage{textcomp,lmodern}",

@@ -66,7 +66,7 @@ interface CaptionProps {
   readonly setting: Setting;
 }
 
-function Caption({ node, part, set, first, setting }: CaptionProps) {
+export function Caption({ node, part, set, first, setting }: CaptionProps) {
   const remarks = (part.part === "figure" ? set.view?.figure?.remarks : set.view?.table?.remarks) ?? [];
   return (
     <>
@@ -100,7 +100,7 @@ interface ResultTableProps {
   readonly setting: Setting;
 }
 
-function ResultTable({ name, table, setting }: ResultTableProps) {
+export function ResultTable({ name, table, setting }: ResultTableProps) {
   return (
     <section className="g-grid" aria-label={name} {...reachable}>
       <table className="g-table g-results">

@@ -1,0 +1,46 @@
+import { type Figure, figureToPgfplots } from "../figures/index.ts";
+import type { Paper } from "../paper/index.ts";
+import type { SetPaper } from "../print/index.ts";
+import type { LatexPaper } from "./latex.ts";
+import { paperMacros } from "./macros.ts";
+import { preamble } from "./preamble.ts";
+import { Printing } from "./printing.ts";
+
+/** Of a column of text and of half a one, in print. */
+export type PlateWidth = 120 | 76;
+
+const POINTS = "points.dat";
+
+/** The LaTeX source of one figure alone, on a page of its own size. Set like `paperToLatex`. */
+export function plateToLatex(
+  figure: Figure,
+  paper: Paper,
+  set: SetPaper,
+  line: number,
+  widthMm: PlateWidth,
+): LatexPaper {
+  const macros = paperMacros(paper.front.macros);
+  const printing = new Printing(set, macros.known, false);
+  const { tex, data } = figureToPgfplots(figure, {
+    dataFile: POINTS,
+    widthMm,
+    setMath: (label) => printing.math(label, line),
+    setText: (label) => printing.text(label, line),
+  });
+  const head = preamble({
+    cropped: true,
+    lineNumbers: false,
+    greek: /[\u0370-\u03ff\u1f00-\u1fff]/.test(tex),
+    cyrillic: tex.includes("\\cyr{"),
+    macros: macros.definitions,
+  });
+  const text = [...head, "\\begin{document}%", `${tex.trim()}%`, "\\end{document}", ""].join("\n");
+  return {
+    files: [
+      { name: "main.tex", text },
+      { name: POINTS, text: data },
+    ],
+    lineMap: () => line,
+    problems: printing.problems,
+  };
+}
