@@ -7,6 +7,7 @@ import { PROCESS } from "./process/model.ts";
 import { PROFILE } from "./profile/model.ts";
 import { TABLE } from "./table/model.ts";
 import { TAIL } from "./tail/model.ts";
+import { YAGLOM } from "./yaglom/model.ts";
 
 /** Every kind of cell, by the word of its fence, in the order of the manual. A new kind is a folder and a line here. */
 export const KINDS: ReadonlyMap<string, Kind> = new Map(
@@ -16,6 +17,7 @@ export const KINDS: ReadonlyMap<string, Kind> = new Map(
     defineKind(PROFILE),
     defineKind(COUNTS),
     defineKind(TAIL),
+    defineKind(YAGLOM),
     defineKind(TABLE),
     defineKind(FORMULA),
   ].map((kind) => [kind.documentation.name, kind]),

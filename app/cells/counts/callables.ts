@@ -32,7 +32,8 @@ function above(data: CountsData, n: number): Value {
   return n < 0 ? exactValue(1) : scaledValue(absorbedAbove(data.trajectory, data.starts, n));
 }
 
-function countValue(n: number, answer: (n: number) => Value): Value {
+/** What is asked of a count, where n can be one. */
+export function countValue(n: number, answer: (n: number) => Value): Value {
   if (!Number.isInteger(n)) return refusedValue(`K counts particles; ${n} is not a whole number.`);
   if (Math.abs(n) > MOST_N) return refusedValue(`${n} is beyond ${MOST_N}, the largest n asked for.`);
   return answer(n);
