@@ -1,25 +1,20 @@
 import { type Figure, figureToPgfplots } from "../figures/index.ts";
-import type { Paper } from "../paper/index.ts";
 import type { SetPaper } from "../print/index.ts";
 import type { LatexPaper } from "./latex.ts";
 import { paperMacros } from "./macros.ts";
 import { preamble } from "./preamble.ts";
 import { Printing } from "./printing.ts";
 
-/** Of a column of text and of half a one, in print. */
-export type PlateWidth = 120 | 76;
-
 const POINTS = "points.dat";
 
-/** The LaTeX source of one figure alone, on a page of its own size. Set like `paperToLatex`. */
-export function plateToLatex(
-  figure: Figure,
-  paper: Paper,
-  set: SetPaper,
-  line: number,
-  widthMm: PlateWidth,
-): LatexPaper {
-  const macros = paperMacros(paper.front.macros);
+/**
+ * The LaTeX source of one figure alone, on a page of its own size.
+ * @param set the paper it belongs to, for its macros
+ * @param line where its cell stands
+ * @param widthMm 120, as wide as a column of text in print, or 76
+ */
+export function plateToLatex(figure: Figure, set: SetPaper, line: number, widthMm: number): LatexPaper {
+  const macros = paperMacros(set.paper.front.macros);
   const printing = new Printing(set, macros.known, false);
   const { tex, data } = figureToPgfplots(figure, {
     dataFile: POINTS,

@@ -1,21 +1,18 @@
 import { useState } from "react";
-import { Command } from "../../ui/index.ts";
-import { ourMarkup } from "../../ui/markup.ts";
-import type { PlateValue, Quotation } from "./plate.server.ts";
+import { Command } from "../ui/index.ts";
+import { ourMarkup } from "../ui/markup.ts";
+import type { PlateFace, PlateValue } from "./plate.ts";
 
 interface Props {
   readonly sheet: string;
   /** Under which the plate's files lie. */
   readonly files: string;
-  readonly figure: boolean;
-  readonly table: boolean;
-  readonly values: readonly PlateValue[];
-  readonly parameters: readonly { readonly name: string; readonly note: string; readonly html: string }[];
-  readonly quotations: readonly Quotation[];
+  readonly face: PlateFace;
 }
 
 /** What stands beside a plate: its values, what they hang from, where they are quoted, and what can be taken away. */
-export function PlateBeside({ sheet, files, figure, table, values, parameters, quotations }: Props) {
+export function PlateBeside({ sheet, files, face }: Props) {
+  const { figure, markup, values, parameters, quotations } = face;
   return (
     <aside className="plate-beside" aria-label="About this plate">
       {values.length > 0 ? <Values values={values} /> : null}
@@ -55,7 +52,7 @@ export function PlateBeside({ sheet, files, figure, table, values, parameters, q
           {figure ? <File href={`${files}/plate.svg`}>Plate as SVG</File> : null}
           {figure ? <File href={`${files}/plate.pdf`}>Plate as PDF, 120 mm wide</File> : null}
           {figure ? <File href={`${files}/points.csv`}>The points, as CSV</File> : null}
-          {table ? <File href={`${files}/table.csv`}>The table, as CSV</File> : null}
+          {markup.table !== "" ? <File href={`${files}/table.csv`}>The table, as CSV</File> : null}
           <File href={`${files}/result.json`}>The whole result, as JSON</File>
         </ul>
       </section>
