@@ -9,6 +9,7 @@ export default [
   route("shelf", "routes/shelf.tsx"),
   route("settings", "routes/settings.tsx"),
   route("specimen", "routes/specimen.ts"),
+  route("manual", "routes/manual.tsx"),
 
   route("papers/:paperId", "routes/paper.tsx"),
   route("papers/:paperId/title-page", "routes/paper.title-page.tsx"),

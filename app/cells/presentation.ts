@@ -4,7 +4,7 @@ import type { Cell, Yaml } from "../paper/index.ts";
 import type { Body } from "./body.ts";
 import { parsedFormula } from "./body.ts";
 import { evaluated } from "./context.ts";
-import type { KindDocumentation } from "./kind.ts";
+import type { KeyDocumentation, KindDocumentation } from "./kind.ts";
 import { didYouMean, listOfNames } from "./names.ts";
 
 type YamlMap = Extract<Yaml, { yaml: "map" }>;
@@ -27,9 +27,42 @@ export interface Presentation {
   readonly body: YamlMap | null;
 }
 
-/** Keys that every kind has, and those of kinds with a figure. */
+/** Keys that every kind has, or every kind with a figure. None of them changes a result. */
+export const PRESENTATION_KEYS: readonly (KeyDocumentation & { readonly figuresOnly: boolean })[] = [
+  {
+    name: "caption",
+    meaning: "Markdown with math and :value, set beneath a figure and above a table",
+    required: false,
+    fallback: null,
+    figuresOnly: false,
+  },
+  {
+    name: "show",
+    meaning: "which of its parts appear in the paper; `none` prints nothing",
+    required: false,
+    fallback: "its first part",
+    figuresOnly: false,
+  },
+  {
+    name: "axes",
+    meaning: "ranges, and which axes are logarithmic: {x: 0 to 4, log: y}",
+    required: false,
+    fallback: "from the data",
+    figuresOnly: true,
+  },
+  {
+    name: "labels",
+    meaning: "TeX at the axes' ends: {x: n, y: p_n}",
+    required: false,
+    fallback: "the kind's",
+    figuresOnly: true,
+  },
+];
+
+/** The names of those that a kind has. */
 export function presentationKeys(documentation: KindDocumentation): readonly string[] {
-  return documentation.parts.includes("figure") ? ["caption", "show", "axes", "labels"] : ["caption", "show"];
+  const hasFigure = documentation.parts.includes("figure");
+  return PRESENTATION_KEYS.filter(({ figuresOnly }) => hasFigure || !figuresOnly).map(({ name }) => name);
 }
 
 /** Which parts appear. Notes problems in `show`. */

@@ -11,6 +11,7 @@ export type {
   PrintedPart,
   ReferenceNode,
 } from "./nodes.ts";
+export { NUMBER_ATTRIBUTES } from "./numbers.ts";
 export { plainText, referenceText } from "./plain-text.ts";
 export { PRINTED_PARTS } from "./printed.ts";
 export { readPaper } from "./read.ts";

@@ -12,7 +12,17 @@ export interface OptionFault {
 }
 
 const mostDigits = 15;
-const attributeNames = ["digits", "decimals", "as", "with", "unit"];
+
+/** What may stand in the braces after a number, for checking, completion and the manual. */
+export const NUMBER_ATTRIBUTES: readonly { readonly form: string; readonly meaning: string }[] = [
+  { form: "digits=6", meaning: "significant digits, 1 to 15; 6 when nothing is said" },
+  { form: "decimals=3", meaning: "digits after the decimal point, 0 to 15" },
+  { form: "as=scientific", meaning: "plain, scientific or percent" },
+  { form: "with=se", meaning: "the standard error in brackets after the number: 11.4(3)" },
+  { form: "unit=yes", meaning: "with the unit of the parameter it reads" },
+];
+
+const attributeNames = NUMBER_ATTRIBUTES.map(({ form }) => form.split("=")[0] ?? "");
 
 /** How a number is to be printed, from its attributes; what is not allowed is left out and reported. */
 export function readNumberOptions(attributes: Attributes): { options: Options; faults: OptionFault[] } {
