@@ -2,6 +2,7 @@ import type { Quantity, Scope, Value } from "../formulas/index.ts";
 import { SolverError } from "../solvers/index.ts";
 import type { ReadCell } from "./context.ts";
 import { CellFault, ComputeContext, evaluated, NotKnownYet } from "./context.ts";
+import type { Branch } from "./kind.ts";
 import { KINDS } from "./registry.ts";
 import type { CellResult, CellTask, Outcome, Plan } from "./types.ts";
 import { numberValue } from "./values.ts";
@@ -151,6 +152,7 @@ export function planningContext(task: CellTask): ComputeContext {
     varied: task.recomputed?.varied ?? [],
     recomputedCells: cellsIn(task.recomputed?.cells ?? []),
     with: notYet,
+    branches: notYet,
   });
 }
 
@@ -171,7 +173,43 @@ function contextOf(
       const again = recomputedParameters(task, { ...parameters, ...values });
       return contextOf(task, again, recomputedResults(task, again, results), () => undefined);
     },
+    branches: (values) => branchesOf(task, recomputedParameters(task, { ...parameters, ...values }), results),
   });
+}
+
+/** Branches of the cells that are computed again; one whose inputs another of them gives, or which refuses them, has none. */
+function branchesOf(
+  task: CellTask,
+  parameters: Readonly<Record<string, Quantity>>,
+  results: ReadonlyMap<string, ReadCell>,
+): ReadonlyMap<string, Branch> {
+  const fixed = new Map(results);
+  for (const { id } of task.recomputed?.cells ?? []) fixed.delete(id);
+  const branches = new Map<string, Branch>();
+  for (const inner of task.recomputed?.cells ?? []) {
+    const branch = branchAt(inner, parameters, fixed);
+    if (branch !== null) branches.set(inner.id, branch);
+  }
+  return branches;
+}
+
+/** The branch of a cell; null where its kind knows none, its inputs are not known, or they are refused. */
+export function branchAt(
+  task: CellTask,
+  parameters: Readonly<Record<string, Quantity>>,
+  results: ReadonlyMap<string, ReadCell>,
+): Branch | null {
+  const kind = KINDS.get(task.kind);
+  if (kind?.branch === undefined) return null;
+  try {
+    return kind.branch(
+      task.model,
+      contextOf(task, parameters, results, () => undefined),
+    );
+  } catch (error) {
+    if (error instanceof CellFault || error instanceof SolverError) return null;
+    throw error;
+  }
 }
 
 function scopeOf(parameters: Readonly<Record<string, Quantity>>, results: ReadonlyMap<string, ReadCell>): Scope {

@@ -1,6 +1,7 @@
 import type { Formula, Quantity, Scope, Value } from "../formulas/index.ts";
 import { compileFormula, FormulaError, newBudget, toDouble } from "../formulas/index.ts";
 import type { CellReference } from "./body.ts";
+import type { Branch } from "./kind.ts";
 import type { CellResult } from "./types.ts";
 
 /** A cell that cannot compute: which entry of its body is at fault, and what would do. */
@@ -36,6 +37,7 @@ export interface ContextParts {
   readonly varied: readonly string[];
   readonly recomputedCells: number;
   readonly with: (values: Readonly<Record<string, Quantity>>) => ComputeContext;
+  readonly branches: (values: Readonly<Record<string, Quantity>>) => ReadonlyMap<string, Branch>;
 }
 
 /** What a computation may look at: parameters, results of the cells it reads, and a way to tell how far it is. */
@@ -60,6 +62,11 @@ export class ComputeContext {
   /** The same context with varied parameters set, and everything that reads them computed again. */
   with(values: Readonly<Record<string, Quantity>>): ComputeContext {
     return this.#parts.with(values);
+  }
+
+  /** The branches, cell by cell, of what `with` would compute again; found at once, nothing is computed. */
+  branches(values: Readonly<Record<string, Quantity>>): ReadonlyMap<string, Branch> {
+    return this.#parts.branches(values);
   }
 
   /** Result of a cell named in the body. @throws CellFault when it has none. */

@@ -42,6 +42,29 @@ export interface CallableDocumentation {
   readonly meaning: string;
 }
 
+/**
+ * The branch of a theory that the inputs of a cell decide: where it changes, values may jump, and no curve is drawn across.
+ */
+export interface Branch {
+  /** Equal names, equal branch: "between". */
+  readonly name: string;
+  /** What holds in it, to end a sentence: "K is infinite with positive probability". */
+  readonly holds: string;
+  /** Where it may end, each to end a sentence: "the drift is critical". Two branches meet where both have the same one, the first such. */
+  readonly borders: readonly string[];
+  /** Its border belongs to it. */
+  readonly closed: boolean;
+}
+
+/** What a computation costs that varies something. */
+export interface Cost {
+  /** What one point is called: "row". */
+  readonly noun: string;
+  readonly points: number;
+  /** Cells computed again at each point. */
+  readonly cells: number;
+}
+
 /** What formulas may read of a cell. */
 export interface Members {
   readonly values: readonly string[];
@@ -61,9 +84,9 @@ export interface Computed<Data> {
 /**
  * A kind of cell. One is a folder with model.ts and view.ts, and a line in registry.ts; nothing else branches on kinds.
  *
- * Life: `read` (planning, on each keystroke) → `inspect` (planning, when no other cell's value enters) → `compute` (in a
+ * Life: `read` (planning, on each keystroke) → `inspect`, `branch` and `cost` (planning, when no other cell's value enters) → `compute` (in a
  * worker) → `call` and `view` (wherever the result is shown, from its data alone). All are pure; `read` notes problems in
- * the body and never throws; `inspect` and `compute` throw CellFault or SolverError, `call` SolverError; `view` never throws.
+ * the body and never throws; `inspect`, `branch`, `cost` and `compute` throw CellFault or SolverError, `call` SolverError; `view` never throws.
  */
 export interface KindOf<Model, Data> {
   readonly documentation: KindDocumentation;
@@ -76,6 +99,10 @@ export interface KindOf<Model, Data> {
   members(model: Model): Members;
   /** Refuses inputs out of range. False: it takes longer than some milliseconds. */
   inspect(model: Model, context: ComputeContext): boolean;
+  /** The branch that the inputs decide, found at once. Absent: its values depend on its inputs without a jump. */
+  branch?(model: Model, context: ComputeContext): Branch;
+  /** What varying costs, told before it is computed; null where nothing is computed again. Absent: it never varies. */
+  cost?(model: Model, context: ComputeContext): Cost | null;
   compute(model: Model, context: ComputeContext): Computed<Data>;
   /** `K(3)`: member is "" for the cell itself. undefined when it has no such callable. */
   call(data: Data, member: string, args: readonly Quantity[]): Value | undefined;
@@ -89,6 +116,8 @@ export type Kind = KindOf<unknown, unknown>;
  * data from its `compute`: both travel with the kind's name.
  */
 export function defineKind<Model, Data>(kind: KindOf<Model, Data>): Kind {
+  const branch = kind.branch?.bind(kind);
+  const cost = kind.cost?.bind(kind);
   return {
     documentation: kind.documentation,
     solver: kind.solver,
@@ -96,6 +125,8 @@ export function defineKind<Model, Data>(kind: KindOf<Model, Data>): Kind {
     read: (body) => kind.read(body),
     members: (model) => kind.members(model as Model),
     inspect: (model, context) => kind.inspect(model as Model, context),
+    branch: branch && ((model, context) => branch(model as Model, context)),
+    cost: cost && ((model, context) => cost(model as Model, context)),
     compute: (model, context) => kind.compute(model as Model, context),
     call: (data, member, args) => kind.call(data as Data, member, args),
     view: (data, presentation) => kind.view(data as Data, presentation),

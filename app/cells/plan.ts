@@ -52,7 +52,7 @@ function plannedCell(
   parameters: ParameterValues,
 ): PlannedCell {
   const { cell } = draft;
-  const quick = inspect(draft, tasks);
+  const { quick, cost } = inspect(draft, tasks);
   const key = keys.key(cell.id);
   const first = [...draft.faults].sort((a, b) => a.from - b.from)[0];
   const used = parameters.planned.filter(({ name }) => reads.parameters.has(name));
@@ -71,21 +71,24 @@ function plannedCell(
     task: key === null ? null : tasks.task(cell.id),
     show: draft.show,
     quick,
+    cost,
   };
 }
 
 /** Inputs that need no other cell's value are judged now, so that a wrong one is shown before anything is computed. */
-function inspect(draft: Draft, tasks: Tasks): boolean {
-  if (draft.kind === null || draft.faults.length > 0) return true;
+function inspect(draft: Draft, tasks: Tasks): Pick<PlannedCell, "quick" | "cost"> {
+  const nothing = { quick: true, cost: null };
+  if (draft.kind === null || draft.faults.length > 0) return nothing;
   const task: CellTask | null = tasks.task(draft.cell.id);
-  if (task === null) return true;
+  if (task === null) return nothing;
   try {
-    return draft.kind.inspect(draft.model, planningContext(task));
+    const context = planningContext(task);
+    return { quick: draft.kind.inspect(draft.model, context), cost: draft.kind.cost?.(draft.model, context) ?? null };
   } catch (error) {
-    if (error instanceof NotKnownYet) return true;
+    if (error instanceof NotKnownYet) return nothing;
     if (!(error instanceof CellFault)) throw error;
     draft.faults.push(faultAt(draft, draft.body?.placeOf(error.path) ?? draft.cell.span, error.message));
-    return true;
+    return nothing;
   }
 }
 

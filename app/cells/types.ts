@@ -1,6 +1,7 @@
 import type { Figure, TableData } from "../figures/index.ts";
 import type { Formula, Quantity, Value } from "../formulas/index.ts";
 import type { Cell, Problem } from "../paper/index.ts";
+import type { Cost } from "./kind.ts";
 
 /**
  * A paper planned: which cells there are, in dependency order, each with its key.
@@ -57,6 +58,8 @@ export interface PlannedCell {
   readonly show: readonly string[];
   /** True for kinds that take milliseconds: their results may be previewed in the page. */
   readonly quick: boolean;
+  /** What varying costs, where it is known before anything is computed. */
+  readonly cost: Cost | null;
 }
 
 /** Plain JSON; can be posted to a worker thread. */

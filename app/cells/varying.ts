@@ -3,6 +3,7 @@ import { exact, toDouble } from "../formulas/index.ts";
 import type { Body } from "./body.ts";
 import type { ComputeContext } from "./context.ts";
 import { CellFault } from "./context.ts";
+import type { Cost } from "./kind.ts";
 import { exactValue } from "./values.ts";
 
 /**
@@ -88,8 +89,13 @@ export function checkCost(points: number, path: string, context: ComputeContext,
 }
 
 /** How many computations of cells so many points take. */
-export function recomputations(points: number, context: ComputeContext): number {
+function recomputations(points: number, context: ComputeContext): number {
   return context.varied.length === 0 ? 0 : points * context.recomputedCells;
+}
+
+/** What so many points cost; null where nothing is computed again. */
+export function costOf(points: number, context: ComputeContext, { noun }: VaryingLimits): Cost | null {
+  return recomputations(points, context) === 0 ? null : { noun, points, cells: context.recomputedCells };
 }
 
 /** Whether so many points take a moment only. */

@@ -16,6 +16,7 @@ export type {
   Pair,
   ProcessModel,
   Refusal,
+  Regime,
   ScaledEstimate,
   Start,
   Starts,

@@ -7,6 +7,7 @@ import { CellFault } from "../context.ts";
 import type { KindOf } from "../kind.ts";
 import { documentedMembers } from "../kind.ts";
 import { estimateValue, refusedValue, textValue } from "../values.ts";
+import { branchOf } from "./branch.ts";
 import { PROCESS_DOCUMENTATION } from "./documentation.ts";
 import type { OffspringModel } from "./offspring.ts";
 import { offspringOf, readOffspring } from "./offspring.ts";
@@ -46,6 +47,8 @@ export const PROCESS: KindOf<ProcessCell, ProcessData> = {
     processModel(model, context);
     return true;
   },
+
+  branch: (model, context) => branchOf(processModel(model, context)),
 
   compute(cell, context) {
     const model = processModel(cell, context);

@@ -8,7 +8,7 @@ import type { KindOf } from "../kind.ts";
 import { listOfNames } from "../names.ts";
 import { refusedValue } from "../values.ts";
 import type { VariedValues, VaryingLimits } from "../varying.ts";
-import { checkCost, contextAt, isQuick, readVarying, recomputedWords, valuesInSteps } from "../varying.ts";
+import { checkCost, contextAt, costOf, isQuick, readVarying, recomputedWords, valuesInSteps } from "../varying.ts";
 import { TABLE_DOCUMENTATION } from "./documentation.ts";
 import { viewTable } from "./view.ts";
 
@@ -44,6 +44,8 @@ export const TABLE: KindOf<TableCell, TableCellData> = {
   inspect(model, context) {
     return isQuick(rowCount(rowValues(model, context)), context);
   },
+
+  cost: (model, context) => costOf(rowCount(rowValues(model, context)), context, LIMITS),
 
   compute(model, context) {
     const rows = rowValues(model, context);
