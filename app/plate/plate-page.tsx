@@ -15,6 +15,7 @@ interface Props {
 
 /** Widths a plate is laid out for [px]: text in it keeps its size, so a narrow window gets a plate of its own. */
 const WIDE = 940;
+const WIDE_HEIGHT = 540;
 const NARROW = 358;
 
 /** One figure or table of a paper, large. */
@@ -35,14 +36,14 @@ export function PlatePage({ paperId, paperTitle, face }: Props) {
           {figure ? (
             <>
               <div className="plate-wide">
-                <FigurePlate figure={figure} width={WIDE} />
+                <FigurePlate figure={figure} width={WIDE} height={WIDE_HEIGHT} />
               </div>
               <div className="plate-narrow">
                 <FigurePlate figure={figure} width={NARROW} />
               </div>
             </>
           ) : null}
-          <div className="g-paper plate-caption" {...ourMarkup(markup.caption)} />
+          <div className="plate-caption" {...ourMarkup(markup.caption)} />
           {markup.table === "" ? null : <Rows title="Table" open={!figure} html={markup.table} />}
           {markup.points === "" ? null : <Rows title="Points of the figure" open={false} html={markup.points} />}
         </div>
