@@ -34,6 +34,7 @@ describe("what is heard", () => {
     sound: true,
     key: slot,
     strands: [],
+    changed: [],
     needs: null,
     viewSign: "",
   });

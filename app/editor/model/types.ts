@@ -45,7 +45,8 @@ export interface PieceDelta {
 /** Text set in line: what a caption, a title or an entry of the bibliography consists of. */
 export type Run =
   | { readonly run: "text"; readonly text: string }
-  | { readonly run: "math"; readonly tex: string }
+  /** `numbers`: those that are bound in it. */
+  | { readonly run: "math"; readonly tex: string; readonly numbers?: readonly NumberFace[] }
   | { readonly run: "number"; readonly number: NumberFace }
   | { readonly run: "code"; readonly text: string }
   | { readonly run: "emphasis" | "strong" | "deleted"; readonly runs: readonly Run[] }
@@ -53,8 +54,13 @@ export type Run =
 
 /** What is typeset in place of its source. */
 export type Content =
-  | { readonly content: "math"; readonly tex: string }
-  | { readonly content: "display"; readonly tex: string; readonly number: string }
+  | { readonly content: "math"; readonly tex: string; readonly numbers?: readonly NumberFace[] }
+  | {
+      readonly content: "display";
+      readonly tex: string;
+      readonly number: string;
+      readonly numbers?: readonly NumberFace[];
+    }
   | { readonly content: "number"; readonly number: NumberFace }
   /** A reference or a citation. `amiss`: it leads nowhere. */
   | { readonly content: "pointer"; readonly text: string; readonly amiss: boolean }
@@ -118,7 +124,15 @@ export interface NumberFace {
   /** Digits which the error does not support: grey. */
   readonly unknown: string;
   readonly rest: string;
+  /** As in the text. */
+  readonly formula: string;
+  /** How many digits the error supports; null: all of them, or it is no number. */
+  readonly good: number | null;
   readonly state: NumberState;
+  /** Slots of the cells it reads: their cords end at it. */
+  readonly cells: readonly string[];
+  /** Places in the rule of the parameters it reads itself: their strands end at it. */
+  readonly reads: readonly number[];
   /** Places of its parameters in the rule: the colours of its underline. */
   readonly strands: readonly number[];
   /** "from Figure 1, hangs from mu and beta, current": what is said besides the digits. */
@@ -186,7 +200,10 @@ export interface CellFace {
   readonly sound: boolean;
   /** Present key, to ask whether a result is kept under it. */
   readonly key: string | null;
+  /** Places in the rule of the parameters it hangs from, in the order of the rule. */
   readonly strands: readonly number[];
+  /** Those of them whose change has put it out of date. */
+  readonly changed: readonly number[];
   /** For waiting: the cell it needs. */
   readonly needs: { readonly title: string; readonly slot: string } | null;
   /** Of the view to draw; equal signs, equal view. */

@@ -97,6 +97,7 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
       sound: planned.key !== null,
       key: planned.key,
       strands: planned.parameters.flatMap((name) => strands.get(name) ?? []),
+      changed: state.causes.flatMap((cause) => (cause.cause === "parameter" ? (strands.get(cause.name) ?? []) : [])),
       needs: waited === undefined ? null : { title: titleOfId(waited.id), slot: waited.slot },
       viewSign: result === undefined ? "" : viewSign(result, planned, drawing.plan),
     };

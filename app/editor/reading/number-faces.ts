@@ -65,7 +65,11 @@ function faceOf(
     known: printed?.sheet.known ?? textOf(value),
     unknown: printed?.sheet.unknown ?? "",
     rest: printed?.sheet.rest ?? "",
+    formula: number.formula.trim(),
+    good: printed !== null && Number.isFinite(printed.supported) ? printed.supported : null,
     state,
+    cells: needs.flatMap((id) => plan.byId.get(id)?.slot ?? []),
+    reads: read.parameters.flatMap((name) => strands.get(name) ?? []),
     strands: parameters.flatMap((name) => strands.get(name) ?? []),
     said,
   };

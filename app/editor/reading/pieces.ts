@@ -4,7 +4,7 @@ import type { Content, Piece } from "../model/types.ts";
 import { type Collecting, lineEnd, lineStart, placeOf, text, words } from "./collecting.ts";
 import { environmentPieces } from "./environment-pieces.ts";
 import type { NumberFaces } from "./number-faces.ts";
-import { referenceText, runsOf } from "./runs.ts";
+import { boundIn, referenceText, runsOf } from "./runs.ts";
 
 type NodeOf<Name extends Nodes["type"]> = Extract<Nodes, { type: Name }>;
 type Drawers = { readonly [Name in Nodes["type"]]?: (node: NodeOf<Name>, into: Collecting) => void };
@@ -61,13 +61,14 @@ const DRAWERS: Drawers = {
     }
   },
   inlineMath(node, into) {
-    set(node, into, { content: "math", tex: mathTex(node, into.numbers.tex) });
+    set(node, into, { content: "math", tex: mathTex(node, into.numbers.tex), ...boundIn(node, into.numbers) });
   },
   math(node, into) {
     const content = {
       content: "display",
       tex: mathTex(node, into.numbers.tex),
       number: node.data?.number ?? "",
+      ...boundIn(node, into.numbers),
     } as const;
     set(node, into, content, true);
   },

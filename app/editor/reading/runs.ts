@@ -1,7 +1,10 @@
 import type { PhrasingContent } from "mdast";
 import { type BibliographyEntry, bibliographyItem, citationText, mathTex, type Target } from "../../paper/index.ts";
-import type { Run } from "../model/types.ts";
+import type { NumberFace, Run } from "../model/types.ts";
 import type { NumberFaces } from "./number-faces.ts";
+
+/** An inline or a displayed formula of the tree. */
+type MathNode = Parameters<typeof mathTex>[0];
 
 /** Running text of the paper as runs: what captions, titles and table entries are set from. */
 export function runsOf(nodes: readonly PhrasingContent[], numbers: NumberFaces): Run[] {
@@ -19,7 +22,7 @@ function runOf(node: PhrasingContent, numbers: NumberFaces): Run[] {
     case "inlineCode":
       return [{ run: "code", text: node.value }];
     case "inlineMath":
-      return [{ run: "math", tex: mathTex(node, numbers.tex) }];
+      return [{ run: "math", tex: mathTex(node, numbers.tex), ...boundIn(node, numbers) }];
     case "emphasis":
     case "strong":
       return [{ run: node.type, runs: runsOf(node.children, numbers) }];
@@ -43,6 +46,12 @@ function runOf(node: PhrasingContent, numbers: NumberFaces): Run[] {
     default:
       return [];
   }
+}
+
+/** The numbers that are bound in a formula; nothing where there are none. */
+export function boundIn(node: MathNode, numbers: NumberFaces): { numbers?: readonly NumberFace[] } {
+  const bound = node.data?.numbers ?? [];
+  return bound.length === 0 ? {} : { numbers: bound.map(({ number }) => numbers.face(number)) };
 }
 
 /** "Theorem 2.1", "equation (3)", "Figure 2"; the label itself where it leads nowhere. */

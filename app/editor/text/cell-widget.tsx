@@ -35,6 +35,7 @@ export class CellWidget extends WidgetType {
     const made = element("div", "hl-cell");
     const root = createRoot(made);
     roots.set(made, root);
+    made.dataset.slot = this.face.slot;
     this.draw(root, view);
     return made;
   }
@@ -42,6 +43,7 @@ export class CellWidget extends WidgetType {
   override updateDOM(dom: HTMLElement, view: EditorView): boolean {
     const root = roots.get(dom);
     if (root === undefined) return false;
+    dom.dataset.slot = this.face.slot;
     this.draw(root, view);
     return true;
   }

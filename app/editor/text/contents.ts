@@ -1,5 +1,6 @@
 import { renderMath } from "../../ui/math.ts";
 import type { Content, FrontFace, NumberFace, Run } from "../model/types.ts";
+import { noteQuotes } from "../strands/quoted.ts";
 import { element } from "./element.ts";
 
 type Macros = Readonly<Record<string, string>>;
@@ -8,10 +9,10 @@ type Setters = { readonly [Name in Content["content"]]: Setter<Extract<Content, 
 
 /** How each content is set; a new content is one line here. */
 const SETTERS: Setters = {
-  math: (content, macros) => math(content.tex, false, macros),
+  math: (content, macros) => math(content.tex, false, macros, content.numbers),
   display: (content, macros) => {
     const number = content.number === "" ? [] : [element("span", "hl-display-number", [`(${content.number})`])];
-    return element("div", "hl-display", [math(content.tex, true, macros), ...number]);
+    return element("div", "hl-display", [math(content.tex, true, macros, content.numbers), ...number]);
   },
   number: (content) => number(content.number),
   pointer: ({ text, amiss }) => element("span", amiss ? "hl-pointer hl-amiss" : "hl-pointer", [text]),
@@ -43,7 +44,7 @@ function run(given: Run, macros: Macros): Node {
     case "text":
       return document.createTextNode(given.text);
     case "math":
-      return math(given.tex, false, macros);
+      return math(given.tex, false, macros, given.numbers);
     case "number":
       return number(given.number);
     case "code":
@@ -59,9 +60,10 @@ function run(given: Run, macros: Macros): Node {
   }
 }
 
-function math(tex: string, display: boolean, macros: Macros): HTMLElement {
+function math(tex: string, display: boolean, macros: Macros, numbers: readonly NumberFace[] = []): HTMLElement {
   const made = element("span", display ? "hl-math hl-math-display" : "hl-math");
   made.innerHTML = renderMath(tex, display, macros);
+  noteQuotes(made, numbers);
   return made;
 }
 
@@ -108,7 +110,7 @@ function number(face: NumberFace): HTMLElement {
   const [first, second] = [face.strands[0], face.strands[1] ?? face.strands[0]];
   if (first !== undefined) made.style.setProperty("--a", strandColour(first));
   if (second !== undefined) made.style.setProperty("--b", strandColour(second));
-  made.title = face.said;
+  noteQuotes(made, [face]);
   const mark = MARKS[face.state];
   const after = AFTER[face.state];
   return element("span", "hl-number-place", [

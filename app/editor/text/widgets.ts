@@ -92,5 +92,5 @@ export class WidgetStore {
 }
 
 function signOf(content: Content): string {
-  return content.content === "math" ? `m${content.tex}` : JSON.stringify(content);
+  return content.content === "math" && content.numbers === undefined ? `m${content.tex}` : JSON.stringify(content);
 }
