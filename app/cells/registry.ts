@@ -1,5 +1,6 @@
 import { COUNTS } from "./counts/model.ts";
 import { FORMULA } from "./formula/model.ts";
+import { GENERATING_FUNCTION } from "./generating_function/model.ts";
 import type { Kind } from "./kind.ts";
 import { defineKind } from "./kind.ts";
 import { PARAMETERS } from "./parameters/model.ts";
@@ -15,6 +16,7 @@ export const KINDS: ReadonlyMap<string, Kind> = new Map(
     defineKind(PARAMETERS),
     defineKind(PROCESS),
     defineKind(PROFILE),
+    defineKind(GENERATING_FUNCTION),
     defineKind(COUNTS),
     defineKind(TAIL),
     defineKind(YAGLOM),

@@ -1,20 +1,9 @@
 import { describe, expect, test } from "vitest";
 import { viewCell } from "../../app/cells/index.ts";
 import { log10Of, toDouble } from "../../app/formulas/index.ts";
-import type { ReferenceEntry } from "../solvers/reference.ts";
 import { references } from "../solvers/reference.ts";
 import { cell, computed, LARVAE, plannedCell, quantityOf, reasonOf, valueIn } from "./papers.ts";
-
-/** The process of a reference entry as a paper writes it. */
-function processOf({ model }: ReferenceEntry): string {
-  const { offspring } = model;
-  const law =
-    offspring.law === "finite"
-      ? `{${offspring.probabilities.map((p, k) => `${k}: ${p}`).join(", ")}}`
-      : `{law: ${offspring.law}, mean: ${offspring.mean}}`;
-  const lines = [`drift: ${model.drift}`, `rate: ${model.rate}`, `diffusion: ${model.diffusion}`, `offspring: ${law}`];
-  return cell("process larvae", ...lines);
-}
+import { referenceProcess } from "./reference-process.ts";
 
 /** Relative agreement, also far below the range of doubles, and an error that holds and is not a caricature. */
 function agrees(value: Parameters<typeof quantityOf>[0], reference: string, relative: number): void {
@@ -31,7 +20,7 @@ function agrees(value: Parameters<typeof quantityOf>[0], reference: string, rela
 // Source of the equations: J. Berestycki, É. Brunet, S. C. Harris, P. Miłoś, J. Funct. Anal. 273 (2017) 2107–2143.
 // Numbers computed by an independent method: Cauchy integral of B_s on |s| = r < s0 at 65 digits; mean 1/B_0.
 describe.each(references.map((entry) => [entry.id, entry] as const))("limit law of %s", (_, entry) => {
-  const text = `${processOf(entry)}${cell("yaglom Y", "of: larvae", "up_to: 120")}`;
+  const text = `${referenceProcess(entry)}${cell("yaglom Y", "of: larvae", "up_to: 120")}`;
   const result = computed(text).results.get("Y");
 
   test("mean, P(Y = 1) and the constant of its tail", () => {

@@ -12,7 +12,8 @@ export function profileValue(trajectory: Trajectory, position: Quantity, paramet
   const answer = profileAt(trajectory, x, s);
   if ("refused" in answer) return refusedValue(answer.refused);
   const alongX = absoluteError(position) === 0 ? 0 : slopeSize(trajectory, x, s) * absoluteError(position);
-  const alongS = absoluteError(given) === 0 ? 0 : spreadInS(trajectory, x, s, answer.value, absoluteError(given));
+  const isExact = absoluteError(given) === 0 || isTurning(trajectory, s, absoluteError(given));
+  const alongS = isExact ? 0 : spreadInS(trajectory, x, s, answer.value, absoluteError(given));
   return numberValue(approximate(answer.value, answer.error + alongX + alongS));
 }
 
@@ -21,6 +22,12 @@ function atMostTurning(trajectory: Trajectory, s: number, error: number): number
   const { s0 } = profileConstants(trajectory);
   if ("refused" in s0 || s <= s0.value) return s;
   return s - error <= s0.value + s0.error ? s0.value : s;
+}
+
+/** s0 as a cell gives it, error and all: no other number, so that what is read there owes nothing to that error. */
+function isTurning(trajectory: Trajectory, s: number, error: number): boolean {
+  const { s0 } = profileConstants(trajectory);
+  return !("refused" in s0) && s === s0.value && error <= s0.error;
 }
 
 function slopeSize(trajectory: Trajectory, x: number, s: number): number {
