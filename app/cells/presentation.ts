@@ -6,6 +6,7 @@ import { parsedFormula } from "./body.ts";
 import { evaluated } from "./context.ts";
 import type { KeyDocumentation, KindDocumentation } from "./kind.ts";
 import { didYouMean, listOfNames } from "./names.ts";
+import { defaultSymbol } from "./parameters/symbol.ts";
 
 type YamlMap = Extract<Yaml, { yaml: "map" }>;
 type AxisName = "x" | "y";
@@ -25,6 +26,8 @@ export interface Presentation {
   readonly y: AxisLook;
   /** The body as it is now, for heads and digits of columns. */
   readonly body: YamlMap | null;
+  /** TeX of a name: a parameter's own symbol, or as its letters say. */
+  symbolOf(name: string): string;
 }
 
 /** Keys that every kind has, or every kind with a figure. None of them changes a result. */
@@ -99,7 +102,11 @@ export function checkPresentation(body: Body): void {
 }
 
 /** The presentation of a cell as its body has it now; what is not right there is left as the kind has it. */
-export function presentationOf(cell: Cell, parameters: Scope): Presentation {
+export function presentationOf(
+  cell: Cell,
+  parameters: Scope,
+  symbols: ReadonlyMap<string, string> = new Map(),
+): Presentation {
   const axes = entriesOf(cell.body, "axes");
   const labels = entriesOf(cell.body, "labels");
   const look = (axis: AxisName): AxisLook => ({
@@ -107,7 +114,8 @@ export function presentationOf(cell: Cell, parameters: Scope): Presentation {
     scale: scaleOf(axes, axis),
     label: scalarText(labels.get(axis)),
   });
-  return { name: cell.name, x: look("x"), y: look("y"), body: cell.body };
+  const symbolOf = (name: string) => symbols.get(name) ?? defaultSymbol(name);
+  return { name: cell.name, x: look("x"), y: look("y"), body: cell.body, symbolOf };
 }
 
 /** A cell's caption, Markdown with math and values, and where it stands in the paper; null when it has none. */

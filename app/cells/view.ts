@@ -17,5 +17,6 @@ export function viewCell(
 ): CellView {
   const kind = KINDS.get(result.kind);
   if (kind === undefined || result.kind !== planned.kind) return NOTHING;
-  return kind.view(result.data, presentationOf(planned.cell, paperScope(plan, new Map())));
+  const symbols = new Map(plan.parameters.map(({ name, symbol }) => [name, symbol]));
+  return kind.view(result.data, presentationOf(planned.cell, paperScope(plan, new Map()), symbols));
 }

@@ -1,7 +1,6 @@
 import type { TableColumn, TableData } from "../../figures/index.ts";
 import type { PrintOptions, Value } from "../../formulas/index.ts";
 import type { Yaml } from "../../paper/index.ts";
-import { defaultSymbol } from "../parameters/symbol.ts";
 import type { Presentation } from "../presentation.ts";
 import { tableEntry } from "../table-parts.ts";
 import type { CellView } from "../types.ts";
@@ -16,7 +15,7 @@ export function viewTable(data: TableCellData, presentation: Presentation): Cell
   const names = inBody.length === Object.keys(data.columns).length ? inBody : Object.keys(data.columns);
   const rowNames = Object.keys(data.rows);
   const columns = [
-    ...rowNames.map((name): TableColumn => ({ name, head: defaultSymbol(name), tex: true })),
+    ...rowNames.map((name): TableColumn => ({ name, head: presentation.symbolOf(name), tex: true })),
     ...names.map((name) => headOf(name, looks.get(name)?.head ?? null)),
   ];
   const count = Math.max(0, ...Object.values(data.columns).map((values) => values.length));
