@@ -25,6 +25,7 @@ afterAll(async () => {
 const PLACES = [
   { name: "welcome", path: "/", asAuthor: false },
   { name: "sign-in", path: "/sign-in", asAuthor: false },
+  { name: "manual", path: "/manual", asAuthor: false },
   { name: "shelf", path: "/shelf", asAuthor: true },
   { name: "sheet", path: "/specimen", asAuthor: true },
   { name: "sheet of a visitor", path: "/specimen", asAuthor: false },
@@ -41,13 +42,13 @@ for (const { name, path, asAuthor } of PLACES) {
 }
 
 test.each(["light", "dark"] as const)(
-  "title page and galley, %s: nothing stands in anybody's way",
+  "title page, galley and plate, %s: nothing stands in anybody's way",
   async (colorScheme) => {
     const { page } = author;
     await page.emulateMedia({ colorScheme });
     await page.goto("/specimen");
     const paper = new URL(page.url()).pathname;
-    for (const place of ["title-page", "galley"]) {
+    for (const place of ["title-page", "galley", "plates/w"]) {
       await page.goto(`${paper}/${place}`);
       await expectNoBarrier(page);
     }
