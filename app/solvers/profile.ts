@@ -1,5 +1,6 @@
 import { SolverError } from "./errors.ts";
 import { type PointValue, pointValue } from "./expansion.ts";
+import { inputUnit } from "./input-rounding.ts";
 import { multiply, toNumber } from "./pairs.ts";
 import { type Place, ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
 import { deviationOf } from "./saddle.ts";
@@ -95,27 +96,54 @@ function readProfile(t: Trajectory, x: number, s: number): Reading | Refusal {
           ? `w(x, s) is given for s up to ${largest}, where its trajectory ends; s = ${s} is beyond.`
           : `The series in s diverges beyond s0 = ${largest}: E[s^K] is infinite at s = ${s}. Take s up to s0.`,
     };
-  return shifted(t, reader, reader.locate(u), x, u);
+  return shifted(t, reader, reader.locate(u), x, s);
 }
 
 /** Reads u at the place of s, moved by decay·x. */
-function shifted(t: Trajectory, reader: TrajectoryReader, place: Place, x: number, u: number): Reading {
+function shifted(t: Trajectory, reader: TrajectoryReader, place: Place, x: number, s: number): Reading {
   const way = reader.decay * x;
   const xi = place.xi + way;
   const at = pointValue();
   const rounding = reader.evaluateAt(place.side, xi, at);
-  const amplitudeSpread = u < 0 && reader.turning !== null ? reader.turning.amplitudeSpread : t.amplitudeSpread;
-  const known = place.error + ROUNDING * (2 * way + Math.abs(xi));
-  const inputs = way * t.decaySpread + Math.min(1, way) * amplitudeSpread;
-  const error = rounding + Math.abs(at.slopeRe) * (known + inputs);
+  const { shift, lift } = placeSpread(t, reader, place, way, s);
+  const known = place.error + ROUNDING * (2 * way + Math.abs(xi)) + way * (inputUnit(x) + t.decaySpread) + shift;
+  const error = rounding + Math.abs(at.slopeRe) * known + lift * at.re * at.re;
   const unit = reader.decay * t.base.scale[0];
   const slope = () => {
     const value = -unit * at.slopeRe;
     const second = Math.abs(secondDerivative(reader, xi, at));
-    const fromPlace = unit * (rounding * SLOPE_AMPLIFICATION + second * (known + inputs));
+    const fromPlace = unit * (rounding * SLOPE_AMPLIFICATION + second * known + lift * Math.abs(at.re * at.slopeRe));
     return { value, error: fromPlace + Math.abs(value) * (t.decaySpread + t.base.scaleSpread + 5 * ROUNDING) };
   };
   return { u: at.re, error, slope };
+}
+
+/** What half a unit in each input, s included, does to the place of s and to the trajectory beyond it: ξ moves by `shift`, and u at a
+ *  fixed ξ by lift·u².
+ *  u(ξ) = z + … is fixed to first order in z; at u(s0) = −excess it moves as the excess does, so it moves by lift·u² in between. The
+ *  place of a given s then moves by that over du/dξ, and near the turning point, where du/dξ is 0, by the root of it. */
+function placeSpread(
+  t: Trajectory,
+  reader: TrajectoryReader,
+  place: Place,
+  way: number,
+  s: number,
+): { shift: number; lift: number } {
+  const { turning } = reader;
+  const near = Math.min(1, way);
+  const at = pointValue();
+  reader.evaluateAt(place.side, place.xi, at);
+  const second = Math.abs(secondDerivative(reader, place.xi, at));
+  const above = place.side === "above" && turning !== null;
+  const lift = above ? turning.excessSpread / turning.excess[0] : 0;
+  const isTop = above && place.xi === t.above.at(-1)?.xi;
+  if (isTop) return { shift: near * turning.amplitudeSpread, lift };
+  const own = Math.abs(s) / t.base.scale[0];
+  // over a short way, shorter than that to the turning point, the place and what is read there move together
+  const apart = Math.min(1, way * (1 + second / Math.abs(at.slopeRe)));
+  const moves = own * inputUnit(s) + apart * (lift * at.re * at.re + own * t.base.scaleSpread);
+  const shift = moves === 0 ? 0 : Math.min(moves / Math.abs(at.slopeRe), Math.sqrt((2 * moves) / second));
+  return { shift: near * (above ? turning.amplitudeSpread : t.amplitudeSpread) + shift, lift: apart * lift };
 }
 
 /** Derivatives of a Taylor polynomial lose this factor over its values, on steps of a fifth of the radius. */

@@ -1,0 +1,351 @@
+import {
+  type Answer,
+  absorbedAbove,
+  absorbedLaw,
+  absorbedMoments,
+  absorbedProbability,
+  describeProcess,
+  type Estimate,
+  factorialMoment,
+  profileAt,
+  profileComplementAt,
+  profileConstants,
+  profileSlopeAt,
+  type ScaledEstimate,
+  type Starts,
+  solveTrajectory,
+  survivalProbability,
+  type Trajectory,
+  tailLaw,
+  tailProbability,
+} from "../../app/solvers/index.ts";
+import { type Decimal, decimalNear, type ExactModel, toFixed } from "./exact-model.ts";
+import type { Real } from "./fixed.ts";
+import { at } from "./generating.ts";
+import { asScaled } from "./judge.ts";
+import { type ExactStarts, ReferenceAnswers } from "./reference-answers.ts";
+import { exactFrom, singularProbability } from "./singular.ts";
+
+/** One number asked of the solvers and of the reference. */
+export interface Question {
+  /** what is asked for, by which the verdicts are told apart */
+  readonly subject: string;
+  /** with which arguments */
+  readonly detail: string;
+  readonly ours: () => Answer<ScaledEstimate>;
+  /** null where the reference does not reach */
+  readonly truth: () => Real | null;
+}
+
+/** Bits that the reference spends at most on the smallest probability: more n for laws that fall slowly. */
+const MOST_BITS = 900;
+/** n of the far tail, where the expansion at s0 is exact. */
+const FAR_OUT = [1000, 10_000, 100_000];
+const HIGHEST_MOMENT = 5;
+
+/** Every answer about a model at random arguments, or the reason why there is no trajectory.
+ *  @param upTo largest n whose law is compared term by term */
+export function questionsAbout(
+  exact: ExactModel,
+  upTo: number,
+  random: () => number,
+): Question[] | { refused: string } {
+  const { model } = exact;
+  const t = solveTrajectory(model);
+  if ("refused" in t) return t;
+  const constants = profileConstants(t);
+  const { decay } = t;
+  const s0 = "refused" in constants.s0 ? 2 : constants.s0.value;
+  // a recursion's rounding grows as if it met a singularity at the fixed point that the trajectory leaves
+  const fixedPoint = t.regime === "away" ? 1 : Math.max(t.base.scale[0], 1e-6);
+  const perTerm = Math.log2(Math.max(s0 / fixedPoint, 1.05));
+  const last = Math.max(4, Math.min(upTo, Math.floor(MOST_BITS / perTerm)));
+  const distance = () => decimalNear((0.02 * 400 ** random()) / decay[0], 1 + Math.floor(17 * random()), random);
+  const x = distance();
+  const starts = randomStarts(x, distance, random);
+  const bits = last * perTerm + 3 * decay[0] * x.double;
+  const reference = new ReferenceAnswers(exact, Math.min(bits, 2500));
+  const asked = { t, exact, reference, random };
+  return [
+    ...aboutProcess(asked),
+    ...aboutConstants(asked),
+    ...aboutProfiles(asked, x, s0),
+    ...aboutLaw(asked, starts, last),
+    ...(t.regime === "away" ? aboutLaw(asked, "far", last) : []),
+  ];
+}
+
+interface Asked {
+  readonly t: Trajectory;
+  readonly exact: ExactModel;
+  readonly reference: ReferenceAnswers;
+  readonly random: () => number;
+}
+
+function randomStarts(x: Decimal, distance: () => Decimal, random: () => number): ExactStarts {
+  if (random() < 0.7) return [{ position: x, particles: 1 }];
+  const particles = 1 + Math.floor(3 * random());
+  const other = distance();
+  const nearer = other.double < x.double ? other : x;
+  return [
+    { position: nearer, particles },
+    { position: decimalNear(nearer.double * 1.5, 3, random), particles: 1 },
+  ];
+}
+
+const scaledAnswer = (answer: Answer<Estimate>): Answer<ScaledEstimate> =>
+  "refused" in answer ? answer : asScaled(answer);
+
+function aboutProcess({ exact, reference }: Asked): Question[] {
+  const d = describeProcess(exact.model);
+  const { constants } = reference;
+  const ask = (subject: string, ours: Answer<Estimate>, truth: bigint): Question => ({
+    subject,
+    detail: "",
+    ours: () => scaledAnswer(ours),
+    truth: () => reference.real(truth),
+  });
+  return [
+    ask("mean offspring", d.meanOffspring, reference.mean),
+    ask("Malthusian parameter", d.malthusian, constants.growth),
+    ask("critical drift", d.criticalDrift, reference.criticalDrift),
+    ask("extinction probability", d.extinctionProbability, constants.extinction),
+    ask("decay", d.decay, reference.trajectory.decay),
+    ask("far decay", d.farDecay, reference.farDecay),
+  ];
+}
+
+function aboutConstants({ t, reference }: Asked): Question[] {
+  const c = profileConstants(t);
+  const ask = (subject: string, ours: Answer<Estimate>, truth: () => bigint | null): Question => ({
+    subject,
+    detail: "",
+    ours: () => scaledAnswer(ours),
+    truth: () => {
+      const value = truth();
+      return value === null ? null : reference.real(value);
+    },
+  });
+  return [
+    ask("s0", c.s0, () => reference.s0),
+    ask("amplitude", c.amplitude, () => reference.amplitude),
+    ask("slope at the barrier", c.slopeAtBarrier, () => reference.slopeAtBarrier),
+  ];
+}
+
+function aboutProfiles({ t, reference, random }: Asked, x: Decimal, s0: number): Question[] {
+  const { f } = reference;
+  const places = [x, decimalNear(x.double * random(), 4, random)];
+  const top = t.regime === "toward" ? 1 : s0;
+  const values = [0, 1, -1 + 2 * random(), random() * top, top - (top - 1) * 10 ** (-6 * random())].filter(
+    (s) => s < s0,
+  );
+  const questions: Question[] = places.map((p) => ({
+    subject: "survival",
+    detail: `x = ${p.double}`,
+    ours: () => scaledAnswer(survivalProbability(t.model, p.double)),
+    truth: () => {
+      const value = reference.survival(toFixed(f, p));
+      return value === null ? null : reference.real(value);
+    },
+  }));
+  for (const p of places) {
+    const atTop = () => reference.profileAtTop(toFixed(f, p));
+    if (!("refused" in profileConstants(t).s0) && t.regime !== "toward")
+      questions.push(
+        profileQuestion(reference, "w at s0", p, s0, profileAt(t, p.double, s0), () => atTop()?.value),
+        profileQuestion(reference, "slope at s0", p, s0, profileSlopeAt(t, p.double, s0), () => atTop()?.slope),
+      );
+    for (const value of values) {
+      const s = decimalNear(value, 4 + Math.floor(13 * random()), random);
+      if (s.double > top) continue;
+      const read = () => reference.profile(toFixed(f, p), toFixed(f, s));
+      questions.push(
+        profileQuestion(reference, "w", p, s.double, profileAt(t, p.double, s.double), () => read()?.value),
+        profileQuestion(
+          reference,
+          "slope of w",
+          p,
+          s.double,
+          profileSlopeAt(t, p.double, s.double),
+          () => read()?.slope,
+        ),
+        profileQuestion(reference, "1 - w", p, s.double, profileComplementAt(t, p.double, s.double), () => {
+          const at = read();
+          return at && f.one - at.value;
+        }),
+      );
+    }
+  }
+  return questions;
+}
+
+function profileQuestion(
+  reference: ReferenceAnswers,
+  subject: string,
+  x: Decimal,
+  s: number,
+  ours: Answer<Estimate>,
+  truth: () => bigint | null | undefined,
+): Question {
+  return {
+    subject,
+    detail: `x = ${x.double}, s = ${s}`,
+    ours: () => scaledAnswer(ours),
+    truth: () => {
+      const value = truth();
+      return value === null || value === undefined ? null : reference.real(value);
+    },
+  };
+}
+
+function aboutLaw({ t, reference, random }: Asked, exactStarts: ExactStarts, last: number): Question[] {
+  const starts: Starts =
+    exactStarts === "far"
+      ? "far"
+      : exactStarts.map(({ position, particles }) => ({ position: position.double, particles }));
+  const where = starts === "far" ? "far" : starts.map((s) => `${s.particles} at ${s.position}`).join(", ");
+  const name = (subject: string) => (starts === "far" ? `limit law: ${subject}` : subject);
+  const { real } = { real: (units: bigint) => reference.real(units) };
+  const law = once(() => reference.law(exactStarts, last));
+  const moments = once(() => reference.momentSeries(exactStarts, HIGHEST_MOMENT));
+  const expansion = once(() => reference.singular(exactStarts));
+  const questions: Question[] = [];
+  const ask = (subject: string, detail: string, ours: () => Answer<ScaledEstimate>, truth: () => Real | null) =>
+    questions.push({ subject: name(subject), detail: `${where}; ${detail}`, ours, truth });
+
+  const whole = once(() => absorbedLaw(t, starts, last));
+  const ns = [0, 1, 2, 3, Math.floor(last * random()), last];
+  for (const n of new Set(ns)) {
+    ask(
+      "p_n",
+      `n = ${n}`,
+      () => absorbedProbability(t, starts, n),
+      () => real(at(law(), n)),
+    );
+    ask(
+      "p_n of the law",
+      `n = ${n}`,
+      () => termOf(whole(), n),
+      () => real(at(law(), n)),
+    );
+    ask(
+      "P(K > n)",
+      `n = ${n}`,
+      () => absorbedAbove(t, starts, n),
+      () => {
+        const below = law()
+          .slice(0, n + 1)
+          .reduce((sum, p) => sum + p, 0n);
+        return real(reference.f.one - below);
+      },
+    );
+  }
+  const settled = once(() => {
+    const found = expansion();
+    if (found === null) return Number.POSITIVE_INFINITY;
+    const n = last - ((last - particlesOf(exactStarts)) % found.period);
+    return exactFrom(reference.f, found, n, at(law(), n));
+  });
+  for (const n of FAR_OUT)
+    ask(
+      `p_n far out`,
+      `n = ${n}`,
+      () => absorbedProbability(t, starts, n),
+      () => {
+        const at0 = expansion();
+        if (at0 === null || n < settled()) return null;
+        return (n - particlesOf(exactStarts)) % at0.period === 0 ? singularProbability(reference.f, at0, n) : real(0n);
+      },
+    );
+  aboutMoments(t, reference, starts, exactStarts, moments, ask);
+  const tail = once(() => tailLaw(t, starts, 1));
+  const tailValue = (read: (law: Exclude<ReturnType<typeof tail>, { refused: string }>) => Answer<ScaledEstimate>) => {
+    const found = tail();
+    return "refused" in found ? found : read(found);
+  };
+  const singularValue = (read: (e: NonNullable<ReturnType<typeof expansion>>) => Real) => () => {
+    const e = expansion();
+    return e === null || t.regime === "toward" ? null : read(e);
+  };
+  ask(
+    "tail constant",
+    "",
+    () => tailValue((law) => asScaled(law.constant)),
+    singularValue((e) => real(reference.tailConstant(e))),
+  );
+  const n = particlesOf(exactStarts) + 120 * Math.ceil(50 * random());
+  ask(
+    "tail law",
+    `n = ${n}`,
+    () => tailValue((law) => tailProbability(law, n).probability),
+    singularValue((e) => reference.tailAt(e, n)),
+  );
+  return questions;
+}
+
+type Ask = (subject: string, detail: string, ours: () => Answer<ScaledEstimate>, truth: () => Real | null) => void;
+
+function aboutMoments(
+  t: Trajectory,
+  reference: ReferenceAnswers,
+  starts: Starts,
+  exactStarts: ExactStarts,
+  series: () => readonly bigint[],
+  ask: Ask,
+): void {
+  const { f } = reference;
+  const real = (units: bigint) => reference.real(units);
+  const ours = once(() => absorbedMoments(t, starts));
+  ask(
+    "mean",
+    "",
+    () => scaledAnswer(ours().mean),
+    () => real(at(series(), 1)),
+  );
+  ask(
+    "variance",
+    "",
+    () => scaledAnswer(ours().variance),
+    () => {
+      const mean = at(series(), 1);
+      return real(2n * at(series(), 2) + mean - f.multiply(mean, mean));
+    },
+  );
+  if (exactStarts !== "far")
+    ask(
+      "P(K infinite)",
+      "",
+      () => scaledAnswer(ours().infinite),
+      () => real(reference.infinite(exactStarts)),
+    );
+  let factorial = 1n;
+  for (let j = 1; j <= HIGHEST_MOMENT; j += 1) {
+    factorial *= BigInt(j);
+    const own = factorial;
+    ask(
+      "factorial moment",
+      `order ${j}`,
+      () => scaledAnswer(factorialMoment(t, starts, j)),
+      () => real(own * at(series(), j)),
+    );
+  }
+}
+
+function termOf(law: ReturnType<typeof absorbedLaw>, n: number): Answer<ScaledEstimate> {
+  if ("refused" in law) return law;
+  return { mantissa: law.mantissa[n] as number, exponent: law.exponent[n] as number, error: law.error[n] as number };
+}
+
+function particlesOf(starts: ExactStarts): number {
+  return starts === "far" ? 1 : starts.reduce((sum, s) => sum + s.particles, 0);
+}
+
+/** The value of a computation, made at the first call. */
+function once<T>(compute: () => T): () => T {
+  let made: { value: T } | null = null;
+  return () => {
+    made ??= { value: compute() };
+    return made.value;
+  };
+}
