@@ -1,24 +1,29 @@
+import { type PointColumn, pointGroups } from "./point-groups.ts";
 import type { Figure, TableData } from "./types.ts";
 
 /**
  * The points of a figure as CSV (RFC 4180): one row an abscissa, one column a series, `NAME low` and `NAME high` beside it
- * where the series has a band. Numbers at full precision; below the double's range as mantissa and power of ten.
+ * where the series has a band. Numbers at full precision; below the double's range as mantissa and power of ten. A curve in
+ * the plane, a panel and an inset have a column of abscissas of their own.
  */
 export function figureToCsv(figure: Figure): string {
-  const abscissas = [...new Set(figure.series.flatMap((series) => series.x))].sort((a, b) => a - b);
-  const head = [plainHead(figure.x.label, "x")];
-  const columns: ReadonlyMap<number, string>[] = [];
-  const column = (name: string, x: readonly number[], text: (i: number) => string) => {
-    head.push(name);
-    columns.push(new Map(x.map((value, i) => [value, text(i)])));
-  };
-  for (const series of figure.series) {
-    column(series.name, series.x, (i) => decimalText(series.y[i] ?? null, series.log10y?.[i] ?? null));
-    if (series.low) column(`${series.name} low`, series.x, (i) => decimalText(series.low?.[i] ?? null, null));
-    if (series.high) column(`${series.name} high`, series.x, (i) => decimalText(series.high?.[i] ?? null, null));
-  }
-  const rows = abscissas.map((x) => [String(x), ...columns.map((texts) => texts.get(x) ?? "")]);
-  return csvText([head, ...rows]);
+  const columns = pointGroups(figure).flatMap(({ prefix, xName, x, columns: inGroup }) => [
+    [`${prefix}${xName}`, ...x.map(String)],
+    ...inGroup.flatMap((column) => columnTexts(column).map(([name, ...texts]) => [`${prefix}${name}`, ...texts])),
+  ]);
+  const length = columns.reduce((most, column) => Math.max(most, column.length), 0);
+  return csvText(Array.from({ length }, (_, row) => columns.map((column) => column[row] ?? "")));
+}
+
+/** A series' columns, each led by its head: its values where it has any, and the ends of its intervals. */
+function columnTexts({ series, at }: PointColumn): string[][] {
+  const column = (head: string, text: (i: number) => string) => [head, ...at.map((i) => (i === null ? "" : text(i)))];
+  const { name, y, low, high } = series;
+  return [
+    ...(series.mark === "band" ? [] : [column(name, (i) => decimalText(y[i] ?? null, series.log10y?.[i] ?? null))]),
+    ...(low ? [column(`${name} low`, (i) => decimalText(low[i] ?? null, series.log10low?.[i] ?? null))] : []),
+    ...(high ? [column(`${name} high`, (i) => decimalText(high[i] ?? null, series.log10high?.[i] ?? null))] : []),
+  ];
 }
 
 /** A table as CSV: values at full precision, and `NAME error` beside each column that has errors. */
@@ -53,5 +58,3 @@ function csvField(text: string): string {
   const guarded = /^[=+@\t\r-]/.test(text) && !Number.isFinite(Number(text)) ? `'${text}` : text;
   return /[",\r\n]/.test(guarded) ? `"${guarded.replaceAll('"', '""')}"` : guarded;
 }
-
-const plainHead = (label: string, otherwise: string) => label.replace(/^\\/, "").replace(/[{}$]/g, "") || otherwise;

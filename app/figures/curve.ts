@@ -47,8 +47,8 @@ export function piecesWithin(points: readonly (Point | null)[], frame: Frame): r
   return pieces;
 }
 
-/** Liang and Barsky's clipping of a segment to a rectangle. Source: ACM Trans. Graph. 3 (1984) 1-22. */
-function clipSegment(from: Point, to: Point, frame: Frame): readonly [Point, Point] | null {
+/** The part of a segment within a rectangle; null where none is. Liang and Barsky's clipping of a segment to a rectangle. Source: ACM Trans. Graph. 3 (1984) 1-22. */
+export function clipSegment(from: Point, to: Point, frame: Frame): readonly [Point, Point] | null {
   const dx = to.x - from.x;
   const dy = to.y - from.y;
   let enter = 0;

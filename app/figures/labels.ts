@@ -17,7 +17,7 @@ export interface PlacedLabel {
   readonly x: number;
   /** Middle of the text's height for labels of curves; baseline for labels of axes. */
   readonly y: number;
-  readonly anchor: "start" | "end";
+  readonly anchor: "start" | "middle" | "end";
   /** Path from the curve to a label that had to move. */
   readonly leader: string | null;
 }

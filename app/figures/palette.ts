@@ -76,14 +76,21 @@ const ORDER_BESIDE_PRINCIPAL: readonly Colour[] = ["blue", "ochre", "green", "pu
 export function seriesColours(figure: Figure): readonly Colour[] {
   const order = figure.series.some((series) => series.role === "principal") ? ORDER_BESIDE_PRINCIPAL : ORDER;
   let given = 0;
-  return figure.series.map((series) => {
-    if (series.role === "principal") return "ink";
-    if (series.role === "reference" || series.role === "thin") return "edge";
-    const colour = order[given % order.length] ?? "ink";
-    given += 1;
-    return colour;
-  });
+  const own = new Map<string, Colour>();
+  for (const series of figure.series) {
+    if (series.colourOf !== undefined) continue;
+    const colour = ROLE_COLOURS[series.role] ?? order[given % order.length] ?? "ink";
+    if (series.role === "ordinary") given += 1;
+    own.set(series.name, colour);
+  }
+  return figure.series.map((series) => own.get(series.colourOf ?? series.name) ?? "ink");
 }
+
+const ROLE_COLOURS: Readonly<Partial<Record<Series["role"], Colour>>> = {
+  principal: "ink",
+  reference: "edge",
+  thin: "edge",
+};
 
 /** Beyond this many lines colour and label are not told apart quickly enough in black and white. */
 const LINES_WITHOUT_DASHES = 4;
@@ -103,19 +110,21 @@ export const DASHES: readonly (readonly number[])[] = [
  * @returns indices into DASHES
  */
 export function seriesDashes(figure: Figure): readonly number[] {
-  const lines = figure.series.filter((series) => series.mark === "line" && series.role !== "reference");
+  const lines = figure.series.filter(
+    ({ mark, role, colourOf }) => mark === "line" && colourOf === undefined && ROLE_COLOURS[role] !== "edge",
+  );
   const needed = lines.length > LINES_WITHOUT_DASHES || crossSomewhere(lines);
-  let given = 0;
-  return figure.series.map((series) => {
-    if (!needed || series.mark !== "line" || series.role !== "ordinary") return 0;
-    given += 1;
-    const shift = lines.some((other) => other.role === "principal") ? 0 : -1;
-    return (((given + shift) % DASHES.length) + DASHES.length) % DASHES.length;
-  });
+  const first = lines.some(({ role }) => role === "principal") ? 1 : 0;
+  const ordinary = lines.filter(({ role }) => role === "ordinary");
+  const patterns = new Map(ordinary.map(({ name }, i) => [name, (i + first) % DASHES.length]));
+  return figure.series.map(({ mark, name, colourOf }) =>
+    needed && mark === "line" ? (patterns.get(colourOf ?? name) ?? 0) : 0,
+  );
 }
 
 function crossSomewhere(lines: readonly Series[]): boolean {
-  return lines.some((a, i) => lines.slice(i + 1).some((b) => cross(a, b)));
+  const overX = lines.filter((line) => line.parametric !== true);
+  return overX.some((a, i) => overX.slice(i + 1).some((b) => cross(a, b)));
 }
 
 /** Whether two curves change sides of one another at the abscissas they share. */

@@ -1,5 +1,5 @@
 import { decimalText } from "./csv.ts";
-import { type Ends, plotted, plottedY, yEnds } from "./range.ts";
+import { type Ends, plotted, plottedInterval, plottedY, yEnds } from "./range.ts";
 import type { Axis, Figure, Series } from "./types.ts";
 
 /** Heads of the columns that hold one series. */
@@ -12,27 +12,51 @@ export interface Columns {
   readonly stems: { readonly x: string; readonly y: string } | null;
 }
 
+/** One pair of axes, and where the stems of each of its series stand, in plotted coordinates; null for one without. */
+export interface PlottedFigure {
+  readonly figure: Figure;
+  readonly feet: readonly (number | null)[];
+}
+
 export interface DataTable {
   readonly text: string;
-  /** In the order of the figure's series. */
-  readonly columns: readonly Columns[];
+  /** For each pair of axes, in the order of its series. */
+  readonly columns: readonly (readonly Columns[])[];
+}
+
+/** Columns of one table as they are found. */
+interface Table {
+  readonly heads: string[];
+  readonly bodies: (readonly string[])[];
 }
 
 /**
- * The points of a figure as a table for pgfplots: columns of all series side by side, shorter ones filled up with `nan`,
- * which is also a gap. On logarithmic axes the plotted columns are decimal logarithms, and `valueK` holds the values.
- * @param feet where the stems of each series stand, in plotted coordinates; null for one without stems
+ * The points of a plate as a table for pgfplots: columns of all series side by side, shorter ones filled up with `nan`,
+ * which is also a gap. On logarithmic axes the plotted columns are decimal logarithms, and `valueK` holds the values. Where
+ * the plate has several pairs of axes, the columns of each begin with its letter.
  */
-export function dataTable(figure: Figure, feet: readonly (number | null)[]): DataTable {
-  const heads: string[] = [];
-  const bodies: (readonly string[])[] = [];
+export function dataTable(plots: readonly PlottedFigure[]): DataTable {
+  const table: Table = { heads: [], bodies: [] };
+  const prefixes = plots.map((_, i) => (plots.length === 1 ? "" : `${letterOf(i)}_`));
+  const columns = plots.map((plot, i) => plotColumns(plot, prefixes[i] ?? "", table));
+  const length = table.bodies.reduce((most, body) => Math.max(most, body.length), 0);
+  const comments = plots.flatMap(({ figure }, i) =>
+    figure.series.map((series, k) => `# ${prefixes[i]}${k + 1}: ${series.name.replace(/[^\x20-\x7e]/g, "?")}`),
+  );
+  const rows = Array.from({ length }, (_, i) => table.bodies.map((body) => body[i] ?? "nan").join(" "));
+  return { text: `${[...comments, table.heads.join(" "), ...rows].join("\n")}\n`, columns };
+}
+
+const letterOf = (index: number): string => (index < 26 ? String.fromCharCode(97 + index) : `p${index}`);
+
+function plotColumns({ figure, feet }: PlottedFigure, prefix: string, table: Table): Columns[] {
   const add = (head: string, body: readonly string[]) => {
-    heads.push(head);
-    bodies.push(body);
-    return head;
+    table.heads.push(prefix + head);
+    table.bodies.push(body);
+    return prefix + head;
   };
   const ends = yEnds(figure);
-  const columns = figure.series.map((series, k): Columns => {
+  return figure.series.map((series, k): Columns => {
     const columnName = (axis: Axis, name: string) => `${axis.scale === "log" ? "log10_" : ""}${name}${k + 1}`;
     const indices = series.x.map((_, i) => i);
     if (figure.y.scale === "log") {
@@ -69,10 +93,6 @@ export function dataTable(figure: Figure, feet: readonly (number | null)[]): Dat
       stems: pair("stem", stems(figure, series, feet[k] ?? null)),
     };
   });
-  const length = bodies.reduce((most, body) => Math.max(most, body.length), 0);
-  const comments = figure.series.map((series, k) => `# ${k + 1}: ${series.name.replace(/[^\x20-\x7e]/g, "?")}`);
-  const rows = Array.from({ length }, (_, i) => bodies.map((body) => body[i] ?? "nan").join(" "));
-  return { text: `${[...comments, heads.join(" "), ...rows].join("\n")}\n`, columns };
 }
 
 const text = (value: number | null) => (value === null ? "nan" : String(value));
@@ -81,7 +101,7 @@ type OutlinePoint = readonly [x: number, y: number] | null;
 
 /** One closed outline for each stretch without a gap, `null` between them; heights beyond the axis are put on its end. */
 function bandOutline(figure: Figure, series: Series, ends: Ends): readonly OutlinePoint[] {
-  if (!series.low || !series.high) return [];
+  if (!series.low || !series.high || series.mark === "points" || series.mark === "stems") return [];
   const outline: OutlinePoint[] = [];
   let lower: OutlinePoint[] = [];
   let upper: OutlinePoint[] = [];
@@ -93,14 +113,13 @@ function bandOutline(figure: Figure, series: Series, ends: Ends): readonly Outli
   const within = (at: number) => Math.min(ends.high, Math.max(ends.low, at));
   series.x.forEach((value, i) => {
     const x = plotted(figure.x, value);
-    const low = plotted(figure.y, series.low?.[i] ?? null);
-    const high = plotted(figure.y, series.high?.[i] ?? null);
-    if (x === null || low === null || high === null) {
+    const interval = plottedInterval(figure.y, series, i);
+    if (x === null || interval === null) {
       finish();
       return;
     }
-    lower.push([x, within(low)]);
-    upper.push([x, within(high)]);
+    lower.push([x, within(interval[0])]);
+    upper.push([x, within(interval[1])]);
   });
   finish();
   return outline.slice(0, -1);

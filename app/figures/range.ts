@@ -24,12 +24,34 @@ export function plottedY(axis: Axis, series: Series, i: number): number | null {
   return plotted(axis, series.y[i] ?? null, series.log10y?.[i]);
 }
 
-/** Ends of the horizontal axis: the chosen ones, else those of the data. */
+/**
+ * Plotted ends of the interval at the i-th point; null where there is none. On a log axis an interval from 0 or below has
+ * its lower end at minus infinity: it reaches down to the frame.
+ */
+export function plottedInterval(axis: Axis, series: Series, i: number): readonly [number, number] | null {
+  const low = series.low?.[i] ?? null;
+  const high = plotted(axis, series.high?.[i] ?? null, series.log10high?.[i]);
+  if (high === null) return null;
+  const from = plotted(axis, low, series.log10low?.[i]);
+  if (from !== null) return [from, high];
+  return axis.scale === "log" && low !== null && low <= 0 ? [Number.NEGATIVE_INFINITY, high] : null;
+}
+
+/** Where the i-th point of a series is to be labelled: its own height, or the middle of its band. */
+export function labelledY(axis: Axis, series: Series, i: number): number | null {
+  const y = plottedY(axis, series, i);
+  const interval = y === null ? plottedInterval(axis, series, i) : null;
+  if (interval === null) return y;
+  return Number.isFinite(interval[0]) ? (interval[0] + interval[1]) / 2 : interval[1];
+}
+
+/** Ends of the horizontal axis: the chosen ones, else those of the data and the references. */
 export function xEnds(figure: Figure): Ends {
   const chosen = chosenEnds(figure.x);
   if (chosen) return chosen;
   const values: number[] = [];
   for (const series of figure.series) for (const x of series.x) push(values, plotted(figure.x, x));
+  for (const vertical of figure.verticals ?? []) push(values, plotted(figure.x, vertical.x));
   return widened(values);
 }
 
@@ -44,8 +66,7 @@ export function yEnds(figure: Figure): Ends {
       const at = plotted(figure.x, series.x[i] ?? null);
       if (at === null || at < x.low || at > x.high) continue;
       push(values, plottedY(figure.y, series, i));
-      push(values, plotted(figure.y, series.low?.[i] ?? null));
-      push(values, plotted(figure.y, series.high?.[i] ?? null));
+      for (const end of plottedInterval(figure.y, series, i) ?? []) push(values, end);
     }
   }
   for (const level of figure.levels) push(values, plotted(figure.y, level.y));
@@ -56,6 +77,10 @@ export function yEnds(figure: Figure): Ends {
   }
   return widened(values);
 }
+
+/** Whether a place in plotted coordinates belongs to an axis. */
+export const isWithin = (at: number | null, { low, high }: Ends): at is number =>
+  at !== null && at >= low && at <= high;
 
 function chosenEnds(axis: Axis): Ends | null {
   if (!axis.range) return null;
@@ -74,7 +99,7 @@ function widened(values: readonly number[]): Ends {
 }
 
 function push(values: number[], value: number | null): void {
-  if (value !== null) values.push(value);
+  if (value !== null && Number.isFinite(value)) values.push(value);
 }
 
 const minimum = (values: readonly number[]) => values.reduce((a, b) => Math.min(a, b), Number.POSITIVE_INFINITY);

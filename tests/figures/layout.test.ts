@@ -1,6 +1,7 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { layoutFigure } from "../../app/figures/index.ts";
+import { thinBandRemark } from "../../app/figures/index.ts";
+import { layoutPlot } from "../../app/figures/layout-plot.ts";
 import { spread } from "../../app/figures/spread.ts";
 import { linearTicks, logTicks } from "../../app/figures/ticks.ts";
 import { deepLaw, figure, profiles, series } from "./sample.ts";
@@ -57,7 +58,7 @@ describe("labels apart", () => {
 
 describe("layout", () => {
   it("lets labels that say where their curves start be the ticks of the vertical axis", () => {
-    const layout = layoutFigure(profiles, { width: 500 });
+    const layout = layoutPlot(profiles, { width: 500 });
     expect(layout.yTicks).toEqual([]);
     expect(layout.labels).toHaveLength(7);
     const heights = layout.labels.map((label) => label.y).sort((a, b) => a - b);
@@ -69,36 +70,39 @@ describe("layout", () => {
     const named = figure({
       series: [series({ name: "a", label: "\\text{exact}", labelAt: "start", x: [0, 1], y: [3, 4] })],
     });
-    expect(layoutFigure(named, { width: 500 }).yTicks.length).toBeGreaterThan(1);
+    expect(layoutPlot(named, { width: 500 }).yTicks.length).toBeGreaterThan(1);
   });
 
   it("draws values far below the double's range on a log axis", () => {
-    const layout = layoutFigure(deepLaw, { width: 500 });
+    const layout = layoutPlot(deepLaw, { width: 500 });
     expect(layout.series[0]?.marks).toHaveLength(1000);
     expect(layout.y.low).toBeCloseTo(-741, 6); // the sample falls by 0.741 decades a step: exact by its construction
     const heights = layout.series[0]?.marks.map((mark) => mark.y) ?? [];
-    expect(heights.every((y, i) => i === 0 || y > (heights[i - 1] ?? Number.POSITIVE_INFINITY))).toBe(true);
+    expect(heights.every((y, i) => i === 0 || (y ?? Number.NaN) > (heights[i - 1] ?? Number.POSITIVE_INFINITY))).toBe(
+      true,
+    );
   });
 
   it("parts a line at a gap and cuts it exactly at a chosen range", () => {
     const gap = figure({ series: [series({ name: "a", x: [0, 1, 2, 3, 4], y: [0, 1, null, 3, 4] })] });
-    expect(layoutFigure(gap, { width: 500 }).series[0]?.line.match(/M/g)).toHaveLength(2);
+    expect(layoutPlot(gap, { width: 500 }).series[0]?.line.match(/M/g)).toHaveLength(2);
     const cut = figure({
       x: { label: "x", scale: "linear", range: [0.5, 3] },
       series: [series({ name: "a", x: [0, 4], y: [0, 4] })],
     });
-    const layout = layoutFigure(cut, { width: 500 });
+    const layout = layoutPlot(cut, { width: 500 });
     expect(layout.series[0]?.line).toMatch(new RegExp(`^M${layout.frame.left.toFixed(2).replace(/\.?0+$/, "")},`));
     expect(layout.y.high).toBe(1); // no point of the data lies within: the axis stands for itself
   });
 
   it("does not draw a band thinner than its line, and says so", () => {
     const thin = figure({ series: [series({ name: "a", x: [0, 1], y: [0, 1], low: [-1e-9, 1], high: [1e-9, 1] })] });
-    const layout = layoutFigure(thin, { width: 500 });
+    const layout = layoutPlot(thin, { width: 500 });
     expect(layout.series[0]?.band).toBe("");
-    expect(layout.remarks).toEqual(["The error of a is thinner than its line."]);
+    expect(thinBandRemark(thin)).toBe("The error of a is thinner than its line.");
     const wide = figure({ series: [series({ name: "a", x: [0, 1], y: [0, 1], low: [-0.2, 0.8], high: [0.2, 1.2] })] });
-    expect(layoutFigure(wide, { width: 500 }).series[0]?.band).toMatch(/^M.*Z$/);
+    expect(layoutPlot(wide, { width: 500 }).series[0]?.band).toMatch(/^M.*Z$/);
+    expect(thinBandRemark(wide)).toBeNull();
   });
 
   it("leaves out what is not positive on a log axis instead of drawing it somewhere", () => {
@@ -106,11 +110,11 @@ describe("layout", () => {
       y: { label: "p", scale: "log", range: null },
       series: [series({ name: "a", mark: "points", x: [0, 1, 2], y: [0, 0.1, 0.01] })],
     });
-    expect(layoutFigure(some, { width: 500 }).series[0]?.marks).toHaveLength(2);
+    expect(layoutPlot(some, { width: 500 }).series[0]?.marks).toHaveLength(2);
   });
 
   it("gives an empty figure axes and nothing else", () => {
-    const empty = layoutFigure(figure({ series: [] }), { width: 500 });
+    const empty = layoutPlot(figure({ series: [] }), { width: 500 });
     expect(empty.series).toEqual([]);
     expect(empty.xTicks.length).toBeGreaterThan(1);
   });
