@@ -6,6 +6,8 @@ import { defineKind } from "./kind.ts";
 import { PARAMETERS } from "./parameters/model.ts";
 import { PROCESS } from "./process/model.ts";
 import { PROFILE } from "./profile/model.ts";
+import { SOLVE } from "./solve/model.ts";
+import { SWEEP } from "./sweep/model.ts";
 import { TABLE } from "./table/model.ts";
 import { TAIL } from "./tail/model.ts";
 import { YAGLOM } from "./yaglom/model.ts";
@@ -20,7 +22,9 @@ export const KINDS: ReadonlyMap<string, Kind> = new Map(
     defineKind(COUNTS),
     defineKind(TAIL),
     defineKind(YAGLOM),
+    defineKind(SWEEP),
     defineKind(TABLE),
     defineKind(FORMULA),
+    defineKind(SOLVE),
   ].map((kind) => [kind.documentation.name, kind]),
 );

@@ -7,6 +7,7 @@ export { printExact, printNumber } from "./print.ts";
 export type { QuantityJson } from "./quantity.ts";
 export { approximate, exact, log10Of, quantityToJson, scaled, toDouble } from "./quantity.ts";
 export { freeNames } from "./tree.ts";
+export { isTruth } from "./truths.ts";
 export type {
   Formula,
   FormulaProblem,
