@@ -54,17 +54,32 @@ export function valuesInSteps(
   values: VariedValues,
   path: string,
   context: ComputeContext,
-  { noun, most }: VaryingLimits,
+  limits: VaryingLimits,
 ): readonly Value[] {
   if ("list" in values) return values.list.map((formula) => context.value(formula));
-  const [from, to] = endsOf(values, path, context);
+  return steps(values, path, context, limits).map(exactValue);
+}
+
+/** The same as numbers. @throws CellFault also when one of a list is no number. */
+export function numbersInSteps(
+  values: VariedValues,
+  path: string,
+  context: ComputeContext,
+  limits: VaryingLimits,
+): readonly number[] {
+  if ("list" in values) return values.list.map((formula, index) => context.number(formula, `${path}.${index}`, {}));
+  return steps(values, path, context, limits);
+}
+
+function steps(interval: Interval, path: string, context: ComputeContext, { noun, most }: VaryingLimits): number[] {
+  const [from, to] = endsOf(interval, path, context);
   if (to - from >= most) {
     throw new CellFault(
       path,
       `From ${from} to ${to} in steps of 1 are more than ${most} ${noun}s; a list [a, b, c] may leave some out.`,
     );
   }
-  return Array.from({ length: Math.floor(to - from) + 1 }, (_, index) => exactValue(from + index));
+  return Array.from({ length: Math.floor(to - from) + 1 }, (_, index) => from + index);
 }
 
 /** Both ends of an interval. @throws CellFault when they are no numbers or run backwards. */

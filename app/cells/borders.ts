@@ -1,0 +1,90 @@
+import type { Branch } from "./kind.ts";
+
+/** Where a function of a number with finitely many answers changes: between two doubles with nothing of note in between. */
+export interface Border<T> {
+  /** The last place where `lower` is the answer, and the first where it is not. */
+  readonly below: number;
+  readonly above: number;
+  readonly lower: T;
+  readonly upper: T;
+}
+
+/** An interval is halved so often at most: enough to part neighbouring doubles of one sign and size. */
+const HALVINGS = 128;
+const MOST_BORDERS = 12;
+
+/**
+ * The borders between the first and the last of some places, found by bisection between neighbours whose answers differ.
+ * Of several changes between two neighbours all are found unless they undo each other there.
+ * @param places increasing @param same whether two answers are one
+ */
+export function findBorders<T>(
+  places: readonly number[],
+  answerAt: (x: number) => T,
+  same: (a: T, b: T) => boolean,
+): Border<T>[] {
+  const borders: Border<T>[] = [];
+  const [first] = places;
+  if (first === undefined) return borders;
+  let from: number = first;
+  let lower: T = answerAt(first);
+  for (const to of places.slice(1)) {
+    const upper = answerAt(to);
+    while (!same(lower, upper) && borders.length < MOST_BORDERS) {
+      const border: Border<T> = bisected({ below: from, above: to, lower, upper }, answerAt, same);
+      borders.push(border);
+      [from, lower] = [border.above, border.upper];
+    }
+    [from, lower] = [to, upper];
+  }
+  return borders;
+}
+
+function bisected<T>(border: Border<T>, answerAt: (x: number) => T, same: (a: T, b: T) => boolean): Border<T> {
+  let { below, above, upper } = border;
+  for (let halving = 0; halving < HALVINGS; halving += 1) {
+    const middle = below + (above - below) / 2;
+    if (middle <= below || middle >= above) break;
+    const answer = answerAt(middle);
+    if (same(border.lower, answer)) below = middle;
+    else [above, upper] = [middle, answer];
+  }
+  return { below, above, lower: border.lower, upper };
+}
+
+/** Branches of several cells, by id: what parts one piece of a curve from the next. */
+export type Branches = ReadonlyMap<string, Branch>;
+
+/** Whether two points lie on one piece: every cell that has a branch at either has the same one at both. */
+export function sameBranches(a: Branches, b: Branches): boolean {
+  return a.size === b.size && [...a].every(([id, { name }]) => b.get(id)?.name === name);
+}
+
+/** What changes at a border, in words; null where no branch of a cell does. */
+export interface BorderWords {
+  /** "the drift of larvae is critical" */
+  readonly at: string;
+  /** "K is infinite with positive probability" */
+  readonly below: string;
+  readonly above: string;
+}
+
+/** The first cell whose branch changes at a border, and how. */
+export function borderWords(lower: Branches, upper: Branches): BorderWords | null {
+  for (const [id, below] of lower) {
+    const above = upper.get(id);
+    if (above === undefined || above.name === below.name) continue;
+    const border = below.borders.find((candidate) => above.borders.includes(candidate)) ?? above.borders[0] ?? "";
+    return { at: `${border} in ${id}`, below: below.holds, above: above.holds };
+  }
+  return null;
+}
+
+/** Which side of a border does not reach it: its own end is not attained there. */
+export function openSide(lower: Branches, upper: Branches): "below" | "above" {
+  for (const [id, below] of lower) {
+    const above = upper.get(id);
+    if (above !== undefined && above.name !== below.name) return below.closed ? "above" : "below";
+  }
+  return "below";
+}
