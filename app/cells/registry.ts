@@ -8,7 +8,6 @@ import { PROCESS } from "./process/model.ts";
 import { PROFILE } from "./profile/model.ts";
 import { SOLVE } from "./solve/model.ts";
 import { SWEEP } from "./sweep/model.ts";
-import { SWEEP } from "./sweep/model.ts";
 import { TABLE } from "./table/model.ts";
 import { TAIL } from "./tail/model.ts";
 import { YAGLOM } from "./yaglom/model.ts";
@@ -23,7 +22,6 @@ export const KINDS: ReadonlyMap<string, Kind> = new Map(
     defineKind(COUNTS),
     defineKind(TAIL),
     defineKind(YAGLOM),
-    defineKind(SWEEP),
     defineKind(SWEEP),
     defineKind(TABLE),
     defineKind(FORMULA),
