@@ -6,6 +6,7 @@ export type { Theme } from "./palette.ts";
 export { figureToPgfplots, type PgfplotsFigure, type PgfplotsOptions } from "./pgfplots.ts";
 export { FigurePlate, type FigurePlateProps } from "./plate.tsx";
 export type { PlateSize } from "./plot-layout.ts";
+export { type PlacedCurve, type PlacedPoint, placePoints } from "./point-places.ts";
 export { type PointColumn, type PointGroup, pointGroups } from "./point-groups.ts";
 export { thinBandRemark } from "./thin-bands.ts";
 export type {

@@ -138,8 +138,11 @@ function naturalHeight(width: number, fontSize: number, labels: number, hasScale
 
 const hasStems = (figure: Figure) => figure.series.some((series) => series.mark === "stems");
 
-function ticksOf(axis: Axis, ends: Ends, wanted: number): readonly Tick[] {
-  return axis.scale === "log" ? logTicks(ends.low, ends.high, wanted) : linearTicks(ends.low, ends.high, wanted);
+/** About as many ticks as wanted; two at least, since one alone gives no scale. */
+function ticksOf(axis: Axis, { low, high }: Ends, wanted: number): readonly Tick[] {
+  const ticks = (count: number) => (axis.scale === "log" ? logTicks(low, high, count) : linearTicks(low, high, count));
+  const first = ticks(wanted);
+  return first.length > 1 ? first : ticks(wanted + 2);
 }
 
 const widest = (labels: readonly (readonly LabelRun[])[], fontSize: number) =>

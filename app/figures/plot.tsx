@@ -26,8 +26,11 @@ export function Plot({ plot, theme }: { readonly plot: PlotLayout; readonly them
       {[...plot.series].sort(byWeight).map((series) => (
         <DrawnSeries key={series.name} series={series} palette={palette} unit={plot.fontSize / 12.5} />
       ))}
-      {[...plot.labels, ...plot.dotLabels].map((label) => (
-        <CurveLabel key={placeOf(label)} label={label} look={look} />
+      {plot.labels.map((label) => (
+        <CurveLabel key={placeOf(label)} label={label} look={look} halo={false} />
+      ))}
+      {plot.dotLabels.map((label) => (
+        <CurveLabel key={placeOf(label)} label={label} look={look} halo />
       ))}
       {plot.topLabels.map((label) => (
         <BaseLabel key={placeOf(label)} label={label} look={look} fill={palette.quiet} />
@@ -124,13 +127,26 @@ function BaseLabel({ label, look, fill }: { readonly label: PlacedLabel; readonl
   );
 }
 
-function CurveLabel({ label, look }: { readonly label: PlacedLabel; readonly look: Look }) {
+interface CurveLabelProps {
+  readonly label: PlacedLabel;
+  readonly look: Look;
+  /** Within the plot a rim of paper keeps the text apart from lines that pass behind it. */
+  readonly halo: boolean;
+}
+
+function CurveLabel({ label, look, halo }: CurveLabelProps) {
   const { palette, fontSize } = look;
   const colour = label.colour === "quiet" ? palette.quiet : palette.series[label.colour];
   return (
     <g>
       {label.leader ? <path d={label.leader} fill="none" stroke={colour} strokeWidth={0.8} /> : null}
-      <text x={label.x.toFixed(2)} y={(label.y + fontSize * 0.36).toFixed(2)} textAnchor={label.anchor} fill={colour}>
+      <text
+        x={label.x.toFixed(2)}
+        y={(label.y + fontSize * 0.36).toFixed(2)}
+        textAnchor={label.anchor}
+        fill={colour}
+        {...(halo ? { stroke: palette.paper, strokeWidth: 3, strokeLinejoin: "round", paintOrder: "stroke" } : {})}
+      >
         <Runs runs={label.runs} fontSize={fontSize} theme={look.theme} />
       </text>
     </g>
