@@ -1,8 +1,10 @@
 /** Cells: the plan of a paper, keys, the kinds of cell there are, results, and what becomes of them. */
+export type { AnswerBorder, AnswerRange } from "./answer-range.ts";
+export { answerRange, answerRangeSteps } from "./answer-range.ts";
 export { canonicalJson, sha256 } from "./canonical.ts";
 export { causeWords } from "./causes.ts";
 export type { ComputeHooks } from "./compute.ts";
-export { computeCell, computePlan } from "./compute.ts";
+export { computeCell, computePlan, quickCells } from "./compute.ts";
 export type { KeyDocumentation, KindDocumentation } from "./kind.ts";
 export { evaluateNumber, paperScope } from "./numbers.ts";
 export { parameterWords } from "./parameter-values.ts";
@@ -17,6 +19,7 @@ export type { Report, ReportedCell, ReportedValue } from "./report.ts";
 export { reportPaper } from "./report.ts";
 export { reportAsText } from "./report-text.ts";
 export { cellState } from "./state.ts";
+export { pointsTable } from "./table-parts.ts";
 export type {
   Cause,
   CellResult,
@@ -24,6 +27,7 @@ export type {
   CellTask,
   CellView,
   CellWork,
+  Finding,
   Outcome,
   ParameterChange,
   Plan,
@@ -31,4 +35,4 @@ export type {
   ShownCell,
   ShownPaper,
 } from "./types.ts";
-export { viewCell } from "./view.ts";
+export { findingOf, viewCell } from "./view.ts";

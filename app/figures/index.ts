@@ -1,13 +1,13 @@
 /** Figures: one description, from which the page's SVG, the print's pgfplots and the CSV are made. */
 export { figureToCsv, tableToCsv } from "./csv.ts";
 export { isWords, type LabelRun, labelRuns, labelText } from "./label.ts";
-export { type FigureLayout, layoutFigure } from "./layout.ts";
+export { type FigureLayout, layoutFigure, panelLetter } from "./layout.ts";
 export type { Theme } from "./palette.ts";
 export { figureToPgfplots, type PgfplotsFigure, type PgfplotsOptions } from "./pgfplots.ts";
 export { FigurePlate, type FigurePlateProps } from "./plate.tsx";
 export type { PlateSize } from "./plot-layout.ts";
-export { type PlacedCurve, type PlacedPoint, placePoints } from "./point-places.ts";
 export { type PointColumn, type PointGroup, pointGroups } from "./point-groups.ts";
+export { type PlacedCurve, type PlacedPoint, type PlacedPoints, placePoints } from "./point-places.ts";
 export { thinBandRemark } from "./thin-bands.ts";
 export type {
   Axis,

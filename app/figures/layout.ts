@@ -57,6 +57,15 @@ export function layoutFigure(figure: Figure, size: PlateSize): FigureLayout {
   };
 }
 
+/** A wide plate, shown alone, has larger text [px]. */
+const WIDE = 800;
+const WIDE_FONT_SIZE = 14;
+
+/** Lays out a figure as the page shows it: widths and heights in CSS pixels. */
+export function layoutOnPage(figure: Figure, size: Omit<PlateSize, "fontSize">): FigureLayout {
+  return layoutFigure(figure, { ...size, fontSize: size.width > WIDE ? WIDE_FONT_SIZE : FONT_SIZE });
+}
+
 function layoutWithInset(figure: Figure, inset: Inset, size: PlateSize): FigureLayout {
   const fontSize = size.fontSize ?? FONT_SIZE;
   const height =

@@ -1,4 +1,4 @@
-import { type FigureLayout, layoutFigure, type PlacedPlot } from "./layout.ts";
+import { type FigureLayout, layoutOnPage, type PlacedPlot } from "./layout.ts";
 import { runsWidth } from "./measure.ts";
 import { PALETTES, type Palette, type Theme } from "./palette.ts";
 import { Plot } from "./plot.tsx";
@@ -17,12 +17,10 @@ export interface FigurePlateProps {
 
 const TEXT_FACE = "var(--ui, Commissioner, system-ui, sans-serif)";
 const FILE_FACE = "Commissioner, Helvetica, Arial, sans-serif";
-/** A wide plate, shown alone, has larger text. */
-const WIDE = 800;
 
 /** One plate as SVG: axis lines only under the data, direct labels, no legend, no box, no grid. Says its finding to a screen reader. */
 export function FigurePlate({ figure, width = 500, height, theme = "page", className }: FigurePlateProps) {
-  const layout = layoutFigure(figure, { width, height, fontSize: width > WIDE ? 14 : 12.5 });
+  const layout = layoutOnPage(figure, { width, height });
   const onPage = theme === "page";
   return (
     <svg

@@ -1,4 +1,4 @@
-import { layoutFigure } from "./layout.ts";
+import { layoutOnPage } from "./layout.ts";
 import type { PlateSize } from "./plot-layout.ts";
 import { isWithin, plotted, plottedY } from "./range.ts";
 import type { Figure, Series } from "./types.ts";
@@ -19,9 +19,18 @@ export interface PlacedPoint {
   readonly y: number;
 }
 
+/** A plate on the page with the places of its points. */
+export interface PlacedPoints {
+  /** CSS pixels, as the plate is drawn where there is room. */
+  readonly width: number;
+  readonly height: number;
+  readonly curves: readonly PlacedCurve[];
+}
+
 /** Where the points stand that a reader may ask for: those within the axes. Bands alone and gaps have none. */
-export function placePoints(figure: Figure, size: PlateSize): readonly PlacedCurve[] {
-  return layoutFigure(figure, size).plots.flatMap(({ figure: part, plot, left, top }) => {
+export function placePoints(figure: Figure, size: Omit<PlateSize, "fontSize">): PlacedPoints {
+  const { width, height, plots } = layoutOnPage(figure, size);
+  const curves = plots.flatMap(({ figure: part, plot, left, top }) => {
     const { frame, inner, x, y } = plot;
     const across = (at: number) => left + frame.left + ((at - x.low) / (x.high - x.low)) * (frame.right - frame.left);
     const down = (at: number) => top + inner.bottom - ((at - y.low) / (y.high - y.low)) * (inner.bottom - inner.top);
@@ -35,4 +44,5 @@ export function placePoints(figure: Figure, size: PlateSize): readonly PlacedCur
       }),
     }));
   });
+  return { width, height, curves };
 }

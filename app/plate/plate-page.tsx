@@ -1,11 +1,11 @@
 import "katex/dist/katex.min.css";
 import "../galley/galley.css";
 import "./plate.css";
-import { FigurePlate } from "../figures/index.ts";
 import { CommandLink, RunningHead, TailLine } from "../ui/index.ts";
 import { ourMarkup } from "../ui/markup.ts";
 import { PlateBeside } from "./beside.tsx";
 import type { PlateFace } from "./plate.ts";
+import { PlateReader } from "./reader.tsx";
 
 interface Props {
   readonly paperId: string;
@@ -36,10 +36,10 @@ export function PlatePage({ paperId, paperTitle, face }: Props) {
           {figure ? (
             <>
               <div className="plate-wide">
-                <FigurePlate figure={figure} width={WIDE} height={WIDE_HEIGHT} />
+                <PlateReader figure={figure} readings={face.readings} width={WIDE} height={WIDE_HEIGHT} />
               </div>
               <div className="plate-narrow">
-                <FigurePlate figure={figure} width={NARROW} />
+                <PlateReader figure={figure} readings={face.readings} width={NARROW} />
               </div>
             </>
           ) : null}

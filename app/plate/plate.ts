@@ -4,6 +4,7 @@ import type { Figure } from "../figures/index.ts";
 import { type PrintedNumber, printNumber } from "../formulas/index.ts";
 import { type GalleyPaperProps, type PlateMarkup, renderPlate } from "../galley/index.ts";
 import { renderMath } from "../ui/math.ts";
+import { type CurveReadings, figureReadings } from "./readings.ts";
 
 /** One cell of a paper with what it shows. */
 export interface Plate {
@@ -41,6 +42,8 @@ export interface PlateFace {
   readonly line: number;
   readonly title: string;
   readonly figure: Figure | null;
+  /** Of the figure's curves, in the order in which they are placed. */
+  readonly readings: readonly CurveReadings[];
   readonly markup: PlateMarkup;
   readonly values: readonly PlateValue[];
   readonly parameters: readonly PlateParameter[];
@@ -76,6 +79,7 @@ export function plateFace(plate: Plate, printed: GalleyPaperProps): PlateFace {
     line: planned.line,
     title,
     figure: view.figure,
+    readings: view.figure ? figureReadings(view.figure) : [],
     markup,
     values: valuesOf(plate),
     parameters: parametersOf(plate, printed),

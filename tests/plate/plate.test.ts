@@ -61,6 +61,12 @@ describe("a plate", () => {
     expect(face.markup.points.match(/<tr>/g)?.length).toBe(1 + 6);
   });
 
+  it("says at each point of the figure what stands there, with supported digits alone", () => {
+    const [law] = face.readings;
+    expect(law?.texts).toHaveLength(6);
+    expect(law?.texts[2]).toMatch(/^n = 2, P ?\(K ?= ?n\) = 0\.0\d+$/);
+  });
+
   it("of a cell that prints nothing still has its values", () => {
     const process = plateFace(plateOf("larvae"), printed);
     expect(process.title).toBe("Process larvae");
