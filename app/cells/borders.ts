@@ -69,15 +69,24 @@ export interface BorderWords {
   readonly above: string;
 }
 
-/** The first cell whose branch changes at a border, and how. */
+/** How the first cell changes whose branch does so at a border, with all others that do so for the same reason. */
 export function borderWords(lower: Branches, upper: Branches): BorderWords | null {
-  for (const [id, below] of lower) {
+  const changes = [...lower].flatMap(([id, below]) => {
     const above = upper.get(id);
-    if (above === undefined || above.name === below.name) continue;
-    const border = below.borders.find((candidate) => above.borders.includes(candidate)) ?? above.borders[0] ?? "";
-    return { at: `${border} in ${id}`, below: below.holds, above: above.holds };
-  }
-  return null;
+    return above === undefined || above.name === below.name
+      ? []
+      : [{ id, below, above, why: sharedBorder(below, above) }];
+  });
+  const [first] = changes;
+  if (first === undefined) return null;
+  const { why, below, above } = first;
+  const ids = changes.filter((change) => change.why === why).map(({ id }) => id);
+  const cells = ids.length === 1 ? ids[0] : `${ids.slice(0, -1).join(", ")} and ${ids.at(-1)}`;
+  return { at: `${why} in ${cells}`, below: below.holds, above: above.holds };
+}
+
+function sharedBorder(a: Branch, b: Branch): string {
+  return a.borders.find((border) => b.borders.includes(border)) ?? a.borders[0] ?? b.borders[0] ?? "the branch changes";
 }
 
 /** Which side of a border does not reach it: its own end is not attained there. */

@@ -50,6 +50,16 @@ export function computePlan(
   return outcomes;
 }
 
+/** Ids of the cells that take a moment only, those they read included: what a page may compute for itself. */
+export function quickCells(plan: Plan): ReadonlySet<string> {
+  const quick = new Set<string>();
+  // In dependency order, so that what a cell reads has been judged before it.
+  for (const cell of plan.cells) {
+    if (cell.key !== null && cell.quick && cell.needs.every((id) => quick.has(id))) quick.add(cell.id);
+  }
+  return quick;
+}
+
 /** A scope over parameters and results; a cell that has no result but a reason gives that reason. */
 export function scopeOver(
   parameters: (name: string) => Value | undefined,

@@ -55,7 +55,8 @@ export function evaluateParameters(names: Declarations, overrides: Readonly<Reco
 
   const planned = [...names.declared].map(([name, { parameter }]) => {
     const overridden = Object.hasOwn(overrides, name);
-    return plannedParameter(parameter, values.get(name) ?? refusedValue("It has no value."), scope, overridden);
+    const shown = plannedParameter(parameter, values.get(name) ?? refusedValue("It has no value."), scope, overridden);
+    return { ...shown, formula: formulas.get(name) ?? null, reads: [...(reads.get(name) ?? [])] };
   });
   for (const parameter of planned) problems.push(...rangeProblems(parameter, names));
   return { planned, values, formulas, reads, scope, problems };
@@ -139,7 +140,7 @@ function plannedParameter(
   value: Value,
   scope: Scope,
   overridden: boolean,
-): PlannedParameter {
+): Omit<PlannedParameter, "formula" | "reads"> {
   const { name, source, from, to, line, symbol, unit, note } = parameter;
   const number = (formula: Formula | null): number | null => {
     const end = formula === null ? null : evaluated(formula, scope);

@@ -26,10 +26,17 @@ export function planPaper(paper: Paper, options: { readonly overrides?: Readonly
   const { order, dependencies } = findDependencies(names, parameters);
   const keys = new Keys(names.drafts, dependencies, parameters);
   const tasks = new Tasks(names.drafts, dependencies, order, parameters, keys);
+  const quick = new Map<string, boolean>();
   const cells = order.flatMap((id) => {
     const draft = names.drafts.get(id);
     const reads = dependencies.get(id);
-    return draft === undefined || reads === undefined ? [] : [plannedCell(draft, reads, keys, tasks, parameters)];
+    if (draft === undefined || reads === undefined) return [];
+    const planned = plannedCell(draft, reads, keys, tasks, parameters);
+    // What varies a parameter is no quicker than the cells it computes again.
+    const isQuick =
+      planned.quick && (planned.task?.recomputed?.cells ?? []).every((again) => quick.get(again.id) === true);
+    quick.set(id, isQuick);
+    return [{ ...planned, quick: isQuick }];
   });
   const problems = [
     ...parameters.problems,

@@ -32,6 +32,10 @@ export interface PlannedParameter {
   readonly note: string;
   /** Overridden for a preview or by --set. */
   readonly overridden: boolean;
+  /** null: it could not be read. */
+  readonly formula: Formula | null;
+  /** Parameters it is computed from, directly and through others. */
+  readonly reads: readonly string[];
 }
 
 export interface PlannedCell {
@@ -116,6 +120,14 @@ export interface CellView {
   readonly table: TableData | null;
   /** The data table behind the figure. */
   readonly points: TableData | null;
+}
+
+/** What a result says of itself beside its values and its view, where its cell stands. */
+export interface Finding {
+  /** It needs attention, and is marked ‡. */
+  readonly isGrave: boolean;
+  /** Whole sentences. */
+  readonly words: string;
 }
 
 /**

@@ -6,6 +6,7 @@ import {
   type Plan,
   type PlannedCell,
   planPaper,
+  quickCells,
   type ShownPaper,
 } from "../../cells/index.ts";
 import { type Paper, readPaper } from "../../paper/index.ts";
@@ -157,12 +158,8 @@ export class SheetReader {
 
   /** Computes here, for this page alone, what takes milliseconds and reads only such; nothing of it is kept elsewhere. */
   private tryOut(plan: Plan): ReadonlyMap<string, Outcome> {
-    const quick = new Set<string>();
-    // In dependency order, so that what a cell reads has been judged before it.
-    for (const cell of plan.cells) {
-      if (cell.key !== null && cell.quick && cell.needs.every((id) => quick.has(id))) quick.add(cell.id);
-    }
-    const outcomes = computePlan(plan, { known: (key) => this.results.any(key), only: [...quick] });
+    const only = [...quickCells(plan)];
+    const outcomes = computePlan(plan, { known: (key) => this.results.any(key), only });
     for (const outcome of outcomes.values()) if (outcome.status === "computed") this.results.keepTrial(outcome.result);
     return outcomes;
   }

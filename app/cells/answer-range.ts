@@ -1,0 +1,230 @@
+import type { Quantity, Value } from "../formulas/index.ts";
+import { exact, toDouble } from "../formulas/index.ts";
+import type { Paper } from "../paper/index.ts";
+import type { Border } from "./borders.ts";
+import { borderWords, findBorders, openSide, sameBranches } from "./borders.ts";
+import { branchAt, computePlan, planningContext, quickCells } from "./compute.ts";
+import { CellFault, evaluated, NotKnownYet } from "./context.ts";
+import type { Branch } from "./kind.ts";
+import { planPaper } from "./plan.ts";
+import { KINDS } from "./registry.ts";
+import type { CellResult, Outcome, Plan, PlannedCell, PlannedParameter } from "./types.ts";
+import { numberValue } from "./values.ts";
+
+/** Where along a parameter the cells that read it answer otherwise, or not at all. */
+export interface AnswerRange {
+  readonly parameter: string;
+  /** In increasing order: all within the parameter's scale, or the nearest ones where it has none. */
+  readonly borders: readonly AnswerBorder[];
+}
+
+/** One such place, between two neighbouring doubles. */
+export interface AnswerBorder {
+  readonly below: number;
+  readonly above: number;
+  /** The side that does not reach the border. */
+  readonly open: "below" | "above";
+  /** "the drift is critical in larvae"; "" where only an input goes out of its range. */
+  readonly why: string;
+  readonly sides: { readonly below: AnswerSide; readonly above: AnswerSide };
+}
+
+export interface AnswerSide {
+  /** "K is infinite with positive probability"; "" where no theory changes its branch. */
+  readonly holds: string;
+  /** Cells that have no answer in the middle of the stretch from here to the next border, with the reason. */
+  readonly without: readonly { readonly id: string; readonly reason: string }[];
+}
+
+/** What the search may use, and how far it goes. */
+export interface AnswerRangeOptions {
+  readonly overrides?: Readonly<Record<string, string>>;
+  /** Results known by key. */
+  known?(key: string): CellResult | undefined;
+}
+
+/** So many places of a scale are looked at before borders are closed in on. */
+const LOOKS = 48;
+/** Without a scale: so far from the present value, in shares of its size. */
+const REACH = [1 / 64, 1 / 16, 1 / 4, 1 / 2, 1, 2, 4];
+
+/**
+ * Finds where along a parameter the quick cells that read it change the branch of their theory or have no answer. Each step is
+ * some milliseconds of work, so that a page may do something else in between. Planning decides inputs out of range and
+ * branches; then each stretch between two borders is computed once, in its middle, for the cells that fail there.
+ */
+export function* answerRangeSteps(
+  paper: Paper,
+  plan: Plan,
+  name: string,
+  options: AnswerRangeOptions = {},
+): Generator<void, AnswerRange> {
+  const parameter = plan.parameters.find((each) => each.name === name);
+  const quick = quickCells(plan);
+  const readers = plan.cells.filter((cell) => quick.has(cell.id) && cell.parameters.includes(name));
+  const places = parameter === undefined ? [] : placesOf(parameter);
+  if (readers.length === 0 || places.length === 0) return { parameter: name, borders: [] };
+  yield;
+  const borders = findBorders(places, (x) => standingsAt(plan, name, x, readers, options), sameBranches);
+  if (borders.length === 0) return { parameter: name, borders: [] };
+  const stretches: (readonly Missing[])[] = [];
+  const ends = [places[0] ?? 0, ...borders.flatMap(({ below, above }) => [below, above]), places.at(-1) ?? 0];
+  for (let index = 0; index < ends.length; index += 2) {
+    const [from = 0, to = 0] = ends.slice(index, index + 2);
+    stretches.push(yield* missingAt(paper, name, from + (to - from) / 2, readers, options));
+  }
+  return { parameter: name, borders: borders.map((border, index) => answerBorder(border, stretches, index)) };
+}
+
+/** The same at once. */
+export function answerRange(paper: Paper, plan: Plan, name: string, options: AnswerRangeOptions = {}): AnswerRange {
+  const steps = answerRangeSteps(paper, plan, name, options);
+  for (;;) {
+    const step = steps.next();
+    if (step.done === true) return step.value;
+  }
+}
+
+interface Missing {
+  readonly id: string;
+  readonly reason: string;
+}
+
+/** Where to look: over the scale, its present value among them, or around that value. */
+function placesOf({ min, max, value }: PlannedParameter): number[] {
+  const present = value.type === "number" ? toDouble(value.quantity) : null;
+  const around = present === null ? [] : [present];
+  if (min !== null && max !== null && min < max) {
+    const even = Array.from({ length: LOOKS + 1 }, (_, index) =>
+      index === LOOKS ? max : min + ((max - min) * index) / LOOKS,
+    );
+    return increasing([...even, ...around.filter((x) => x > min && x < max)]);
+  }
+  if (present === null) return [];
+  const size = present === 0 ? 1 : Math.abs(present);
+  return increasing([...around, ...REACH.flatMap((share) => [present - share * size, present + share * size])]);
+}
+
+function increasing(places: readonly number[]): number[] {
+  return [...new Set(places)].sort((a, b) => a - b);
+}
+
+/** How each reader stands at a value of the parameter: the branch of its theory, or that its input is refused. */
+function standingsAt(
+  plan: Plan,
+  name: string,
+  x: number,
+  readers: readonly PlannedCell[],
+  { known }: AnswerRangeOptions,
+): ReadonlyMap<string, Branch> {
+  const parameters = parametersAt(plan, name, x);
+  const results = new Map<string, CellResult>();
+  for (const cell of plan.cells) {
+    const result = cell.key === null || cell.parameters.includes(name) ? undefined : known?.(cell.key);
+    if (result !== undefined) results.set(cell.id, result);
+  }
+  const standings = new Map<string, Branch>();
+  for (const { id, task } of readers) {
+    if (task === null) continue;
+    const here = { ...task, parameters: onlyOf(Object.keys(task.parameters), parameters) };
+    const fault = faultOf(here);
+    const branch = fault ?? branchAt(here, here.parameters, results);
+    if (branch !== null) standings.set(id, branch);
+  }
+  return standings;
+}
+
+/** The parameters with one of them set, and those computed from it evaluated again; one without a value is left out. */
+function parametersAt(plan: Plan, name: string, x: number): ReadonlyMap<string, Quantity> {
+  const values = new Map<string, Value>(plan.parameters.map((parameter) => [parameter.name, parameter.value]));
+  values.set(name, numberValue(exact(x)));
+  const scope = { name: (read: string) => values.get(read), member: () => undefined, call: () => undefined };
+  const dependent = plan.parameters.filter(({ reads, formula }) => formula !== null && reads.includes(name));
+  for (const { name: other, formula } of [...dependent].sort((a, b) => a.reads.length - b.reads.length)) {
+    const value = formula === null ? undefined : evaluated(formula, scope);
+    if (value !== undefined)
+      values.set(other, value.type === "number" ? numberValue(exact(toDouble(value.quantity))) : value);
+  }
+  return new Map([...values].flatMap(([read, value]) => (value.type === "number" ? [[read, value.quantity]] : [])));
+}
+
+function onlyOf(names: readonly string[], parameters: ReadonlyMap<string, Quantity>): Record<string, Quantity> {
+  const found: Record<string, Quantity> = {};
+  for (const name of names) {
+    const quantity = parameters.get(name);
+    if (quantity !== undefined) found[name] = quantity;
+  }
+  return found;
+}
+
+/** An input that is refused is a branch of its own, in which the cell has no answer. */
+function faultOf(task: NonNullable<PlannedCell["task"]>): Branch | null {
+  try {
+    KINDS.get(task.kind)?.inspect(task.model, planningContext(task));
+    return null;
+  } catch (error) {
+    if (error instanceof NotKnownYet) return null;
+    if (!(error instanceof CellFault)) throw error;
+    return { name: `refused ${error.path}`, holds: error.message, borders: [], closed: false };
+  }
+}
+
+/** Quick readers without an answer at one value of the parameter. One cell a step. */
+function* missingAt(
+  paper: Paper,
+  name: string,
+  x: number,
+  readers: readonly PlannedCell[],
+  { overrides, known }: AnswerRangeOptions,
+): Generator<void, readonly Missing[]> {
+  const plan = planPaper(paper, { overrides: { ...overrides, [name]: String(x) } });
+  yield;
+  const here = new Map<string, CellResult>();
+  const missing: Missing[] = [];
+  for (const { id } of readers) {
+    const outcome = computePlan(plan, {
+      known: (key) => here.get(key) ?? known?.(key),
+      only: [id],
+      onOutcome: keep,
+    }).get(id);
+    const reason = outcome === undefined ? null : reasonOf(outcome, missing);
+    if (reason !== null) missing.push({ id, reason });
+    yield;
+  }
+  return missing;
+
+  function keep(_cell: PlannedCell, outcome: Outcome): void {
+    if (outcome.status === "computed") here.set(outcome.result.key, outcome.result);
+  }
+}
+
+function reasonOf(outcome: Outcome, missing: readonly Missing[]): string | null {
+  if (outcome.status === "computed") return null;
+  if (outcome.status === "failed") return outcome.failure.message;
+  return missing.find(({ id }) => outcome.needs.includes(id))?.reason ?? "It waits for a cell that has no answer.";
+}
+
+function answerBorder(
+  { below, above, lower, upper }: Border<ReadonlyMap<string, Branch>>,
+  stretches: readonly (readonly Missing[])[],
+  index: number,
+): AnswerBorder {
+  const words = borderWords(lower, upper);
+  return {
+    below,
+    above,
+    open: words === null ? refusedSide(lower, upper) : openSide(lower, upper),
+    why: words?.at ?? "",
+    sides: {
+      below: { holds: words?.below ?? "", without: stretches[index] ?? [] },
+      above: { holds: words?.above ?? "", without: stretches[index + 1] ?? [] },
+    },
+  };
+}
+
+/** Where an input goes out of its range, that side is taken not to reach the border. */
+function refusedSide(lower: ReadonlyMap<string, Branch>, upper: ReadonlyMap<string, Branch>): "below" | "above" {
+  const refusals = (standings: ReadonlyMap<string, Branch>) =>
+    [...standings.values()].filter(({ name }) => name.startsWith("refused ")).length;
+  return refusals(lower) >= refusals(upper) ? "below" : "above";
+}
