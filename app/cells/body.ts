@@ -1,6 +1,7 @@
 import type { Formula, FormulaProblem } from "../formulas/index.ts";
 import { parseFormula } from "../formulas/index.ts";
 import type { Cell, Problem, Yaml, YamlEntry } from "../paper/index.ts";
+import { PRINTED_PARTS } from "../paper/index.ts";
 import { didYouMean, isName, listOfNames, nearestFix } from "./names.ts";
 
 /** A cell named in a body, `of: larvae`. In keys it stands for the key of that cell. */
@@ -25,6 +26,8 @@ export interface FormulaUse {
 export interface ReferenceUse {
   readonly id: string;
   readonly kinds: readonly string[];
+  /** What is wanted, where the kinds are too many to be named: "a cell with a figure". */
+  readonly wanted?: string;
   readonly path: string;
   readonly node: Yaml;
 }
@@ -38,6 +41,10 @@ export interface IntroducedName {
   readonly to: number;
   readonly line: number;
 }
+
+const DRAWN_KINDS: readonly string[] = Object.entries(PRINTED_PARTS).flatMap(([kind, part]) =>
+  part === "figure" ? [kind] : [],
+);
 
 type YamlMap = Extract<Yaml, { yaml: "map" }>;
 /** A stretch of the paper, for problems. */
@@ -60,6 +67,8 @@ export class Body {
     readonly cell: Cell,
     readonly text: string,
     readonly map: YamlMap,
+    /** Names of the paper's cells: tells a cell from a formula where either may stand. */
+    readonly cellNames: ReadonlySet<string> = new Set(),
   ) {
     this.places[""] = this.opening;
     for (const entry of map.entries) {
@@ -179,6 +188,16 @@ export class Body {
     const id = node === null ? null : this.scalar(node, `the name of a ${kinds.join(" or ")} cell`);
     if (node === null || id === null) return { cell: "" };
     this.references.push({ id, kinds, path: key, node });
+    return { cell: id };
+  }
+
+  /** A cell with a figure of its own, named at a node. */
+  drawnCellAt(node: Yaml, path: string): CellReference {
+    this.places[path] = node;
+    const wanted = "a cell with a figure";
+    const id = this.scalar(node, `the name of ${wanted}`);
+    if (id === null) return { cell: "" };
+    this.references.push({ id, kinds: DRAWN_KINDS, wanted, path, node });
     return { cell: id };
   }
 

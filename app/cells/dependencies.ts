@@ -1,5 +1,5 @@
 import { RESERVED_NAMES } from "../formulas/index.ts";
-import type { FormulaUse, IntroducedName, ReferenceUse } from "./body.ts";
+import type { FormulaUse, IntroducedName, Place, ReferenceUse } from "./body.ts";
 import type { Declarations } from "./declared.ts";
 import { faultAt } from "./declared.ts";
 import type { Draft } from "./drafts.ts";
@@ -17,13 +17,20 @@ export interface Dependencies {
   readonly parameters: ReadonlySet<string>;
 }
 
+/** What an entry reads that stands once for all values of a varied parameter. */
+interface OutsideRead {
+  readonly path: string;
+  readonly place: Place;
+  readonly parameters: readonly string[];
+  readonly cells: readonly string[];
+}
+
 /** What a body itself reads, before what stands behind it is followed. */
 interface DirectReads {
   readonly cells: Set<string>;
   readonly parameters: Set<string>;
-  /** Parameters read outside of what is varied. */
-  readonly outside: Set<string>;
-  readonly outsideCells: Set<string>;
+  /** What is read outside of what is varied. */
+  readonly outside: OutsideRead[];
   readonly varied: readonly string[];
 }
 
@@ -44,7 +51,7 @@ export function findDependencies(
     const draft = names.drafts.get(id);
     if (reads === undefined || draft === undefined) continue;
     dependencies.set(id, follow(reads, dependencies, parameters));
-    checkVariedRows(draft, reads, dependencies, parameters);
+    checkVaried(draft, reads, dependencies, parameters);
   }
   return { order, dependencies };
 }
@@ -59,8 +66,7 @@ function readsOf(draft: Draft, names: Declarations, values: ParameterValues): Di
   const reads: DirectReads = {
     cells: new Set(),
     parameters: new Set(),
-    outside: new Set(),
-    outsideCells: new Set(),
+    outside: [],
     varied,
   };
   if (draft.body === null || draft.kind === null) return reads;
@@ -82,10 +88,10 @@ function noteFormula(
     const fix = fixOfFault(fault, use, use.base);
     draft.faults.push(faultAt(draft, placeOfFault(fault, use, use.base), fault.message, fix));
   }
-  const isVaried = reads.varied.some((name) => use.locals.includes(name));
+  if (!reads.varied.some((name) => use.locals.includes(name)))
+    reads.outside.push({ path: use.path, place: use, parameters: [...found.parameters], cells: [...found.cells] });
   for (const name of found.parameters) {
     reads.parameters.add(name);
-    if (!isVaried) reads.outside.add(name);
     const value = values.values.get(name);
     if (value?.type === "refused" && !reads.varied.includes(name)) draft.faults.push(faultAt(draft, use, value.reason));
   }
@@ -94,21 +100,16 @@ function noteFormula(
     draft.faults.push(faultAt(draft, use, message));
     return;
   }
-  for (const cell of found.cells) {
-    reads.cells.add(cell);
-    if (!isVaried) reads.outsideCells.add(cell);
-  }
+  for (const cell of found.cells) reads.cells.add(cell);
 }
 
 function noteReference(draft: Draft, use: ReferenceUse, reads: DirectReads, names: Declarations): void {
   const cell = names.cells.get(use.id);
-  const wanted = `a ${use.kinds.join(" or ")} cell`;
+  const wanted = use.wanted ?? `a ${use.kinds.join(" or ")} cell`;
   const candidates = [...names.cells].filter(([, { kind }]) => use.kinds.includes(kind)).map(([name]) => name);
   if (cell === undefined) {
     const there =
-      candidates.length === 0
-        ? ` This paper has no ${use.kinds.join(" or ")} cell with a name.`
-        : ` There are ${listOfNames(candidates)}.`;
+      candidates.length === 0 ? ` This paper has no such cell with a name.` : ` There are ${listOfNames(candidates)}.`;
     const message = `\`${use.id}\` is not a cell of this paper; \`${use.path}\` names ${wanted}.${didYouMean(use.id, candidates) || there}`;
     draft.faults.push(faultAt(draft, use.node, message, nearestFix(use.id, candidates, use.node)));
   } else if (!use.kinds.includes(cell.kind)) {
@@ -117,7 +118,7 @@ function noteReference(draft: Draft, use: ReferenceUse, reads: DirectReads, name
     );
   } else {
     reads.cells.add(use.id);
-    reads.outsideCells.add(use.id);
+    reads.outside.push({ path: use.path, place: use.node, parameters: [], cells: [use.id] });
   }
 }
 
@@ -160,26 +161,26 @@ function follow(reads: DirectReads, known: ReadonlyMap<string, Dependencies>, va
   return { cells: reads.cells, varied: reads.varied, parameters };
 }
 
-/** The values that a varied parameter takes cannot depend on it. */
-function checkVariedRows(
+/** The values that a varied parameter takes cannot depend on it, nor can anything that stands once for all of them. */
+function checkVaried(
   draft: Draft,
   reads: DirectReads,
   known: ReadonlyMap<string, Dependencies>,
   values: ParameterValues,
 ): void {
   for (const name of reads.varied) {
-    const depends =
-      [...reads.outside].some((outside) => outside === name || values.reads.get(outside)?.has(name) === true) ||
-      [...reads.outsideCells].some((cell) => known.get(cell)?.parameters.has(name) === true);
-    if (!depends) continue;
-    const place = draft.body?.introduced.find((given) => given.name === name) ?? draft.cell.span;
-    draft.faults.push(
-      faultAt(
-        draft,
-        place,
-        `The values given to \`${name}\` are computed from \`${name}\` itself; they must stand without it.`,
-      ),
-    );
+    const given = draft.body?.introduced.find((introduced) => introduced.name === name);
+    for (const { path, place, parameters, cells } of reads.outside) {
+      const depends =
+        parameters.some((outside) => outside === name || values.reads.get(outside)?.has(name) === true) ||
+        cells.some((cell) => known.get(cell)?.parameters.has(name) === true);
+      if (!depends) continue;
+      const isOwnValue = given !== undefined && (path === given.path || path.startsWith(`${given.path}.`));
+      const message = isOwnValue
+        ? `The values given to \`${name}\` are computed from \`${name}\` itself; they must stand without it.`
+        : `\`${path}\` depends on \`${name}\`, which this cell varies; it must stand without it.`;
+      draft.faults.push(faultAt(draft, isOwnValue ? given : place, message));
+    }
   }
 }
 

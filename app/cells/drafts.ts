@@ -22,15 +22,16 @@ export interface Draft {
 
 /** Reads every cell of a paper by its kind. Pure; nothing throws. */
 export function readDrafts(paper: Paper): readonly Draft[] {
-  return paper.cells.map((cell) => readDraft(cell, paper));
+  const names = new Set(paper.cells.flatMap(({ name }) => name ?? []));
+  return paper.cells.map((cell) => readDraft(cell, paper, names));
 }
 
-function readDraft(cell: Cell, paper: Paper): Draft {
+function readDraft(cell: Cell, paper: Paper, names: ReadonlySet<string>): Draft {
   const kind = KINDS.get(cell.kind) ?? null;
   const unreadable = faultsOfReading(cell, paper);
   if (kind === null) return { ...NOTHING_READ, cell, kind, faults: [...unreadable, unknownKind(cell, paper.text)] };
   if (cell.body === null) return { ...NOTHING_READ, cell, kind, faults: unreadable };
-  const body = new Body(cell, paper.text, cell.body);
+  const body = new Body(cell, paper.text, cell.body, names);
   const looks = new Body(cell, paper.text, cell.body);
   checkKeys(body, kind);
   const model = kind.read(body);

@@ -1,8 +1,9 @@
+import type { Series } from "../figures/index.ts";
 import type { Quantity, Value } from "../formulas/index.ts";
 import type { Body } from "./body.ts";
 import type { ComputeContext } from "./context.ts";
 import type { Presentation } from "./presentation.ts";
-import type { CellView } from "./types.ts";
+import type { CellView, Finding } from "./types.ts";
 
 /** What the manual and completion say of a kind. */
 export interface KindDocumentation {
@@ -85,7 +86,7 @@ export interface Computed<Data> {
  * A kind of cell. One is a folder with model.ts and view.ts, and a line in registry.ts; nothing else branches on kinds.
  *
  * Life: `read` (planning, on each keystroke) → `inspect`, `branch` and `cost` (planning, when no other cell's value enters) → `compute` (in a
- * worker) → `call` and `view` (wherever the result is shown, from its data alone). All are pure; `read` notes problems in
+ * worker) → `call`, `view` and `finding` (wherever the result is shown, from its data alone). All are pure; `read` notes problems in
  * the body and never throws; `inspect`, `branch`, `cost` and `compute` throw CellFault or SolverError, `call` SolverError; `view` never throws.
  */
 export interface KindOf<Model, Data> {
@@ -107,6 +108,10 @@ export interface KindOf<Model, Data> {
   /** `K(3)`: member is "" for the cell itself. undefined when it has no such callable. */
   call(data: Data, member: string, args: readonly Quantity[]): Value | undefined;
   view(data: Data, presentation: Presentation): CellView;
+  /** What it draws among other curves of a figure. Absent: the series of its own figure. */
+  drawn?(data: Data, presentation: Presentation): readonly Series[];
+  /** What is said where the cell stands; null for nothing. Never throws. Absent: its values and its view say all. */
+  finding?(data: Data, presentation: Presentation): Finding | null;
 }
 
 export type Kind = KindOf<unknown, unknown>;
@@ -118,6 +123,8 @@ export type Kind = KindOf<unknown, unknown>;
 export function defineKind<Model, Data>(kind: KindOf<Model, Data>): Kind {
   const branch = kind.branch?.bind(kind);
   const cost = kind.cost?.bind(kind);
+  const drawn = kind.drawn?.bind(kind);
+  const finding = kind.finding?.bind(kind);
   return {
     documentation: kind.documentation,
     solver: kind.solver,
@@ -130,6 +137,8 @@ export function defineKind<Model, Data>(kind: KindOf<Model, Data>): Kind {
     compute: (model, context) => kind.compute(model as Model, context),
     call: (data, member, args) => kind.call(data as Data, member, args),
     view: (data, presentation) => kind.view(data as Data, presentation),
+    drawn: drawn && ((data, presentation) => drawn(data as Data, presentation)),
+    finding: finding && ((data, presentation) => finding(data as Data, presentation)),
   };
 }
 

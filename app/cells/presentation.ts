@@ -1,3 +1,4 @@
+import type { Series } from "../figures/index.ts";
 import type { Formula, Scope } from "../formulas/index.ts";
 import { toDouble } from "../formulas/index.ts";
 import type { Cell, Yaml } from "../paper/index.ts";
@@ -7,6 +8,7 @@ import { evaluated } from "./context.ts";
 import type { KeyDocumentation, KindDocumentation } from "./kind.ts";
 import { didYouMean, listOfNames } from "./names.ts";
 import { defaultSymbol } from "./parameters/symbol.ts";
+import type { CellView } from "./types.ts";
 
 type YamlMap = Extract<Yaml, { yaml: "map" }>;
 type AxisName = "x" | "y";
@@ -26,9 +28,21 @@ export interface Presentation {
   readonly y: AxisLook;
   /** The body as it is now, for heads and digits of columns. */
   readonly body: YamlMap | null;
+  /** TeX or words for what the figure names beside its axes: curves, bands, levels, panels. */
+  readonly labels: ReadonlyMap<string, string>;
   /** TeX of a name: a parameter's own symbol, or as its letters say. */
   symbolOf(name: string): string;
+  /** What the data of another cell look like, with that cell's own looks as they are now: for kinds that draw other cells. */
+  viewOf(id: string, kind: string, data: unknown): DrawnView;
 }
+
+/** A cell as another one draws it. */
+export interface DrawnView extends CellView {
+  /** What it draws among other curves. */
+  readonly series: readonly Series[];
+}
+
+export const NOTHING_DRAWN: DrawnView = { figure: null, table: null, points: null, series: [] };
 
 /** Keys that every kind has, or every kind with a figure. None of them changes a result. */
 export const PRESENTATION_KEYS: readonly (KeyDocumentation & { readonly figuresOnly: boolean })[] = [
@@ -55,7 +69,7 @@ export const PRESENTATION_KEYS: readonly (KeyDocumentation & { readonly figuresO
   },
   {
     name: "labels",
-    meaning: "TeX at the axes' ends: {x: n, y: p_n}",
+    meaning: "TeX at the axes' ends, and beside what a figure names: {x: n, y: p_n, exact: exact law}",
     required: false,
     fallback: "the kind's",
     figuresOnly: true,
@@ -106,6 +120,7 @@ export function presentationOf(
   cell: Cell,
   parameters: Scope,
   symbols: ReadonlyMap<string, string> = new Map(),
+  viewOf: Presentation["viewOf"] = () => NOTHING_DRAWN,
 ): Presentation {
   const axes = entriesOf(cell.body, "axes");
   const labels = entriesOf(cell.body, "labels");
@@ -115,7 +130,8 @@ export function presentationOf(
     label: scalarText(labels.get(axis)),
   });
   const symbolOf = (name: string) => symbols.get(name) ?? defaultSymbol(name);
-  return { name: cell.name, x: look("x"), y: look("y"), body: cell.body, symbolOf };
+  const words = new Map([...labels].flatMap(([name, node]) => (node.yaml === "scalar" ? [[name, node.text]] : [])));
+  return { name: cell.name, x: look("x"), y: look("y"), body: cell.body, labels: words, symbolOf, viewOf };
 }
 
 /** A cell's caption, Markdown with math and values, and where it stands in the paper; null when it has none. */
@@ -151,8 +167,19 @@ function checkLabels(body: Body): void {
   if (node === null) return;
   const entries = body.mapAt(node, "a map of labels such as {x: x, y: w_s(x)}");
   if (entries === null) return;
-  body.onlyKeys(entries, ["x", "y"], "`labels`");
+  body.onlyKeys(entries, ["x", "y", ...namedInFigure(body)], "`labels`");
   for (const entry of entries) body.scalar(entry.value, "a label in TeX");
+}
+
+/** Names that a body gives to what its figure shows. */
+function namedInFigure(body: Body): readonly string[] {
+  const named = ["curves", "bands", "levels", "record"].flatMap((key) => {
+    const node = body.node(key);
+    return node?.yaml === "map" ? node.entries.map((entry) => entry.key) : [];
+  });
+  const panels = body.node("panels");
+  const cells = panels?.yaml === "list" ? panels.items.flatMap((item) => scalarText(item) ?? []) : [];
+  return [...new Set([...named, ...cells])];
 }
 
 function entriesOf(map: YamlMap | null, key: string): ReadonlyMap<string, Yaml> {

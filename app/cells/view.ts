@@ -1,7 +1,9 @@
+import { thinBandRemark } from "../figures/index.ts";
 import { paperScope } from "./numbers.ts";
-import { presentationOf } from "./presentation.ts";
+import type { DrawnView, Presentation } from "./presentation.ts";
+import { NOTHING_DRAWN, presentationOf } from "./presentation.ts";
 import { KINDS } from "./registry.ts";
-import type { CellResult, CellView, Plan, PlannedCell } from "./types.ts";
+import type { CellResult, CellView, Finding, Plan, PlannedCell } from "./types.ts";
 
 const NOTHING: CellView = { figure: null, table: null, points: null };
 
@@ -17,6 +19,37 @@ export function viewCell(
 ): CellView {
   const kind = KINDS.get(result.kind);
   if (kind === undefined || result.kind !== planned.kind) return NOTHING;
+  return withThinBandsSaid(kind.view(result.data, looksOf(planned, plan)));
+}
+
+/** A band that is too thin to be drawn is said in the caption. */
+function withThinBandsSaid(view: CellView): CellView {
+  const remark = view.figure && thinBandRemark(view.figure);
+  return view.figure && remark
+    ? { ...view, figure: { ...view.figure, remarks: [...view.figure.remarks, remark] } }
+    : view;
+}
+
+/** What a result says where its cell stands, a check that fails say; null for nothing. */
+export function findingOf(planned: PlannedCell, result: CellResult, plan: Plan): Finding | null {
+  const kind = KINDS.get(result.kind);
+  if (kind?.finding === undefined || result.kind !== planned.kind) return null;
+  return kind.finding(result.data, looksOf(planned, plan));
+}
+
+function looksOf(planned: PlannedCell, plan: Plan): Presentation {
   const symbols = new Map(plan.parameters.map(({ name, symbol }) => [name, symbol]));
-  return kind.view(result.data, presentationOf(planned.cell, paperScope(plan, new Map()), symbols));
+  return presentationOf(planned.cell, paperScope(plan, new Map()), symbols, (id, kind, data) =>
+    drawnView(id, kind, data, plan),
+  );
+}
+
+/** Another cell's data with the looks of that cell; what is no longer a cell of that kind is not drawn. */
+function drawnView(id: string, kindName: string, data: unknown, plan: Plan): DrawnView {
+  const kind = KINDS.get(kindName);
+  const planned = plan.byId.get(id);
+  if (kind === undefined || planned === undefined || planned.kind !== kindName) return NOTHING_DRAWN;
+  const looks = looksOf(planned, plan);
+  const view = kind.view(data, looks);
+  return { ...view, series: kind.drawn?.(data, looks) ?? view.figure?.series ?? [] };
 }

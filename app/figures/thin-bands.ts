@@ -7,9 +7,15 @@ const NOMINAL_HEIGHT = 210;
 
 /** What the caption says of bands that are thinner than their line, and are therefore not drawn; null where there are none. */
 export function thinBandRemark(figure: Figure): string | null {
-  const banded = figure.series.filter((series) => series.mark === "line" && thickness(series, figure) > 0);
-  const ends = yEnds(figure);
-  const thin = banded.filter((series) => isThin(thickness(series, figure), ends)).map(({ name }) => name);
+  const plots = figure.panels?.length ? figure.panels.map((panel) => panel.figure) : [figure];
+  const banded = plots.flatMap((plot) => {
+    const ends = yEnds(plot);
+    const lines = plot.series.filter(({ mark }) => mark === "line");
+    return lines
+      .map((series) => ({ name: series.name, thick: thickness(series, plot), ends }))
+      .filter(({ thick }) => thick > 0);
+  });
+  const thin = banded.filter(({ thick, ends }) => isThin(thick, ends)).map(({ name }) => name);
   const [first, ...others] = thin;
   if (first === undefined) return null;
   if (others.length === 0) return `The error of ${first} is thinner than its line.`;
