@@ -105,30 +105,35 @@ function shifted(t: Trajectory, reader: TrajectoryReader, place: Place, x: numbe
   const xi = place.xi + way;
   const at = pointValue();
   const rounding = reader.evaluateAt(place.side, xi, at);
-  const { shift, lift } = placeSpread(t, reader, place, way, s);
-  const known = place.error + ROUNDING * (2 * way + Math.abs(xi)) + way * (inputUnit(x) + t.decaySpread) + shift;
-  const error = rounding + Math.abs(at.slopeRe) * known + lift * at.re * at.re;
+  const { shift, lift, apart } = placeSpread(t, reader, place, way, s);
+  const known = place.error + ROUNDING * (2 * way + Math.abs(xi)) + way * (inputUnit(x) + t.decaySpread) + shift.own;
+  // over a short way the place and what is read there move together
+  const error = rounding + Math.abs(at.slopeRe) * (known + apart * shift.ofTop) + apart * lift * at.re * at.re;
   const unit = reader.decay * t.base.scale[0];
   const slope = () => {
     const value = -unit * at.slopeRe;
     const second = Math.abs(secondDerivative(reader, xi, at));
-    const fromPlace = unit * (rounding * SLOPE_AMPLIFICATION + second * known + lift * Math.abs(at.re * at.slopeRe));
+    const fromPlace =
+      unit *
+      (rounding * SLOPE_AMPLIFICATION + second * (known + shift.ofTop) + 2 * lift * Math.abs(at.re * at.slopeRe));
     return { value, error: fromPlace + Math.abs(value) * (t.decaySpread + t.base.scaleSpread + 5 * ROUNDING) };
   };
   return { u: at.re, error, slope };
 }
 
-/** What half a unit in each input, s included, does to the place of s and to the trajectory beyond it: ξ moves by `shift`, and u at a
- *  fixed ξ by lift·u².
+interface PlaceSpread {
+  /** of ξ: with s and by the amplitude, and by the turning point's own move */
+  readonly shift: { readonly own: number; readonly ofTop: number };
+  /** u at a fixed ξ moves by lift·u² */
+  readonly lift: number;
+  /** share of what the trajectory's own move does that is left after a way: none of it where w is still s */
+  readonly apart: number;
+}
+
+/** What half a unit in each input, s included, does to the place of s and to the trajectory beyond it.
  *  u(ξ) = z + … is fixed to first order in z; at u(s0) = −excess it moves as the excess does, so it moves by lift·u² in between. The
  *  place of a given s then moves by that over du/dξ, and near the turning point, where du/dξ is 0, by the root of it. */
-function placeSpread(
-  t: Trajectory,
-  reader: TrajectoryReader,
-  place: Place,
-  way: number,
-  s: number,
-): { shift: number; lift: number } {
+function placeSpread(t: Trajectory, reader: TrajectoryReader, place: Place, way: number, s: number): PlaceSpread {
   const { turning } = reader;
   const near = Math.min(1, way);
   const at = pointValue();
@@ -136,14 +141,20 @@ function placeSpread(
   const second = Math.abs(secondDerivative(reader, place.xi, at));
   const above = place.side === "above" && turning !== null;
   const lift = above ? turning.excessSpread / turning.excess[0] : 0;
+  const amplitude = near * (above ? turning.amplitudeSpread : t.amplitudeSpread);
   const isTop = above && place.xi === t.above.at(-1)?.xi;
-  if (isTop) return { shift: near * turning.amplitudeSpread, lift };
+  if (isTop) return { shift: { own: amplitude, ofTop: 0 }, lift, apart: 1 };
+  const slope = Math.abs(at.slopeRe);
+  const shiftBy = (move: number) => (move === 0 ? 0 : Math.min(move / slope, Math.sqrt((2 * move) / second)));
   const own = Math.abs(s) / t.base.scale[0];
-  // over a short way, shorter than that to the turning point, the place and what is read there move together
-  const apart = Math.min(1, way * (1 + second / Math.abs(at.slopeRe)));
-  const moves = own * inputUnit(s) + apart * (lift * at.re * at.re + own * t.base.scaleSpread);
-  const shift = moves === 0 ? 0 : Math.min(moves / Math.abs(at.slopeRe), Math.sqrt((2 * moves) / second));
-  return { shift: near * (above ? turning.amplitudeSpread : t.amplitudeSpread) + shift, lift: apart * lift };
+  return {
+    shift: {
+      own: amplitude + shiftBy(own * inputUnit(s)),
+      ofTop: shiftBy(lift * at.re * at.re + own * t.base.scaleSpread),
+    },
+    lift,
+    apart: Math.min(1, way * (1 + second / slope)),
+  };
 }
 
 /** Derivatives of a Taylor polynomial lose this factor over its values, on steps of a fifth of the radius. */

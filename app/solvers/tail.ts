@@ -1,4 +1,5 @@
 import { SolverError } from "./errors.ts";
+import { nonlinearity } from "./offspring.ts";
 import { divide, LN2, logarithm, multiply } from "./pairs.ts";
 import { profileConstants, profileSlopeAt, radius } from "./profile.ts";
 import { ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
@@ -34,7 +35,11 @@ export function tailLaw(t: Trajectory, starts: Starts, terms: number): Answer<Ta
   const leading = inverse[0] as number;
   const value = leading * period * scale[0] ** particles;
   const relative =
-    CONSTANT_ROUNDINGS * ROUNDING + turning.excessSpread + turning.amplitudeSpread + spreadOfStarts(t, reader, starts);
+    CONSTANT_ROUNDINGS * ROUNDING +
+    turning.excessSpread +
+    turning.amplitudeSpread +
+    spreadOfStarts(t, reader, starts) +
+    curvatureCondition(t, reader, turning) * (PLACE_ROUNDINGS * ROUNDING + turning.excessSpread);
   return {
     s0: radius(turning, t.base),
     slopeAtStart: slopeAtStart(t, starts),
@@ -65,6 +70,18 @@ export function tailProbability(law: TailLaw, n: number): TailProbability {
 
 /** Roundings in the constant: the turning point's expansion, its inverse, the expansion at the start. */
 const CONSTANT_ROUNDINGS = 32;
+
+/** Roundings in u at the turning point. */
+const PLACE_ROUNDINGS = 2;
+
+/** By what factor a relative change of s0 − 1 changes w″ where w turns, and with it the constant: 1 and less where the law is smooth there,
+ *  much where w turns just below the pole of a geometric law or, near the critical drift toward the barrier, just above 1. */
+function curvatureCondition(t: Trajectory, reader: TrajectoryReader, turning: Turning): number {
+  const u = -turning.excess[0];
+  const { derivative } = nonlinearity(reader.law, u);
+  const curvature = 2 * (reader.topExpansion().re[2] as number);
+  return Math.abs(((t.strength[0] * derivative - t.ratio[0]) * u) / curvature);
+}
 
 function spreadOfStarts(t: Trajectory, reader: TrajectoryReader, starts: Starts): number {
   if (starts === "far") return t.amplitudeSpread;

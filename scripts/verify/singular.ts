@@ -41,6 +41,9 @@ function rootSeries(f: Fixed, c: readonly bigint[], order: number): bigint[] {
   return y;
 }
 
+/** Bits kept below the fixed point's own: the terms fall as powers of n. */
+const EXTRA = 600n;
+
 /** A sum cut at its smallest term, and log2 of that term relative to the sum. */
 interface Cut {
   readonly value: Real;
@@ -51,7 +54,7 @@ interface Cut {
  *  Source: P. Flajolet, A. Odlyzko, SIAM J. Discrete Math. 3 (1990) 216–240; [t^j]: s0^{−n} Γ(n − j/2)/(Γ(−j/2) n!). */
 function cutAt(f: Fixed, { s0, shares, period }: SingularExpansion, n: number): Cut {
   // Γ(n − 1/2)/(Γ(−1/2) n!) = −½ Π_{k = 2}^{n} (2k − 3)/(2k)
-  let factor = -f.one / 2n;
+  let factor = -(f.one << EXTRA) / 2n;
   for (let k = 2; k <= n; k += 1) factor = (factor * BigInt(2 * k - 3)) / BigInt(2 * k);
   let sum = 0n;
   let smallest = Number.POSITIVE_INFINITY;
@@ -63,7 +66,7 @@ function cutAt(f: Fixed, { s0, shares, period }: SingularExpansion, n: number): 
     smallest = Math.min(smallest, size);
     factor = (-factor * BigInt(j + 2)) / BigInt(2 * n - j - 2);
   }
-  const value = times(f, { units: BigInt(period) * sum, exponent: -f.bits }, powerOf(f, s0, -n));
+  const value = times(f, { units: BigInt(period) * sum, exponent: -f.bits - Number(EXTRA) }, powerOf(f, s0, -n));
   return { value, omitted: smallest - log2Of({ units: sum, exponent: 0 }) };
 }
 
