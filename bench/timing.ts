@@ -23,6 +23,11 @@ export function timed(work: () => unknown, options: { readonly runs?: number } =
     work();
     times.push(performance.now() - start);
   }
+  return summary(times);
+}
+
+/** First, median and least of times in the order in which they were taken. */
+export function summary(times: readonly number[]): Timing {
   const first = times[0] ?? 0;
   const sorted = [...times].sort((a, b) => a - b);
   return { first, median: sorted[Math.floor(sorted.length / 2)] ?? 0, least: sorted[0] ?? 0 };
