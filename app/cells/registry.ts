@@ -1,3 +1,4 @@
+import { CHECK } from "./check/model.ts";
 import { COUNTS } from "./counts/model.ts";
 import { FORMULA } from "./formula/model.ts";
 import { GENERATING_FUNCTION } from "./generating_function/model.ts";
@@ -26,5 +27,6 @@ export const KINDS: ReadonlyMap<string, Kind> = new Map(
     defineKind(TABLE),
     defineKind(FORMULA),
     defineKind(SOLVE),
+    defineKind(CHECK),
   ].map((kind) => [kind.documentation.name, kind]),
 );

@@ -5,6 +5,7 @@ import { computePlan } from "./compute.ts";
 import { evaluateNumber } from "./numbers.ts";
 import { planPaper } from "./plan.ts";
 import type { CellResult, Outcome, Plan } from "./types.ts";
+import { findingOf } from "./view.ts";
 
 /** Everything that a paper gives when it is computed without a browser; the JSON of the command line. */
 export interface Report {
@@ -87,6 +88,9 @@ function reportCells(
     // A second cell of the same name is listed by its place.
     cells[Object.hasOwn(cells, cell.id) ? `${cell.kind}@${cell.span.line}` : cell.id] = reported;
     if (reported.status === "failed") problems.push({ line: failureLine(cell, outcome), message: reported.message });
+    if (planned === undefined || outcome?.status !== "computed") continue;
+    const finding = findingOf(planned, outcome.result, plan);
+    if (finding?.isGrave === true) problems.push({ line: cell.span.line, message: `\`${cell.id}\`: ${finding.words}` });
   }
   return cells;
 }

@@ -1,4 +1,5 @@
 import { thinBandRemark } from "../figures/index.ts";
+import type { Cell } from "../paper/index.ts";
 import { paperScope } from "./numbers.ts";
 import type { DrawnView, Presentation } from "./presentation.ts";
 import { NOTHING_DRAWN, presentationOf } from "./presentation.ts";
@@ -19,7 +20,7 @@ export function viewCell(
 ): CellView {
   const kind = KINDS.get(result.kind);
   if (kind === undefined || result.kind !== planned.kind) return NOTHING;
-  return withThinBandsSaid(kind.view(result.data, looksOf(planned, plan)));
+  return withThinBandsSaid(kind.view(result.data, looksOf(planned.cell, plan)));
 }
 
 /** A band that is too thin to be drawn is said in the caption. */
@@ -34,22 +35,22 @@ function withThinBandsSaid(view: CellView): CellView {
 export function findingOf(planned: PlannedCell, result: CellResult, plan: Plan): Finding | null {
   const kind = KINDS.get(result.kind);
   if (kind?.finding === undefined || result.kind !== planned.kind) return null;
-  return kind.finding(result.data, looksOf(planned, plan));
+  return kind.finding(result.data, looksOf(planned.cell, plan));
 }
 
-function looksOf(planned: PlannedCell, plan: Plan): Presentation {
+function looksOf(cell: Pick<Cell, "name" | "body">, plan: Plan): Presentation {
   const symbols = new Map(plan.parameters.map(({ name, symbol }) => [name, symbol]));
-  return presentationOf(planned.cell, paperScope(plan, new Map()), symbols, (id, kind, data) =>
+  return presentationOf(cell, paperScope(plan, new Map()), symbols, (id, kind, data) =>
     drawnView(id, kind, data, plan),
   );
 }
 
-/** Another cell's data with the looks of that cell; what is no longer a cell of that kind is not drawn. */
+/** Another cell's data with the looks of that cell; without any where it is no longer a cell of that kind. */
 function drawnView(id: string, kindName: string, data: unknown, plan: Plan): DrawnView {
   const kind = KINDS.get(kindName);
+  if (kind === undefined) return NOTHING_DRAWN;
   const planned = plan.byId.get(id);
-  if (kind === undefined || planned === undefined || planned.kind !== kindName) return NOTHING_DRAWN;
-  const looks = looksOf(planned, plan);
+  const looks = looksOf(planned?.kind === kindName ? planned.cell : { name: id, body: null }, plan);
   const view = kind.view(data, looks);
   return { ...view, series: kind.drawn?.(data, looks) ?? view.figure?.series ?? [] };
 }

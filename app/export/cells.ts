@@ -1,6 +1,6 @@
 import { figureToPgfplots, type TableData, type TableEntry } from "../figures/index.ts";
 import type { CellNode, PrintedPart } from "../paper/index.ts";
-import { provenanceLine, type SetCell } from "../print/index.ts";
+import { cellTitle, provenanceLine, type SetCell } from "../print/index.ts";
 import { wordsTex, writeInline } from "./inline.ts";
 import type { Printing } from "./printing.ts";
 import type { LatexWriter } from "./writer.ts";
@@ -24,6 +24,15 @@ export function writeCell(node: CellNode, printing: Printing, out: LatexWriter):
     else writeTable(node, part, set, i === 0, printing, out);
     out.paragraph();
   });
+  if (set.finding?.isGrave === true) writeFinding(set, set.finding.words, line, printing, out);
+}
+
+/** A check that fails, say: marked where it stands. */
+function writeFinding(set: SetCell, words: string, line: number, printing: Printing, out: LatexWriter): void {
+  out.from(line);
+  out.paragraph();
+  out.write(`\\noindent$\\ddagger$~\\emph{${printing.text(`${cellTitle(set)}: ${words}`, line)}}`);
+  out.paragraph();
 }
 
 function writeFigure(

@@ -1,6 +1,6 @@
 import { type Figure, FigurePlate, labelText, type TableData } from "../figures/index.ts";
 import type { CellNode, PrintedPart } from "../paper/index.ts";
-import { provenanceLine, type SetCell } from "../print/index.ts";
+import { cellTitle, provenanceLine, type SetCell } from "../print/index.ts";
 import { NumberText } from "../ui/index.ts";
 import { Formula, Inline, Words } from "./inline.tsx";
 import { anchor, type Setting } from "./setting.ts";
@@ -9,9 +9,29 @@ import { anchor, type Setting } from "./setting.ts";
 const WIDE = 500;
 const NARROW = 350;
 
-/** What a cell prints: its figure above its caption, its tables beneath theirs. Nothing for a cell that prints nothing. */
+/** What a cell prints, and what its result says of itself where that needs attention. */
 export function CellParts({ node, setting }: { readonly node: CellNode; readonly setting: Setting }) {
   const set = setting.set.cell(node.cell);
+  return (
+    <>
+      <Parts node={node} set={set} setting={setting} />
+      {set.finding?.isGrave === true ? (
+        <p className="g-absent">
+          <span className="g-dagger">‡</span> {`${cellTitle(set)}: ${set.finding.words}`}
+        </p>
+      ) : null}
+    </>
+  );
+}
+
+interface PartsProps {
+  readonly node: CellNode;
+  readonly set: SetCell;
+  readonly setting: Setting;
+}
+
+/** A figure above its caption, tables beneath theirs. Nothing for a cell that prints nothing. */
+function Parts({ node, set, setting }: PartsProps) {
   return node.parts.map((part, i) => {
     const id = i === 0 && node.cell.name !== null ? anchor.label(node.cell.name) : undefined;
     const caption = <Caption node={node} part={part} set={set} first={i === 0} setting={setting} />;

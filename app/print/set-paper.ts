@@ -5,6 +5,9 @@ import {
   causeWords,
   cellState,
   evaluateNumber,
+  type Finding,
+  findingOf,
+  KINDS,
   type Plan,
   type PlannedCell,
   type Provenance,
@@ -42,6 +45,8 @@ export interface SetCell {
   /** Why there is no result; "" when there is one. */
   readonly reason: string;
   readonly provenance: Provenance | null;
+  /** What its result says of itself. */
+  readonly finding: Finding | null;
 }
 
 export interface SetPaper {
@@ -118,13 +123,22 @@ function setCell(
       note: null,
       reason: "This cell could not be read.",
       provenance: null,
+      finding: null,
     };
   }
   const result = results.get(planned.id);
   const shownCell = shown.cells.get(planned.slot) ?? (result && shownFrom(planned, result));
   const state = cellState(planned, shownCell, shown.work.get(planned.slot), plan, shown);
   if (!result)
-    return { planned, state: state.state, view: null, note: null, reason: reasonOf(state, planned), provenance: null };
+    return {
+      planned,
+      state: state.state,
+      view: null,
+      note: null,
+      reason: reasonOf(state, planned),
+      provenance: null,
+      finding: null,
+    };
   const causes = state.state === "failed" ? [] : state.causes;
   const words = [...new Set(causes.map((cause) => causeWords(cause, PRINTED_CAUSE)).map(withoutBrackets))];
   return {
@@ -134,6 +148,7 @@ function setCell(
     note: words.length > 0 ? noteOf(`${words.join(". ")}.`) : null,
     reason: state.state === "failed" ? reasonOf(state, planned) : "",
     provenance: provenance(planned, result, shownCell),
+    finding: findingOf(planned, result, plan),
   };
 }
 
@@ -157,6 +172,13 @@ function shownFrom(planned: PlannedCell, result: CellResult): ShownCell {
     parameterValues: result.key === planned.key ? planned.parameterValues : {},
     workingKey: planned.workingKey ?? "",
   };
+}
+
+/** What a cell is called where its result is spoken of: "Check few". */
+export function cellTitle({ planned }: SetCell): string {
+  if (planned === null) return "Cell";
+  const label = KINDS.get(planned.kind)?.documentation.label ?? planned.kind;
+  return planned.cell.name === null ? label : `${label} ${planned.cell.name}`;
 }
 
 /** What somebody who sends a paper to print should know first. */

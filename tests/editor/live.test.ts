@@ -27,6 +27,7 @@ describe("what is heard", () => {
     state,
     words: [],
     provenance: [],
+    finding: null,
     progress: null,
     failureLine: null,
     seconds: null,

@@ -79,6 +79,8 @@ export const SOLVE: KindOf<SolveCell, SolveData> = {
 
   call: () => undefined,
   view: () => ({ figure: null, table: null, points: null }),
+  finding: ({ unanswered }) =>
+    unanswered === null ? null : { isGrave: false, words: `The formula under \`where\` has ${unanswered}.` },
 };
 
 function readBetween(body: Body): Interval {

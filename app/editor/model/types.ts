@@ -1,4 +1,4 @@
-import type { CellView } from "../../cells/index.ts";
+import type { CellView, Finding } from "../../cells/index.ts";
 
 /**
  * What the page's worker makes of a paper for the sheet: everything that is typeset, by its place in the text.
@@ -191,6 +191,8 @@ export interface CellFace {
   readonly words: readonly Run[];
   /** Method, parameters, solver, time, who and when; of the result that is shown. */
   readonly provenance: readonly Run[];
+  /** What its result says of itself; `isGrave`: it needs attention, as a check that fails does. */
+  readonly finding: Finding | null;
   readonly progress: { readonly done: number; readonly total: number } | null;
   readonly failureLine: number | null;
   /** How long the solver took the last time; null when not known. */

@@ -36,6 +36,7 @@ export function StateLine({ face, open, host }: Props) {
       {lead === "" ? null : <b className="hl-lead">{lead} </b>}
       {saidBelow ? <span className="hl-state-words">Its working is at fault, see below.</span> : null}
       {telling ? <Runs className="hl-state-words" runs={face.words} macros={host.macros} /> : null}
+      {face.finding === null ? null : <Said finding={face.finding} />}
       {face.state === "current" || face.state === "preview" ? (
         <Runs className="hl-provenance" runs={face.provenance} macros={host.macros} />
       ) : null}
@@ -51,6 +52,16 @@ export function StateLine({ face, open, host }: Props) {
         />
       </span>
     </div>
+  );
+}
+
+/** What the result itself says, whatever the state of its cell; what is grave bears the mark. */
+function Said({ finding: { isGrave, words } }: { readonly finding: NonNullable<CellFace["finding"]> }) {
+  return (
+    <>
+      {isGrave ? <b className="hl-lead">‡ </b> : null}
+      <span className="hl-state-words">{words} </span>
+    </>
   );
 }
 

@@ -2,6 +2,7 @@ import {
   type CellResult,
   type CellState,
   type CellWork,
+  findingOf,
   KINDS,
   type Plan,
   type PlannedCell,
@@ -87,6 +88,7 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
         ? []
         : stateWords({ state, shown, work, titleOf: titleOfId, printed, firstLine: planned.line, now }),
       provenance: provenanceRuns(telling, symbols, drawing.tried, printed, now),
+      finding: result === undefined ? null : findingOf(planned, result, drawing.plan),
       progress:
         state.state === "computing" && work?.state === "computing" && work.total > 1
           ? { done: work.done, total: work.total }

@@ -15,8 +15,8 @@ export function errataOf(
   text: string,
 ): Erratum[] {
   const found: Erratum[] = [];
-  for (const { state, from, line, title } of cells) {
-    const mark = CELL_MARKS[state];
+  for (const { state, finding, from, line, title } of cells) {
+    const mark = finding?.isGrave === true ? "‡" : CELL_MARKS[state];
     if (mark !== undefined) found.push({ from, line, mark, what: "cell", title });
   }
   const lineOf = lineCounter(text);
