@@ -13,6 +13,7 @@ type Drawers = { readonly [Name in Nodes["type"]]?: (node: NodeOf<Name>, into: C
 export function collectPieces(paper: Paper, numbers: NumberFaces): Piece[] {
   const into = collecting(paper.text, numbers, [], 0);
   collect(paper.root, into);
+  comments(paper, into);
   blankLines(paper, into);
   return into.pieces;
 }
@@ -179,12 +180,20 @@ function lines(node: Nodes, into: Collecting, dress: string): void {
   if (from >= 0) into.pieces.push({ piece: "lines", from, to, dress });
 }
 
-/**
- * The blank line that parts two blocks is set low. Further ones keep their height, since that is where somebody writes;
- * so do those within workings and code.
- */
-function blankLines(paper: Paper, into: Collecting): void {
-  const inside = [
+/** Comments stay as they are written, and small. The tree has none of them; what looks like one in a working is none. */
+function comments(paper: Paper, into: Collecting): void {
+  if (!paper.text.includes("<!--")) return;
+  const opaque = placesOfSource(paper, into);
+  for (const found of paper.text.matchAll(/<!--[\s\S]*?-->/g)) {
+    const [from, to] = [found.index, found.index + found[0].length];
+    if (opaque.some((place) => from < place.to && to > place.from)) continue;
+    into.pieces.push({ piece: "dressed", from, to, inFrom: from, inTo: to, dress: "hl-comment" });
+  }
+}
+
+/** Where the text is not prose: workings, front matter, code, and what is set as a block. */
+function placesOfSource(paper: Paper, into: Collecting): { readonly from: number; readonly to: number }[] {
+  return [
     ...paper.cells.map(({ span }) => span),
     ...(paper.front.span === null ? [] : [paper.front.span]),
     ...into.pieces.flatMap((piece) =>
@@ -193,6 +202,14 @@ function blankLines(paper: Paper, into: Collecting): void {
         : [],
     ),
   ].sort((a, b) => a.from - b.from);
+}
+
+/**
+ * The blank line that parts two blocks is set low. Further ones keep their height, since that is where somebody writes;
+ * so do those within workings and code.
+ */
+function blankLines(paper: Paper, into: Collecting): void {
+  const inside = placesOfSource(paper, into);
   let next = 0;
   for (const found of paper.text.matchAll(/^[ \t]*$/gm)) {
     const at = found.index;

@@ -149,22 +149,40 @@ function lines(doc: Text, from: number, to: number, className: string, of?: Piec
   }
 }
 
-/** The lines of an open working, numbered from its first, without its fences' weight. */
+/** The lines of an open working, numbered from its first, without its fences' weight; kind, keys and remarks told apart. */
 function working(doc: Text, from: number, to: number): Marks {
   const first = doc.lineAt(from).number;
   const last = doc.lineAt(to).number;
   const made: Marks = [];
   for (let number = first; number <= last; number += 1) {
+    const line = doc.line(number);
     const place = number === first ? " hl-working-first" : number === last ? " hl-working-last" : "";
     made.push(
       Decoration.line({
         class: `hl-working${place}`,
         attributes: { "data-working-line": String(number - first + 1) },
-      }).range(doc.line(number).from),
+      }).range(line.from),
     );
+    for (const [expression, dressed] of number === first ? FENCE_WORDS : WORKING_WORDS) {
+      const found = expression.exec(line.text);
+      const word = found?.[1] ?? "";
+      if (found === null || word === "") continue;
+      const begin = line.from + found.index + found[0].length - word.length;
+      made.push(dressed.range(begin, begin + word.length));
+    }
   }
   return made;
 }
+
+const KIND = Decoration.mark({ class: "hl-kind" });
+const KEY = Decoration.mark({ class: "hl-key" });
+const REMARK = Decoration.mark({ class: "hl-comment" });
+/** What is told apart in a working: the last group of each is the word. */
+const FENCE_WORDS: readonly (readonly [RegExp, Decoration])[] = [[/^ {0,3}(?:`{3,}|~{3,})[ \t]*([\w-]+[^`]*)$/, KIND]];
+const WORKING_WORDS: readonly (readonly [RegExp, Decoration])[] = [
+  [/^[ \t]*(?:- )?([\w.\\]+)(?=:(?: |$))/, KEY],
+  [/(?:^|[ \t])(#.*)$/, REMARK],
+];
 
 /** Contents that stay visible beneath their source while it is edited. */
 const PREVIEWED: ReadonlySet<Content["content"]> = new Set(["display"]);

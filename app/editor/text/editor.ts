@@ -1,14 +1,9 @@
 import { defaultKeymap } from "@codemirror/commands";
-import { markdown, markdownLanguage } from "@codemirror/lang-markdown";
-import { yaml, yamlFrontmatter } from "@codemirror/lang-yaml";
-import { HighlightStyle, syntaxHighlighting } from "@codemirror/language";
 import { EditorState, type Extension } from "@codemirror/state";
 import { drawSelection, EditorView, gutters, keymap, type ViewUpdate } from "@codemirror/view";
-import { tags } from "@lezer/highlight";
 import { yCollab, yUndoManagerKeymap } from "y-codemirror.next";
 import type { Awareness } from "y-protocols/awareness";
 import type * as Y from "yjs";
-import { KINDS } from "../../cells/index.ts";
 import { glossField } from "./glosses.ts";
 import { type SheetHost, sheetHost } from "./host.ts";
 import { lineNumbers } from "./line-numbers.ts";
@@ -42,9 +37,6 @@ export function createSheetEditor(options: EditorOptions): EditorView {
         ]),
         keymap.of(yUndoManagerKeymap),
         keymap.of(defaultKeymap),
-        yamlFrontmatter({
-          content: markdown({ base: markdownLanguage, codeLanguages: workingLanguage, addKeymap: false }),
-        }),
         yCollab(text, null, { undoManager: undo }),
         sheetField,
         glossField,
@@ -95,20 +87,8 @@ function ground(nonce: string, writes: boolean, label: string): Extension {
       spellcheck: "true",
       autocorrect: "off",
     }),
-    syntaxHighlighting(SOURCE_STYLE),
   ];
 }
-
-/** Workings are YAML. lang-markdown passes the first word of the info string: the kind. */
-function workingLanguage(info: string) {
-  return KINDS.has(info) ? yaml().language : null;
-}
-
-const SOURCE_STYLE = HighlightStyle.define([
-  { tag: tags.definition(tags.propertyName), class: "hl-key" },
-  { tag: tags.labelName, class: "hl-kind" },
-  { tag: tags.comment, class: "hl-comment" },
-]);
 
 /** Whether the text has the person's attention, the parts within it counted; and whether the pointer is pressed in it. */
 const attention = EditorView.domEventHandlers({

@@ -1,7 +1,5 @@
-import { insertNewlineAndIndent } from "@codemirror/commands";
-import { insertNewlineContinueMarkup } from "@codemirror/lang-markdown";
-import { syntaxTree } from "@codemirror/language";
-import { EditorSelection, type EditorState, type StateCommand } from "@codemirror/state";
+import { EditorSelection, type EditorState, type Line, type StateCommand } from "@codemirror/state";
+import { blockAbove, breaksCount, continuation, standingOf } from "./source-lines.ts";
 
 /**
  * Whether Enter at `position` begins a new paragraph. On the typeset sheet a single line break is a space, so in
@@ -11,66 +9,64 @@ import { EditorSelection, type EditorState, type StateCommand } from "@codemirro
 export function beginsParagraph(state: EditorState, position: number): boolean {
   const line = state.doc.lineAt(position);
   if (line.text.trim() === "" || position === line.from) return false;
-  if (/^\s*(:::|\$\$|\||>|<!--|```|~~~|[-*+]\s|\d+[.)]\s|\[\^)/.test(line.text)) return false;
-  for (let node = syntaxTree(state).resolveInner(position, -1); ; ) {
-    if (OPAQUE.has(node.name)) return false;
-    if (node.parent === null) break;
-    node = node.parent;
-  }
-  return !withinDisplay(state, line.number);
-}
-
-/** Names of lang-markdown's and lang-yaml's trees whose line breaks count. */
-const OPAQUE = new Set([
-  "FencedCode",
-  "CodeBlock",
-  "HTMLBlock",
-  "CommentBlock",
-  "Table",
-  "BulletList",
-  "OrderedList",
-  "Blockquote",
-  "Frontmatter",
-  "DashLine",
-  "FrontmatterContent",
-]);
-
-/** An odd number of lines that open or close a display stand above, back to the last blank line. */
-function withinDisplay(state: EditorState, lineNumber: number): boolean {
-  let inside = false;
-  for (let number = lineNumber; number >= 1; number -= 1) {
-    const text = state.doc.line(number).text;
-    if (text.trim() === "") break;
-    const fences = text.match(/\$\$/g)?.length ?? 0;
-    if (fences % 2 === 1) inside = !inside;
-  }
-  return inside;
+  if (/^(\s+|:::|\$\$|\||<!--|\[\^)/.test(line.text)) return false;
+  return standingOf(state.doc, line.number) === "prose" && !breaksCount(blockAbove(state.doc, line.number));
 }
 
 /** Enter: a new paragraph in prose, the list's or the working's next line elsewhere. */
-export const enter: StateCommand = (target) => {
-  const { state, dispatch } = target;
-  const { main } = state.selection;
+export const enter: StateCommand = ({ state, dispatch }) => {
   if (state.readOnly) return false;
-  if (!state.selection.ranges.every((range) => beginsParagraph(state, range.from))) {
-    return insertNewlineContinueMarkup(target) || insertNewlineAndIndent(target);
-  }
+  const asParagraph = state.selection.ranges.every((range) => beginsParagraph(state, range.from));
+  dispatch(
+    state.update(asParagraph ? paragraphs(state) : nextLines(state), { scrollIntoView: true, userEvent: "input" }),
+  );
+  return true;
+};
+
+function paragraphs(state: EditorState) {
+  const { main } = state.selection;
   const next = state.doc.lineAt(main.to);
   // Before an existing blank line one line break is enough.
   const blankFollows =
     main.to === next.to && next.number < state.doc.lines && state.doc.line(next.number + 1).text === "";
   const insert = blankFollows && state.selection.ranges.length === 1 ? "\n" : "\n\n";
-  dispatch(
-    state.update(
-      state.changeByRange((range) => ({
-        changes: { from: range.from, to: range.to, insert },
-        range: EditorSelection.cursor(range.from + insert.length),
-      })),
-      { scrollIntoView: true, userEvent: "input" },
-    ),
-  );
-  return true;
-};
+  return state.changeByRange((range) => ({
+    changes: { from: range.from, to: range.to, insert },
+    range: EditorSelection.cursor(range.from + insert.length),
+  }));
+}
+
+function nextLines(state: EditorState) {
+  return state.changeByRange((range) => {
+    const line = state.doc.lineAt(range.from);
+    const begins = beginningAfter(state, line);
+    // An empty item: its mark goes, and the list has ended.
+    if (begins === "" && range.empty && range.from === line.to && line.text.trim() !== "") {
+      return { changes: { from: line.from, to: line.to }, range: EditorSelection.cursor(line.from) };
+    }
+    // Before the mark of an item there is nothing to go on with.
+    const insert = `\n${begins === null || range.from - line.from < begins.length ? indentation(state, line, range.from) : begins}`;
+    return {
+      changes: { from: range.from, to: range.to, insert },
+      range: EditorSelection.cursor(range.from + insert.length),
+    };
+  });
+}
+
+/** The mark with which the next line of a list or a quote begins; null elsewhere. */
+function beginningAfter(state: EditorState, line: Line): string | null {
+  const begins = continuation(line.text);
+  return begins !== null && standingOf(state.doc, line.number) === "prose" ? begins : null;
+}
+
+/** That of the line, and two more after a key of a working that opens a deeper level. */
+function indentation(state: EditorState, line: Line, at: number): string {
+  const own = /^[ \t]*/.exec(line.text)?.[0] ?? "";
+  if (at < line.from + own.length) return "";
+  const opens = at === line.to && /^[ \t]*(- )?[\w.]+:[ \t]*$/.test(line.text);
+  const standing = opens ? standingOf(state.doc, line.number) : "prose";
+  return standing === "working" || standing === "frontMatter" ? `${own}  ` : own;
+}
 
 /** Shift-Enter: a line break and nothing else. */
 export const lineBreak: StateCommand = ({ state, dispatch }) => {
