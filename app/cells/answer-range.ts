@@ -85,6 +85,8 @@ export function answerRange(paper: Paper, plan: Plan, name: string, options: Ans
   }
 }
 
+const REFUSED = "refused ";
+
 interface Missing {
   readonly id: string;
   readonly reason: string;
@@ -165,7 +167,7 @@ function faultOf(task: NonNullable<PlannedCell["task"]>): Branch | null {
   } catch (error) {
     if (error instanceof NotKnownYet) return null;
     if (!(error instanceof CellFault)) throw error;
-    return { name: `refused ${error.path}`, holds: error.message, borders: [], closed: false };
+    return { name: `${REFUSED}${error.path}`, holds: error.message, borders: [], closed: false };
   }
 }
 
@@ -209,11 +211,12 @@ function answerBorder(
   stretches: readonly (readonly Missing[])[],
   index: number,
 ): AnswerBorder {
-  const words = borderWords(lower, upper);
+  const refused = refusedSide(lower, upper);
+  const words = refused === null ? borderWords(lower, upper) : null;
   return {
     below,
     above,
-    open: words === null ? refusedSide(lower, upper) : openSide(lower, upper),
+    open: refused ?? openSide(lower, upper),
     why: words?.at ?? "",
     sides: {
       below: { holds: words?.below ?? "", without: stretches[index] ?? [] },
@@ -222,9 +225,10 @@ function answerBorder(
   };
 }
 
-/** Where an input goes out of its range, that side is taken not to reach the border. */
-function refusedSide(lower: ReadonlyMap<string, Branch>, upper: ReadonlyMap<string, Branch>): "below" | "above" {
+/** The side on which more inputs are refused, taken not to reach the border; null where neither has more. */
+function refusedSide(lower: ReadonlyMap<string, Branch>, upper: ReadonlyMap<string, Branch>): "below" | "above" | null {
   const refusals = (standings: ReadonlyMap<string, Branch>) =>
-    [...standings.values()].filter(({ name }) => name.startsWith("refused ")).length;
-  return refusals(lower) >= refusals(upper) ? "below" : "above";
+    [...standings.values()].filter(({ name }) => name.startsWith(REFUSED)).length;
+  const difference = refusals(lower) - refusals(upper);
+  return difference === 0 ? null : difference > 0 ? "below" : "above";
 }
