@@ -15,7 +15,7 @@ export interface ContourPair {
 
 /** Shapes tried, those with fewest nodes first: a wider arc must not meet another singularity of w(x, ·), and a tilt avoids
  *  those on the slit, where a geometric law has its pole. The tilted one serves as the check, on a narrower arc. */
-const WIDTHS = [0.3, 0.12, 0.05, 0.02, 0.008];
+const WIDTHS = [0.7, 0.3, 0.12, 0.05, 0.02, 0.008];
 const PLAIN_TILT = 0;
 const POLE_TILT = 0.5;
 /** What the check changes. */
@@ -24,11 +24,11 @@ const CHECK_TILT = 0.25;
 /** The arc matters up to n = REACH/width; Gauss–Legendre needs a little more than π/4 nodes for each of these n. */
 const REACH = 40;
 const NODES_PER_N = 0.8;
-const ARC_NODES = 64;
+const ARC_NODES = 20;
 /** Rounds of half as many nodes again before a narrower arc is tried. */
 const REFINEMENTS = 2;
 const PANEL_NODES = 16;
-const CHECK_PANEL_NODES = 20;
+const CHECK_PANEL_NODES = 18;
 /** Relative agreement asked of the two contours, and of their total with 1. */
 const ACCEPTED = 1e-12;
 const ACCEPTED_UNITS = 64;
@@ -122,10 +122,13 @@ function beginning(t: Trajectory, reader: TrajectoryReader, level: number): Begi
   return { reference: { radius: [radius, 0], excess: [radius - centre, 0] }, next, variation: radius - one };
 }
 
+/** Widths of the narrowest Gaussian e^{−nτ²} that the innermost panel's nodes resolve to rounding. */
+const GAUSSIAN_WIDTHS = 3;
+
 /** The leg must resolve the Gaussian e^{−nτ²}, the variation of w(x, ·) itself, and the distance to the next singularity. */
 function finestScale({ reference, next, variation }: Beginning, level: number): number {
   const radius = reference.radius[0];
-  const gaussian = 1 / (2 * Math.sqrt(10 ** level));
+  const gaussian = GAUSSIAN_WIDTHS / Math.sqrt(10 ** level);
   return Math.min(gaussian, Math.sqrt(variation / radius) / 4, Math.sqrt(next / radius - 1) / 2);
 }
 

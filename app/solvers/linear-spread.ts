@@ -21,8 +21,13 @@ export function rootSpread(model: ProcessModel, growth: number, discriminant: nu
   return change / (2 * Math.sqrt(discriminant));
 }
 
+/** A drift this near the critical one, relative, is taken for it: its square to 4 ε. */
+const CRITICAL_DRIFT = 2 * Number.EPSILON;
+
 /** Relative change of the root rate (drift + √discriminant)/(2 D). */
 export function rateSpread(model: ProcessModel, growth: number, discriminant: number, relative: number): number {
+  // where the drift was taken as critical, it may be off the critical one by as much as that allows, and that by its own inputs
+  if (growth > 0 && discriminant === 0) return CRITICAL_DRIFT + (relative + inputUnit(model.diffusion)) / 2;
   const root = Math.sqrt(discriminant);
   const shift = rootSpread(model, growth, discriminant, relative) + inputUnit(model.drift) * Math.abs(model.drift);
   const share = shift / (Math.abs(model.drift) + root);

@@ -27,7 +27,8 @@ export function profileComplementAt(t: Trajectory, x: number, s: number): Answer
   const { centre, scale, scaleSpread } = t.base;
   const value = 1 - scale[0] * centre + scale[0] * read.u;
   const terms = scale[0] * (centre + Math.abs(read.u));
-  return { value, error: scale[0] * read.error + terms * (ROUNDINGS_OF_SCALE * ROUNDING + scaleSpread) };
+  const rounding = ROUNDINGS_OF_SCALE * ROUNDING;
+  return { value, error: scale[0] * read.error + terms * (rounding + scaleSpread) + ROUNDING * Math.abs(value) };
 }
 
 const ROUNDINGS_OF_SCALE = 3;

@@ -69,7 +69,7 @@ export function tailProbability(law: TailLaw, n: number): TailProbability {
 }
 
 /** Roundings in the constant: the turning point's expansion, its inverse, the expansion at the start. */
-const CONSTANT_ROUNDINGS = 32;
+const CONSTANT_ROUNDINGS = 64;
 
 /** Roundings in u at the turning point. */
 const PLACE_ROUNDINGS = 2;
