@@ -75,6 +75,17 @@ export class CellWidget extends WidgetType {
 }
 
 /** What a cell looks like depends on all of its face but where it stands, so that text above it may grow. */
-export function lookOf(face: CellFace): string {
+function lookOf(face: CellFace): string {
   return JSON.stringify({ ...face, from: 0, to: 0, line: 0 });
 }
+
+/** Whether two faces look alike. Quick for those that share their parts, as faces of two answers mostly do. */
+export function sameLook(a: CellFace, b: CellFace): boolean {
+  if (a === b) return true;
+  const names = Object.keys({ ...a, ...b }) as (keyof CellFace)[];
+  return names.every(
+    (name) => PLACE.has(name) || Object.is(a[name], b[name]) || JSON.stringify(a[name]) === JSON.stringify(b[name]),
+  );
+}
+
+const PLACE: ReadonlySet<keyof CellFace> = new Set<keyof CellFace>(["from", "to", "line"]);

@@ -10,7 +10,7 @@ import {
 } from "@codemirror/state";
 import { Decoration, type DecorationSet, EditorView } from "@codemirror/view";
 import type { CellFace, Piece, SheetModel } from "../model/types.ts";
-import { lookOf } from "./cell-widget.tsx";
+import { sameLook } from "./cell-widget.tsx";
 import { BLANK, closedDecorations, openedDecorations, type Workshop } from "./decorate.ts";
 import { afterDelta } from "./piece-list.ts";
 import { type Place, placesOf, touched } from "./places.ts";
@@ -73,7 +73,7 @@ export const sheetField = StateField.define<Sheet>({
     if (transaction.docChanged) {
       met = withMet(met, places, transaction.changes);
       places = places.map(transaction.changes);
-      const moved = withoutEmptied(closed.map(transaction.changes));
+      const moved = withoutEmptied(closed.map(transaction.changes), transaction.changes);
       closed = withoutFilledBlanks(moved, transaction.changes, transaction.newDoc);
     }
     for (const effect of transaction.effects) {
@@ -90,13 +90,17 @@ export const sheetField = StateField.define<Sheet>({
         model = effect.value.model;
         workshop = { store: workshop.store, faces };
         ({ number, pieces } = list);
-        const marks = withoutEmptied(Decoration.set(closedDecorations(list.fresh, doc, workshop), true).map(since));
+        const marks = withoutEmptied(
+          Decoration.set(closedDecorations(list.fresh, doc, workshop), true).map(since),
+          since,
+        );
         const drawn = RangeSet.of(placesOf(list.fresh, doc.length), true);
         // What is drawn late has been met already by what changed since it was asked for.
         met = withMet(NOTHING, drawn, since);
         const fresh = drawn.map(since);
-        closed = merged(closed, (mark) => list.gone.has(mark.spec.of), marks);
-        places = merged(places, (place) => list.gone.has(place.piece), fresh);
+        const bounds = boundsOf(places, list.gone);
+        closed = merged(closed, (mark) => list.gone.has(mark.spec.of), marks, bounds, transaction.newDoc);
+        places = merged(places, (place) => list.gone.has(place.piece), fresh, bounds, transaction.newDoc);
       } else if (effect.is(showWorking)) {
         const next = new Set(workings);
         if (effect.value.open) next.add(effect.value.slot);
@@ -115,18 +119,61 @@ export const sheetField = StateField.define<Sheet>({
   provide: (field) => EditorView.decorations.from(field, (sheet) => sheet.shown),
 });
 
-/** Without the marks whose words a change has taken away. */
-function withoutEmptied(marks: DecorationSet): DecorationSet {
-  return marks.update({ filter: (from, to, mark) => mark.point || from < to });
+/** Without the marks whose words a change has taken away. Only where it took some can there be such. */
+function withoutEmptied(marks: DecorationSet, changes: ChangeDesc): DecorationSet {
+  let left = marks;
+  changes.iterChangedRanges((fromA, toA, fromB, toB) => {
+    if (toA === fromA) return;
+    left = left.update({
+      filter: (from, to, mark) => mark.point || from < to,
+      filterFrom: fromB,
+      filterTo: toB,
+    });
+  });
+  return left;
 }
 
-/** Takes out what is gone, puts in what is new. */
-function merged<T extends RangeValue>(set: RangeSet<T>, gone: (value: T) => boolean, fresh: RangeSet<T>): RangeSet<T> {
+interface Bounds {
+  readonly from: number;
+  readonly to: number;
+}
+
+/** Between which places some pieces stand; null: there are none. All of the text, where a place is not known any more. */
+function boundsOf(places: RangeSet<Place>, pieces: ReadonlySet<unknown>): Bounds | null {
+  if (pieces.size === 0) return null;
+  let [from, to, left] = [Number.POSITIVE_INFINITY, -1, pieces.size];
+  for (const cursor = places.iter(); cursor.value !== null && left > 0; cursor.next()) {
+    if (!pieces.has(cursor.value.piece)) continue;
+    left -= 1;
+    from = Math.min(from, cursor.from);
+    to = Math.max(to, cursor.to);
+  }
+  return left > 0 ? { from: 0, to: Number.POSITIVE_INFINITY } : { from, to };
+}
+
+/**
+ * Takes out what is gone, puts in what is new. `bounds` are where the pieces stand that are gone: what is drawn of a
+ * piece lies on its lines or touches them, and all other marks are left as they are.
+ */
+function merged<T extends RangeValue>(
+  set: RangeSet<T>,
+  gone: (value: T) => boolean,
+  fresh: RangeSet<T>,
+  bounds: Bounds | null,
+  doc: Text,
+): RangeSet<T> {
   const add: Range<T>[] = [];
   for (const cursor = fresh.iter(); cursor.value !== null; cursor.next()) {
     add.push(cursor.value.range(cursor.from, cursor.to) as Range<T>);
   }
-  return set.update({ filter: (_from, _to, value) => !gone(value), add, sort: true });
+  if (bounds === null) return add.length === 0 ? set : set.update({ add, sort: true });
+  return set.update({
+    filter: (_from, _to, value) => !gone(value),
+    filterFrom: doc.lineAt(Math.max(0, bounds.from - 1)).from,
+    filterTo: doc.lineAt(Math.min(doc.length, bounds.to + 1)).to,
+    add,
+    sort: true,
+  });
 }
 
 /** The pieces that a change meets, besides those met before. */
@@ -142,7 +189,7 @@ function withMet(met: ReadonlySet<Piece>, places: RangeSet<Place>, changes: Chan
 
 function changedLook(slot: string, before: Workshop["faces"], after: Workshop["faces"]): boolean {
   const [was, is] = [before.get(slot), after.get(slot)];
-  return was === undefined || is === undefined || lookOf(was) !== lookOf(is);
+  return was === undefined || is === undefined || !sameLook(was, is);
 }
 
 /** A blank line on which something is written is no longer set low, without waiting for the next answer. */
@@ -184,11 +231,12 @@ function same(a: ReadonlySet<Piece>, b: ReadonlySet<Piece>): boolean {
 
 function withOpened(sheet: Omit<Sheet, "opened" | "shown">, opened: ReadonlySet<Piece>, doc: Text): DecorationSet {
   if (opened.size === 0) return sheet.closed;
-  let [filterFrom, filterTo] = [doc.length, 0];
+  let [filterFrom, filterTo, left] = [doc.length, 0, opened.size];
   const marks: ReturnType<typeof openedDecorations> = [];
-  for (const cursor = sheet.places.iter(); cursor.value !== null; cursor.next()) {
+  for (const cursor = sheet.places.iter(); cursor.value !== null && left > 0; cursor.next()) {
     const { piece } = cursor.value;
     if (!opened.has(piece)) continue;
+    left -= 1;
     filterFrom = Math.min(filterFrom, doc.lineAt(cursor.from).from);
     filterTo = Math.max(filterTo, doc.lineAt(cursor.to).to);
     marks.push(...openedDecorations(piece, cursor.from, cursor.to, doc, sheet.workshop));
