@@ -15,6 +15,8 @@ export class Continuation {
   private spare: Expansion;
   private readonly scratch: PointValue = pointValue();
   private readonly found: PointValue = pointValue();
+  /** whether `found` is u and du/dξ at the last ξ solved for, to first order */
+  private known = false;
   /** the last ξ solved for */
   xiRe: number;
   xiIm: number;
@@ -79,25 +81,36 @@ export class Continuation {
   /** Moves to the ξ near the last one where u has the given value: Newton's method. @returns false where it does not converge. */
   solve(uRe: number, uIm: number): boolean {
     const at = this.found;
+    if (this.known) this.step(uRe - at.re, uIm - at.im, at);
+    this.known = false;
     for (let round = 0; round < NEWTON_ROUNDS; round += 1) {
       if (!this.evaluate(this.xiRe, this.xiIm, at)) return false;
-      const gapRe = uRe - at.re;
-      const gapIm = uIm - at.im;
-      const size = at.slopeRe * at.slopeRe + at.slopeIm * at.slopeIm;
-      const stepRe = (gapRe * at.slopeRe + gapIm * at.slopeIm) / size;
-      const stepIm = (gapIm * at.slopeRe - gapRe * at.slopeIm) / size;
-      this.xiRe += stepRe;
-      this.xiIm += stepIm;
-      if (!Number.isFinite(this.xiRe + this.xiIm)) return false;
-      if (Math.hypot(stepRe, stepIm) <= SOLVED * (1 + Math.hypot(this.xiRe, this.xiIm))) return true;
+      const moved = this.step(uRe - at.re, uIm - at.im, at);
+      if (!Number.isFinite(moved)) return false;
+      if (moved > SOLVED * (1 + Math.abs(this.xiRe) + Math.abs(this.xiIm))) continue;
+      at.re = uRe;
+      at.im = uIm;
+      this.known = true;
+      return true;
     }
     return false;
+  }
+
+  /** Moves ξ so that u changes by a gap, to first order. @returns the length of the step */
+  private step(gapRe: number, gapIm: number, { slopeRe, slopeIm }: PointValue): number {
+    const size = slopeRe * slopeRe + slopeIm * slopeIm;
+    const stepRe = (gapRe * slopeRe + gapIm * slopeIm) / size;
+    const stepIm = (gapIm * slopeRe - gapRe * slopeIm) / size;
+    this.xiRe += stepRe;
+    this.xiIm += stepIm;
+    return Math.abs(stepRe) + Math.abs(stepIm);
   }
 
   /** Places the continuation at a ξ found otherwise (near the turning point, where Newton's method in u is ill conditioned). */
   place(xiRe: number, xiIm: number): void {
     this.xiRe = xiRe;
     this.xiIm = xiIm;
+    this.known = false;
   }
 }
 
