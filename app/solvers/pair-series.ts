@@ -23,17 +23,54 @@ export class PairSeries {
 
   /** Σ_{k ≤ order} c_k h^k and its derivative in h. */
   evaluate(h: Pair, order: number): { value: Pair; derivative: Pair } {
-    let value = ZERO;
-    let derivative = ZERO;
+    const { high, low } = this;
+    const [x, xLow] = h;
+    const cx = SPLITTER * x;
+    const x1 = cx - (cx - x);
+    const x2 = x - x1;
+    let [v, vLow, d, dLow] = [0, 0, 0, 0];
     for (let k = order; k >= 0; k -= 1) {
-      derivative = add(multiply(derivative, h), value);
-      value = add(multiply(value, h), this.at(k));
+      // d = d h + v
+      let product = d * x;
+      let c = SPLITTER * d;
+      let a1 = c - (c - d);
+      let a2 = d - a1;
+      let lost = a1 * x1 - product + a1 * x2 + a2 * x1 + a2 * x2 + (d * xLow + dLow * x);
+      let sum = product + v;
+      let shift = sum - product;
+      let rest = product - (sum - shift) + (v - shift) + (lost + vLow);
+      d = sum + rest;
+      dLow = rest - (d - sum);
+      // v = v h + c_k
+      const next = high[k] as number;
+      product = v * x;
+      c = SPLITTER * v;
+      a1 = c - (c - v);
+      a2 = v - a1;
+      lost = a1 * x1 - product + a1 * x2 + a2 * x1 + a2 * x2 + (v * xLow + vLow * x);
+      sum = product + next;
+      shift = sum - product;
+      rest = product - (sum - shift) + (next - shift) + (lost + (low[k] as number));
+      v = sum + rest;
+      vLow = rest - (v - sum);
+    }
+    return { value: [v, vLow], derivative: [d, dLow] };
+  }
+
+  /** The same in doubles. */
+  evaluateRoughly(h: number, order: number): { value: number; derivative: number } {
+    const { high } = this;
+    let value = 0;
+    let derivative = 0;
+    for (let k = order; k >= 0; k -= 1) {
+      derivative = derivative * h + value;
+      value = value * h + (high[k] as number);
     }
     return { value, derivative };
   }
 }
 
-/** 2^27 + 1, see pairs.ts; repeated here because the loop below is written out for speed. */
+/** 2^27 + 1, see pairs.ts, whose sums and products are written out here for speed. */
 const SPLITTER = 134217729;
 
 /** Σ_{i = from}^{to} a_i b_{k − i}: the Cauchy product's coefficient, with every product and sum carried to double-double. */

@@ -144,29 +144,33 @@ export function walk(
 export function crossing(c: PairSeries, order: number, h: number, what: "value" | "slope", target: Pair): Pair {
   const series = what === "value" ? c : differentiated(c, order);
   const top = what === "value" ? order : order - 1;
-  const residual = (at: Pair) => {
-    const { value, derivative } = series.evaluate(at, top);
-    return { gap: subtract(value, target), derivative };
-  };
+  const gapAt = (at: number) => series.evaluateRoughly(at, top).value - target[0];
   let near = 0;
   let far = -h;
-  const signNear = Math.sign(residual(ZERO).gap[0]);
+  const signNear = Math.sign(gapAt(0));
   for (let round = 0; round < BISECTIONS; round += 1) {
     const middle = (near + far) / 2;
-    if (Math.sign(residual(pair(middle)).gap[0]) === signNear) near = middle;
+    if (Math.sign(gapAt(middle)) === signNear) near = middle;
     else far = middle;
   }
-  let root: Pair = pair((near + far) / 2);
+  let guess = (near + far) / 2;
+  for (let round = 0; round < ROUGH_STEPS; round += 1) {
+    const { value, derivative } = series.evaluateRoughly(guess, top);
+    guess -= (value - target[0]) / derivative;
+  }
+  let root: Pair = pair(guess);
   for (let round = 0; round < NEWTON_STEPS; round += 1) {
-    const { gap, derivative } = residual(root);
-    root = subtract(root, divide(gap, derivative));
+    const { value, derivative } = series.evaluate(root, top);
+    root = subtract(root, divide(subtract(value, target), derivative));
   }
   return root;
 }
 
-/** From a bracket of one step to 2^−12 of it, then Newton doubles the digits four times: past 2^−104. */
+/** From a bracket of one step to 2^−12 of it, in doubles to their rounding, then past 2^−104 in double-doubles: Newton's method
+ *  doubles the digits, and even where a double's rounding leaves it half of its own, three steps do. */
 const BISECTIONS = 12;
-const NEWTON_STEPS = 5;
+const ROUGH_STEPS = 3;
+const NEWTON_STEPS = 3;
 
 function differentiated(c: PairSeries, order: number): PairSeries {
   const d = new PairSeries(order + 1);
