@@ -3,7 +3,7 @@ import { EditorState } from "@codemirror/state";
 import { EditorView } from "@codemirror/view";
 import { afterEach, beforeAll, beforeEach, expect, test, vi } from "vitest";
 import { type Reader, Reading } from "../../app/editor/live/reading.ts";
-import type { FromWorker, Told, ToWorker } from "../../app/editor/model/messages.ts";
+import type { FromWorker, TextEdit, Told, ToWorker } from "../../app/editor/model/messages.ts";
 import type { SheetModel } from "../../app/editor/model/types.ts";
 import { SheetReader } from "../../app/editor/reading/sheet-reader.ts";
 import { glossField } from "../../app/editor/text/glosses.ts";
@@ -16,10 +16,18 @@ class SlowReader implements Reader {
   readonly heard: ToWorker[] = [];
   private readonly reader = new SheetReader();
   private waiting = 0;
+  /** The texts that it was given, whole or as edits of the one before. */
+  private readonly given: string[] = [];
   ended = false;
 
   postMessage({ message, have }: Told): void {
     this.heard.push(message);
+    if (message.tell === "text") this.given.push(message.text);
+    if (message.tell === "edits") {
+      const edits = [...message.edits].reverse();
+      const apply = (text: string, { from, to, insert }: TextEdit) => text.slice(0, from) + insert + text.slice(to);
+      this.given.push(edits.reduce(apply, this.given.at(-1) ?? ""));
+    }
     this.reader.hear(message, have);
     this.waiting += 1;
   }
@@ -40,7 +48,7 @@ class SlowReader implements Reader {
   }
 
   texts(): string[] {
-    return this.heard.flatMap((message) => (message.tell === "text" ? [message.text] : []));
+    return this.given;
   }
 }
 

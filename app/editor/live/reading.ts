@@ -1,7 +1,9 @@
 import { ChangeSet, type Text } from "@codemirror/state";
 import type { EditorView, ViewUpdate } from "@codemirror/view";
 import type { CellResult } from "../../cells/index.ts";
-import type { FromWorker, Told, ToWorker } from "../model/messages.ts";
+import type { Borders } from "../model/borders.ts";
+import type { FromWorker, TextEdit, Told, ToWorker } from "../model/messages.ts";
+import { unpackSheet } from "../model/packing.ts";
 import type { SheetModel } from "../model/types.ts";
 import { setProblems } from "../text/glosses.ts";
 import { applyModel, sheetField } from "../text/sheet-field.ts";
@@ -28,18 +30,27 @@ export class Reading {
   private readonly reader: Reader;
   private readonly bibliography: () => string;
   private readonly onModel: (model: SheetModel) => void;
+  private readonly onBorders: (borders: Borders) => void;
   private version = 0;
   /** Messages that are not answered yet. */
   private open = 0;
   private stale = false;
   private asked: { doc: Text; since: ChangeSet };
+  private model: SheetModel | null = null;
   private timer: ReturnType<typeof setTimeout> | undefined;
   private rest: ReturnType<typeof setTimeout> | undefined;
   private typedAt = 0;
   /** A newest-only message that waits for the answer at hand: a private trial. */
   private nextPreview: ToWorker | null = null;
 
-  constructor(view: EditorView, reader: Reader, bibliography: () => string, onModel: (model: SheetModel) => void) {
+  constructor(
+    view: EditorView,
+    reader: Reader,
+    bibliography: () => string,
+    onModel: (model: SheetModel) => void,
+    onBorders: (borders: Borders) => void = () => undefined,
+  ) {
+    this.onBorders = onBorders;
     this.view = view;
     this.reader = reader;
     this.bibliography = bibliography;
@@ -97,8 +108,15 @@ export class Reading {
     this.stale = false;
     this.version += 1;
     const { doc } = this.view.state;
+    const { version } = this;
+    const bibliography = this.bibliography();
+    const edits = editsOf(this.asked.since);
     this.asked = { doc, since: ChangeSet.empty(doc.length) };
-    this.send({ tell: "text", version: this.version, text: doc.toString(), bibliography: this.bibliography() });
+    this.send(
+      version === 1
+        ? { tell: "text", version, text: doc.toString(), bibliography }
+        : { tell: "edits", version, edits, bibliography },
+    );
   }
 
   private send(message: ToWorker): void {
@@ -109,10 +127,13 @@ export class Reading {
   private hear(message: FromWorker): void {
     this.open -= message.answers;
     if (message.tell === "sheet" && message.model.version === this.version) {
-      const { model } = message;
+      const model = unpackSheet(this.model, message.model);
+      this.model = model;
       this.onModel(model);
       this.view.dispatch({ effects: applyModel.of({ model, ...this.asked }) });
       this.showProblems(model);
+    } else if (message.tell === "borders") {
+      this.onBorders(message.borders);
     } else if (message.tell === "fault") {
       console.error(`The sheet could not be read: ${message.message}`);
     }
@@ -141,4 +162,12 @@ export class Reading {
     if (wait === 0) show();
     else this.rest = setTimeout(show, wait);
   }
+}
+
+function editsOf(changes: ChangeSet): TextEdit[] {
+  const edits: TextEdit[] = [];
+  changes.iterChanges((from, to, _fromNow, _toNow, inserted) => {
+    edits.push({ from, to, insert: inserted.toString() });
+  });
+  return edits;
 }

@@ -21,6 +21,9 @@ export interface BorderSide {
   readonly without: readonly string[];
 }
 
+/** Of each parameter that has any, in increasing order. */
+export type Borders = Readonly<Record<string, readonly BorderFace[]>>;
+
 export type Side = "below" | "above";
 
 /** On which side of a border a value lies. */

@@ -1,5 +1,6 @@
 import type { CellResult, CellWork, ParameterChange, ShownCell } from "../../cells/index.ts";
-import type { SheetModel } from "./types.ts";
+import type { Borders } from "./borders.ts";
+import type { CellFace, SheetModel } from "./types.ts";
 
 /**
  * What the page tells its worker. Messages that lie in its queue together are answered together, with the newest
@@ -7,6 +8,13 @@ import type { SheetModel } from "./types.ts";
  */
 export type ToWorker =
   | { readonly tell: "text"; readonly version: number; readonly text: string; readonly bibliography: string }
+  /** What has changed in the text told before. */
+  | {
+      readonly tell: "edits";
+      readonly version: number;
+      readonly edits: readonly TextEdit[];
+      readonly bibliography: string;
+    }
   | {
       readonly tell: "shown";
       readonly cells: Readonly<Record<string, ShownCell>>;
@@ -24,6 +32,13 @@ export type ToWorker =
       readonly trial: Readonly<Record<string, string>>;
     };
 
+/** Places are those of the text before all edits of the message; they come in its order and do not overlap. */
+export interface TextEdit {
+  readonly from: number;
+  readonly to: number;
+  readonly insert: string;
+}
+
 /** A message as it is posted. */
 export interface Told {
   readonly message: ToWorker;
@@ -31,7 +46,18 @@ export interface Told {
   readonly have: number;
 }
 
+/** A cell that looks as it did, where it stands now. */
+export type CellPlace = Pick<CellFace, "slot" | "from" | "to" | "line">;
+
+/** The sheet as it is posted: parts that the page has already are left out (model/packing.ts). */
+export type PackedSheet = Pick<SheetModel, "version" | "pieces" | "views" | "preview"> &
+  Partial<Omit<SheetModel, "version" | "pieces" | "views" | "preview" | "cells">> & {
+    readonly cells: readonly (CellFace | CellPlace)[];
+  };
+
 export type FromWorker =
-  | { readonly tell: "sheet"; readonly answers: number; readonly model: SheetModel; readonly seconds: number }
+  | { readonly tell: "sheet"; readonly answers: number; readonly model: PackedSheet; readonly seconds: number }
+  /** Where along the parameters cells answer otherwise, by parameter; found while the worker has nothing else to do. */
+  | { readonly tell: "borders"; readonly answers: 0; readonly borders: Borders }
   /** The sheet could not be made; the one before stays. */
   | { readonly tell: "fault"; readonly answers: number; readonly message: string };

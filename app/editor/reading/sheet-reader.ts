@@ -10,8 +10,9 @@ import {
   type ShownPaper,
 } from "../../cells/index.ts";
 import { type Paper, readPaper } from "../../paper/index.ts";
-import type { ToWorker } from "../model/messages.ts";
+import type { TextEdit, ToWorker } from "../model/messages.ts";
 import type { SheetModel } from "../model/types.ts";
+import type { Ground } from "./border-finder.ts";
 import { type CellTelling, cellFaces, cellNodesOf, titlesOf } from "./cell-faces.ts";
 import { errataOf } from "./errata.ts";
 import { frontFace, frontPieces } from "./front-face.ts";
@@ -51,13 +52,10 @@ export class SheetReader {
     this.have = have;
     switch (message.tell) {
       case "text":
-        this.version = message.version;
-        if (message.text !== this.text || message.bibliography !== this.bibliography) {
-          this.text = message.text;
-          this.bibliography = message.bibliography;
-          this.paper = null;
-          this.plans.clear();
-        }
+        this.hearText(message.version, message.text, message.bibliography);
+        return;
+      case "edits":
+        this.hearText(message.version, edited(this.text, message.edits), message.bibliography);
         return;
       case "shown":
         this.shown = {
@@ -74,6 +72,15 @@ export class SheetReader {
         this.trial = message.trial;
         return;
     }
+  }
+
+  private hearText(version: number, text: string, bibliography: string): void {
+    this.version = version;
+    if (text === this.text && bibliography === this.bibliography) return;
+    this.text = text;
+    this.bibliography = bibliography;
+    this.paper = null;
+    this.plans.clear();
   }
 
   /** The sheet as of now. */
@@ -116,6 +123,15 @@ export class SheetReader {
       errata: errataOf(cells, pieces, problems, paper.text),
       preview: names.size > 0,
     };
+  }
+
+  /** What the search for borders of the parameters needs; null while one is under the hand. */
+  ground(): Ground | null {
+    const { paper, settled: overrides } = this;
+    if (paper === null || Object.keys(this.trial).length > 0) return null;
+    const plan = this.planWith(paper, overrides);
+    const titles = titlesOf(plan, cellNodesOf(paper));
+    return { paper, plan, overrides, titles, known: (key) => this.results.any(key) };
   }
 
   /** What is to be told of a cell: the paper's own state and result, or those of a private trial. */
@@ -163,4 +179,15 @@ export class SheetReader {
     for (const outcome of outcomes.values()) if (outcome.status === "computed") this.results.keepTrial(outcome.result);
     return outcomes;
   }
+}
+
+/** A text after edits. */
+function edited(text: string, edits: readonly TextEdit[]): string {
+  let after = "";
+  let at = 0;
+  for (const { from, to, insert } of edits) {
+    after += text.slice(at, from) + insert;
+    at = to;
+  }
+  return after + text.slice(at);
 }
