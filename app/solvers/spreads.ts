@@ -8,7 +8,7 @@ import type { Pair, ProcessModel, Turning } from "./types.ts";
 import type { WalkSettings } from "./walk.ts";
 
 /** Coarser walk, for the check of the fine one and for its sensitivity to the inputs. */
-export const COARSE_WALK: WalkSettings = { order: 16, tolerance: 2 ** -44 };
+export const COARSE_WALK: WalkSettings = { order: 24, tolerance: 2 ** -44 };
 /** Shift of √(drift² − 4 D f'(1)) for the sensitivity, relative to the drift: the trajectory is analytic in it, even at 0. */
 const SHIFT = 2 ** -14;
 /** The two walks may differ by this; more means that one of them went wrong. */

@@ -16,7 +16,7 @@ export interface WalkSettings {
 }
 
 /** Fine enough that s0^{−100000} keeps 15 digits. */
-export const FULL_WALK: WalkSettings = { order: 36, tolerance: 2 ** -80 };
+export const FULL_WALK: WalkSettings = { order: 42, tolerance: 2 ** -80 };
 
 /** State (ξ, u, du/dξ) carried in double-doubles. */
 export interface PairKnot {
