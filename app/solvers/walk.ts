@@ -1,7 +1,7 @@
 import { SolverError } from "./errors.ts";
 import type { Normalised } from "./linear.ts";
 import { PairSeries, pairComposer } from "./pair-series.ts";
-import { add, divide, multiply, negate, ONE, pair, scale, subtract, toNumber, ZERO } from "./pairs.ts";
+import { add, divide, multiply, negate, ONE, pair, scale, subtract, toNumber } from "./pairs.ts";
 import type { Pair } from "./types.ts";
 
 /** The trajectory in double-doubles: its power series at the far end, and Taylor steps towards the barrier.
@@ -44,16 +44,7 @@ export function originSeries(n: Normalised, settings: WalkSettings): OriginSerie
   const { order, tolerance } = settings;
   // The curvature of M sets the radius of convergence; scaling by it keeps the coefficients within the double's range.
   const unit = 2 ** -Math.round(Math.log2(1 + n.strength[0] * n.law.mean[0] ** 2));
-  const series = new PairSeries(order + 1);
-  const compose = pairComposer(n.law, series);
-  compose(0);
-  series.set(1, pair(unit));
-  compose(1);
-  for (let k = 2; k <= order; k += 1) {
-    const source = multiply(n.strength, compose(k));
-    series.set(k, divide(source, scale(subtract(pair(k), n.ratio), k - 1)));
-    compose(k);
-  }
+  const series = linearisingSeries(n, order, unit);
   let largest = 0;
   for (let k = order - 3; k <= order; k += 1)
     largest = Math.max(largest, (Math.abs(series.high[k] as number) / unit) ** (1 / (k - 1)));
@@ -72,6 +63,25 @@ export function originSeries(n: Normalised, settings: WalkSettings): OriginSerie
       );
   }
   return { scale: unit, series, reach: 2 ** Math.floor(Math.log2(reach)) };
+}
+
+/** Coefficients of u = Σ c_k (z/unit)^k, c_1 = unit, for k up to `order` < ratio, or any where the ratio is no integer above 1. */
+export function linearisingSeries(
+  n: Pick<Normalised, "law" | "ratio" | "strength">,
+  order: number,
+  unit: number,
+): PairSeries {
+  const series = new PairSeries(order + 1);
+  const compose = pairComposer(n.law, series);
+  compose(0);
+  series.set(1, pair(unit));
+  compose(1);
+  for (let k = 2; k <= order; k += 1) {
+    const source = multiply(n.strength, compose(k));
+    series.set(k, divide(source, scale(subtract(pair(k), n.ratio), k - 1)));
+    compose(k);
+  }
+  return series;
 }
 
 /** The knot at z = sign·reach, where ξ = −ln reach. */
