@@ -55,7 +55,8 @@ export class Desk {
   private readonly announcer = new Announcer((heard) => this.store.set({ heard }));
   private readonly requests;
   private readonly fetcher: ResultFetcher;
-  private view: EditorView | null = null;
+  /** The text on the sheet, once it is here. */
+  view: EditorView | null = null;
   private reading: Reading | null = null;
   private shown: ShownRecords;
   /** A visitor's own values. */

@@ -2,24 +2,40 @@ import { useRef } from "react";
 import { Command, TailLine } from "../../ui/index.ts";
 import type { Desk, DeskView } from "../live/desk.ts";
 import type { CellFace, Erratum, SheetModel } from "../model/types.ts";
+import { StrandsCommands } from "../strands/strands-commands.tsx";
+import type { StrandWatch } from "../strands/watch.ts";
+import { useDeskView } from "./use-desk-view.ts";
 import { clock, counted, listed } from "./words.ts";
 
 interface Props {
   readonly desk: Desk;
-  readonly view: DeskView;
   readonly writes: boolean;
+  readonly strands: StrandWatch | null;
 }
 
 /** The tail line: what is kept, what is out of date or failed, and what was refused. */
-export function SheetTail({ desk, view, writes }: Props) {
-  const { model, notice } = view;
+export function SheetTail({ desk, writes, strands }: Props) {
   return (
     <TailLine
-      left={<span className="hl-kept">{keptWords(view, writes)}</span>}
-      middle={model === null ? null : <Errata desk={desk} model={model} writes={writes} />}
-      right={notice === null ? null : <span className={notice.amiss ? "hl-amiss" : ""}>{notice.words}</span>}
+      left={<KeptWords desk={desk} writes={writes} />}
+      middle={<Errata desk={desk} writes={writes} />}
+      right={
+        <>
+          <Notice desk={desk} />
+          {strands === null ? null : <StrandsCommands desk={desk} watch={strands} />}
+        </>
+      }
     />
   );
+}
+
+function KeptWords({ desk, writes }: Pick<Props, "desk" | "writes">) {
+  return <span className="hl-kept">{useDeskView(desk, (view) => keptWords(view, writes))}</span>;
+}
+
+function Notice({ desk }: Pick<Props, "desk">) {
+  const notice = useDeskView(desk, (view) => view.notice);
+  return notice === null ? null : <span className={notice.amiss ? "hl-amiss" : ""}>{notice.words} </span>;
 }
 
 /** "All changes kept, 14:32": said only when the server has committed all that was written here. */
@@ -39,21 +55,15 @@ export function keptWords(
   return kept.at === null ? "All changes kept" : `All changes kept, ${clock(kept.at)}`;
 }
 
-function Errata({
-  desk,
-  model,
-  writes,
-}: {
-  readonly desk: Desk;
-  readonly model: SheetModel;
-  readonly writes: boolean;
-}) {
+function Errata({ desk, writes }: Pick<Props, "desk" | "writes">) {
   const last = useRef(-1);
-  const { errata, cells } = model;
-  const working = cells.filter((cell) => isUnderWay(cell, cells)).length;
-  const due = cells.some((cell) => cell.sound && RECOMPUTED.has(cell.state));
-  if (errata.length === 0 && working === 0 && !due) return <span>Errata none</span>;
+  // As words: where the errata stand moves with each keystroke above them, and what is said of them does not.
+  const told = useDeskView(desk, ({ model }) => (model === null ? "" : toldOf(model)));
+  if (told === "") return null;
+  const { count, words, working, due }: Told = JSON.parse(told);
+  if (count === 0 && working === 0 && !due) return <span>Errata none</span>;
   const next = () => {
+    const errata = desk.store.get().model?.errata ?? [];
     const found = errata.find(({ from }) => from > last.current) ?? errata[0];
     if (found === undefined) return;
     last.current = found.from;
@@ -63,17 +73,36 @@ function Errata({
   };
   return (
     <span className="hl-errata">
-      {errata.length === 0 ? null : (
+      {count === 0 ? null : (
         <button type="button" className="hl-errata-count" onClick={next} title="Go to the next">
-          Errata {errata.length}
+          Errata {count}
         </button>
       )}
-      <span className="hl-errata-words">{errataWords(errata)}</span>
+      <span className="hl-errata-words">{words}</span>
       {working > 0 ? <span>{counted(working, "cell")} being computed</span> : null}
       {writes && working > 0 ? <Command onClick={() => desk.cancelAll()}>Cancel</Command> : null}
       {writes && due ? <Command onClick={() => desk.recomputeAll()}>Recompute all</Command> : null}
     </span>
   );
+}
+
+interface Told {
+  readonly count: number;
+  readonly words: string;
+  /** Cells under way. */
+  readonly working: number;
+  /** Something can be recomputed. */
+  readonly due: boolean;
+}
+
+function toldOf({ errata, cells }: SheetModel): string {
+  const told: Told = {
+    count: errata.length,
+    words: errataWords(errata),
+    working: cells.filter((cell) => isUnderWay(cell, cells)).length,
+    due: cells.some((cell) => cell.sound && RECOMPUTED.has(cell.state)),
+  };
+  return JSON.stringify(told);
 }
 
 /** Being computed, or in the queue behind what is. A cell that waits for a failed one waits for a person. */

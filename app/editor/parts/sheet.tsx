@@ -1,31 +1,40 @@
 import { type RefObject, useEffect, useRef, useState } from "react";
-import { CommandLink, RunningHead } from "../../ui/index.ts";
 import { Desk } from "../live/desk.ts";
-import type { SheetModel } from "../model/types.ts";
+import { SheetStrands } from "../strands/sheet-strands.tsx";
+import { StrandHeads } from "../strands/strand-heads.tsx";
+import { useStrandWatch } from "../strands/use-strands.ts";
+import type { StrandWatch } from "../strands/watch.ts";
 import { BibliographyPlace } from "./bibliography-place.tsx";
-import { ClosedNotice } from "./closed-notice.tsx";
-import { ParameterRule } from "./parameter-rule.tsx";
-import { Runs } from "./runs.tsx";
+import { SheetHead, SheetNotices, SheetRule, SheetVoice } from "./sheet-head.tsx";
 import type { SheetPageProps } from "./sheet-page.tsx";
 import { PlainText } from "./sheet-preface.tsx";
 import { SheetTail } from "./sheet-tail.tsx";
-import { TrialNotice } from "./trial-notice.tsx";
 import { useDeskView } from "./use-desk-view.ts";
-import { listed } from "./words.ts";
 
 /** The live sheet: running head, rule, text, bibliography, tail line, over one desk. */
 export default function Sheet(props: SheetPageProps) {
   const place = useRef<HTMLDivElement>(null);
+  const sheet = useRef<HTMLDivElement>(null);
   const desk = useDesk(props, place);
+  const strands = useStrandWatch(desk, sheet, props.person?.id ?? null);
   return (
-    <div className="hl-sheet">
-      {desk === null ? null : <Around desk={desk} props={props} part="head" />}
+    <div className="hl-sheet" ref={sheet}>
+      {desk === null ? null : (
+        <>
+          <SheetHead desk={desk} props={props} />
+          <SheetRule desk={desk} />
+          {strands === null ? null : <Heads desk={desk} strands={strands} />}
+          <SheetNotices desk={desk} props={props} />
+          <SheetVoice desk={desk} />
+        </>
+      )}
       <main className="hl-column">
+        {desk === null || strands === null ? null : <SheetStrands desk={desk} watch={strands} />}
         {desk === null ? null : <Preface desk={desk} props={props} place={place} />}
         <div ref={place} className="hl-text hl-untyped" />
         {desk === null ? null : <BibliographyPlace desk={desk} />}
       </main>
-      {desk === null ? null : <Around desk={desk} props={props} part="tail" />}
+      {desk === null ? null : <SheetTail desk={desk} writes={props.writes} strands={strands} />}
     </div>
   );
 }
@@ -62,47 +71,7 @@ function Preface({ desk, props, place }: PartProps & { readonly place: RefObject
   );
 }
 
-function Around({ desk, props, part }: PartProps & { readonly part: "head" | "tail" }) {
-  const view = useDeskView(desk, (each) => each);
-  if (part === "tail") return <SheetTail desk={desk} view={view} writes={props.writes} />;
-  const { model, people, connection, heard } = view;
-  return (
-    <>
-      <RunningHead
-        home={props.person === null ? "/" : "/shelf"}
-        left={props.person === null ? null : <CommandLink to="/shelf">Shelf</CommandLink>}
-        title={<TitleRuns model={model} title={props.title} />}
-        right={
-          <>
-            {people.length === 0 ? null : <span className="head-name">{listed(people)} here</span>}
-            {props.person === null ? null : (
-              <CommandLink to={`/papers/${props.paperId}/title-page`}>Title page</CommandLink>
-            )}
-            <CommandLink to={`/papers/${props.paperId}/galley`}>Galley</CommandLink>
-          </>
-        }
-      />
-      <ParameterRule
-        parameters={model?.parameters ?? []}
-        onTry={(name, source) => desk.tryParameter(name, source)}
-        onSet={(name, source) => desk.setParameter(name, source)}
-      />
-      {connection.state === "closed" ? <ClosedNotice code={connection.code} onAgain={() => desk.joinAgain()} /> : null}
-      {props.writes ? null : (
-        <TrialNotice
-          desk={desk}
-          signIn={props.signIn}
-          tried={model?.parameters.some(({ overridden }) => overridden) ?? false}
-        />
-      )}
-      <div className="hl-said" role="status" aria-live="polite">
-        {heard}
-      </div>
-    </>
-  );
-}
-
-function TitleRuns({ model, title }: { readonly model: SheetModel | null; readonly title: string }) {
-  if (model === null || model.front.plainTitle === "") return title;
-  return <Runs runs={model.front.title} macros={model.macros} />;
+function Heads({ desk, strands }: { readonly desk: Desk; readonly strands: StrandWatch }) {
+  const model = useDeskView(desk, (view) => view.model);
+  return model === null || model.parameters.length === 0 ? null : <StrandHeads watch={strands} model={model} />;
 }
