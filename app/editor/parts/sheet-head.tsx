@@ -1,0 +1,85 @@
+import { CommandLink, RunningHead } from "../../ui/index.ts";
+import type { Desk } from "../live/desk.ts";
+import { ClosedNotice } from "./closed-notice.tsx";
+import { ParameterRule } from "./parameter-rule.tsx";
+import { Runs } from "./runs.tsx";
+import type { SheetPageProps } from "./sheet-page.tsx";
+import { TrialNotice } from "./trial-notice.tsx";
+import { useDeskView } from "./use-desk-view.ts";
+import { listed } from "./words.ts";
+
+interface Props {
+  readonly desk: Desk;
+  readonly props: SheetPageProps;
+}
+
+/** The running head. Like all that stands around the text it watches its own parts alone: a keystroke draws none anew. */
+export function SheetHead({ desk, props }: Props) {
+  return (
+    <RunningHead
+      home={props.person === null ? "/" : "/shelf"}
+      left={props.person === null ? null : <CommandLink to="/shelf">Shelf</CommandLink>}
+      title={<SheetTitle desk={desk} title={props.title} />}
+      right={
+        <>
+          <People desk={desk} />
+          {props.person === null ? null : (
+            <CommandLink to={`/papers/${props.paperId}/title-page`}>Title page</CommandLink>
+          )}
+          <CommandLink to={`/papers/${props.paperId}/galley`}>Galley</CommandLink>
+        </>
+      }
+    />
+  );
+}
+
+function SheetTitle({ desk, title }: { readonly desk: Desk; readonly title: string }) {
+  const front = useDeskView(desk, ({ model }) => model?.front ?? null);
+  const macros = useDeskView(desk, ({ model }) => model?.macros ?? null);
+  if (front === null || macros === null || front.plainTitle === "") return title;
+  return <Runs runs={front.title} macros={macros} />;
+}
+
+function People({ desk }: { readonly desk: Desk }) {
+  const people = useDeskView(desk, (view) => view.people);
+  return people.length === 0 ? null : <span className="head-name">{listed(people)} here</span>;
+}
+
+/** The rule with the paper's parameters. */
+export function SheetRule({ desk }: { readonly desk: Desk }) {
+  const parameters = useDeskView(desk, ({ model }) => model?.parameters ?? NO_PARAMETERS);
+  const borders = useDeskView(desk, (view) => view.borders);
+  return (
+    <ParameterRule
+      parameters={parameters}
+      borders={borders}
+      onSay={desk.say}
+      onTry={(name, source) => desk.tryParameter(name, source)}
+      onSet={(name, source) => desk.setParameter(name, source)}
+    />
+  );
+}
+
+const NO_PARAMETERS: readonly never[] = [];
+
+/** What is to be said between the rule and the text: why the page is no longer joined, and that trying keeps nothing. */
+export function SheetNotices({ desk, props }: Props) {
+  const connection = useDeskView(desk, (view) => view.connection);
+  const tried = useDeskView(desk, ({ model }) => model?.parameters.some(({ overridden }) => overridden) ?? false);
+  return (
+    <>
+      {connection.state === "closed" ? <ClosedNotice code={connection.code} onAgain={() => desk.joinAgain()} /> : null}
+      {props.writes ? null : <TrialNotice desk={desk} signIn={props.signIn} tried={tried} />}
+    </>
+  );
+}
+
+/** Said to those who listen. */
+export function SheetVoice({ desk }: { readonly desk: Desk }) {
+  const heard = useDeskView(desk, (view) => view.heard);
+  return (
+    <div className="hl-said" role="status" aria-live="polite">
+      {heard}
+    </div>
+  );
+}
