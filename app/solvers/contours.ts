@@ -30,7 +30,7 @@ const REFINEMENTS = 2;
 const PANEL_NODES = 16;
 const CHECK_PANEL_NODES = 18;
 /** Relative agreement asked of the two contours, and of their total with 1. */
-const ACCEPTED = 1e-12;
+const ACCEPTED = 1e-13;
 const ACCEPTED_UNITS = 64;
 /** What ends the search once a width and its refinements are through: a narrower arc takes many more nodes for the last digits. */
 const GOOD_ENOUGH = 1e-11;
@@ -156,7 +156,9 @@ function compare(t: Trajectory, reader: TrajectoryReader, pair: ContourPair): nu
     const b = sumRange(check, n, n);
     const value = a.values[0] as number;
     const gap = Math.abs(value - (b.values[0] as number));
-    const excused = (a.rounding[0] as number) + (b.rounding[0] as number);
+    const rounding = (a.rounding[0] as number) + (b.rounding[0] as number);
+    // along rays the sums may fall below their rounding, which no contour mends
+    const excused = reader.rays === null ? 0 : rounding;
     worst = Math.max(worst, Math.max(0, gap - excused) / Math.abs(value));
     // at n = 0 the formula gives u(s0) − u(0), and u(0) = 1, or 0 where nobody dies childless
     if (n === 0) worst = Math.max(worst, Math.abs(value - (atTop - centre)) / Math.abs(value) - excused);

@@ -4,7 +4,7 @@ import { SolverError } from "./errors.ts";
 import { lawUnit } from "./input-rounding.ts";
 import { nonlinearity } from "./offspring.ts";
 import { divide, LN2, logarithm, multiply, toNumber } from "./pairs.ts";
-import { profileComplementAt } from "./profile.ts";
+import { profileAt, profileComplementAt } from "./profile.ts";
 import { ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
 import { scaledByPower } from "./scaled.ts";
 import { differenceValues, nodeValues } from "./sources.ts";
@@ -123,7 +123,7 @@ export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstim
   const read: ScaledEstimate[] = [];
   for (let i = 0; i < values.length; i += 1) {
     const n = from + i;
-    if ((n - law.lattice.offset) % law.lattice.base.period !== 0) {
+    if (!isPossible(law.lattice, n)) {
       read.push(NONE);
       continue;
     }
@@ -138,6 +138,11 @@ export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstim
     );
   }
   return read;
+}
+
+/** K keeps to its lattice; where nobody dies childless, what is absorbed is at least what started. */
+function isPossible({ base, offset }: Lattice, n: number): boolean {
+  return (n - offset) % base.period === 0 && !(base.centre === 0 && n < offset);
 }
 
 /** Where the sum is P(K = 1) − 1. */
@@ -183,8 +188,11 @@ export function zeroOf(t: Trajectory, starts: readonly Start[]): { zero: ScaledE
   for (const { position, particles } of starts) {
     const u = profileComplementAt(t, position, 0);
     if ("refused" in u) throw new SolverError("not_converged", u.refused);
-    log += particles * Math.log1p(-u.value);
-    error += (particles * u.error) / Math.max(1 - u.value, Number.MIN_VALUE) + ROUNDING * Math.abs(log);
+    // where w is small its own error counts, not that of 1 − w
+    const w = u.value > 1 / 2 ? profileAt(t, position, 0) : { value: 1 - u.value, error: u.error };
+    if ("refused" in w) throw new SolverError("not_converged", w.refused);
+    log += particles * (u.value > 1 / 2 ? Math.log(w.value) : Math.log1p(-u.value));
+    error += (particles * w.error) / Math.max(w.value, Number.MIN_VALUE) + ROUNDING * Math.abs(log);
   }
   const power = log / Math.LN2;
   const survivors = -Math.expm1(log);
