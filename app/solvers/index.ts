@@ -1,5 +1,7 @@
 /** The half-line solver: one trajectory, from which every answer is read. */
 
+export type { ProbabilityInterval } from "./binomial-interval.ts";
+export { clopperPearson, INTERVAL_ACCURACY } from "./binomial-interval.ts";
 export { absorbedAbove, absorbedLaw, absorbedProbability } from "./counts.ts";
 export { SolverError } from "./errors.ts";
 export { absorbedMoments, factorialMoment } from "./moments.ts";
@@ -8,6 +10,8 @@ export { profileAt, profileComplementAt, profileConstants, profileSlopeAt } from
 export type { NoRoot, Root } from "./root.ts";
 export { findRoot } from "./root.ts";
 export type { Probe, Sample } from "./root-bracket.ts";
+export type { SimulatedCounts, SimulationPlan, SimulationWishes } from "./simulation.ts";
+export { CHUNK, mergeCounts, planSimulation, simulateChunks } from "./simulation.ts";
 export { survivalProbability } from "./survival.ts";
 export { tailLaw, tailProbability } from "./tail.ts";
 export { solveTrajectory } from "./trajectory.ts";
