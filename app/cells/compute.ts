@@ -2,7 +2,7 @@ import type { Quantity, Scope, Value } from "../formulas/index.ts";
 import { SolverError } from "../solvers/index.ts";
 import type { ReadCell } from "./context.ts";
 import { CellFault, ComputeContext, evaluated, NotKnownYet } from "./context.ts";
-import type { Branch } from "./kind.ts";
+import type { Branch, Computed, Kind } from "./kind.ts";
 import { KINDS } from "./registry.ts";
 import type { CellResult, CellTask, Outcome, Plan } from "./types.ts";
 import { numberValue } from "./values.ts";
@@ -121,27 +121,41 @@ function computeWith(
   results: ReadonlyMap<string, ReadCell>,
   progress: (done: number, total: number) => void,
 ): Outcome {
+  return attempt(task, (kind) => {
+    const context = contextOf(task, task.parameters, results, progress);
+    const begun = performance.now();
+    const computed = kind.compute(task.model, context);
+    return resultOf(task, kind, computed, (performance.now() - begun) / 1000);
+  });
+}
+
+/** What a kind computed, as a cell's outcome. */
+export function resultOf(task: CellTask, kind: Kind, computed: Computed<unknown>, seconds: number): Outcome {
+  const { values, data, method } = computed;
+  return {
+    status: "computed",
+    result: { key: task.key, kind: task.kind, values, data, method, solver: kind.solver, seconds },
+  };
+}
+
+/** Work on a task that may find that the cell cannot be computed; faults of the program itself throw. */
+export function attempt<Answer>(task: CellTask, work: (kind: Kind) => Answer): Answer | FailedOutcome {
   const kind = KINDS.get(task.kind);
-  const fail = (line: number | undefined, message: string): Outcome => ({
+  const fail = (line: number | undefined, message: string): FailedOutcome => ({
     status: "failed",
     failure: { key: task.key, line: line ?? task.lines[""] ?? 1, message },
   });
   if (kind === undefined) return fail(undefined, `\`${task.kind}\` is not a kind of cell.`);
-  const context = contextOf(task, task.parameters, results, progress);
-  const begun = performance.now();
   try {
-    const { values, data, method } = kind.compute(task.model, context);
-    const seconds = (performance.now() - begun) / 1000;
-    return {
-      status: "computed",
-      result: { key: task.key, kind: task.kind, values, data, method, solver: kind.solver, seconds },
-    };
+    return work(kind);
   } catch (error) {
     if (error instanceof CellFault) return fail(lineOf(task, error.path), error.message);
     if (error instanceof SolverError) return fail(undefined, error.message);
     throw error;
   }
 }
+
+type FailedOutcome = Extract<Outcome, { readonly status: "failed" }>;
 
 /** The line of an entry, or of the nearest one around it. */
 function lineOf(task: CellTask, path: string): number | undefined {
@@ -167,7 +181,7 @@ export function planningContext(task: CellTask): ComputeContext {
 }
 
 /** The context in which a task computes. */
-function contextOf(
+export function contextOf(
   task: CellTask,
   parameters: Readonly<Record<string, Quantity>>,
   results: ReadonlyMap<string, ReadCell>,

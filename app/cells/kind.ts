@@ -83,6 +83,45 @@ export interface Computed<Data> {
 }
 
 /**
+ * A computation that splits into parts, which several threads compute in any order and which are kept one by one.
+ *
+ * Life: `split` decides what all parts share and how many there are → `part` for each index from 0, on any thread, knowing
+ * what is shared and its index alone → `merge` of all parts in the order of their indices. All is plain JSON; equal model and
+ * context split alike. `split` throws CellFault or SolverError, `part` and `merge` SolverError.
+ */
+export interface PartsOf<Model, Shared, Part, Data> {
+  split(model: Model, context: ComputeContext): { readonly shared: Shared; readonly count: number };
+  part(shared: Shared, index: number): Part;
+  merge(shared: Shared, parts: readonly Part[]): Computed<Data>;
+}
+
+/** The same with what travels between its functions forgotten: it only ever comes from the same kind's functions. */
+export type Parts<Model, Data> = PartsOf<Model, unknown, unknown, Data>;
+
+/** Forgets the types of what is shared and of parts. */
+export function defineParts<Model, Shared, Part, Data>(parts: PartsOf<Model, Shared, Part, Data>): Parts<Model, Data> {
+  return {
+    split: (model, context) => parts.split(model, context),
+    part: (shared, index) => parts.part(shared as Shared, index),
+    merge: (shared, all) => parts.merge(shared as Shared, all as readonly Part[]),
+  };
+}
+
+/** The `compute` of a kind that splits: all parts one after the other, in this thread. */
+export function computeAllParts<Model, Data>(
+  parts: Parts<Model, Data>,
+): (model: Model, context: ComputeContext) => Computed<Data> {
+  return (model, context) => {
+    const { shared, count } = parts.split(model, context);
+    const all = Array.from({ length: count }, (_, index) => {
+      context.progress(index, count);
+      return parts.part(shared, index);
+    });
+    return parts.merge(shared, all);
+  };
+}
+
+/**
  * A kind of cell. One is a folder with model.ts and view.ts, and a line in registry.ts; nothing else branches on kinds.
  *
  * Life: `read` (planning, on each keystroke) → `inspect`, `branch` and `cost` (planning, when no other cell's value enters) → `compute` (in a
@@ -105,6 +144,8 @@ export interface KindOf<Model, Data> {
   /** What varying costs, told before it is computed; null where nothing is computed again. Absent: it never varies. */
   cost?(model: Model, context: ComputeContext): Cost | null;
   compute(model: Model, context: ComputeContext): Computed<Data>;
+  /** How a long computation splits; `compute` is then `computeAllParts` of it. Absent: it does not. */
+  readonly parts?: Parts<Model, Data>;
   /** `K(3)`: member is "" for the cell itself. undefined when it has no such callable. */
   call(data: Data, member: string, args: readonly Quantity[]): Value | undefined;
   view(data: Data, presentation: Presentation): CellView;
@@ -121,6 +162,7 @@ export type Kind = KindOf<unknown, unknown>;
  * data from its `compute`: both travel with the kind's name.
  */
 export function defineKind<Model, Data>(kind: KindOf<Model, Data>): Kind {
+  const { parts } = kind;
   const branch = kind.branch?.bind(kind);
   const cost = kind.cost?.bind(kind);
   const drawn = kind.drawn?.bind(kind);
@@ -135,6 +177,7 @@ export function defineKind<Model, Data>(kind: KindOf<Model, Data>): Kind {
     branch: branch && ((model, context) => branch(model as Model, context)),
     cost: cost && ((model, context) => cost(model as Model, context)),
     compute: (model, context) => kind.compute(model as Model, context),
+    parts: parts && { ...parts, split: (model, context) => parts.split(model as Model, context) },
     call: (data, member, args) => kind.call(data as Data, member, args),
     view: (data, presentation) => kind.view(data as Data, presentation),
     drawn: drawn && ((data, presentation) => drawn(data as Data, presentation)),

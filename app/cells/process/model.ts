@@ -94,6 +94,11 @@ export function trajectoryOf(reference: { readonly cell: string }, context: Comp
   return trajectory;
 }
 
+/** The process named under `of`, whether or not it has a trajectory. */
+export function processOf(reference: { readonly cell: string }, context: ComputeContext): ProcessModel {
+  return processData(reference, context).model;
+}
+
 /** What a `process` cell keeps. Sound because planning lets `of` name process cells only. */
 function processData(reference: { readonly cell: string }, context: ComputeContext): ProcessData {
   return context.result(reference, "of").data as ProcessData;
