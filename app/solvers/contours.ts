@@ -81,7 +81,7 @@ function searchWidths(t: Trajectory, reader: TrajectoryReader, level: number): C
       });
       if (check === null) break;
       const pair = { reference, fine, check };
-      const disagreement = compare(t, reader, pair);
+      const disagreement = compare(t, reader, pair, width);
       if (disagreement < accepted) return pair;
       if (disagreement < smallest) {
         smallest = disagreement;
@@ -140,7 +140,7 @@ function arcNodes(width: number): number {
 const SAMPLES = [0, 1, 2, 3, 5, 8, 13, 21, 34, 55, 89, 144, 233, 377, 610];
 
 /** Largest relative difference of the two contours on the limit law, its total against 1 included. */
-function compare(t: Trajectory, reader: TrajectoryReader, pair: ContourPair): number {
+function compare(t: Trajectory, reader: TrajectoryReader, pair: ContourPair, width: number): number {
   const u = nodeValues(t, reader, pair.fine, "far");
   const v = nodeValues(t, reader, pair.check, "far");
   if (u === null || v === null) return Number.POSITIVE_INFINITY;
@@ -157,8 +157,8 @@ function compare(t: Trajectory, reader: TrajectoryReader, pair: ContourPair): nu
     const value = a.values[0] as number;
     const gap = Math.abs(value - (b.values[0] as number));
     const rounding = (a.rounding[0] as number) + (b.rounding[0] as number);
-    // along rays the sums may fall below their rounding, which no contour mends
-    const excused = reader.rays === null ? 0 : rounding;
+    // a wide arc may cost digits that a narrower one keeps; beside a pole, or along rays, no contour mends the rounding
+    const excused = reader.rays === null && width === WIDTHS[0] ? 0 : rounding;
     worst = Math.max(worst, Math.max(0, gap - excused) / Math.abs(value));
     // at n = 0 the formula gives u(s0) − u(0), and u(0) = 1, or 0 where nobody dies childless
     if (n === 0) worst = Math.max(worst, Math.abs(value - (atTop - centre)) / Math.abs(value) - excused);
