@@ -2,6 +2,7 @@
 import { act } from "react";
 import { createRoot, type Root } from "react-dom/client";
 import { afterEach, beforeAll, beforeEach, expect, test, vi } from "vitest";
+import type { BorderFace, Borders } from "../../app/editor/model/borders.ts";
 import type { ParameterFace } from "../../app/editor/model/types.ts";
 import { ParameterRule } from "../../app/editor/parts/parameter-rule.tsx";
 import { likeABrowser } from "./dom.ts";
@@ -32,12 +33,16 @@ beforeAll(() => {
 let root: Root;
 let place: HTMLElement;
 const onTry = vi.fn<(name: string, source: string | null) => void>();
+const onSay = vi.fn<(words: string) => void>();
+let borders: Borders = {};
 const onSet = vi.fn<(name: string, source: string) => void>();
 
 beforeEach(() => {
   vi.useFakeTimers();
   onTry.mockReset();
   onSet.mockReset();
+  onSay.mockReset();
+  borders = {};
   place = document.body.appendChild(document.createElement("div"));
   root = createRoot(place);
 });
@@ -48,7 +53,9 @@ afterEach(() => {
 });
 
 function draw(...parameters: ParameterFace[]): void {
-  act(() => root.render(<ParameterRule parameters={parameters} onTry={onTry} onSet={onSet} />));
+  act(() =>
+    root.render(<ParameterRule parameters={parameters} borders={borders} onTry={onTry} onSet={onSet} onSay={onSay} />),
+  );
 }
 
 function handle(): HTMLElement {
@@ -175,4 +182,83 @@ test("a drag tries on the way and sets when it is let go", () => {
   expect(onSet).not.toHaveBeenCalled();
   point("pointerup", 55);
   expect(onSet.mock.calls).toEqual([["mu", "2"]]);
+});
+
+/** The critical drift of binary branching at rate 1: √2. */
+const CRITICAL: BorderFace = {
+  at: Math.SQRT2,
+  open: "below",
+  shown: "1.414",
+  why: "the drift is critical in larvae",
+  below: { holds: "K is infinite with positive probability", without: [] },
+  above: { holds: "K is finite", without: [] },
+};
+const WIDE: ParameterFace = { ...MU, min: 1 };
+
+/** What stands beneath the rule; mathematics has its source within, which is left out. */
+function word(): string | null {
+  const found = place.querySelector(".hl-rule-word")?.cloneNode(true);
+  if (!(found instanceof Element)) return null;
+  for (const hidden of found.querySelectorAll(".katex-mathml")) hidden.remove();
+  return found.textContent;
+}
+
+test("a border is marked on the scale, and described with the value", () => {
+  borders = { mu: [CRITICAL] };
+  draw(WIDE);
+  const mark = place.querySelector(".hl-par-border");
+  expect(mark?.getAttribute("x1")).toBe(`${(((Math.SQRT2 - 1) / 3) * 100).toFixed(3)}%`);
+  const description = handle().getAttribute("aria-describedby") ?? "";
+  expect(document.getElementById(description)?.textContent).toBe(
+    "Below mu = 1.414, where the drift is critical in larvae, K is infinite with positive probability.",
+  );
+  expect(word()).toBeNull();
+});
+
+test("while a value is attended to, a line tells what its borders are", () => {
+  borders = { mu: [CRITICAL] };
+  draw(WIDE);
+  act(() => handle().focus());
+  expect(word()).toBe(
+    "Below μ = 1.414, where the drift is critical in larvae, K is infinite with positive probability.",
+  );
+  act(() => handle().blur());
+  expect(word()).toBeNull();
+  const box = place.querySelector(".hl-par");
+  act(() => box?.dispatchEvent(new Event("pointerenter")));
+  expect(word()).toContain("1.414");
+  act(() => box?.dispatchEvent(new Event("pointerleave")));
+  expect(word()).toBeNull();
+});
+
+test("a step across a border says so at once, and aloud once; a step back ends it", () => {
+  borders = { mu: [CRITICAL] };
+  draw({ ...WIDE, source: "1.5", value: 1.5 });
+  press("ArrowLeft");
+  expect([word(), onSay.mock.calls.length]).toEqual([null, 0]);
+  press("ArrowLeft");
+  const words = "Below mu = 1.414, where the drift is critical in larvae, K is infinite with positive probability.";
+  expect(handle().textContent).toBe("1.40");
+  expect(word()).toBe(words.replace("mu", "μ"));
+  expect(onSay.mock.calls).toEqual([[words]]);
+  press("ArrowLeft");
+  expect(onSay).toHaveBeenCalledTimes(1);
+  press("Escape");
+  expect(word()).toBeNull();
+});
+
+test("where cells lose their answer the line is marked and names them", () => {
+  borders = { mu: [{ ...CRITICAL, below: { ...CRITICAL.below, without: ["Figure 1", "Table 2"] } }] };
+  draw({ ...WIDE, source: "1.45", value: 1.45 });
+  press("ArrowLeft");
+  expect(place.querySelector(".hl-rule-word.hl-amiss")).not.toBeNull();
+  expect(word()).toBe(
+    "‡ Below μ = 1.414, where the drift is critical in larvae, K is infinite with positive probability. Figure 1 and Table 2 have no answer there.",
+  );
+});
+
+test("a parameter without borders says nothing", () => {
+  draw(WIDE);
+  act(() => handle().focus());
+  expect([word(), handle().getAttribute("aria-describedby")]).toEqual([null, null]);
 });

@@ -1,5 +1,6 @@
 import { EditorView } from "@codemirror/view";
 import type { Kept } from "../kept.ts";
+import type { Borders } from "../model/borders.ts";
 import { yamlScalar } from "../model/scale.ts";
 import type { CellFace, SheetModel, ShownView } from "../model/types.ts";
 import { createSheetEditor, createSourceEditor } from "../text/editor.ts";
@@ -26,6 +27,8 @@ export interface DeskView {
   /** A refusal, or word of a joining; null when there is nothing to say. */
   readonly notice: { readonly words: string; readonly amiss: boolean } | null;
   readonly heard: string;
+  /** Where along the parameters cells answer otherwise, as far as it is known. */
+  readonly borders: Borders;
   /** The text stands on the sheet. */
   readonly ready: boolean;
 }
@@ -47,6 +50,7 @@ export class Desk {
     people: [],
     notice: null,
     heard: "",
+    borders: {},
     ready: false,
   });
   private readonly options: DeskOptions;
@@ -156,6 +160,9 @@ export class Desk {
     this.reading?.tellPreview(this.settled, this.trial);
   }
 
+  /** Says something to those who listen to the page. */
+  readonly say = (words: string): void => this.announcer.say(words);
+
   /** A reader goes back to the paper's own values. */
   putBackAll(): void {
     this.settled = {};
@@ -204,6 +211,7 @@ export class Desk {
       worker,
       () => this.session.bibliography.toString(),
       (model) => this.onModel(model),
+      (borders) => this.store.set({ borders }),
     );
     this.reading.tellShown(this.shown);
     this.store.set({ ready: true });

@@ -1,17 +1,22 @@
-import { type CSSProperties, type KeyboardEvent, type PointerEvent, useRef, useState } from "react";
+import { type CSSProperties, type KeyboardEvent, type PointerEvent, useId, useRef, useState } from "react";
+import type { BorderFace } from "../model/borders.ts";
 import { freeStep, type Scale, scaleOf, shownValue, sourceOf, stepped, valueAt } from "../model/scale.ts";
 import type { ParameterFace } from "../model/types.ts";
 import { strandColour } from "../text/contents.ts";
 import { ParameterField } from "./parameter-field.tsx";
 import { ParameterScale } from "./parameter-scale.tsx";
 import { useTrial } from "./parameter-trial.ts";
+import { type RuleWord, useAttended, useRuleWord } from "./rule-word.ts";
 import { Runs } from "./runs.tsx";
 
 interface Props {
   readonly parameter: ParameterFace;
+  readonly borders: readonly BorderFace[];
   readonly place: number;
   onTry(name: string, source: string | null): void;
   onSet(name: string, source: string): void;
+  readonly onSay: (words: string) => void;
+  readonly onWord: (name: string, word: RuleWord | null) => void;
 }
 
 /** A pointer that moved less than this, in px, has clicked. */
@@ -26,13 +31,17 @@ const DIRECTIONS: Readonly<Record<string, 1 | -1>> = { ArrowRight: 1, ArrowUp: 1
  *        │                            └──Esc──▶ at rest, as before
  *        └──digit, Enter or click──▶ typed ──Enter──▶ set;  ──Esc──▶ at rest, as before
  */
-export function ParameterIndex({ parameter, place, onTry, onSet }: Props) {
+export function ParameterIndex({ parameter, borders, place, onTry, onSet, onSay, onWord }: Props) {
   const trial = useTrial(parameter, onTry, onSet);
   const [typed, setTyped] = useState<string | null>(null);
+  const { attended, attend } = useAttended();
+  const description = useId();
   const drag = useRef<{ at: number; from: number; moved: boolean; last: number } | null>(null);
   const scale = scaleOf(parameter);
   const value = trial.tried ?? parameter.value;
   const movable = parameter.plain && value !== null;
+  const { tried } = trial;
+  const words = useRuleWord(parameter, borders, { tried, attended, onWord, onSay });
 
   const abandon = () => {
     drag.current = null;
@@ -84,7 +93,7 @@ export function ParameterIndex({ parameter, place, onTry, onSet }: Props) {
   const was = trial.tried === null ? parameter.was : parameter.value;
   const wasShown = trial.tried === null ? parameter.wasShown : parameter.shown;
   return (
-    <div className="hl-par" style={{ "--strand": strandColour(place) } as CSSProperties}>
+    <div ref={attend} className="hl-par" style={{ "--strand": strandColour(place) } as CSSProperties}>
       <div className="hl-par-value">
         <Runs runs={[{ run: "math", tex: parameter.symbol }]} macros={NO_MACROS} /> ={" "}
         {typed === null ? (
@@ -96,6 +105,7 @@ export function ParameterIndex({ parameter, place, onTry, onSet }: Props) {
             aria-valuenow={value ?? 0}
             aria-valuemin={parameter.min ?? undefined}
             aria-valuemax={parameter.max ?? undefined}
+            aria-describedby={words === "" ? undefined : description}
             aria-valuetext={parameter.unit === "" ? shown : `${shown} ${parameter.unit}`}
             data-parameter={parameter.name}
             onKeyDown={onKeyDown}
@@ -128,6 +138,7 @@ export function ParameterIndex({ parameter, place, onTry, onSet }: Props) {
           scale={scale}
           value={value}
           was={was}
+          borders={borders.map(({ at }) => at)}
           onPointerDown={(event) => {
             const box = event.currentTarget.getBoundingClientRect();
             if (!movable || event.button !== 0 || box.width <= 0) return;
@@ -138,6 +149,11 @@ export function ParameterIndex({ parameter, place, onTry, onSet }: Props) {
           onPointerUp={end}
           onPointerCancel={abandon}
         />
+      )}
+      {words === "" ? null : (
+        <span id={description} className="hl-said">
+          {words}
+        </span>
       )}
     </div>
   );

@@ -1,30 +1,65 @@
 import { useCallback, useEffect, useState } from "react";
+import type { BorderFace, Borders } from "../model/borders.ts";
 import type { ParameterFace } from "../model/types.ts";
 import { ParameterIndex } from "./parameter-index.tsx";
+import type { RuleWord } from "./rule-word.ts";
+import { Runs } from "./runs.tsx";
 
 interface Props {
   readonly parameters: readonly ParameterFace[];
+  /** Where along each parameter cells answer otherwise. */
+  readonly borders: Borders;
   /** Shows privately what follows of a value; null ends it. Nothing is kept. */
   onTry(name: string, source: string | null): void;
   /** Lets a value stand: one edit of the text, or of the private trial of one who only reads. */
   onSet(name: string, source: string): void;
+  /** To be said to those who listen to the page; the same function at each drawing. */
+  readonly onSay: (words: string) => void;
 }
+
+const NO_BORDERS: readonly BorderFace[] = [];
+const NO_MACROS = {};
 
 /**
  * The parameters of the paper at its head, each with its scale. It stays at the top while the sheet scrolls, and
- * scrolls sideways where it is too wide. Says so when there are none.
+ * scrolls sideways where it is too wide. A line beneath it tells what the borders on a scale mean, while the scale is
+ * pointed at, has the keys, or is moved across one. Says so when there are none.
  */
-export function ParameterRule({ parameters, onTry, onSet }: Props) {
+export function ParameterRule({ parameters, borders, onTry, onSet, onSay }: Props) {
   const scrolled = useSidewaysRegion(parameters.length);
+  const [said, setSaid] = useState<{ readonly name: string; readonly word: RuleWord } | null>(null);
+  const tell = useCallback((name: string, word: RuleWord | null) => {
+    // One parameter's silence does not end what is said of another.
+    setSaid((before) => (word !== null ? { name, word } : before?.name === name ? null : before));
+  }, []);
+  const word = said?.word ?? null;
   if (parameters.length === 0) return null;
   return (
-    <section className="hl-rule" aria-label="Parameters" ref={scrolled}>
-      <div className="hl-rule-row">
-        {parameters.map((parameter, place) => (
-          <ParameterIndex key={parameter.name} parameter={parameter} place={place} onTry={onTry} onSet={onSet} />
-        ))}
-      </div>
-    </section>
+    <div className="hl-rule-place">
+      <section className="hl-rule" aria-label="Parameters" ref={scrolled}>
+        <div className="hl-rule-row">
+          {parameters.map((parameter, place) => (
+            <ParameterIndex
+              key={parameter.name}
+              parameter={parameter}
+              borders={borders[parameter.name] ?? NO_BORDERS}
+              place={place}
+              onTry={onTry}
+              onSet={onSet}
+              onSay={onSay}
+              onWord={tell}
+            />
+          ))}
+        </div>
+      </section>
+      {/* The same is in the description of each value, and is said when a border is crossed. */}
+      {word === null ? null : (
+        <p className={word.amiss ? "hl-rule-word hl-amiss" : "hl-rule-word"} aria-hidden="true">
+          {word.amiss ? "‡ " : ""}
+          <Runs runs={word.runs} macros={NO_MACROS} />
+        </p>
+      )}
+    </div>
   );
 }
 
