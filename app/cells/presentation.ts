@@ -1,4 +1,4 @@
-import type { Series } from "../figures/index.ts";
+import type { Figure, Series } from "../figures/index.ts";
 import type { Formula, Scope } from "../formulas/index.ts";
 import { toDouble } from "../formulas/index.ts";
 import type { Cell, Yaml } from "../paper/index.ts";
@@ -8,7 +8,6 @@ import { evaluated } from "./context.ts";
 import type { KeyDocumentation, KindDocumentation } from "./kind.ts";
 import { didYouMean, listOfNames } from "./names.ts";
 import { defaultSymbol } from "./parameters/symbol.ts";
-import type { CellView } from "./types.ts";
 
 type YamlMap = Extract<Yaml, { yaml: "map" }>;
 type AxisName = "x" | "y";
@@ -37,12 +36,13 @@ export interface Presentation {
 }
 
 /** A cell as another one draws it. */
-export interface DrawnView extends CellView {
+export interface DrawnView {
+  readonly figure: Figure | null;
   /** What it draws among other curves. */
   readonly series: readonly Series[];
 }
 
-export const NOTHING_DRAWN: DrawnView = { figure: null, table: null, points: null, series: [] };
+export const NOTHING_DRAWN: DrawnView = { figure: null, series: [] };
 
 /** Keys that every kind has, or every kind with a figure. None of them changes a result. */
 export const PRESENTATION_KEYS: readonly (KeyDocumentation & { readonly figuresOnly: boolean })[] = [
@@ -117,7 +117,7 @@ export function checkPresentation(body: Body): void {
 
 /** The presentation of a cell as its body has it now; what is not right there is left as the kind has it. */
 export function presentationOf(
-  cell: Cell,
+  cell: Pick<Cell, "name" | "body">,
   parameters: Scope,
   symbols: ReadonlyMap<string, string> = new Map(),
   viewOf: Presentation["viewOf"] = () => NOTHING_DRAWN,

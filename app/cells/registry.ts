@@ -1,12 +1,15 @@
 import { CHECK } from "./check/model.ts";
 import { COUNTS } from "./counts/model.ts";
+import { FIGURE } from "./figure/model.ts";
 import { FORMULA } from "./formula/model.ts";
 import { GENERATING_FUNCTION } from "./generating_function/model.ts";
 import type { Kind } from "./kind.ts";
 import { defineKind } from "./kind.ts";
 import { PARAMETERS } from "./parameters/model.ts";
+import { PORTRAIT } from "./portrait/model.ts";
 import { PROCESS } from "./process/model.ts";
 import { PROFILE } from "./profile/model.ts";
+import { SIMULATE } from "./simulate/model.ts";
 import { SOLVE } from "./solve/model.ts";
 import { SWEEP } from "./sweep/model.ts";
 import { TABLE } from "./table/model.ts";
@@ -23,7 +26,10 @@ export const KINDS: ReadonlyMap<string, Kind> = new Map(
     defineKind(COUNTS),
     defineKind(TAIL),
     defineKind(YAGLOM),
+    defineKind(SIMULATE),
+    defineKind(PORTRAIT),
     defineKind(SWEEP),
+    defineKind(FIGURE),
     defineKind(TABLE),
     defineKind(FORMULA),
     defineKind(SOLVE),

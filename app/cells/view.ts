@@ -51,6 +51,6 @@ function drawnView(id: string, kindName: string, data: unknown, plan: Plan): Dra
   if (kind === undefined) return NOTHING_DRAWN;
   const planned = plan.byId.get(id);
   const looks = looksOf(planned?.kind === kindName ? planned.cell : { name: id, body: null }, plan);
-  const view = kind.view(data, looks);
-  return { ...view, series: kind.drawn?.(data, looks) ?? view.figure?.series ?? [] };
+  const { figure } = kind.view(data, looks);
+  return { figure, series: kind.drawn?.(data, looks) ?? figure?.series ?? [] };
 }

@@ -1,4 +1,5 @@
 /** Figures: one description, from which the page's SVG, the print's pgfplots and the CSV are made. */
+export { type Crossing, crossings, levelCrossings } from "./crossings.ts";
 export { figureToCsv, tableToCsv } from "./csv.ts";
 export { isWords, type LabelRun, labelRuns, labelText } from "./label.ts";
 export { type FigureLayout, layoutFigure, panelLetter } from "./layout.ts";

@@ -62,7 +62,10 @@ export function layoutPlot(figure: Figure, size: PlateSize): PlotLayout {
 
   const colours = seriesColours(figure);
   const placing = { toX, toY, inner, unit, labelsAreTicks };
-  const series = figure.series.map((one, i) => placeSeries(one, colours[i] ?? "ink", figure, placing));
+  const shares = markShares(figure);
+  const series = figure.series.map((one, i) =>
+    placeSeries(one, colours[i] ?? "ink", figure, { ...placing, share: shares[i] ?? 1 }),
+  );
   const xTicks = ticksOf(figure.x, x, Math.max(2, Math.round((right - left) / (X_TICK_ROOM * fontSize))));
   const xLabel = placeXLabel(labelRuns(figure.x.label), figure.x.label, xTicks, frame, toX, size.width, fontSize);
   const labels = placeLabels(wanted, { frame, inner, toX, toY, unit, fontSize, tickWidth });
@@ -134,6 +137,18 @@ export function layoutPlot(figure: Figure, size: PlateSize): PlotLayout {
 function naturalHeight(width: number, fontSize: number, labels: number, hasScale: boolean): number {
   const natural = Math.min(Math.max(width * (hasScale ? 0.5 : 0.46), 15 * fontSize), 30 * fontSize);
   return Math.round(Math.max(natural, labels * fontSize * 1.3 + 6 * fontSize));
+}
+
+const SMALLER = 0.5;
+
+/** Of the size of marks, the share that each series takes: one that would hide another is smaller. */
+function markShares(figure: Figure): readonly number[] {
+  let smaller = 0;
+  return figure.series.map((series) => {
+    if (series.mark !== "points" || series.role === "principal") return 1;
+    smaller += 1;
+    return Math.max(0.3, SMALLER ** (smaller - 1));
+  });
 }
 
 const hasStems = (figure: Figure) => figure.series.some((series) => series.mark === "stems");

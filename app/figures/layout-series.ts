@@ -53,6 +53,8 @@ const CLOSEST_STEMS = 3;
 
 /** What a series needs to know of the plate it is put on. */
 export interface Placing {
+  /** Of several series of points, each is drawn smaller than the one before, so that none hides another. */
+  readonly share: number;
   readonly toX: (at: number) => number;
   readonly toY: (at: number) => number;
   readonly inner: Frame;
@@ -110,7 +112,7 @@ function placeMarks(
   figure: Figure,
   placing: Placing,
 ): { readonly marks: readonly Mark[]; readonly spacing: number; readonly radius: number } {
-  const { toX, toY, inner, unit } = placing;
+  const { toX, toY, inner, unit, share } = placing;
   const found = series.x.flatMap((value, i) => {
     const at = plotted(figure.x, value);
     const x = at === null ? null : toX(at);
@@ -124,7 +126,7 @@ function placeMarks(
   const [first, last] = extent(found, (mark) => mark.x);
   const spacing =
     found.length > 1 && first !== undefined ? (last - first) / (found.length - 1) : Number.POSITIVE_INFINITY;
-  const radius = Math.max(1, Math.min(3.3, spacing * 0.4)) * unit;
+  const radius = Math.max(1, Math.min(3.3, spacing * 0.4) * share) * unit;
   // A bar that its mark hides is not drawn.
   const shown = (bar: Mark["bar"]) => bar !== null && Math.abs(bar[0] - bar[1]) > 2 * radius;
   return { marks: found.map((mark) => ({ ...mark, bar: shown(mark.bar) ? mark.bar : null })), spacing, radius };

@@ -106,16 +106,19 @@ function layoutPanels(panels: readonly Panel[], size: PlateSize): FigureLayout {
   let top = 0;
   for (let row = 0; row < rows; row += 1) {
     const inRow = panels.slice(row * columns, (row + 1) * columns);
-    const natural = inRow.map((panel) => layoutFigure(panel.figure, { width, fontSize }).height);
-    const height = given ?? Math.max(...natural);
+    const natural = inRow.map((panel) => layoutFigure(panel.figure, { width, fontSize }));
+    // Panels of one plot are of one height, so that their axes lie on one line; one with its inset beneath keeps its own.
+    const common = Math.max(0, ...natural.map(({ plots: own, height }) => (own.length === 1 ? height : 0)));
+    const heights = natural.map(({ plots: own, height }) => given ?? (own.length === 1 ? common : height));
     inRow.forEach((panel, column) => {
       const left = column * (width + gap);
+      const height = heights[column];
       const placed = layoutFigure(panel.figure, { width, height, fontSize });
       const head = panelHead(panel, row * columns + column, left, top + fontSize);
       const [first, ...others] = moved(placed.plots, left, top + headHeight);
       if (first) plots.push({ ...first, head }, ...others);
     });
-    top += headHeight + height + gap;
+    top += headHeight + Math.max(...heights) + gap;
   }
   return { width: size.width, height: Math.max(0, top - gap), fontSize, plots };
 }

@@ -20,7 +20,14 @@ export function viewProfile(data: ProfileData, presentation: Presentation): Cell
     levels: drawsLimit ? [] : [{ label: shortNumber(limit), y: limit }],
     remarks: data.left,
   };
-  return { figure, table: null, points: pointsTable("x", figure) };
+  return {
+    figure,
+    table: null,
+    // Made when asked for: a profile within another figure is drawn without it.
+    get points() {
+      return pointsTable("x", figure);
+    },
+  };
 }
 
 function seriesOf(curve: ProfileCurve, index: number, x: readonly number[], limit: number): Series {

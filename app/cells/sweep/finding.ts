@@ -5,6 +5,8 @@ export interface Told {
   readonly x: number;
   readonly y: number;
   readonly error: number;
+  /** How the height is said, where it is not the number `y` itself: a value beyond the double's range. */
+  readonly words?: string;
 }
 
 /** Movements smaller than this share of a piece's height are not told. */
@@ -23,7 +25,7 @@ export function movementWords(points: readonly Told[]): string {
   const corners = cornersOf(points);
   const [begin, ...others] = corners;
   if (begin === undefined || others.length === 0)
-    return `stays at ${shortNumber(first.y)} from ${shortNumber(first.x)} to ${shortNumber(last.x)}`;
+    return `stays at ${first.words ?? shortNumber(first.y)} from ${shortNumber(first.x)} to ${shortNumber(last.x)}`;
   if (others.length - 1 > MOST_TURNS) {
     const sorted = [...points].sort((a, b) => a.y - b.y);
     const [least = first, most = last] = [sorted[0], sorted.at(-1)];
@@ -37,8 +39,8 @@ export function movementWords(points: readonly Told[]): string {
   return steps.length === 1 ? `${steps[0]}` : `${steps.slice(0, -1).join(", ")} and ${steps.at(-1)}`;
 }
 
-function at({ x, y }: Told): string {
-  return `${shortNumber(y)} at ${shortNumber(x)}`;
+function at({ x, y, words }: Told): string {
+  return `${words ?? shortNumber(y)} at ${shortNumber(x)}`;
 }
 
 /** First and last point and the turning points between; fewer than two where nothing moves. */

@@ -14,7 +14,7 @@ import { comparedCounts } from "../process/thinning.ts";
 import { estimateValue, exactValue, refusedValue } from "../values.ts";
 import { TAIL_DOCUMENTATION } from "./documentation.ts";
 import { ratioOf, tailValue } from "./law.ts";
-import { viewTail } from "./view.ts";
+import { drawnTail, viewTail } from "./view.ts";
 
 export interface TailCell {
   readonly of: CellReference;
@@ -82,6 +82,7 @@ export const TAIL: KindOf<TailCell, TailData> = {
   },
 
   view: viewTail,
+  drawn: drawnTail,
 };
 
 function tailValues({ law, upTo, compared, missing }: TailData): Record<string, Value> {

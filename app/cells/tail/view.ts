@@ -1,6 +1,7 @@
-import type { Figure, TableData } from "../../figures/index.ts";
+import type { Figure, Series, TableData } from "../../figures/index.ts";
 import type { Value } from "../../formulas/index.ts";
 import { toDouble } from "../../formulas/index.ts";
+import { doubleProbability, log10Probability } from "../counts/law.ts";
 import { labelledAxis } from "../figure-parts.ts";
 import type { Presentation } from "../presentation.ts";
 import { startWords } from "../process/start.ts";
@@ -45,6 +46,22 @@ export function viewTail(data: TailData, presentation: Presentation): CellView {
     ),
     points: tailTable(data, data.compared),
   };
+}
+
+/** Among other curves: the asymptotic law itself, over the n at which it was compared. */
+export function drawnTail({ compared }: TailData, presentation: Presentation): readonly Series[] {
+  return [
+    {
+      name: `${presentation.name ?? "T"}(n)`,
+      label: "",
+      labelAt: "end",
+      mark: "line",
+      role: "ordinary",
+      x: compared.map(({ n }) => n),
+      y: compared.map(({ law }) => doubleProbability(law)),
+      log10y: compared.map(({ law }) => log10Probability(law)),
+    },
+  ];
 }
 
 function tailTable(data: TailData, rows: readonly Comparison[]): TableData {
