@@ -2,6 +2,9 @@ import { readVarUint, readVarUint8Array } from "lib0/decoding";
 import type { WebsocketProvider } from "y-websocket";
 import { MESSAGE_KEPT } from "./protocol.ts";
 
+/** So long after the last edit it is told that all is kept, in ms: not once for each letter, and never before it is so. */
+const CALM_MS = 250;
+
 /** How far the server has committed what this page wrote. */
 export interface Kept {
   /** True when everything written here is committed. False before the first answer and while there is no connection. */
@@ -20,7 +23,21 @@ export function watchKept(provider: WebsocketProvider, onChange: (kept: Kept) =>
   let kept = 0;
   let joined = false;
   let at: Date | null = null;
-  const tell = () => onChange({ all: joined && kept === sent, at });
+  let editedAt = Number.NEGATIVE_INFINITY;
+  let timer: ReturnType<typeof setTimeout> | undefined;
+  let told: Kept | null = null;
+  const tell = () => {
+    clearTimeout(timer);
+    const all = joined && kept === sent;
+    const calm = editedAt + CALM_MS - Date.now();
+    if (all && calm > 0) {
+      timer = setTimeout(tell, calm);
+      return;
+    }
+    if (told?.all === all && told.at === at) return;
+    told = { all, at };
+    onChange(told);
+  };
 
   const onStatus = ({ status }: { status: string }) => {
     if (status !== "connecting") {
@@ -33,6 +50,7 @@ export function watchKept(provider: WebsocketProvider, onChange: (kept: Kept) =>
   // The provider sends one frame for each update that did not come through it, while it is connected.
   const onUpdate = (_update: Uint8Array, origin: unknown) => {
     if (origin === provider) return;
+    editedAt = Date.now();
     if (provider.wsconnected) sent += 1;
     tell();
   };
@@ -47,6 +65,7 @@ export function watchKept(provider: WebsocketProvider, onChange: (kept: Kept) =>
   provider.on("status", onStatus);
   provider.doc.on("update", onUpdate);
   return () => {
+    clearTimeout(timer);
     provider.off("status", onStatus);
     provider.doc.off("update", onUpdate);
   };

@@ -180,11 +180,16 @@ function joinShown(options: SessionOptions): Tie {
 }
 
 function watchPeople(awareness: Awareness, onPeople: (names: readonly string[]) => void): Tie {
+  let told = "";
   const tell = () => {
     const names = [...awareness.getStates()].flatMap(([client, state]) =>
       client !== awareness.clientID && typeof state.user?.name === "string" ? [state.user.name as string] : [],
     );
-    onPeople([...new Set(names)].sort());
+    const people = [...new Set(names)].sort();
+    // Carets move with every letter; who is here seldom changes.
+    const sign = JSON.stringify(people);
+    if (sign !== told) onPeople(people);
+    told = sign;
   };
   awareness.on("change", tell);
   return { again: () => {}, stop: () => awareness.off("change", tell) };

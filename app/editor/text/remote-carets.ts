@@ -1,4 +1,4 @@
-import { Annotation, type Extension, RangeSet } from "@codemirror/state";
+import { Annotation, type Extension, RangeSet, type Text } from "@codemirror/state";
 import {
   Decoration,
   type DecorationSet,
@@ -13,6 +13,9 @@ import { element } from "./element.ts";
 
 const moved = Annotation.define<true>();
 
+/** At most one word of one's own caret in this time, in ms: it goes with every letter, and nobody reads that fast. */
+const BETWEEN_MS = 80;
+
 /** Where the others write: a proof caret below the line, and the name in the margin beside it. */
 export function remoteCarets(text: Y.Text, awareness: Awareness): Extension {
   return ViewPlugin.define((view) => new RemoteCarets(view, text, awareness), {
@@ -24,6 +27,8 @@ class RemoteCarets {
   decorations: DecorationSet = Decoration.none;
   private readonly text: Y.Text;
   private readonly awareness: Awareness;
+  private telling: ReturnType<typeof setTimeout> | undefined;
+  private toldAt = Number.NEGATIVE_INFINITY;
   private readonly heard: (change: { added: number[]; updated: number[]; removed: number[] }) => void;
 
   constructor(view: EditorView, text: Y.Text, awareness: Awareness) {
@@ -37,23 +42,34 @@ class RemoteCarets {
   }
 
   update(update: ViewUpdate): void {
-    this.tellOwn(update);
+    if (update.docChanged || update.selectionSet || update.focusChanged) this.tellOwnSoon(update.view);
     const redraw = update.docChanged || update.transactions.some((each) => each.annotation(moved) === true);
-    if (redraw) this.decorations = this.draw(update.state.doc.length);
+    if (redraw) this.decorations = this.draw(update.state.doc);
   }
 
   destroy(): void {
     this.awareness.off("change", this.heard);
+    clearTimeout(this.telling);
   }
 
-  private tellOwn({ view, state, docChanged, selectionSet, focusChanged }: ViewUpdate): void {
+  private tellOwnSoon(view: EditorView): void {
+    if (this.telling !== undefined) return;
+    const wait = Math.max(0, this.toldAt + BETWEEN_MS - Date.now());
+    this.telling = setTimeout(() => {
+      this.telling = undefined;
+      this.toldAt = Date.now();
+      this.tellOwn(view);
+    }, wait);
+  }
+
+  private tellOwn(view: EditorView): void {
     const own = this.awareness.getLocalState();
-    if (own === null || !(docChanged || selectionSet || focusChanged)) return;
+    if (own === null) return;
     if (!view.hasFocus) {
       if (own.cursor !== undefined && own.cursor !== null) this.awareness.setLocalStateField("cursor", null);
       return;
     }
-    const { anchor, head } = state.selection.main;
+    const { anchor, head } = view.state.selection.main;
     const cursor = { anchor: this.relative(anchor), head: this.relative(head) };
     if (JSON.stringify(cursor) !== JSON.stringify(own.cursor)) this.awareness.setLocalStateField("cursor", cursor);
   }
@@ -62,7 +78,8 @@ class RemoteCarets {
     return Y.relativePositionToJSON(Y.createRelativePositionFromTypeIndex(this.text, index));
   }
 
-  private draw(length: number): DecorationSet {
+  private draw(doc: Text): DecorationSet {
+    const { length } = doc;
     const marks: ReturnType<Decoration["range"]>[] = [];
     for (const [client, state] of this.awareness.getStates()) {
       if (client === this.awareness.clientID) continue;
@@ -71,6 +88,7 @@ class RemoteCarets {
       if (head === null || anchor === null || head > length || anchor > length) continue;
       const name = typeof state.user?.name === "string" ? state.user.name : "";
       marks.push(Decoration.widget({ widget: new Caret(name), side: head > anchor ? -1 : 1 }).range(head));
+      marks.push(WITH_CARET.range(doc.lineAt(head).from));
       if (head !== anchor) {
         const mark = Decoration.mark({ class: "hl-remote-selection" });
         marks.push(mark.range(Math.min(head, anchor), Math.max(head, anchor)));
@@ -86,6 +104,9 @@ class RemoteCarets {
     return place !== null && place.type === this.text ? place.index : null;
   }
 }
+
+/** The name stands in the margin beside its line. */
+const WITH_CARET = Decoration.line({ class: "hl-with-caret" });
 
 class Caret extends WidgetType {
   private readonly name: string;
