@@ -35,4 +35,5 @@ export type {
   ShownCell,
   ShownPaper,
 } from "./types.ts";
+export { costWords } from "./varying.ts";
 export { findingOf, viewCell } from "./view.ts";

@@ -113,6 +113,12 @@ export function costOf(points: number, context: ComputeContext, { noun }: Varyin
   return recomputations(points, context) === 0 ? null : { noun, points, cells: context.recomputedCells };
 }
 
+/** "It takes 120 computations: 3 cells at each of 40 points." */
+export function costWords({ noun, points, cells }: Cost): string {
+  const each = points === 1 ? `1 ${noun}` : `each of ${points} ${noun}s`;
+  return `It takes ${points * cells} ${points * cells === 1 ? "computation" : "computations"}: ${cells} ${cells === 1 ? "cell" : "cells"} at ${each}.`;
+}
+
 /** Whether so many points take a moment only. */
 export function isQuick(points: number, context: ComputeContext): boolean {
   return recomputations(points, context) <= QUICK_RECOMPUTED;

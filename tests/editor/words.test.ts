@@ -1,5 +1,5 @@
 import { describe, expect, test } from "vitest";
-import type { CellState, CellWork, ShownCell } from "../../app/cells/index.ts";
+import { type CellState, type CellWork, costWords, type ShownCell } from "../../app/cells/index.ts";
 import { closingOf } from "../../app/editor/live/connection.ts";
 import type { CellFace, Erratum, Run } from "../../app/editor/model/types.ts";
 import { plainBlocks } from "../../app/editor/parts/sheet-preface.tsx";
@@ -25,13 +25,14 @@ const SHOWN: ShownCell = {
   workingKey: "w",
 };
 
-function words(state: Partial<CellState>, shown: ShownCell | undefined = SHOWN, work?: CellWork): string {
+function words(state: Partial<CellState>, shown: ShownCell | undefined = SHOWN, work?: CellWork, cost = ""): string {
   const whole: CellState = { state: "current", causes: [], failure: null, waitsFor: [], hasResult: true, ...state };
   return said(
     stateWords({
       state: whole,
       shown,
       work,
+      cost,
       titleOf: (id) => (id === "K" ? "Figure 1" : id),
       printed: (_name, value) => Number(value).toFixed(2),
       firstLine: 40,
@@ -39,6 +40,17 @@ function words(state: Partial<CellState>, shown: ShownCell | undefined = SHOWN, 
     }),
   );
 }
+
+test("what varying costs is told before it is computed, and only then", () => {
+  const cost = costWords({ noun: "point", points: 40, cells: 3 });
+  expect(cost).toBe("It takes 120 computations: 3 cells at each of 40 points.");
+  expect(words({ state: "empty" }, undefined, undefined, cost)).toBe(`Not computed yet. ${cost}`);
+  expect(words({ state: "outOfDate", causes: [{ cause: "working" }] }, SHOWN, undefined, cost)).toBe(
+    `Its working was changed. ${cost}`,
+  );
+  expect(words({ state: "current" }, SHOWN, undefined, cost)).toBe("");
+  expect(costWords({ noun: "row", points: 1, cells: 1 })).toBe("It takes 1 computation: 1 cell at 1 row.");
+});
 
 /** The sentences are the design's: its table of states and its words in errors. */
 describe("states in words", () => {

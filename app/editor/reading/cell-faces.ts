@@ -2,6 +2,7 @@ import {
   type CellResult,
   type CellState,
   type CellWork,
+  costWords,
   findingOf,
   KINDS,
   type Plan,
@@ -71,6 +72,7 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
     const { planned, shown, work, state, result, previewed } = telling;
     const node = drawing.nodes.get(planned.slot);
     const titleOfId = (id: string) => drawing.titles.get(id) ?? id;
+    const cost = planned.cost === null ? "" : costWords(planned.cost);
     const waited = state.waitsFor[0] === undefined ? undefined : drawing.plan.byId.get(state.waitsFor[0]);
     return {
       id: planned.id,
@@ -86,7 +88,7 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
       state: previewed ? "preview" : state.state,
       words: previewed
         ? []
-        : stateWords({ state, shown, work, titleOf: titleOfId, printed, firstLine: planned.line, now }),
+        : stateWords({ state, shown, work, cost, titleOf: titleOfId, printed, firstLine: planned.line, now }),
       provenance: provenanceRuns(telling, symbols, drawing.tried, printed, now),
       finding: result === undefined ? null : findingOf(planned, result, drawing.plan),
       progress:

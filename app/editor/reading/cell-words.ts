@@ -6,6 +6,8 @@ export interface Telling {
   readonly state: CellState;
   readonly shown: ShownCell | undefined;
   readonly work: CellWork | undefined;
+  /** What computing it costs, where it varies something; "" otherwise. */
+  readonly cost: string;
   /** "Figure 1" for the id of a cell. */
   titleOf(id: string): string;
   /** A parameter's value as the rule shows it: "1.90". */
@@ -22,7 +24,7 @@ export function stateWords(telling: Telling): Run[] {
 
 const WORDS: Readonly<Record<CellState["state"], (telling: Telling) => Run[]>> = {
   current: () => [],
-  outOfDate: (telling) => causeWords(telling.state.causes, telling),
+  outOfDate: (telling) => withCost(causeWords(telling.state.causes, telling), telling),
   stands({ state, shown, printed }) {
     const parameters = state.causes.filter((cause) => cause.cause === "parameter");
     const by = shown?.stands === undefined ? "" : `, by ${shown.stands.by}`;
@@ -52,8 +54,13 @@ const WORDS: Readonly<Record<CellState["state"], (telling: Telling) => Run[]>> =
     const kept = shown === undefined ? "" : ` The result from ${moment(shown.at, now)} is kept.`;
     return [text(`Cancelled${by}.${kept}`)];
   },
-  empty: () => [text("Not computed yet.")],
+  empty: (telling) => withCost([text("Not computed yet.")], telling),
 };
+
+/** What varying will cost is told before it is asked for. */
+function withCost(runs: readonly Run[], { cost }: Telling): Run[] {
+  return cost === "" ? [...runs] : [...runs, text(` ${cost}`)];
+}
 
 /** Lines of a working count from its first. */
 function lineWords({ line, message }: { readonly line: number; readonly message: string }, firstLine: number): string {
