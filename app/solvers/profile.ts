@@ -97,16 +97,45 @@ function readProfile(t: Trajectory, x: number, s: number): Reading | Refusal {
           ? `w(x, s) is given for s up to ${largest}, where its trajectory ends; s = ${s} is beyond.`
           : `The series in s diverges beyond s0 = ${largest}: E[s^K] is infinite at s = ${s}. Take s up to s0.`,
     };
-  return shifted(t, reader, reader.locate(u), x, s);
+  return shifted(t, reader, x, s);
+}
+
+/** The place of a value of s, with u, |du/dξ| and |d²u/dξ²| there. */
+interface Located {
+  readonly place: Place;
+  readonly u: number;
+  readonly slope: number;
+  readonly second: number;
+}
+
+/** Values of s whose places are kept: a figure asks for many x at each. */
+const MOST_KEPT = 32;
+const located = new WeakMap<TrajectoryReader, Map<number, Located>>();
+
+function locate(reader: TrajectoryReader, u: number): Located {
+  const kept = located.get(reader) ?? new Map<number, Located>();
+  located.set(reader, kept);
+  const known = kept.get(u);
+  if (known !== undefined) return known;
+  const place = reader.locate(u);
+  const at = pointValue();
+  reader.evaluateAt(place.side, place.xi, at);
+  const second = Math.abs(secondDerivative(reader, place.xi, at));
+  const found = { place, u: at.re, slope: Math.abs(at.slopeRe), second };
+  if (kept.size >= MOST_KEPT) kept.clear();
+  kept.set(u, found);
+  return found;
 }
 
 /** Reads u at the place of s, moved by decay·x. */
-function shifted(t: Trajectory, reader: TrajectoryReader, place: Place, x: number, s: number): Reading {
+function shifted(t: Trajectory, reader: TrajectoryReader, x: number, s: number): Reading {
+  const found = locate(reader, deviationOf(t.base, s));
+  const { place } = found;
   const way = reader.decay * x;
   const xi = place.xi + way;
   const at = pointValue();
   const rounding = reader.evaluateAt(place.side, xi, at);
-  const { shift, lift, apart } = placeSpread(t, reader, place, way, s);
+  const { shift, lift, apart } = placeSpread(t, reader, found, way, s);
   const known = place.error + ROUNDING * (2 * way + Math.abs(xi)) + way * (inputUnit(x) + t.decaySpread) + shift.own;
   // over a short way the place and what is read there move together
   const error = rounding + Math.abs(at.slopeRe) * (known + apart * shift.ofTop) + apart * lift * at.re * at.re;
@@ -134,24 +163,21 @@ interface PlaceSpread {
 /** What half a unit in each input, s included, does to the place of s and to the trajectory beyond it.
  *  u(ξ) = z + … is fixed to first order in z; at u(s0) = −excess it moves as the excess does, so it moves by lift·u² in between. The
  *  place of a given s then moves by that over du/dξ, and near the turning point, where du/dξ is 0, by the root of it. */
-function placeSpread(t: Trajectory, reader: TrajectoryReader, place: Place, way: number, s: number): PlaceSpread {
+function placeSpread(t: Trajectory, reader: TrajectoryReader, at: Located, way: number, s: number): PlaceSpread {
   const { turning } = reader;
+  const { place, slope, second } = at;
   const near = Math.min(1, way);
-  const at = pointValue();
-  reader.evaluateAt(place.side, place.xi, at);
-  const second = Math.abs(secondDerivative(reader, place.xi, at));
   const above = place.side === "above" && turning !== null;
   const lift = above ? turning.excessSpread / turning.excess[0] : 0;
   const amplitude = near * (above ? turning.amplitudeSpread : t.amplitudeSpread);
   const isTop = above && place.xi === t.above.at(-1)?.xi;
   if (isTop) return { shift: { own: amplitude, ofTop: 0 }, lift, apart: 1 };
-  const slope = Math.abs(at.slopeRe);
   const shiftBy = (move: number) => (move === 0 ? 0 : Math.min(move / slope, Math.sqrt((2 * move) / second)));
   const own = Math.abs(s) / t.base.scale[0];
   return {
     shift: {
       own: amplitude + shiftBy(own * inputUnit(s)),
-      ofTop: shiftBy(lift * at.re * at.re + own * t.base.scaleSpread),
+      ofTop: shiftBy(lift * at.u * at.u + own * t.base.scaleSpread),
     },
     lift,
     apart: Math.min(1, way * (1 + second / slope)),
