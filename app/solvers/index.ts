@@ -5,6 +5,12 @@ export { clopperPearson, INTERVAL_ACCURACY } from "./binomial-interval.ts";
 export { absorbedAbove, absorbedLaw, absorbedProbability } from "./counts.ts";
 export { SolverError } from "./errors.ts";
 export { absorbedMoments, factorialMoment } from "./moments.ts";
+export type { OrbitPoint, PlaneWindow } from "./orbit.ts";
+export { traceOrbit } from "./orbit.ts";
+export type { FixedPoint, Plane } from "./phase-plane.ts";
+export { fixedPoint, processPlane } from "./phase-plane.ts";
+export type { Orbit } from "./portrait.ts";
+export { portraitOrbits, saddleOrbits } from "./portrait.ts";
 export { describeProcess } from "./process.ts";
 export { profileAt, profileComplementAt, profileConstants, profileSlopeAt } from "./profile.ts";
 export type { NoRoot, Root } from "./root.ts";
@@ -31,3 +37,4 @@ export type {
   Trajectory,
 } from "./types.ts";
 export { SOLVER_VERSIONS } from "./versions.ts";
+export { zerosOf } from "./zeros.ts";
