@@ -257,6 +257,18 @@ test("where cells lose their answer the line is marked and names them", () => {
   );
 });
 
+test("what is pointed at has the line before what has the keys, which has it again afterwards", () => {
+  const other: BorderFace = { ...CRITICAL, at: 2, shown: "2", open: "above" };
+  borders = { mu: [CRITICAL], beta: [other] };
+  draw(WIDE, { ...WIDE, name: "beta", symbol: "\\beta", value: 1 });
+  act(() => handle().focus());
+  const second = place.querySelectorAll(".hl-par")[1];
+  act(() => second?.dispatchEvent(new Event("pointerenter")));
+  expect(word()).toContain("Above β = 2");
+  act(() => second?.dispatchEvent(new Event("pointerleave")));
+  expect(word()).toContain("Below μ = 1.414");
+});
+
 test("a parameter without borders says nothing", () => {
   draw(WIDE);
   act(() => handle().focus());

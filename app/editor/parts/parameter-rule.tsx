@@ -27,12 +27,16 @@ const NO_MACROS = {};
  */
 export function ParameterRule({ parameters, borders, onTry, onSet, onSay }: Props) {
   const scrolled = useSidewaysRegion(parameters.length);
-  const [said, setSaid] = useState<{ readonly name: string; readonly word: RuleWord } | null>(null);
+  const [said, setSaid] = useState<readonly { readonly name: string; readonly word: RuleWord }[]>([]);
   const tell = useCallback((name: string, word: RuleWord | null) => {
-    // One parameter's silence does not end what is said of another.
-    setSaid((before) => (word !== null ? { name, word } : before?.name === name ? null : before));
+    setSaid((before) => {
+      if (word === null && !before.some((each) => each.name === name)) return before;
+      const others = before.filter((each) => each.name !== name);
+      return word === null ? others : [...others, { name, word }];
+    });
   }, []);
-  const word = said?.word ?? null;
+  // The newest; when it ends, what was said before of another parameter stands again.
+  const word = said.at(-1)?.word ?? null;
   if (parameters.length === 0) return null;
   return (
     <div className="hl-rule-place">
