@@ -51,7 +51,7 @@ export interface ContourShape {
 const TRUSTED = 0.9;
 const NEWTON_ROUNDS = 30;
 /** At θ = π, s is real and so must ξ + iπ be (at π/d, ξ + iπ/d): the path has come round on the right sheet. */
-const CLOSING_TOLERANCE = 1e-9;
+export const CLOSING_TOLERANCE = 1e-9;
 
 /** Finds ξ at all nodes. @returns null where the continuation fails or does not close: the circle meets a singularity. */
 export function traceContour(reader: TrajectoryReader, reference: Reference, shape: ContourShape): Contour | null {
@@ -118,7 +118,10 @@ function layNodes(shape: ContourShape, end: number): Contour {
 }
 
 /** Gauss–Legendre panels on the leg, each half as long as the next one out: a Gaussian of any width ≥ `finest` is resolved. */
-function legRule(shape: ContourShape): { tau: Float64Array; weight: Float64Array } {
+export function legRule(shape: Pick<ContourShape, "width" | "tilt" | "finest" | "panelNodes">): {
+  tau: Float64Array;
+  weight: Float64Array;
+} {
   const end = Math.sqrt(shape.width / Math.cos(shape.tilt));
   const halvings = Math.max(1, Math.ceil(Math.log2(end / shape.finest)));
   const rule = gaussLegendre(shape.panelNodes);

@@ -1,4 +1,5 @@
-import { prepareLaw, readLaw, zeroOf } from "./prepared.ts";
+import { prepareLaw } from "./prepare.ts";
+import { readLaw, zeroOf } from "./prepared.ts";
 import { profileComplementAt } from "./profile.ts";
 import { ROUNDING } from "./reader.ts";
 import { normalise, scaledByPower } from "./scaled.ts";

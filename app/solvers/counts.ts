@@ -1,7 +1,8 @@
 import { convolvedLaw, sterileLaw } from "./convolution.ts";
 import { SolverError } from "./errors.ts";
 import { infiniteProbability } from "./finite-moments.ts";
-import { type PreparedLaw, prepareLaw, readLaw, zeroOf } from "./prepared.ts";
+import { prepareLaw } from "./prepare.ts";
+import { type PreparedLaw, readLaw, zeroOf } from "./prepared.ts";
 import { ROUNDING, readerOf } from "./reader.ts";
 import { normalise } from "./scaled.ts";
 import { checkStarts } from "./sources.ts";

@@ -1,6 +1,8 @@
 import { SolverError } from "./errors.ts";
 import { finiteFactorialMoment, finiteMoments, infiniteProbability, MOST_FINITE_MOMENTS } from "./finite-moments.ts";
+import { lawUnit } from "./input-rounding.ts";
 import type { Normalised } from "./linear.ts";
+import { prepareOffspring } from "./offspring.ts";
 import { cauchy, PairSeries } from "./pair-series.ts";
 import {
   add,
@@ -20,8 +22,8 @@ import { zeroOf } from "./prepared.ts";
 import { profileAt } from "./profile.ts";
 import { ROUNDING, readerOf } from "./reader.ts";
 import { checkStarts } from "./sources.ts";
-import type { AbsorbedMoments, Answer, Estimate, Pair, Starts, Trajectory } from "./types.ts";
-import { originSeries } from "./walk.ts";
+import type { AbsorbedMoments, Answer, Estimate, Pair, Passage, Refusal, Start, Starts, Trajectory } from "./types.ts";
+import { linearisingSeries, originSeries } from "./walk.ts";
 
 /** Highest factorial moment given. */
 const MOST_MOMENTS = 40;
@@ -35,15 +37,44 @@ export function absorbedMoments(t: Trajectory, starts: Starts): AbsorbedMoments 
     const infinite = infiniteProbability(t, starts);
     return { zero: zeroEstimate(t, starts), ...finiteMoments(t, starts), infinite };
   }
+  if (t.passage !== null && starts !== "far")
+    return { zero: zeroEstimate(t, starts), ...momentsToward(t, starts), infinite: NONE };
   const [, mean, second] = factorialSeries(t, starts, 2) as [Expanded, Expanded, Expanded];
+  return {
+    zero: starts === "far" ? NONE : zeroEstimate(t, starts),
+    mean: toEstimate(mean),
+    variance: varianceOf(mean, second),
+    infinite: NONE,
+  };
+}
+
+const NONE: Estimate = { value: 0, error: 0 };
+
+/** In the regime `toward` the mean is a sum of e^{λ_s x}; the variance is infinite where d ≤ 2. */
+function momentsToward(t: Trajectory, starts: readonly Start[]): Pick<AbsorbedMoments, "mean" | "variance"> {
+  const infinite = refusedMoment(t, 2, "variance");
+  const [, mean, second] = factorialSeries(t, starts, infinite === null ? 2 : 1) as [Expanded, Expanded, Expanded?];
+  const first = toEstimate(mean);
+  if (infinite !== null || second === undefined) return { mean: first, variance: infinite ?? NONE };
+  return { mean: first, variance: varianceOf(mean, second) };
+}
+
+function varianceOf(mean: Expanded, second: Expanded): Estimate {
   const variance = add(scale(second.value, 2), subtract(mean.value, multiply(mean.value, mean.value)));
   const first = toEstimate(mean);
-  const varianceSpread = 2 * second.size * second.spread + (1 + 2 * first.value) * first.error;
+  const spread = 2 * second.size * second.spread + (1 + 2 * first.value) * first.error;
+  return { value: toNumber(variance), error: spread + ROUNDING * Math.abs(variance[0]) };
+}
+
+/** Why a moment of order j is infinite in the regime `toward`; null where it is not. */
+function refusedMoment(t: Trajectory, j: number, what: string): Refusal | null {
+  if (t.passage === null) return null;
+  const { index, indexSpread } = t.passage;
+  const d = toNumber(index);
+  if (j < d * (1 - indexSpread)) return null;
+  const shown = Number(d.toPrecision(6));
   return {
-    zero: starts === "far" ? { value: 0, error: 0 } : zeroEstimate(t, starts),
-    mean: first,
-    variance: { value: toNumber(variance), error: varianceSpread + ROUNDING * Math.abs(variance[0]) },
-    infinite: { value: 0, error: 0 },
+    refused: `The ${what} is infinite: with this drift toward the barrier P(K = n) falls like n^(−1−d) with d = ${shown}, and moments of order d or more do not exist.`,
   };
 }
 
@@ -62,6 +93,8 @@ export function factorialMoment(t: Trajectory, starts: Starts, j: number): Answe
       refused: `Where K may be infinite, factorial moments given that it is finite are found up to order ${MOST_FINITE_MOMENTS}; ${j} is beyond.`,
     };
   }
+  const infinite = refusedMoment(t, j, `factorial moment of order ${j}`);
+  if (infinite !== null) return infinite;
   const coefficient = toEstimate(factorialSeries(t, starts, j)[j] as Expanded);
   let factorial = 1;
   for (let k = 2; k <= j; k += 1) factorial *= k;
@@ -96,15 +129,41 @@ function toEstimate({ value, size, spread }: Expanded): Estimate {
   return { value: read, error: ROUNDING * Math.abs(read) + size * spread };
 }
 
+/** The linearising series at w = 1: u = Σ c_k z^k is moved by a way x to z e^{−decay x}; spreads relative, `unit` for each power of z. */
+interface Linearising {
+  readonly decay: Pair;
+  readonly decaySpread: number;
+  readonly c: readonly Pair[];
+  readonly unit: number;
+}
+
+function aboutFast(t: Trajectory, order: number): Linearising {
+  const normalised: Normalised = { law: readerOf(t).law, decay: t.decay, ratio: t.ratio, strength: t.strength };
+  const origin = originSeries(normalised, { order: Math.max(order, 8), tolerance: PAIR_EPSILON });
+  const c = Array.from({ length: order + 1 }, (_, k) => scale(origin.series.at(k), origin.scale ** -k));
+  return { decay: t.decay, decaySpread: t.decaySpread, c, unit: t.decaySpread + 8 * ROUNDING + seriesSpread(t) };
+}
+
+/** Below the order d the fast direction of the node does not enter: c as at a fast direction with the roles of the rates exchanged. */
+function aboutNode(t: Trajectory, { slow, index, slowSpread, indexSpread }: Passage, order: number): Linearising {
+  const law = prepareOffspring(t.model.offspring);
+  const series = linearisingSeries({ law, ratio: index, strength: divide(index, law.excess) }, order, 1);
+  const c = Array.from({ length: order + 1 }, (_, k) => series.at(k));
+  const d = toNumber(index);
+  const nearest = Math.min(...Array.from({ length: order }, (_, k) => Math.abs(1 - (k + 1) / d)).slice(1), 1);
+  const ofLaw = lawUnit(t.model.offspring) * (2 + (law.mean[0] + 1) / law.excess[0]);
+  return {
+    decay: negate(slow),
+    decaySpread: slowSpread,
+    c,
+    unit: slowSpread + 8 * ROUNDING + indexSpread / nearest + ofLaw,
+  };
+}
+
 /** Coefficients of E[(1 + ε)^K] in powers of ε up to `order`. */
 function factorialSeries(t: Trajectory, starts: Starts, order: number): Expanded[] {
-  const reader = readerOf(t);
-  const normalised: Normalised = { law: reader.law, decay: t.decay, ratio: t.ratio, strength: t.strength };
-  const origin = originSeries(normalised, { order: Math.max(order, 8), tolerance: PAIR_EPSILON });
-  // c_k of u = Σ c_k z^k, and z as a series in ε = −u
-  const c = Array.from({ length: order + 1 }, (_, k) => scale(origin.series.at(k), origin.scale ** -k));
+  const { decay, decaySpread, c, unit } = t.passage === null ? aboutFast(t, order) : aboutNode(t, t.passage, order);
   const z = inverse(c, order);
-  const unit = t.decaySpread + 8 * ROUNDING + seriesSpread(t);
   if (starts === "far")
     return z.map((value, k) => {
       const q = divide(negate(value), t.amplitude);
@@ -114,14 +173,14 @@ function factorialSeries(t: Trajectory, starts: Starts, order: number): Expanded
   let product: Pair[] = [ONE, ...new Array<Pair>(order).fill(ZERO)];
   let way = 0;
   for (const { position, particles } of checkStarts(starts)) {
-    const single = moved(c, z, exponential(negate(scale(t.decay, position))), order);
+    const single = moved(c, z, exponential(negate(scale(decay, position))), order);
     product = times(product, power(single, particles, order), order);
-    way = Math.max(way, reader.decay * position);
+    way = Math.max(way, Math.abs(toNumber(decay)) * position);
   }
   return product.map((value, k) => ({
     value,
     size: Math.abs(value[0]),
-    spread: k * (unit + way * (t.decaySpread + 2 * ROUNDING)) + k * ROUNDING,
+    spread: k * (unit + way * (decaySpread + 2 * ROUNDING)) + k * ROUNDING,
   }));
 }
 

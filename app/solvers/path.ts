@@ -47,12 +47,17 @@ export function follow(n: Normalised, settings: WalkSettings): Path {
   };
 }
 
-function plain(knot: PairKnot): Knot {
+/** A knot in doubles. */
+export function plain(knot: PairKnot): Knot {
   return { xi: toNumber(knot.xi), u: toNumber(knot.u), slope: toNumber(knot.slope) };
 }
 
 /** From w near 1 down past w = −1; |w(x, s)| ≤ w(x, |s|) keeps the trajectory falling until there. */
-function followBelow(n: Normalised, first: PairKnot, settings: WalkSettings): { knots: Knot[]; barrier: PairKnot } {
+export function followBelow(
+  n: Normalised,
+  first: PairKnot,
+  settings: WalkSettings,
+): { knots: Knot[]; barrier: PairKnot } {
   const lowest = n.lowest ?? 2;
   const knots = [plain(first)];
   let barrier: PairKnot | null = null;

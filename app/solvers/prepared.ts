@@ -8,7 +8,7 @@ import { profileAt, profileComplementAt } from "./profile.ts";
 import { ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
 import { scaledByPower } from "./scaled.ts";
 import { differenceValues, nodeValues } from "./sources.ts";
-import { type Lattice, type Sums, sumRange, sumsOf, type Wanted } from "./sums.ts";
+import { type Lattice, type Sums, sumAt, sumRange, sumsOf, type Wanted } from "./sums.ts";
 import type { Pair, ScaledEstimate, Start, Starts, Trajectory } from "./types.ts";
 
 /** A law made ready for reading at any n up to some bound. */
@@ -21,6 +21,8 @@ export interface PreparedLaw {
   /** relative spread of s0 and of what multiplies s0^−n, under half a unit in each input */
   readonly radiusSpread: number;
   readonly factorSpread: number;
+  /** a further relative spread at n, where that of the inputs is not of this form */
+  readonly spreadAt?: (n: number) => number;
   /** the first n for which the sums are the law itself: 2 where a multiple of s was taken out of E[s^K] */
   readonly first: number;
   readonly lattice: Lattice;
@@ -119,7 +121,7 @@ const FACTOR_ROUNDINGS = 8;
 /** Values at from, …, to with all errors: rounding, difference of the two contours, spread of the inputs. */
 export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstimate[] {
   const { values, rounding } = sumRange(law.fine, from, to);
-  const methodError = differences(law, from, to);
+  const methodError = differences(law, values, from, to);
   const read: ScaledEstimate[] = [];
   for (let i = 0; i < values.length; i += 1) {
     const n = from + i;
@@ -128,7 +130,8 @@ export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstim
       continue;
     }
     const value = values[i] as number;
-    const spread = Math.abs(value) * (n * law.radiusSpread + law.factorSpread + 8 * ROUNDING);
+    const spread =
+      Math.abs(value) * (n * law.radiusSpread + law.factorSpread + (law.spreadAt?.(n) ?? 0) + 8 * ROUNDING);
     const error = (rounding[i] as number) + Math.abs(value) * (methodError[i] as number) + spread;
     // a probability is not below 0: where the rounding is larger than the value, that much is known
     read.push(
@@ -152,17 +155,24 @@ function takenOut(law: PreparedLaw, n: number): boolean {
 
 /** Values of n between which the relative difference of the contours is carried over, as a share of n. */
 const SAMPLE_STEP = 1.3;
-/** The check contour is no better than the other: their difference counts double. */
-const DIFFERENCE_FACTOR = 2;
+/** The check contour is hardly better than the other, and some of their errors are alike: their difference counts so many times. */
+const DIFFERENCE_FACTOR = 4;
 
-/** Relative difference of the two contours for n = from, …, to, sampled on a geometric grid. */
-function differences(law: PreparedLaw, from: number, to: number): Float64Array {
+/** Relative difference of the two contours for n = from, …, to, sampled on a geometric grid.
+ *  @param values of the fine contour there */
+function differences(law: PreparedLaw, values: Float64Array, from: number, to: number): Float64Array {
   const relative = new Float64Array(to - from + 1);
-  let previous = differenceAt(law, from);
+  const differenceAt = (at: number) => {
+    const n = onLattice(law.lattice, at);
+    const a = n <= to ? (values[n - from] as number) : sumAt(law.fine, n);
+    const b = sumAt(law.check, n);
+    return a === b ? 0 : Math.abs(a - b) / Math.max(Math.abs(a), Number.MIN_VALUE);
+  };
+  let previous = differenceAt(from);
   let n = from;
   while (n <= to) {
     const next = Math.min(to, Math.max(n + 1, Math.ceil(n * SAMPLE_STEP)));
-    const at = differenceAt(law, next);
+    const at = differenceAt(next);
     const larger = DIFFERENCE_FACTOR * Math.max(previous, at);
     for (let m = n; m <= next; m += 1) relative[m - from] = Math.max(relative[m - from] as number, larger);
     previous = at;
@@ -172,12 +182,9 @@ function differences(law: PreparedLaw, from: number, to: number): Float64Array {
   return relative;
 }
 
-function differenceAt(law: PreparedLaw, at: number): number {
-  const { base, offset } = law.lattice;
-  const n = at + ((((offset - at) % base.period) + base.period) % base.period);
-  const a = sumRange(law.fine, n, n).values[0] as number;
-  const b = sumRange(law.check, n, n).values[0] as number;
-  return a === b ? 0 : Math.abs(a - b) / Math.max(Math.abs(a), Number.MIN_VALUE);
+/** The first n of the lattice from `at` on. */
+function onLattice({ base, offset }: Lattice, at: number): number {
+  return at + ((((offset - at) % base.period) + base.period) % base.period);
 }
 
 /** P(K = 0) and 1 − P(K = 0) for particles at given positions, to full relative accuracy each. */

@@ -2,6 +2,7 @@ import { SolverError } from "./errors.ts";
 import { type PointValue, pointValue } from "./expansion.ts";
 import { inputUnit } from "./input-rounding.ts";
 import { multiply, toNumber } from "./pairs.ts";
+import { readNearOne } from "./profile-toward.ts";
 import { type Place, ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
 import { deviationOf } from "./saddle.ts";
 import type { Answer, Base, Estimate, Pair, ProfileConstants, Refusal, Trajectory, Turning } from "./types.ts";
@@ -13,6 +14,11 @@ import type { Answer, Base, Estimate, Pair, ProfileConstants, Refusal, Trajector
 export function profileAt(t: Trajectory, x: number, s: number): Answer<Estimate> {
   const read = readProfile(t, x, s);
   if ("refused" in read) return read;
+  if (read.complement !== undefined) {
+    const value = 1 - read.complement.value;
+    // w(x, 1) is 1 exactly
+    return { value, error: read.complement.error + (read.complement.value === 0 ? 0 : ROUNDING * value) };
+  }
   const { centre, scale, scaleSpread } = t.base;
   const value = scale[0] * (centre - read.u);
   return { value, error: scale[0] * read.error + Math.abs(value) * (ROUNDINGS_OF_SCALE * ROUNDING + scaleSpread) };
@@ -24,6 +30,7 @@ export function profileAt(t: Trajectory, x: number, s: number): Answer<Estimate>
 export function profileComplementAt(t: Trajectory, x: number, s: number): Answer<Estimate> {
   const read = readProfile(t, x, s);
   if ("refused" in read || t.regime === "away") return "refused" in read ? read : { value: read.u, error: read.error };
+  if (read.complement !== undefined) return read.complement;
   const { centre, scale, scaleSpread } = t.base;
   const value = 1 - scale[0] * centre + scale[0] * read.u;
   const terms = scale[0] * (centre + Math.abs(read.u));
@@ -46,7 +53,7 @@ export function profileSlopeAt(t: Trajectory, x: number, s: number): Answer<Esti
 export function profileConstants(t: Trajectory): ProfileConstants {
   return {
     limit: limitOf(t),
-    s0: "refused" in t.turning ? t.turning : radius(t.turning, t.base),
+    s0: t.passage !== null ? { value: 1, error: 0 } : "refused" in t.turning ? t.turning : radius(t.turning, t.base),
     slopeAtBarrier: constant(t.slopeAtBarrier, t.slopeSpread),
     amplitude: t.regime === "away" ? constant(t.amplitude, t.amplitudeSpread) : { refused: noDecay(t, "amplitude") },
     decay: t.regime === "away" ? constant(t.decay, t.decaySpread) : { refused: noDecay(t, "decay rate") },
@@ -78,6 +85,8 @@ interface Reading {
   readonly u: number;
   readonly error: number;
   readonly slope: () => Estimate;
+  /** 1 − w, where it is known better than by u */
+  readonly complement?: Estimate;
 }
 
 function readProfile(t: Trajectory, x: number, s: number): Reading | Refusal {
@@ -89,6 +98,11 @@ function readProfile(t: Trajectory, x: number, s: number): Reading | Refusal {
   const u = deviationOf(t.base, s);
   if (u === 0) return { u: 0, error: 0, slope: () => ({ value: 0, error: 0 }) };
   if (reader.sterile) return withoutBranching(t, x, s);
+  if (t.passage !== null) {
+    const near = readNearOne(t, x, s);
+    if (near !== null) return "refused" in near ? near : { u, error: 0, ...near };
+    return shifted(t, reader, x, s);
+  }
   const largest = reader.largest * t.base.scale[0];
   if (s > largest * (1 + 2 * Number.EPSILON))
     return {

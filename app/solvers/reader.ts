@@ -51,8 +51,9 @@ export class TrajectoryReader {
     this.expander = new Expander(t, this.law);
     this.turning = "refused" in t.turning ? null : t.turning;
     this.rays = t.ratio[0] < STIFF_RATIO ? new Rays(this) : null;
-    this.sterile = this.turning === null && t.edge === null;
+    this.sterile = this.turning === null && t.edge === null && t.passage === null;
     if (this.sterile) this.largest = Number.POSITIVE_INFINITY;
+    else if (t.passage !== null) this.largest = 1 / this.base.scale[0];
     else
       this.largest = this.turning === null ? this.base.centre - (t.above.at(-1) as Knot).u : toNumber(this.turning.s0);
   }

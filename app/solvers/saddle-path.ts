@@ -16,7 +16,7 @@ export interface SaddlePath {
 }
 
 /** Relative change of one input from which the spread of the constants is measured. */
-const NUDGES = [2 ** -20, -(2 ** -20), 2 ** -30, -(2 ** -30)];
+export const NUDGES = [2 ** -20, -(2 ** -20), 2 ** -30, -(2 ** -30)];
 
 /** Follows the trajectory that leaves q, of a law whose mean is above 1.
  *  @throws SolverError "not_converged" where the walk does not end or fails its check. */
@@ -30,7 +30,7 @@ export function followSaddle(model: ProcessModel, linear: Linearised): SaddlePat
 }
 
 /** decay, ratio and strength at the saddle, where f'(q) < 0. */
-function normaliseAt(model: ProcessModel, linear: Linearised, { base, law }: Saddle): Normalised {
+export function normaliseAt(model: ProcessModel, linear: Linearised, { base, law }: Saddle): Normalised {
   const growth = scale(law.excess, model.rate);
   const drift = pair(model.drift);
   const discriminant = subtract(multiply(drift, drift), scale(scale(growth, model.diffusion), 4));
@@ -86,7 +86,7 @@ function nudgedPath(nudged: (factor: number) => ProcessModel, linear: Linearised
 }
 
 /** One function for each input that the double may have rounded: the model with it multiplied by a factor. */
-function inexactInputs(model: ProcessModel): ((factor: number) => ProcessModel)[] {
+export function inexactInputs(model: ProcessModel): ((factor: number) => ProcessModel)[] {
   const { drift, rate, diffusion, offspring } = model;
   const inputs: ((factor: number) => ProcessModel)[] = [];
   if (inputUnit(drift) > 0) inputs.push((factor) => ({ ...model, drift: drift * factor }));

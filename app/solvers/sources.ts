@@ -3,7 +3,7 @@ import type { Contour } from "./contour.ts";
 import { SolverError } from "./errors.ts";
 import { evaluate, pointValue } from "./expansion.ts";
 import type { TrajectoryReader } from "./reader.ts";
-import type { Start, Starts, Trajectory } from "./types.ts";
+import type { Base, Start, Starts, Trajectory } from "./types.ts";
 
 /** What a law is the law of: 1 − E[s^K] on the contour, as complex numbers. */
 export interface NodeValues {
@@ -100,14 +100,25 @@ export function differenceValues(reader: TrajectoryReader, contour: Contour, way
 }
 
 function productValues(reader: TrajectoryReader, contour: Contour, starts: readonly Start[]): NodeValues | null {
-  const count = contour.xiRe.length;
+  const parts: { values: NodeValues; particles: number }[] = [];
+  for (const { position, particles } of starts) {
+    const values = singleValues(reader, contour, position);
+    if (values === null) return null;
+    parts.push({ values, particles });
+  }
+  return productOf(reader.base, parts);
+}
+
+/** 1 − Π w^particles at the nodes, from 1 − w of one particle of each kind. */
+export function productOf(
+  { centre }: Base,
+  parts: readonly { readonly values: NodeValues; readonly particles: number }[],
+): NodeValues {
+  const count = (parts[0]?.values.re ?? []).length;
   const logRe = new Float64Array(count);
   const logIm = new Float64Array(count);
-  const { centre } = reader.base;
   const fromZero = centre === 0;
-  for (const { position, particles } of starts) {
-    const u = singleValues(reader, contour, position);
-    if (u === null) return null;
+  for (const { values: u, particles } of parts) {
     for (let j = 0; j < count; j += 1) {
       const a = u.re[j] as number;
       const b = u.im[j] as number;

@@ -17,6 +17,13 @@ export interface Sums {
   readonly logIm: Float64Array;
   readonly re: Float64Array;
   readonly im: Float64Array;
+  /** the first nodes whose amplitudes share a relative error beside rounding */
+  readonly uncertain?: { readonly nodes: number; readonly share: number };
+  /** nodes after these have a relative error `share` beside rounding, and resolve e^{−nL} only up to n Re L = reach; beyond, their
+   *  terms are themselves the error */
+  readonly resolved?: { readonly nodes: number; readonly reach: number; readonly share: number };
+  /** terms below e^−negligible are left out; more where the amplitudes rise steeply */
+  readonly negligible?: number;
 }
 
 /** "each": P(K = n), n ≥ 1. "above": P(K > n), n ≥ 0. */
@@ -84,23 +91,59 @@ function overExcess(
   }
 }
 
-/** Terms below e^−NEGLIGIBLE of the leading ones are left out. */
+/** Terms below e^−NEGLIGIBLE of the leading ones are left out, unless the sums say otherwise. */
 const NEGLIGIBLE = 46;
 /** Values of n between fresh exponentials; in between, factors are multiplied up. */
-const BLOCK = 16;
+const BLOCK = 32;
 /** Roundings of one term: value of u, weight, factor. */
 const TERM_ROUNDINGS = 12;
+
+/** P(K = n) radius^n (or P(K > n) radius^n) at one n, without a bound on its rounding. */
+export function sumAt(s: Sums, n: number): number {
+  const { re, im, logRe, logIm } = s;
+  const negligible = s.negligible ?? NEGLIGIBLE;
+  let sum = 0;
+  for (let j = 1; j < re.length; j += 1) {
+    const fall = n * (logRe[j] as number);
+    if (fall > negligible) continue;
+    const size = Math.exp(-fall);
+    const angle = n * (logIm[j] as number);
+    if (angle === 0) sum += (re[j] as number) * size;
+    else sum += size * ((re[j] as number) * Math.cos(angle) + (im[j] as number) * Math.sin(angle));
+  }
+  return sum;
+}
 
 /** P(K = n) radius^n (or P(K > n) radius^n) for n = from, …, to, with a bound on the rounding of each. */
 export function sumRange(sums: Sums, from: number, to: number): { values: Float64Array; rounding: Float64Array } {
   const count = to - from + 1;
   const values = new Float64Array(count);
   const rounding = new Float64Array(count);
+  const bound: Bound = { first: 0, last: 0 };
   for (let start = 0; start < count; start += BLOCK) {
     const end = Math.min(count, start + BLOCK);
-    for (let j = 1; j < sums.re.length; j += 1) addNode(sums, j, from, start, end, values, rounding);
+    bound.first = 0;
+    bound.last = 0;
+    for (let j = 1; j < sums.re.length; j += 1) addNode(sums, j, from, start, end, values, bound);
+    spreadBound(bound, start, end, rounding);
   }
   return { values, rounding };
+}
+
+/** Bounds on the rounding at the first and at the last n of a block. */
+interface Bound {
+  first: number;
+  last: number;
+}
+
+/** A sum of falling exponentials is convex in its logarithm: in between it lies below the straight line. */
+function spreadBound({ first, last }: Bound, start: number, end: number, rounding: Float64Array): void {
+  const ratio = first > 0 && end - start > 1 ? (last / first) ** (1 / (end - start - 1)) : 1;
+  let size = first;
+  for (let i = start; i < end; i += 1) {
+    rounding[i] = size;
+    size *= ratio;
+  }
 }
 
 function addNode(
@@ -110,40 +153,41 @@ function addNode(
   start: number,
   end: number,
   values: Float64Array,
-  rounding: Float64Array,
+  bound: Bound,
 ): void {
   const n = from + start;
   const rate = s.logRe[j] as number;
-  if (n * rate > NEGLIGIBLE) return;
+  if (n * rate > (s.negligible ?? NEGLIGIBLE)) return;
   const angle = s.logIm[j] as number;
   const first = Math.exp(-n * rate);
-  const firstRe = first * Math.cos(n * angle);
-  const firstIm = -first * Math.sin(n * angle);
   const a = s.re[j] as number;
   const b = s.im[j] as number;
-  let re = a * firstRe - b * firstIm;
-  let im = a * firstIm + b * firstRe;
-  const shrink = Math.exp(-rate);
   // without tilt a leg's term is the real part alone; the angle nθ is rounded like the rest
   const bulk = angle === 0 ? Math.abs(a) : Math.abs(a) + Math.abs(b);
-  let size = ROUNDING * first * bulk * (TERM_ROUNDINGS + BLOCK + (n + BLOCK) * (rate + angle));
+  let shared = s.uncertain !== undefined && j <= s.uncertain.nodes ? s.uncertain.share : 0;
+  if (s.resolved !== undefined && j > s.resolved.nodes) shared = n * rate > s.resolved.reach ? 1 : s.resolved.share;
+  const size = (ROUNDING * (TERM_ROUNDINGS + BLOCK + (n + BLOCK) * (rate + angle)) + shared) * first * bulk;
+  bound.first += size;
+  bound.last += size * Math.exp(-(end - start - 1) * rate);
+  const shrink = Math.exp(-rate);
   if (angle === 0) {
+    let re = a * first;
     for (let i = start; i < end; i += 1) {
       values[i] = (values[i] as number) + re;
-      rounding[i] = (rounding[i] as number) + size;
       re *= shrink;
-      size *= shrink;
     }
     return;
   }
+  const firstRe = first * Math.cos(n * angle);
+  const firstIm = -first * Math.sin(n * angle);
+  let re = a * firstRe - b * firstIm;
+  let im = a * firstIm + b * firstRe;
   const factorRe = shrink * Math.cos(angle);
   const factorIm = -shrink * Math.sin(angle);
   for (let i = start; i < end; i += 1) {
     values[i] = (values[i] as number) + re;
-    rounding[i] = (rounding[i] as number) + size;
     const next = re * factorRe - im * factorIm;
     im = re * factorIm + im * factorRe;
     re = next;
-    size *= shrink;
   }
 }

@@ -6,6 +6,7 @@ import { ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
 import { scaledByPower } from "./scaled.ts";
 import { checkStarts } from "./sources.ts";
 import { bernoulliPolynomials, composed, inverseSquareRise, multiplied, raised } from "./tail-series.ts";
+import { powerProbability, tailToward } from "./tail-toward.ts";
 import type { Answer, Estimate, Starts, TailLaw, TailProbability, Trajectory, Turning } from "./types.ts";
 
 /** Most terms of the expansion in 1/n. */
@@ -22,6 +23,8 @@ export function tailLaw(t: Trajectory, starts: Starts, terms: number): Answer<Ta
       "bad_parameter",
       `The tail is asked for with ${terms} terms; from 1 to ${MOST_TERMS} are given.`,
     );
+  if (t.passage !== null && starts !== "far")
+    return terms === 1 ? tailToward(t, t.passage, starts) : { refused: ONE_TERM };
   const reader = readerOf(t);
   const { turning } = reader;
   if (turning === null) return t.turning as { refused: string };
@@ -41,7 +44,9 @@ export function tailLaw(t: Trajectory, starts: Starts, terms: number): Answer<Ta
     spreadOfStarts(t, reader, starts) +
     curvatureCondition(t, reader, turning) * (PLACE_ROUNDINGS * ROUNDING + turning.excessSpread);
   return {
+    kind: "square-root",
     s0: radius(turning, t.base),
+    exponent: { refused: NO_POWER },
     slopeAtStart: slopeAtStart(t, starts),
     constant: { value, error: Math.abs(value) * relative },
     period,
@@ -60,6 +65,7 @@ export function tailProbability(law: TailLaw, n: number): TailProbability {
   if (!(Number.isSafeInteger(n) && n >= 1))
     throw new SolverError("bad_parameter", `The tail is asked for at n = ${n}; n must be an integer, at least 1.`);
   if ((n - law.offset) % law.period !== 0) return { probability: { mantissa: 0, exponent: 0, error: 0 }, omitted: 0 };
+  if (law.kind !== "square-root") return powerProbability(law, n);
   let sum = 0;
   for (let k = law.terms - 1; k >= 0; k -= 1) sum = sum / n + (law.corrections[k] as number);
   const value = law.constant.value * n ** -1.5 * sum;
@@ -67,6 +73,11 @@ export function tailProbability(law: TailLaw, n: number): TailProbability {
   const omitted = Math.abs((law.corrections[law.terms] as number) / n ** law.terms / sum);
   return { probability: scaledByPower(value, Math.abs(value) * relative, law.log2s0, n), omitted };
 }
+
+const ONE_TERM =
+  "With this drift toward the barrier the tail is a power of n, of which the leading term alone is given; `terms` is 1 there.";
+const NO_POWER =
+  "The tail is no power of n but falls like n^(−3/2) s0^(−n); an exponent belongs to a drift toward the barrier, at or beyond the critical one.";
 
 /** Roundings in the constant: the turning point's expansion, its inverse, the expansion at the start. */
 const CONSTANT_ROUNDINGS = 64;

@@ -1,14 +1,16 @@
 import { type Linearised, linearise, normalise } from "./linear.ts";
-import { multiply, negate, ONE, toNumber, ZERO } from "./pairs.ts";
+import { multiply, negate, ONE, ZERO } from "./pairs.ts";
 import { follow } from "./path.ts";
 import { FROM_ONE } from "./saddle.ts";
 import { followSaddle } from "./saddle-path.ts";
 import { constantSpreads } from "./spreads.ts";
+import { solveToward } from "./toward.ts";
 import type { Answer, Edge, ProcessModel, Trajectory } from "./types.ts";
 import { FULL_WALK } from "./walk.ts";
 
 /** Solves the trajectory of D w″ + drift w′ + f(w) = 0 that leaves w = 1 along its fast direction, in the regime `away`; in the
- *  regime `between` the one that leaves the saddle q, on which w(x, s) = E_x[s^K; K finite] passes through 1 and turns back at s0.
+ *  regime `between` the one that leaves the saddle q, on which w(x, s) = E_x[s^K; K finite] passes through 1 and turns back at s0; in
+ *  the regime `toward` the one from q into w = 1.
  *
  *  Method: power series of u = 1 − w in z = e^{−decay x}, then Taylor steps towards the barrier, the stable direction,
  *  in double-doubles; on z > 0 past w = 0 (amplitude B_0, slope at the barrier), on z < 0 up to where w turns back (s0).
@@ -18,7 +20,8 @@ import { FULL_WALK } from "./walk.ts";
 export function solveTrajectory(model: ProcessModel): Answer<Trajectory> {
   const linear = linearise(model);
   if (linear.regime === "between") return solveBetween(model, linear);
-  if (linear.regime !== "away") return { refused: refusal(model, linear) };
+  if (linear.regime === "toward") return solveToward(model, linear);
+  if (linear.regime !== "away") return linear.regime;
   const n = normalise(model, linear);
   const path = follow(n, FULL_WALK);
   const spread = constantSpreads(model, linear, path);
@@ -38,6 +41,7 @@ export function solveTrajectory(model: ProcessModel): Answer<Trajectory> {
     slopeAtBarrier: multiply(negate(path.slope), n.decay),
     turning: path.turning === null ? { refused: whyNot(path.edge) } : { ...path.turning, ...spread.turning },
     edge: path.edge,
+    passage: null,
     decaySpread: spread.decay,
     amplitudeSpread: spread.amplitude,
     slopeSpread: spread.slope,
@@ -64,6 +68,7 @@ function solveBetween(model: ProcessModel, linear: Linearised): Trajectory {
     slopeAtBarrier: fromZero ? ZERO : multiply(saddle.base.scale, multiply(negate(path.slope), normalised.decay)),
     turning: path.turning === null ? { refused: whyNot(path.edge) } : { ...path.turning, ...spreads.turning },
     edge: path.edge,
+    passage: null,
     decaySpread: spreads.decay,
     amplitudeSpread: spreads.amplitude,
     slopeSpread: spreads.slope,
@@ -79,9 +84,3 @@ function whyNot(edge: Edge | null): string {
 
 const STERILE =
   "No particle ever has two or more children, so at most the particles present at the start are absorbed: w is a polynomial in s, s0 is infinite and there is no tail.";
-
-function refusal(model: ProcessModel, linear: Linearised): string {
-  if (typeof linear.regime !== "string") return linear.regime.refused;
-  const critical = Math.sqrt(4 * model.diffusion * toNumber(linear.growth));
-  return `With drift ${model.drift} the regime is ${linear.regime}: the critical drift is ${critical.toPrecision(6)}, and this trajectory needs a drift of at least that.`;
-}

@@ -106,6 +106,24 @@ export interface Base {
   readonly period: number;
 }
 
+/** How a trajectory of the regime `toward` comes to rest in w = 1, a node with the rates λ_s ≤ λ_b [1/length]: at `xi` it has the
+ *  coordinates (zeta, eta) of node-chart.ts. */
+export interface Passage {
+  /** λ_s = (−drift − √(drift² − 4 D f'(1)))/(2 D) */
+  readonly slow: Pair;
+  /** d = λ_b/λ_s ≥ 1 */
+  readonly index: Pair;
+  readonly xi: Pair;
+  readonly zeta: Pair;
+  readonly eta: Pair;
+  /** bound on the relative error of what the singularity at s = 1 is proportional to; 1 where it is lost in rounding */
+  readonly etaError: number;
+  /** bounds on the relative changes of λ_s and d, and on the change of ln zeta at a fixed ξ, under half a unit in the last place of the inputs */
+  readonly slowSpread: number;
+  readonly indexSpread: number;
+  readonly shiftSpread: number;
+}
+
 /** The trajectory of D w″ + drift w′ + f(w) = 0 that leaves w = 1 (or q, see Base) along its fast direction, from which all answers are read.
  *  In ξ = decay·x, u = 1 − w it obeys u″ + (1 + ratio) u′ + ratio u = strength·(G(1 − u) − 1 + mean u), with u = z − … at z = e^{−ξ}. */
 export interface Trajectory {
@@ -133,6 +151,8 @@ export interface Trajectory {
   readonly turning: Answer<Turning>;
   /** where there is branching and yet no turning point within reach: what w tends to instead */
   readonly edge: Edge | null;
+  /** in the regime `toward`, how it ends in w = 1; else null */
+  readonly passage: Passage | null;
   /** bounds on relative changes under half a unit in the last place of the inputs */
   readonly decaySpread: number;
   readonly amplitudeSpread: number;
@@ -172,24 +192,30 @@ export interface AbsorbedMoments {
   readonly zero: Estimate;
   /** E[K], given that K is finite */
   readonly mean: Estimate;
-  readonly variance: Estimate;
+  /** refused where it is infinite */
+  readonly variance: Answer<Estimate>;
   /** P(K = ∞) */
   readonly infinite: Estimate;
 }
 
-/** P(K = n) ~ constant·n^{−3/2} s0^{−n} (1 + corrections[1]/n + corrections[2]/n² + …), as n → ∞. */
+/** As n → ∞, P(K = n) ~
+ *  "square-root": constant·n^{−3/2} s0^{−n} (1 + corrections[1]/n + corrections[2]/n² + …);
+ *  "power" (regime `toward`): constant·n^{−1−d} (1 + corrections[1]/n + corrections[2]/n^{d − 1} + …), d the exponent;
+ *  "logarithmic" (at the critical drift toward the barrier): constant/(n ln n)². */
 export interface TailLaw {
+  readonly kind: "square-root" | "power" | "logarithmic";
   readonly s0: Estimate;
+  /** d of the power law; refused where it is none */
+  readonly exponent: Answer<Estimate>;
   /** ∂w(x, s0)/∂x at the start; refused for several starts and for "far", where it is not what the constant is made of */
   readonly slopeAtStart: Answer<Estimate>;
-  /** C of P(K = n) ~ C n^{−3/2} s0^{−n} */
   readonly constant: Estimate;
-  /** K lives on the lattice offset + period·ℕ, and the law is 0 elsewhere; 1 wherever the drift is away from the barrier */
+  /** K lives on the lattice offset + period·ℕ, and the law is 0 elsewhere; the constant is that of the lattice's points */
   readonly period: number;
   readonly offset: number;
-  /** number of terms summed: 1 means constant·n^{−3/2} s0^{−n} itself */
+  /** number of terms summed: 1 means the law as written, without corrections */
   readonly terms: number;
-  /** corrections[0] = 1; at least `terms` + 1 of them, the next one measuring what is omitted */
+  /** corrections[0] = 1; of a square-root law at least `terms` + 1, the next one measuring what is omitted */
   readonly corrections: readonly number[];
   /** log2 of s0 as a pair, so that s0^{−n} keeps its digits at large n */
   readonly log2s0: Pair;

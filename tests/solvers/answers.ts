@@ -1,5 +1,5 @@
 import { expect } from "vitest";
-import type { Answer, Estimate, Refusal, ScaledEstimate } from "../../app/solvers/index.ts";
+import type { AbsorbedLaw, Answer, Estimate, Refusal, ScaledEstimate } from "../../app/solvers/index.ts";
 
 /** Reading answers in tests. */
 export function isRefused<T extends object>(answer: Answer<T>): answer is Refusal {
@@ -51,6 +51,11 @@ export function expectScaledClose(estimate: ScaledEstimate, decimal: string, rel
   const gap = Math.abs(relativeGap(estimate, decimal));
   expect(gap).toBeLessThan(relative);
   expect(gap).toBeLessThanOrEqual(estimate.error / Math.abs(estimate.mantissa) + REFERENCE_DIGITS);
+}
+
+/** P(K = n) of a law. */
+export function scaledAt(law: AbsorbedLaw, n: number): ScaledEstimate {
+  return { mantissa: law.mantissa[n] as number, exponent: law.exponent[n] as number, error: law.error[n] as number };
 }
 
 export function toDouble(value: ScaledEstimate): number {

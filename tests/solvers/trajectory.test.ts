@@ -68,12 +68,6 @@ describe("constants of the trajectory", () => {
 });
 
 describe("where there is no trajectory", () => {
-  test.each([["toward", -2]] as const)("%s: drift %d", (regime, drift) => {
-    const answer = solveTrajectory(binary(drift));
-    expect(isRefused(answer) && answer.refused).toContain(`the regime is ${regime}`);
-    expect(isRefused(answer) && answer.refused).toContain("1.41421");
-  });
-
   test("mean offspring 1 with drift not above 0", () => {
     const answer = solveTrajectory({ ...binary(0), offspring: { law: "poisson", mean: 1 } });
     expect(isRefused(answer) && answer.refused).toContain("mean offspring 1");
