@@ -72,6 +72,8 @@ function Preface({ desk, props, place }: PartProps & { readonly place: RefObject
 }
 
 function Heads({ desk, strands }: { readonly desk: Desk; readonly strands: StrandWatch }) {
-  const model = useDeskView(desk, (view) => view.model);
-  return model === null || model.parameters.length === 0 ? null : <StrandHeads watch={strands} model={model} />;
+  const parameters = useDeskView(desk, ({ model }) => model?.parameters ?? null);
+  return parameters === null || parameters.length === 0 ? null : (
+    <StrandHeads watch={strands} parameters={parameters} />
+  );
 }

@@ -1,8 +1,9 @@
+import { px } from "./course.ts";
 import { layCords } from "./lay-cords.ts";
 import { layStrands } from "./lay-strands.ts";
 import { lightingOf } from "./lighting.ts";
 import { type TieLines, tieLinesOf } from "./tie-lines.ts";
-import type { Picture, Scene } from "./types.ts";
+import type { Picture, Scene, SceneQuote } from "./types.ts";
 
 /** Draws up the strands and cords of a scene. Pure: the same scene, the same picture. */
 export function layOut(scene: Scene): Picture {
@@ -55,11 +56,17 @@ function words(scene: Scene, ties: TieLines, lanes: Picture["lanes"]): Pick<Pict
     .flat()
     .filter(({ quotes }) => quotes.some(({ id }) => id === lit.id))
     .map(({ y }) => y);
-  const y = held.length === 0 ? quote.y : Math.max(...held);
-  if (held.length === 0 || scene.mode === "hidden") return { gloss: { y, to: null }, hairlines: [] };
+  if (held.length === 0 || scene.mode === "hidden") return { gloss: { y: quote.y, to: null }, hairlines: [] };
   const hasCord = lit.faces.some(({ cells }) => cells.some((slot) => lanes.has(slot)));
   return {
-    gloss: { y, to: hasCord ? frame.cordLanes.outer - 7 : null },
-    hairlines: [{ from: frame.edge, to: quote.left, y }],
+    gloss: { y: Math.max(...held), to: hasCord ? frame.cordLanes.outer - 7 : null },
+    hairlines: hairlinesOf(scene, quote, held),
   };
+}
+
+/** From each tie of a number to below its line, and along there to the number. */
+function hairlinesOf({ frame }: Scene, quote: SceneQuote, ties: readonly number[]): string[] {
+  const turn = frame.edge * 0.4;
+  const down = ties.map((y) => `M${px(frame.edge)} ${px(y)}H${px(turn)}V${px(quote.y)}`);
+  return [...down, `M${px(turn)} ${px(quote.y)}H${px(Math.max(turn, quote.left))}`];
 }

@@ -12,12 +12,12 @@ interface Props {
 
 /** What lies with the text in the margin: strands, cords, and the gloss about what is lit. */
 export function SheetStrands({ desk, watch }: Props) {
-  const model = useDeskView(desk, (view) => view.model);
+  const parameters = useDeskView(desk, ({ model }) => model?.parameters ?? null);
   const view = useStrands(watch, (each) => each);
-  if (model === null) return null;
+  if (parameters === null) return null;
   return (
     <>
-      <StrandsDrawing watch={watch} model={model} />
+      <StrandsDrawing watch={watch} parameters={parameters} />
       <StrandGloss view={view} />
     </>
   );

@@ -1,4 +1,4 @@
-import type { SheetModel } from "../model/types.ts";
+import type { ParameterFace } from "../model/types.ts";
 import { strandColour } from "../text/contents.ts";
 import { GlossText } from "./gloss-text.tsx";
 import { Letter } from "./letter.tsx";
@@ -8,11 +8,11 @@ import type { StrandWatch } from "./watch.ts";
 
 interface Props {
   readonly watch: StrandWatch;
-  readonly model: SheetModel;
+  readonly parameters: readonly ParameterFace[];
 }
 
 /** The heads of the strands under the rule, with which they stay while the sheet scrolls beneath. */
-export function StrandHeads({ watch, model }: Props) {
+export function StrandHeads({ watch, parameters }: Props) {
   const heads = useStrands(watch, (view) => view.heads);
   const top = useStrands(watch, (view) => view.ruleHeight);
   const picture = useStrands(watch, (view) => view.picture);
@@ -41,14 +41,7 @@ export function StrandHeads({ watch, model }: Props) {
       </svg>
       {heads.map(({ place, letter }) =>
         letter === null ? null : (
-          <Letter
-            key={place}
-            place={place}
-            tex={model.parameters[place]?.symbol ?? ""}
-            {...letter}
-            lit={isLit(place)}
-            on
-          />
+          <Letter key={place} place={place} tex={parameters[place]?.symbol ?? ""} {...letter} lit={isLit(place)} on />
         ),
       )}
       {gloss === null || place === null || picture?.gloss != null ? null : (

@@ -1,5 +1,5 @@
 import { memo } from "react";
-import type { SheetModel } from "../model/types.ts";
+import type { ParameterFace } from "../model/types.ts";
 import { CordPicture, TieEnd } from "./cord-picture.tsx";
 import { Letter } from "./letter.tsx";
 import { StrandPicture } from "./strand-picture.tsx";
@@ -9,15 +9,15 @@ import type { StrandWatch } from "./watch.ts";
 
 interface Props {
   readonly watch: StrandWatch;
-  readonly model: SheetModel;
+  readonly parameters: readonly ParameterFace[];
 }
 
 /** The strands and cords behind the text. For the eye: whoever listens hears the same in words at each number. */
-export function StrandsDrawing({ watch, model }: Props) {
+export function StrandsDrawing({ watch, parameters }: Props) {
   const picture = useStrands(watch, (view) => view.picture);
   if (picture === null) return null;
   const { frame, strands, cords } = picture;
-  const symbols = model.parameters.map(({ symbol }) => symbol);
+  const symbols = parameters.map(({ symbol }) => symbol);
   return (
     <div className={`hl-strands hl-strands-${frame.size}${picture.dim ? " hl-strands-dim" : ""}`} aria-hidden="true">
       <svg width="100%" height={Math.max(0, picture.bottom - picture.top)} style={{ top: picture.top }}>
@@ -67,9 +67,7 @@ function Hairlines({ picture: { hairlines, gloss, frame } }: { readonly picture:
   const right = frame.gloss === null ? 0 : frame.gloss.left + frame.gloss.width + 6;
   return (
     <g className="hl-hairlines">
-      {hairlines.map(({ from, to, y }) => (
-        <path key={y} d={`M${from} ${y}H${to}`} />
-      ))}
+      {hairlines.length === 0 ? null : <path d={hairlines.join("")} />}
       {gloss === null || gloss.to === null || frame.gloss === null ? null : (
         <path className="hl-hairline-gloss" d={`M${right} ${gloss.y}H${gloss.to}`} />
       )}

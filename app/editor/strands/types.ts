@@ -152,8 +152,8 @@ export interface Picture {
   readonly strandBundle: BundleDrawing | null;
   readonly cords: readonly CordDrawing[];
   readonly cordBundle: BundleDrawing | null;
-  /** From a tie to the number that is lit. */
-  readonly hairlines: readonly { readonly from: number; readonly to: number; readonly y: number }[];
+  /** Paths from ties to the number that is lit. */
+  readonly hairlines: readonly string[];
   /** Where the gloss stands, and where the line from it to its cord ends; null: at the head of the margin. */
   readonly gloss: { readonly y: number; readonly to: number | null } | null;
   /** Everything unlit stands back. */

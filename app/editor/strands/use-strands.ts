@@ -20,7 +20,12 @@ export function useStrandWatch(
     const column = view?.dom.closest<HTMLElement>(".hl-column") ?? null;
     if (!ready || desk === null || view === null || column === null || sheet.current === null) return;
     const begun = new StrandWatch(view, column, sheet.current, () => desk.store.get().model, personId);
-    const endWatch = desk.store.watch(() => begun.ask());
+    let seen = desk.store.get().model;
+    const endWatch = desk.store.watch(() => {
+      const { model } = desk.store.get();
+      if (model !== seen) begun.ask();
+      seen = model;
+    });
     setWatch(begun);
     return () => {
       endWatch();
