@@ -7,6 +7,7 @@ import { DeleteDialog } from "./parts/delete-dialog.tsx";
 import { SHELF_ACTIONS } from "./parts/shelf-actions.server.ts";
 import { groupShelf } from "./parts/shelf-groups.ts";
 import { ShelfPaperRow } from "./parts/shelf-paper.tsx";
+import { STARTING_POINTS } from "./parts/starts.ts";
 import "./shelf.css";
 
 export async function loader({ request, context }: Route.LoaderArgs) {
@@ -62,6 +63,7 @@ export default function Shelf({ loaderData, actionData }: Route.ComponentProps) 
             </Form>
           </div>
         </div>
+        <StartFrom />
         {groups.map((group) => (
           <section key={group.name}>
             <h2 className="shelf-group">{group.name}</h2>
@@ -80,6 +82,25 @@ export default function Shelf({ loaderData, actionData }: Route.ComponentProps) 
       <TailLine left={count === 1 ? "1 paper" : `${count} papers`} />
       {deleting ? <DeleteDialog paper={deleting} fault={fault?.fault ?? null} /> : null}
     </>
+  );
+}
+
+/** Papers of ours to begin from: they compute as they are. */
+function StartFrom() {
+  return (
+    <Form method="post" className="shelf-starts">
+      <input type="hidden" name="intent" value="begin" />
+      Or begin from{" "}
+      {STARTING_POINTS.map(({ id, words }, i) => (
+        <span key={id}>
+          {i === 0 ? "" : i === STARTING_POINTS.length - 1 ? " or " : ", "}
+          <Command type="submit" name="start" value={id}>
+            {words}
+          </Command>
+        </span>
+      ))}
+      .
+    </Form>
   );
 }
 

@@ -7,7 +7,7 @@ export function emptyPaper(author: string): string {
   return `---
 title: ${UNTITLED}
 authors:
-  - name: ${quoted(author)}
+  - name: ${quotedInYaml(author)}
 ---
 
 \`\`\`parameters
@@ -31,10 +31,10 @@ export function copyOf(text: string): { text: string; title: string | null } {
   const [from, to] = title.range;
   // A folded title reaches over the end of its last line.
   const end = from + source.slice(from, to).trimEnd().length;
-  return { text: text.slice(0, offset + from) + quoted(copied) + text.slice(offset + end), title: copied };
+  return { text: text.slice(0, offset + from) + quotedInYaml(copied) + text.slice(offset + end), title: copied };
 }
 
 /** Words as YAML, whatever is in them: between single quotes a backslash is a backslash. */
-function quoted(words: string): string {
+export function quotedInYaml(words: string): string {
   return `'${words.replace(/\s+/g, " ").replaceAll("'", "''")}'`;
 }

@@ -1,8 +1,10 @@
 import { data, redirect } from "react-router";
 import { type Asked, refusal, requirePaper, requirePerson } from "../../access/index.server.ts";
 import { databaseContext, servicesContext } from "../../context.ts";
-import { copyOf, emptyPaper, UNTITLED } from "./new-paper.ts";
+import { readPaper } from "../../paper/index.ts";
+import { copyOf } from "./new-paper.ts";
 import { placePaper } from "./place-paper.server.ts";
+import { startingPoint } from "./starts.ts";
 
 type ShelfAction = (asked: Asked, form: FormData) => Promise<unknown>;
 
@@ -11,10 +13,13 @@ export const SHELF_ACTIONS: ReadonlyMap<unknown, ShelfAction> = new Map(
   Object.entries({ begin, duplicate, "put-by": putBy, "bring-back": bringBack, delete: deleteForEver }),
 );
 
-async function begin(asked: Asked): Promise<Response> {
+async function begin(asked: Asked, form: FormData): Promise<Response> {
   const person = requirePerson(asked);
-  const words = { title: UNTITLED, authors: person.name };
-  const id = await placePaper(asked.context, person, words, { text: emptyPaper(person.name), bibliography: "" });
+  const start = startingPoint(form.get("start"));
+  const text = { text: start.text(person.name), bibliography: start.bibliography };
+  const title = readPaper(text.text, "").front.title;
+  const id = await placePaper(asked.context, person, { title, authors: person.name }, text);
+  await asked.context.get(servicesContext).compute.compute({ paperId: id, person, text, cells: "all" });
   return redirect(`/papers/${id}`);
 }
 
