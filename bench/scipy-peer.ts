@@ -17,7 +17,7 @@ export interface PeerAnswer {
 
 /** Pythons tried, in this order. */
 const PYTHONS = ["/usr/bin/python3", "python3"];
-const RUNS = 25;
+const RUNS = 15;
 
 export const HOW_TO_GET =
   "The peer is missing: no Python with SciPy was found. Debian's is `apt-get install python3-scipy`.";

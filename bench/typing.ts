@@ -15,12 +15,6 @@ export interface TypingTimes {
   readonly work: { readonly median: number; readonly p95: number };
 }
 
-declare global {
-  interface Window {
-    paintedAfter: number[];
-  }
-}
-
 const KEYS = 100;
 /** Between two keys: nine letters a second, a fast typist. */
 const PACE_MS = 110;
@@ -30,19 +24,21 @@ export async function typeInTheMiddle(page: Page): Promise<TypingTimes> {
   await putCaret(page);
   // The first keys find code that has not been compiled.
   await page.keyboard.type("warm and warmer ", { delay: PACE_MS });
-  await page.evaluate(() => {
-    window.paintedAfter = [];
+  const watch = await page.evaluateHandle(() => {
+    const painted: number[] = [];
+    const ending = new AbortController();
     addEventListener(
       "keydown",
       ({ timeStamp }) => {
         requestAnimationFrame(() => {
           const { port1, port2 } = new MessageChannel();
-          port1.onmessage = () => window.paintedAfter.push(performance.now() - timeStamp);
+          port1.onmessage = () => painted.push(performance.now() - timeStamp);
           port2.postMessage(null);
         });
       },
-      { capture: true },
+      { capture: true, signal: ending.signal },
     );
+    return { painted, ending };
   });
   const session = await page.context().newCDPSession(page);
   await session.send("Performance.enable", { timeDomain: "threadTicks" });
@@ -57,7 +53,11 @@ export async function typeInTheMiddle(page: Page): Promise<TypingTimes> {
     work.push(after.work - before.work);
     before = after;
   }
-  const times = await page.evaluate(() => window.paintedAfter);
+  const times = await watch.evaluate(({ painted, ending }) => {
+    ending.abort();
+    return painted;
+  });
+  await session.detach();
   if (times.length !== KEYS) throw new Error(`${times.length} of ${KEYS} keys were painted.`);
   return { ...quantiles(times), script: quantiles(script), work: quantiles(work) };
 }
