@@ -31,7 +31,8 @@ function radiusOf({ trajectory, s }: GeneratingFunctionData): number | null {
 function seriesOf(curve: GeneratingCurve, index: number, s: readonly number[], end: number | null): Series {
   const start = shortNumber(curve.start);
   const bound = (sign: 1 | -1) => curve.g.map((g, i) => (g === null ? null : g + sign * (curve.error[i] ?? 0)));
-  const dots: readonly Dot[] = end === null ? [] : [{ at: s.length - 1, label: "", hollow: false }];
+  // where the radius is 1 every curve ends in (1, 1): no end of its own to mark
+  const dots: readonly Dot[] = end === null || end === 1 ? [] : [{ at: s.length - 1, label: "", hollow: false }];
   return {
     name: `E[s^K], x = ${start}`,
     label: index === 0 ? `x=${shortTex(curve.start)}` : shortTex(curve.start),

@@ -36,7 +36,7 @@ function tailSeries(tail: TailLaw, plotted: readonly number[]): Series {
   const values = plotted.map((n) => tailProbability(tail, n).probability);
   return {
     name: "tail law",
-    label: "C n^{-3/2} s_0^{-n}",
+    label: "tail law",
     labelAt: "end",
     mark: "line",
     role: "reference",
