@@ -1,15 +1,11 @@
-import type { Quantity, Value } from "../formulas/index.ts";
-import { exact, toDouble } from "../formulas/index.ts";
+import { toDouble } from "../formulas/index.ts";
 import type { Paper } from "../paper/index.ts";
-import type { Border } from "./borders.ts";
-import { borderWords, findBorders, openSide, sameBranches } from "./borders.ts";
-import { branchAt, computePlan, planningContext, quickCells } from "./compute.ts";
-import { CellFault, evaluated, NotKnownYet } from "./context.ts";
-import type { Branch } from "./kind.ts";
+import type { Border, Branches } from "./borders.ts";
+import { borderWords, findBordersSteps, finish, openSide, sameBranches } from "./borders.ts";
+import { computePlan, quickCells } from "./compute.ts";
 import { planPaper } from "./plan.ts";
-import { KINDS } from "./registry.ts";
+import { isJudged, isRefusal, standingsAt } from "./standings.ts";
 import type { CellResult, Outcome, Plan, PlannedCell, PlannedParameter } from "./types.ts";
-import { numberValue } from "./values.ts";
 
 /** Where along a parameter the cells that read it answer otherwise, or not at all. */
 export interface AnswerRange {
@@ -64,8 +60,12 @@ export function* answerRangeSteps(
   const readers = plan.cells.filter((cell) => quick.has(cell.id) && cell.parameters.includes(name));
   const places = parameter === undefined ? [] : placesOf(parameter);
   if (readers.length === 0 || places.length === 0) return { parameter: name, borders: [] };
-  yield;
-  const borders = findBorders(places, (x) => standingsAt(plan, name, x, readers, options), sameBranches);
+  const judged = readers.filter((cell) => isJudged(cell, plan, name));
+  const borders = yield* findBordersSteps(
+    places,
+    (x) => standingsAt(plan, name, x, judged, options.known),
+    sameBranches,
+  );
   if (borders.length === 0) return { parameter: name, borders: [] };
   const stretches: (readonly Missing[])[] = [];
   const ends = [places[0] ?? 0, ...borders.flatMap(({ below, above }) => [below, above]), places.at(-1) ?? 0];
@@ -78,14 +78,8 @@ export function* answerRangeSteps(
 
 /** The same at once. */
 export function answerRange(paper: Paper, plan: Plan, name: string, options: AnswerRangeOptions = {}): AnswerRange {
-  const steps = answerRangeSteps(paper, plan, name, options);
-  for (;;) {
-    const step = steps.next();
-    if (step.done === true) return step.value;
-  }
+  return finish(answerRangeSteps(paper, plan, name, options));
 }
-
-const REFUSED = "refused ";
 
 interface Missing {
   readonly id: string;
@@ -109,66 +103,6 @@ function placesOf({ min, max, value }: PlannedParameter): number[] {
 
 function increasing(places: readonly number[]): number[] {
   return [...new Set(places)].sort((a, b) => a - b);
-}
-
-/** How each reader stands at a value of the parameter: the branch of its theory, or that its input is refused. */
-function standingsAt(
-  plan: Plan,
-  name: string,
-  x: number,
-  readers: readonly PlannedCell[],
-  { known }: AnswerRangeOptions,
-): ReadonlyMap<string, Branch> {
-  const parameters = parametersAt(plan, name, x);
-  const results = new Map<string, CellResult>();
-  for (const cell of plan.cells) {
-    const result = cell.key === null || cell.parameters.includes(name) ? undefined : known?.(cell.key);
-    if (result !== undefined) results.set(cell.id, result);
-  }
-  const standings = new Map<string, Branch>();
-  for (const { id, task } of readers) {
-    if (task === null) continue;
-    const here = { ...task, parameters: onlyOf(Object.keys(task.parameters), parameters) };
-    const fault = faultOf(here);
-    const branch = fault ?? branchAt(here, here.parameters, results);
-    if (branch !== null) standings.set(id, branch);
-  }
-  return standings;
-}
-
-/** The parameters with one of them set, and those computed from it evaluated again; one without a value is left out. */
-function parametersAt(plan: Plan, name: string, x: number): ReadonlyMap<string, Quantity> {
-  const values = new Map<string, Value>(plan.parameters.map((parameter) => [parameter.name, parameter.value]));
-  values.set(name, numberValue(exact(x)));
-  const scope = { name: (read: string) => values.get(read), member: () => undefined, call: () => undefined };
-  const dependent = plan.parameters.filter(({ reads, formula }) => formula !== null && reads.includes(name));
-  for (const { name: other, formula } of [...dependent].sort((a, b) => a.reads.length - b.reads.length)) {
-    const value = formula === null ? undefined : evaluated(formula, scope);
-    if (value !== undefined)
-      values.set(other, value.type === "number" ? numberValue(exact(toDouble(value.quantity))) : value);
-  }
-  return new Map([...values].flatMap(([read, value]) => (value.type === "number" ? [[read, value.quantity]] : [])));
-}
-
-function onlyOf(names: readonly string[], parameters: ReadonlyMap<string, Quantity>): Record<string, Quantity> {
-  const found: Record<string, Quantity> = {};
-  for (const name of names) {
-    const quantity = parameters.get(name);
-    if (quantity !== undefined) found[name] = quantity;
-  }
-  return found;
-}
-
-/** An input that is refused is a branch of its own, in which the cell has no answer. */
-function faultOf(task: NonNullable<PlannedCell["task"]>): Branch | null {
-  try {
-    KINDS.get(task.kind)?.inspect(task.model, planningContext(task));
-    return null;
-  } catch (error) {
-    if (error instanceof NotKnownYet) return null;
-    if (!(error instanceof CellFault)) throw error;
-    return { name: `${REFUSED}${error.path}`, holds: error.message, borders: [], closed: false };
-  }
 }
 
 /** Quick readers without an answer at one value of the parameter. One cell a step. */
@@ -207,7 +141,7 @@ function reasonOf(outcome: Outcome, missing: readonly Missing[]): string | null 
 }
 
 function answerBorder(
-  { below, above, lower, upper }: Border<ReadonlyMap<string, Branch>>,
+  { below, above, lower, upper }: Border<Branches>,
   stretches: readonly (readonly Missing[])[],
   index: number,
 ): AnswerBorder {
@@ -226,9 +160,8 @@ function answerBorder(
 }
 
 /** The side on which more inputs are refused, taken not to reach the border; null where neither has more. */
-function refusedSide(lower: ReadonlyMap<string, Branch>, upper: ReadonlyMap<string, Branch>): "below" | "above" | null {
-  const refusals = (standings: ReadonlyMap<string, Branch>) =>
-    [...standings.values()].filter(({ name }) => name.startsWith(REFUSED)).length;
+function refusedSide(lower: Branches, upper: Branches): "below" | "above" | null {
+  const refusals = (standings: Branches) => [...standings.values()].filter(isRefusal).length;
   const difference = refusals(lower) - refusals(upper);
   return difference === 0 ? null : difference > 0 ? "below" : "above";
 }

@@ -15,23 +15,24 @@ const MOST_BORDERS = 12;
 
 /**
  * The borders between the first and the last of some places, found by bisection between neighbours whose answers differ.
- * Of several changes between two neighbours all are found unless they undo each other there.
+ * Of several changes between two neighbours all are found unless they undo each other there. One answer is asked a step.
  * @param places increasing @param same whether two answers are one
  */
-export function findBorders<T>(
+export function* findBordersSteps<T>(
   places: readonly number[],
   answerAt: (x: number) => T,
   same: (a: T, b: T) => boolean,
-): Border<T>[] {
+): Generator<void, Border<T>[]> {
   const borders: Border<T>[] = [];
   const [first] = places;
   if (first === undefined) return borders;
   let from: number = first;
   let lower: T = answerAt(first);
   for (const to of places.slice(1)) {
+    yield;
     const upper = answerAt(to);
     while (!same(lower, upper) && borders.length < MOST_BORDERS) {
-      const border: Border<T> = bisected({ below: from, above: to, lower, upper }, answerAt, same);
+      const border: Border<T> = yield* bisected({ below: from, above: to, lower, upper }, answerAt, same);
       borders.push(border);
       [from, lower] = [border.above, border.upper];
     }
@@ -40,11 +41,33 @@ export function findBorders<T>(
   return borders;
 }
 
-function bisected<T>(border: Border<T>, answerAt: (x: number) => T, same: (a: T, b: T) => boolean): Border<T> {
+/** The same at once. */
+export function findBorders<T>(
+  places: readonly number[],
+  answerAt: (x: number) => T,
+  same: (a: T, b: T) => boolean,
+): Border<T>[] {
+  return finish(findBordersSteps(places, answerAt, same));
+}
+
+/** Takes all steps of a search. */
+export function finish<T>(steps: Generator<void, T>): T {
+  for (;;) {
+    const step = steps.next();
+    if (step.done === true) return step.value;
+  }
+}
+
+function* bisected<T>(
+  border: Border<T>,
+  answerAt: (x: number) => T,
+  same: (a: T, b: T) => boolean,
+): Generator<void, Border<T>> {
   let { below, above, upper } = border;
   for (let halving = 0; halving < HALVINGS; halving += 1) {
     const middle = below + (above - below) / 2;
     if (middle <= below || middle >= above) break;
+    yield;
     const answer = answerAt(middle);
     if (same(border.lower, answer)) below = middle;
     else [above, upper] = [middle, answer];
