@@ -2,6 +2,7 @@ import { describe, expect, test } from "vitest";
 import { planPaper } from "../../app/cells/index.ts";
 import { type BorderFace, borderWords, crossedBorder, scaleWords, sideOf } from "../../app/editor/model/borders.ts";
 import { BorderFinder, type Ground } from "../../app/editor/reading/border-finder.ts";
+import { SheetReader } from "../../app/editor/reading/sheet-reader.ts";
 import { readPaper } from "../../app/paper/index.ts";
 
 const CRITICAL: BorderFace = {
@@ -132,6 +133,25 @@ of: larvae
     finder.stand(groundOf(TEXT.replace("rate: beta", "rate: 2*beta")));
     finish(finder);
     expect(finder.faces().mu?.map(({ shown }) => shown)).toEqual(["2"]);
+  });
+
+  test("what the worker holds gives it its ground, but not while a parameter is under the hand", () => {
+    const reader = new SheetReader();
+    expect(reader.ground()).toBeNull();
+    reader.hear({ tell: "text", version: 1, text: TEXT, bibliography: "" });
+    reader.sheet();
+    reader.hear({ tell: "preview", settled: {}, trial: { mu: "1.2" } });
+    reader.sheet();
+    expect(reader.ground()).toBeNull();
+    reader.hear({ tell: "preview", settled: { beta: "1.28" }, trial: {} });
+    reader.sheet();
+    const ground = reader.ground();
+    if (ground === null) throw new Error("There is no ground.");
+    const finder = new BorderFinder();
+    finder.stand(ground);
+    finish(finder);
+    expect(finder.faces().mu?.map(({ shown }) => shown)).toEqual(["1.6"]);
+    expect(finder.faces().mu?.[0]?.below.without).toEqual(["Figure 1"]);
   });
 
   test("work under way goes on when what it is for is still wanted, and is dropped when not", () => {
