@@ -21,10 +21,10 @@ export const PROCESS_DOCUMENTATION: KindDocumentation = {
     { name: "mean_offspring", meaning: "mean number of children" },
     { name: "malthusian", meaning: "rate (mean number of children − 1), the growth rate of the mean" },
     { name: "critical_drift", meaning: "√(4 D malthusian)" },
-    { name: "regime", meaning: "away, between or toward, by the drift against the critical one" },
-    { name: "decay", meaning: "(drift + √(drift² − 4 D malthusian))/(2 D)" },
+    { name: "regime", meaning: "away (drift ≥ critical), between, or toward (drift ≤ −critical)" },
+    { name: "decay", meaning: "(drift + √(drift² − 4 D malthusian))/(2 D); refused unless the drift is away" },
     { name: "far_decay", meaning: "the rate at which w(x, 0) approaches its limit" },
-    { name: "limit", meaning: "lim w(x, 0) as x → ∞" },
+    { name: "limit", meaning: "lim w(x, 0) as x → ∞: 1 where the drift is away, else the extinction probability" },
     { name: "extinction_probability", meaning: "of the branching alone, without a barrier" },
   ],
   callables: [

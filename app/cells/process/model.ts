@@ -77,9 +77,15 @@ export const PROCESS: KindOf<ProcessCell, ProcessData> = {
   view: () => ({ figure: null, table: null, points: null }),
 };
 
+const TRAJECTORY_WORDS = {
+  away: "Fast manifold of 1, Taylor steps",
+  between: "Stable manifold of q, Taylor steps",
+  toward: "Stable manifold of q, Taylor steps into the node 1",
+} as const;
+
 /** How a trajectory was found, for provenance lines. */
 export function trajectoryWords(trajectory: Trajectory): string {
-  return trajectory.regime === "away" ? "Fast manifold of 1, Taylor steps" : "Stable manifold of q, Taylor steps";
+  return TRAJECTORY_WORDS[trajectory.regime];
 }
 
 /** "D = 0.5", for provenance lines. */

@@ -128,8 +128,10 @@ function sortOut(
 /** The least x, rounded up to two digits, from which every curve is within NEAR_LIMIT of its limit. */
 function farEnough(trajectory: Trajectory, curves: readonly { s: number }[]): number {
   const limit = profileConstants(trajectory).limit.value;
+  // toward the barrier the curve from s0 = 1 stays at 1
+  const tending = trajectory.regime === "toward" ? curves.filter(({ s }) => s < 1) : curves;
   const isNear = (x: number): boolean =>
-    curves.every(({ s }) => {
+    tending.every(({ s }) => {
       const w = profileAt(trajectory, x, s);
       return "refused" in w || Math.abs(w.value - limit) < NEAR_LIMIT;
     });

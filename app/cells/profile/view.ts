@@ -63,9 +63,12 @@ function alternative(data: ProfileData): string {
       ? `One curve w(x, s) ${range}, s = ${starts[0]}`
       : `${starts.length} curves w(x, s) ${range}, s = ${starts.join(", ")}`;
   const turning = data.curves.find((curve) => curve.turning);
+  const limit = shortNumber(profileConstants(data.trajectory).limit.value);
+  if (turning !== undefined && data.trajectory.regime === "toward")
+    return `${curves}. The one from s0 = 1 stays at 1, since K is finite; beyond it E s^K is infinite. All others tend to ${limit} as x grows.`;
   const last =
     turning === undefined
       ? ""
       : ` The one from s0 = ${shortNumber(turning.s)} leaves the barrier without slope; beyond it there are none.`;
-  return `${curves}. All tend to ${shortNumber(profileConstants(data.trajectory).limit.value)} as x grows.${last}`;
+  return `${curves}. All tend to ${limit} as x grows.${last}`;
 }

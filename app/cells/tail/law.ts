@@ -22,3 +22,9 @@ export function ratioOf({ n, exact, law }: Comparison, missing: string | null): 
   const relative = Math.abs(exact.error / exact.mantissa) + Math.abs(law.error / law.mantissa) + 2 * Number.EPSILON;
   return numberValue(approximate(ratio, Math.abs(ratio) * relative));
 }
+
+/** A ratio as doubles; NaN where it is refused. */
+export function numberOf(value: Value): { ratio: number; error: number } {
+  if (value.type !== "number") return { ratio: Number.NaN, error: 0 };
+  return { ratio: toDouble(value.quantity), error: value.quantity.error };
+}

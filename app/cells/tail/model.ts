@@ -68,11 +68,13 @@ export const TAIL: KindOf<TailCell, TailData> = {
     const trajectory = trajectoryOf(model.of, context);
     const starts = startsOf(model.start, context);
     const upTo = upToOf(model.upTo, context);
-    const law = tailLaw(trajectory, starts, termsOf(model.terms, context));
-    if ("refused" in law) throw new CellFault("of", law.refused);
+    const terms = termsOf(model.terms, context);
+    const law = tailLaw(trajectory, starts, terms);
+    if ("refused" in law)
+      throw new CellFault(trajectory.regime === "toward" && terms > 1 ? "terms" : "of", law.refused);
     const { compared, missing } = compare(trajectory, starts, law, upTo);
     const data: TailData = { starts, law, upTo, compared, missing };
-    const method = `Square-root singularity at s0, ${law.terms === 1 ? "one term" : `${law.terms} terms`}; ${diffusionWords(trajectory.model)}`;
+    const method = `${singularityWords(law)}; ${diffusionWords(trajectory.model)}`;
     return { values: tailValues(data), data, method };
   },
 
@@ -91,6 +93,7 @@ function tailValues({ law, upTo, compared, missing }: TailData): Record<string, 
     s0: estimateValue(law.s0),
     slope_at_start: estimateValue(law.slopeAtStart),
     constant: estimateValue(law.constant),
+    exponent: estimateValue(law.exponent),
     ratio: last === undefined ? refusedValue(missing ?? notReached(law, upTo)) : ratioOf(last, missing),
     omitted: exactValue(tailProbability(law, upTo).omitted),
   };
@@ -112,6 +115,13 @@ function compare(
     return { n, exact: "refused" in exact ? null : exact, law: tailProbability(law, n).probability };
   });
   return { compared, missing };
+}
+
+function singularityWords(law: TailLaw): string {
+  if (law.kind === "power")
+    return "Singularity (1 − s)^d at s = 1, read where the trajectory enters the node; one term";
+  if (law.kind === "logarithmic") return "Logarithmic singularity at s = 1, in closed form; one term";
+  return `Square-root singularity at s0, ${law.terms === 1 ? "one term" : `${law.terms} terms`}`;
 }
 
 function notReached({ period, offset }: TailLaw, n: number): string {

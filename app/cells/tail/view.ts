@@ -1,6 +1,4 @@
 import type { Figure, Series, TableData } from "../../figures/index.ts";
-import type { Value } from "../../formulas/index.ts";
-import { toDouble } from "../../formulas/index.ts";
 import { doubleProbability, log10Probability } from "../counts/law.ts";
 import { labelledAxis } from "../figure-parts.ts";
 import type { Presentation } from "../presentation.ts";
@@ -9,12 +7,14 @@ import { tabulatedCounts } from "../process/thinning.ts";
 import { tableEntry } from "../table-parts.ts";
 import type { CellView } from "../types.ts";
 import { exactValue, refusedValue, scaledValue, shortNumber } from "../values.ts";
-import { ratioOf } from "./law.ts";
+import { numberOf, ratioOf } from "./law.ts";
 import type { Comparison, TailData } from "./model.ts";
+import { powerFigure } from "./power-view.ts";
 
 /** Exact over asymptotic against n: what one term of the law is good for, and from which n on. */
 export function viewTail(data: TailData, presentation: Presentation): CellView {
   const compared = data.compared.filter(({ exact }) => exact !== null);
+  if (data.law.kind !== "square-root") return { ...tables(data), figure: powerFigure(data, compared, presentation) };
   const ratios = compared.map((comparison) => numberOf(ratioOf(comparison, data.missing)));
   const remarks = data.missing === null ? [] : [data.missing];
   const figure: Figure = {
@@ -37,9 +37,12 @@ export function viewTail(data: TailData, presentation: Presentation): CellView {
     levels: [{ label: "1", y: 1 }],
     remarks,
   };
+  return { ...tables(data), figure };
+}
+
+function tables(data: TailData): Omit<CellView, "figure"> {
   const tabulated = new Set(tabulatedCounts(data.upTo));
   return {
-    figure,
     table: tailTable(
       data,
       data.compared.filter(({ n }) => tabulated.has(n)),
@@ -80,11 +83,6 @@ function tailTable(data: TailData, rows: readonly Comparison[]): TableData {
     ]),
     remarks: data.missing === null ? [] : [data.missing],
   };
-}
-
-function numberOf(value: Value): { ratio: number; error: number } {
-  if (value.type !== "number") return { ratio: Number.NaN, error: 0 };
-  return { ratio: toDouble(value.quantity), error: value.quantity.error };
 }
 
 function alternative(data: TailData): string {
