@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import { toDouble } from "../../app/formulas/index.ts";
 import { integrable, references } from "../solvers/reference.ts";
-import { cell, computed, LARVAE, planOf, quantityOf } from "./papers.ts";
+import { cell, computed, keyOf, LARVAE, plannedCell, planOf, quantityOf, valueIn } from "./papers.ts";
 
 const READ = `${cell("counts K", "of: larvae", "start: 1")}${cell("profile w", "of: larvae")}`;
 
@@ -60,6 +60,26 @@ describe("roots in a parameter, everything that reads it computed again", () => 
     // Computed by an independent method: log10 P(K = 1000) at drift 2.
     expect(root).toBeCloseTo(2, 12);
     expect(planOf(text).problems).toEqual([]);
+  });
+});
+
+describe("a root among other cells", () => {
+  const root = cell("solve r", "vary: mu", "between: 3 to 6", "where: K.s0 - 20");
+
+  test("does not hang from the value that the varied parameter has now, but from all others", () => {
+    const text = `${LARVAE}${READ}${root}`;
+    expect(keyOf(text, "r", { mu: "3" })).toBe(keyOf(text, "r", { mu: "4" }));
+    expect(keyOf(text, "r", { beta: "2" })).not.toBe(keyOf(text, "r"));
+    expect(plannedCell(planOf(text), "r").parameters).toEqual(["beta"]);
+  });
+
+  test("is found again for each row of a table that varies another parameter", () => {
+    const text = `${LARVAE}${READ}${root}${cell("table t", "rows: {beta: [1, 1.2]}", "columns: {root: r.root}")}`;
+    for (const [row, beta] of [1, 1.2].entries()) {
+      const inRow = quantityOf(valueIn(text, `t.root(${row + 1})`));
+      const alone = quantityOf(valueIn(text, "r.root", { beta: String(beta) }));
+      expect(inRow).toEqual(alone);
+    }
   });
 });
 
@@ -124,7 +144,7 @@ describe("what cannot be solved says so", () => {
     ["between: 3", "`between` takes an interval"],
     ["between: 3 to 2", "the second end must be the larger one"],
     ["between: 2 to 2", "`between` begins and ends at 2"],
-    ["between: 1 to mu + 1", "computed from `mu` itself"],
+    ["between: 1 to mu + 1", "depends on `mu`, which this cell varies"],
     ["vary: 2x", "is not a name"],
     ["vary: K", "is the name of a cell"],
   ])("%s", (line, message) => {
