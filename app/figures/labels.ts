@@ -50,7 +50,7 @@ export function placeLabels(sides: Side, at: LabelFrame): readonly PlacedLabel[]
 function placeSide(labels: readonly SideLabel[], side: "start" | "end", at: LabelFrame): readonly PlacedLabel[] {
   const { inner, unit } = at;
   const wanted = labels.map((label) => Math.min(inner.bottom, Math.max(inner.top, at.toY(label.y))));
-  const placed = spread(wanted, LABEL_GAP * unit, inner.top - 4 * unit, at.frame.bottom);
+  const placed = spread(wanted, LABEL_GAP * unit, inner.top - 4 * unit, at.frame.bottom - 2 * unit);
   const outward = side === "start" ? -1 : 1;
   return labels.map((label, i): PlacedLabel => {
     const from: Point = { x: at.toX(label.x), y: wanted[i] ?? 0 };

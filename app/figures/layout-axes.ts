@@ -49,10 +49,50 @@ export function placeXLabel(
   return { label, from: fits ? Number.POSITIVE_INFINITY : frame.right - own };
 }
 
-/** A tick of the horizontal axis at its place; its number gives way to the axis' variable. */
-export function placedTick(tick: Tick, position: number, xLabel: PlacedXLabel | null, fontSize: number): PlacedTick {
-  const end = position + runsWidth(tick.runs, fontSize) / 2 + fontSize * 0.3;
-  return { ...tick, position, shown: xLabel === null || end < xLabel.from };
+/**
+ * As many ticks of the horizontal axis as were wanted, or so many fewer that their numbers stand apart.
+ * @param ticksFor ticks for about so many
+ */
+export function ticksApart(
+  ticksFor: (wanted: number) => readonly Tick[],
+  wanted: number,
+  toX: (at: number) => number,
+  fontSize: number,
+): readonly Tick[] {
+  for (let count = wanted; count > 2; count -= 1) {
+    const ticks = ticksFor(count);
+    if (ticks.every((tick, i) => i === 0 || standApart(ticks[i - 1], tick, toX, fontSize))) return ticks;
+  }
+  return ticksFor(2);
+}
+
+/**
+ * Ticks of the horizontal axis at their places; a number gives way to the one before it, to the axis' variable and to the
+ * edges of the plate.
+ */
+export function placedTicks(
+  ticks: readonly Tick[],
+  toX: (at: number) => number,
+  xLabel: PlacedXLabel | null,
+  width: number,
+  fontSize: number,
+): readonly PlacedTick[] {
+  let last: Tick | undefined;
+  return ticks.map((tick) => {
+    const position = toX(tick.at);
+    const half = runsWidth(tick.runs, fontSize) / 2;
+    const isFree = xLabel === null || position + half + fontSize * 0.3 < xLabel.from;
+    const isInside = position - half >= 0 && position + half <= width;
+    const shown = isFree && isInside && standApart(last, tick, toX, fontSize);
+    if (shown) last = tick;
+    return { ...tick, position, shown };
+  });
+}
+
+function standApart(a: Tick | undefined, b: Tick, toX: (at: number) => number, fontSize: number): boolean {
+  if (a === undefined) return true;
+  const half = (runsWidth(a.runs, fontSize) + runsWidth(b.runs, fontSize)) / 2;
+  return toX(b.at) - toX(a.at) >= half + fontSize * 0.4;
 }
 
 /** The variable of the vertical axis stands above its numbers. */

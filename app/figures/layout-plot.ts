@@ -3,13 +3,13 @@ import { labelsOfDots, placeDotLabels } from "./dot-labels.ts";
 import { labelBox, seriesInk } from "./ink.ts";
 import { type LabelRun, labelRuns } from "./label.ts";
 import { placeLabels } from "./labels.ts";
-import { placedTick, placeTopLabels, placeXLabel, placeYLabel, TOP_ROW } from "./layout-axes.ts";
+import { placedTicks, placeTopLabels, placeXLabel, placeYLabel, TOP_ROW, ticksApart } from "./layout-axes.ts";
 import { placeSeries } from "./layout-series.ts";
 import { runsWidth } from "./measure.ts";
 import { seriesColours } from "./palette.ts";
 import type { PlacedLine, PlateSize, PlotLayout } from "./plot-layout.ts";
 import { type Ends, isWithin, plotted, xEnds, yEnds } from "./range.ts";
-import { sideRoom, startLabelsGiveScale, wantedLabels } from "./side-labels.ts";
+import { fittingLabels, sideRoom, startLabelsGiveScale, wantedLabels } from "./side-labels.ts";
 import { linearTicks, logTicks, type Tick } from "./ticks.ts";
 import type { Axis, Figure, Level } from "./types.ts";
 
@@ -20,6 +20,9 @@ const Y_TICK_ROOM = 3.4;
 /** Numbers of the vertical axis stand at least this many font sizes apart. */
 const Y_TICK_GAP = 1.4;
 
+/** Share of the width that numbers and labels may take at either side. */
+const MOST_BESIDE = 0.42;
+
 /** Lays out one pair of axes: axis ends, ticks, paths and labels. Insets and panels are not its business. */
 export function layoutPlot(figure: Figure, size: PlateSize): PlotLayout {
   const fontSize = size.fontSize ?? FONT_SIZE;
@@ -27,10 +30,9 @@ export function layoutPlot(figure: Figure, size: PlateSize): PlotLayout {
   const x = xEnds(figure);
   const y = yEnds(figure);
   const labelsAreTicks = startLabelsGiveScale(figure, x);
-  const wanted = wantedLabels(figure, x, y, labelsAreTicks);
+  const all = wantedLabels(figure, x, y, labelsAreTicks);
   const height =
-    size.height ??
-    naturalHeight(size.width, fontSize, Math.max(wanted.left.length, wanted.right.length), !labelsAreTicks);
+    size.height ?? naturalHeight(size.width, fontSize, Math.max(all.left.length, all.right.length), !labelsAreTicks);
   const yTicksWanted = labelsAreTicks
     ? []
     : ticksOf(figure.y, y, Math.max(2, Math.round((height - 4 * fontSize) / (Y_TICK_ROOM * fontSize))));
@@ -39,9 +41,11 @@ export function layoutPlot(figure: Figure, size: PlateSize): PlotLayout {
     yTicksWanted.map((tick) => tick.runs),
     fontSize,
   );
+  const room = size.width * MOST_BESIDE;
+  const ticksRoom = tickWidth > 0 ? tickWidth + 12 * unit : 4 * unit;
+  const wanted = labelsAreTicks ? all : fittingLabels(all, room - ticksRoom, room, fontSize);
   const startRoom = sideRoom(wanted.left, x, "start", size.width, fontSize);
-  const room = size.width * 0.42;
-  const left = Math.min(room, (tickWidth > 0 ? tickWidth + 12 * unit : 4 * unit) + startRoom);
+  const left = Math.min(room, ticksRoom + startRoom);
   const right = size.width - Math.min(room, Math.max(6 * unit, sideRoom(wanted.right, x, "end", size.width, fontSize)));
   const toX = (at: number) => left + ((at - x.low) / (x.high - x.low)) * (right - left);
   const yLabel = placeYLabel(yLabelRuns, figure.y.label, left, size.width, fontSize);
@@ -66,7 +70,8 @@ export function layoutPlot(figure: Figure, size: PlateSize): PlotLayout {
   const series = figure.series.map((one, i) =>
     placeSeries(one, colours[i] ?? "ink", figure, { ...placing, share: shares[i] ?? 1 }),
   );
-  const xTicks = ticksOf(figure.x, x, Math.max(2, Math.round((right - left) / (X_TICK_ROOM * fontSize))));
+  const xTicksWanted = Math.max(2, Math.round((right - left) / (X_TICK_ROOM * fontSize)));
+  const xTicks = ticksApart((count) => ticksOf(figure.x, x, count), xTicksWanted, toX, fontSize);
   const xLabel = placeXLabel(labelRuns(figure.x.label), figure.x.label, xTicks, frame, toX, size.width, fontSize);
   const labels = placeLabels(wanted, { frame, inner, toX, toY, unit, fontSize, tickWidth });
   const levels = figure.levels.flatMap((level) => placedLevel(level, figure.y, y, toY, labelsAreTicks));
@@ -115,7 +120,7 @@ export function layoutPlot(figure: Figure, size: PlateSize): PlotLayout {
     inner,
     x,
     y,
-    xTicks: xTicks.map((tick) => placedTick(tick, toX(tick.at), xLabel, fontSize)),
+    xTicks: placedTicks(xTicks, toX, xLabel, size.width, fontSize),
     yTicks: thinned(yTicksWanted, toY, Y_TICK_GAP * fontSize).map((tick) => ({
       ...tick,
       position: toY(tick.at),

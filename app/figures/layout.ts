@@ -37,6 +37,8 @@ const LEAST_PANEL = 19;
 /** Between panels, and between a plot and an inset that stands under it; in font sizes. */
 const PANEL_GAP = 2;
 const HEAD_HEIGHT = 1.8;
+/** Between the axes of an inset. */
+const LEAST_HEIGHT = 4;
 /** A plot with an inset is higher, to make room for it. */
 const HEIGHT_WITH_INSET = 1.2;
 
@@ -72,9 +74,10 @@ function layoutWithInset(figure: Figure, inset: Inset, size: PlateSize): FigureL
     size.height ?? Math.round(layoutPlot(figure, { width: size.width, fontSize }).height * HEIGHT_WITH_INSET);
   const roomy = layoutPlot(figure, { ...size, height });
   const corner = freeCorner(roomy, inset.corner);
-  if (corner) {
-    const width = corner.right - corner.left;
-    const within = layoutFigure(inset.figure, { width, height: corner.bottom - corner.top, fontSize });
+  const within =
+    corner &&
+    layoutFigure(inset.figure, { width: corner.right - corner.left, height: corner.bottom - corner.top, fontSize });
+  if (corner && within?.plots.every(({ plot }) => isLegible(plot))) {
     return {
       width: size.width,
       height,
@@ -91,6 +94,12 @@ function layoutWithInset(figure: Figure, inset: Inset, size: PlateSize): FigureL
     fontSize,
     plots: [{ figure, plot: main, left: 0, top: 0, head: null }, ...moved(below.plots, 0, top)],
   };
+}
+
+/** Whether a plot of a given height has room for its labels one above the other, and for its curves. */
+function isLegible({ frame, labels, fontSize }: PlotLayout): boolean {
+  const height = frame.bottom - frame.top;
+  return height >= Math.max(LEAST_HEIGHT, labels.length * 1.2) * fontSize;
 }
 
 function layoutPanels(panels: readonly Panel[], size: PlateSize): FigureLayout {

@@ -9,12 +9,20 @@ export interface Ends {
 /** A positive quantity whose smallest value is below this share of its largest is drawn from 0. */
 const SHARE_FROM_ZERO = 0.4;
 
+/** Beyond this a linear axis has no room; below its inverse all is 0: lengths of axes stay ordinary numbers. */
+const LARGEST = 1e300;
+/** Ends nearer than this, relative to themselves, are one: doubles cannot tell places between them. */
+const SAME = 1e-12;
+
 /**
  * Where a value stands on its axis: itself, or its log10; null where it cannot stand there (a gap; not positive on a log axis).
  * @param log10 the value's log10 where the value itself is below the double's range
  */
 export function plotted(axis: Axis, value: number | null, log10?: number | null): number | null {
-  if (axis.scale === "linear") return value !== null && Number.isFinite(value) ? value : null;
+  if (axis.scale === "linear") {
+    if (value === null || !(Math.abs(value) < LARGEST)) return null;
+    return Math.abs(value) < 1 / LARGEST ? 0 : value;
+  }
   if (log10 !== undefined && log10 !== null) return Number.isFinite(log10) ? log10 : null;
   return value !== null && value > 0 && Number.isFinite(value) ? Math.log10(value) : null;
 }
@@ -85,7 +93,7 @@ export const isWithin = (at: number | null, { low, high }: Ends): at is number =
 function chosenEnds(axis: Axis): Ends | null {
   if (!axis.range) return null;
   const [a, b] = axis.range.map((value) => plotted(axis, value));
-  return a !== null && b !== null && a !== undefined && b !== undefined && a < b ? { low: a, high: b } : null;
+  return a !== null && b !== null && a !== undefined && b !== undefined && areApart(a, b) ? { low: a, high: b } : null;
 }
 
 /** A single value, or none, still gets an axis with room around it. */
@@ -93,10 +101,12 @@ function widened(values: readonly number[]): Ends {
   if (values.length === 0) return { low: 0, high: 1 };
   const low = minimum(values);
   const high = maximum(values);
-  if (low < high) return { low, high };
+  if (areApart(low, high)) return { low, high };
   const room = low === 0 ? 1 : Math.abs(low) * 0.1;
   return { low: low - room, high: high + room };
 }
+
+const areApart = (low: number, high: number): boolean => high - low > SAME * Math.max(Math.abs(low), Math.abs(high));
 
 function push(values: number[], value: number | null): void {
   if (value !== null && Number.isFinite(value)) values.push(value);

@@ -85,6 +85,23 @@ function labelledPoint(figure: Figure, series: Series, x: Ends): Point | null {
   return null;
 }
 
+/** Labels too wide for the room at their side stand within the plot, as those of curves that end there. */
+export function fittingLabels(
+  { left, right, within }: WantedLabels,
+  leftRoom: number,
+  rightRoom: number,
+  fontSize: number,
+): WantedLabels {
+  const fits = (room: number) => (label: SideLabel) =>
+    runsWidth(label.runs, fontSize) + LABEL_DISTANCE * fontSize <= room;
+  const [fitsLeft, fitsRight] = [fits(leftRoom), fits(rightRoom)];
+  return {
+    left: left.filter(fitsLeft),
+    right: right.filter(fitsRight),
+    within: [...within, ...left.filter((one) => !fitsLeft(one)), ...right.filter((one) => !fitsRight(one))],
+  };
+}
+
 /** Room beside the plot for labels of curves; one whose curve begins or ends within the plot stands there and needs less. */
 export function sideRoom(
   labels: readonly SideLabel[],

@@ -116,7 +116,7 @@ export const jump: Figure = figure({
     { label: "\\sqrt{2\\beta}+0.1", x: CRITICAL + 0.1 },
   ],
   levels: [{ label: "1", y: 1 }],
-  remarks: ["The curve jumps at μ = CRITICAL."],
+  remarks: ["The curve jumps at μ = √2."],
 });
 
 /** Bands: one round its curve, one alone, and a curve with a gap. */
