@@ -28,6 +28,8 @@ export interface Places {
     readonly element: Element | null;
   })[];
   readonly indices: readonly Index[];
+  /** Of the rule, beneath which the heads stay [px]. */
+  readonly ruleHeight: number;
   /** From where to where the section in view goes. */
   readonly section: { readonly from: number; readonly to: number };
 }
@@ -54,6 +56,7 @@ export function readPlaces({ view, column, rule }: Grounds): Places {
     cells: readCells(view.contentDOM, origin),
     quotes: [...readQuotes(column, origin), ...readOpened(view, origin)],
     indices: rule === null || ruleBox === null ? [] : readIndices(rule, ruleBox, origin),
+    ruleHeight: rule?.offsetHeight ?? 0,
     section: readSection(view.contentDOM, origin, viewTop + (viewBottom - viewTop) / 3),
   };
 }

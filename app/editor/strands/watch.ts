@@ -29,6 +29,10 @@ export interface StrandsView {
   readonly ruleHeight: number;
 }
 
+/** Strands follow the letters of a line when the keys have rested so long, and after so long at the latest [ms]. */
+const REST_MS = 160;
+const LONGEST_REST_MS = 1000;
+
 /**
  * Watches the text, the page and the hand, and keeps the strands right:
  *
@@ -50,6 +54,8 @@ export class StrandWatch {
   private reach: { of: readonly unknown[]; found: Reach } | null = null;
   private sign = "";
   private ticking = false;
+  private soon: ReturnType<typeof setTimeout> | undefined;
+  private firstAsked: number | null = null;
   private ended = false;
   private places: Places | null = null;
 
@@ -93,11 +99,22 @@ export class StrandWatch {
   /** Asks for one measuring before the next paint. */
   ask(): void {
     if (this.ended) return;
+    clearTimeout(this.soon);
+    this.firstAsked = null;
     this.view.requestMeasure({
       key: this,
       read: () => readPlaces(this.grounds()),
       write: (places: Places) => this.draw(places),
     });
+  }
+
+  /** Asks when nothing has changed for a moment, or after a few moments of changes. */
+  askSoon(): void {
+    const now = Date.now();
+    this.firstAsked ??= now;
+    clearTimeout(this.soon);
+    const wait = Math.min(REST_MS, Math.max(0, this.firstAsked + LONGEST_REST_MS - now));
+    this.soon = setTimeout(() => this.ask(), wait);
   }
 
   cycleMode(): void {
@@ -109,14 +126,19 @@ export class StrandWatch {
 
   end(): void {
     this.ended = true;
+    clearTimeout(this.soon);
     this.lights.end();
     for (const end of this.ends) end();
   }
 
+  /**
+   * Letters move at most the numbers after them on their line: strands follow when the keys rest. What is lower or
+   * higher than before (a new line, a plate that grew), or under another caret, is measured at once.
+   */
   private onUpdate(update: ViewUpdate): void {
     const sheetChanged = update.startState.field(sheetField) !== update.state.field(sheetField);
-    if (update.docChanged || update.selectionSet || sheetChanged || update.geometryChanged || update.viewportChanged)
-      this.ask();
+    if (update.heightChanged || update.viewportChanged || (update.selectionSet && !update.docChanged)) this.ask();
+    else if (update.docChanged || sheetChanged || update.geometryChanged) this.askSoon();
   }
 
   private watchPage(sheet: HTMLElement): void {
@@ -173,7 +195,7 @@ export class StrandWatch {
 
   private drawHeads(places: Places, viewTop: number): void {
     const { picture, mode, heads } = this.store.get();
-    const ruleHeight = this.grounds().rule?.offsetHeight ?? 0;
+    const { ruleHeight } = places;
     if (picture === null || mode === "hidden") {
       this.store.set({ heads: heads.length === 0 ? heads : [], ruleHeight });
       return;
