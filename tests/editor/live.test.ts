@@ -35,6 +35,7 @@ describe("what is heard", () => {
     sound: true,
     key: slot,
     strands: [],
+    hangs: "",
     changed: [],
     needs: null,
     viewSign: "",

@@ -204,6 +204,8 @@ export interface CellFace {
   readonly key: string | null;
   /** Places in the rule of the parameters it hangs from, in the order of the rule. */
   readonly strands: readonly number[];
+  /** "hangs from mu and beta": what the strands show, for whoever listens; "" where it hangs from none. */
+  readonly hangs: string;
   /** Those of them whose change has put it out of date. */
   readonly changed: readonly number[];
   /** For waiting: the cell it needs. */

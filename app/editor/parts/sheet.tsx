@@ -1,5 +1,6 @@
 import { type RefObject, useEffect, useRef, useState } from "react";
 import { Desk } from "../live/desk.ts";
+import { NumberSlip } from "../strands/number-slip.tsx";
 import { SheetStrands } from "../strands/sheet-strands.tsx";
 import { StrandHeads } from "../strands/strand-heads.tsx";
 import { useStrandWatch } from "../strands/use-strands.ts";
@@ -35,6 +36,9 @@ export default function Sheet(props: SheetPageProps) {
         {desk === null ? null : <BibliographyPlace desk={desk} />}
       </main>
       {desk === null ? null : <SheetTail desk={desk} writes={props.writes} strands={strands} />}
+      {desk === null || strands === null ? null : (
+        <NumberSlip desk={desk} watch={strands} sheet={sheet} writes={props.writes} />
+      )}
     </div>
   );
 }

@@ -40,6 +40,7 @@ export function StateLine({ face, open, host }: Props) {
       {face.state === "current" || face.state === "preview" ? (
         <Runs className="hl-provenance" runs={face.provenance} macros={host.macros} />
       ) : null}
+      {face.hangs === "" ? null : <span className="hl-said">, {face.hangs}. </span>}
       <span className="hl-offers">
         {offers.map((offer) => (
           <OfferOf key={offer} offer={offer} face={face} host={host} />

@@ -14,7 +14,7 @@ import { type CellNode, type Paper, walk } from "../../paper/index.ts";
 import { isPlainNumber, shownValue } from "../model/scale.ts";
 import type { CellFace } from "../model/types.ts";
 import { moment, stateWords } from "./cell-words.ts";
-import type { NumberFaces } from "./number-faces.ts";
+import { hangsWords, type NumberFaces } from "./number-faces.ts";
 import { runsOf } from "./runs.ts";
 
 /** All that is known of a cell when its face is drawn. */
@@ -101,6 +101,7 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
       sound: planned.key !== null,
       key: planned.key,
       strands: planned.parameters.flatMap((name) => strands.get(name) ?? []),
+      hangs: hangsWords(planned.parameters),
       changed: state.causes.flatMap((cause) => (cause.cause === "parameter" ? (strands.get(cause.name) ?? []) : [])),
       needs: waited === undefined ? null : { title: titleOfId(waited.id), slot: waited.slot },
       viewSign: result === undefined ? "" : viewSign(result, planned, drawing.plan),

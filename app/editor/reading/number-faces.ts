@@ -58,7 +58,7 @@ function faceOf(
     parameters.some((name) => tried.has(name)),
   );
   const from = cells.length === 0 ? "" : `from ${listed(cells.map(({ title }) => title))}, `;
-  const hangs = parameters.length === 0 ? "" : `hangs from ${listed(parameters)}, `;
+  const hangs = parameters.length === 0 ? "" : `${hangsWords(parameters)}, `;
   const reason = printed !== null ? "" : (problem ?? (value.type === "refused" ? value.reason : ""));
   const said = `${from}${hangs}${SAID[state]}${reason === "" ? "" : `: ${reason}`}`;
   const face = {
@@ -122,6 +122,11 @@ const SAID: Readonly<Record<NumberState, string>> = {
   empty: "not computed",
   preview: "tried, not kept",
 };
+
+/** "hangs from mu and beta". */
+export function hangsWords(parameters: readonly string[]): string {
+  return parameters.length === 0 ? "" : `hangs from ${listed(parameters)}`;
+}
 
 function listed(things: readonly string[]): string {
   return things.length < 2 ? (things[0] ?? "") : `${things.slice(0, -1).join(", ")} and ${things.at(-1)}`;

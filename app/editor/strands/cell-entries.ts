@@ -6,6 +6,8 @@ export interface Entries {
   readonly ring: number;
   /** The entries stand too close for a letter at each: letters in a row. */
   readonly tight: boolean;
+  /** They stand so close that a letter has to be small. */
+  readonly small: boolean;
 }
 
 /** Between two entries, between the last one and the ring [px]. */
@@ -23,18 +25,22 @@ export function entriesOf(box: NonNullable<SceneCell["box"]>, strands: number, q
   const { top, bottom, caption } = box;
   if (caption - top > FIGURE) {
     const gap = Math.min(GAP, (caption - top - 44) / Math.max(1, strands));
-    return { ys: rising(top + 30, gap, strands), ring: caption, tight: gap < LETTER };
+    return { ys: rising(top + 30, gap, strands), ring: caption, ...closeness(gap) };
   }
-  if (strands === 0) return { ys: [], ring: caption, tight: false };
+  if (strands === 0) return { ys: [], ring: caption, ...closeness(GAP) };
   const gap = Math.min(GAP, (bottom - top + 2 * BEYOND) / (strands + Number(quoted)));
   if (gap < GAP) {
     const first = top - BEYOND + gap / 2;
-    return { ys: rising(first, gap, strands), ring: first + gap * strands, tight: gap < LETTER };
+    return { ys: rising(first, gap, strands), ring: first + gap * strands, ...closeness(gap) };
   }
   const ys = rising(top + 6, gap, strands);
-  return { ys, ring: Math.min(bottom, (ys.at(-1) ?? top) + RING_GAP), tight: false };
+  return { ys, ring: Math.min(bottom, (ys.at(-1) ?? top) + RING_GAP), ...closeness(GAP) };
 }
 
 function rising(first: number, gap: number, count: number): number[] {
   return Array.from({ length: count }, (_, k) => first + gap * k);
+}
+
+function closeness(gap: number): Pick<Entries, "tight" | "small"> {
+  return { tight: gap < LETTER, small: gap < GAP };
 }

@@ -48,7 +48,7 @@ class Walk {
     const station = this.stations.pop();
     if (station === undefined) return false;
     const { length } = this.view.state.doc;
-    this.trail.lights.follow(null);
+    this.trail.lights.letGo();
     this.view.focus();
     this.view.dispatch({
       selection: { anchor: Math.min(station.anchor, length), head: Math.min(station.head, length) },
@@ -63,7 +63,7 @@ class Walk {
     if (at === null) return false;
     this.leave();
     this.view.dispatch({ effects: EditorView.scrollIntoView(at, { y: "center" }) });
-    this.trail.lights.follow(slot);
+    this.trail.lights.hold(slot);
     this.focusPlate(slot, PATIENCE);
     return true;
   }

@@ -14,12 +14,13 @@ export function GlossText({ gloss }: { readonly gloss: Gloss }) {
           <Lead {...lead} />
         </div>
       ))}
-      {gloss.where === "" ? null : <div>{gloss.where}</div>}
+      {gloss.lead.length === 0 || gloss.where === "" ? null : <div>{gloss.where}</div>}
       {gloss.parameters.length === 0 ? null : (
-        <div>
+        <div className={gloss.lead.length === 0 ? "hl-gloss-lead" : ""}>
           <ParameterValues parameters={gloss.parameters} />
         </div>
       )}
+      {gloss.lead.length > 0 || gloss.where === "" ? null : <div>{gloss.where}</div>}
       {gloss.also === "" ? null : <div>{gloss.also}</div>}
     </>
   );

@@ -87,7 +87,7 @@ function glossOfCell(cell: CellFace, model: Known, reach: Reach): Gloss {
 function glossOfParameter(parameter: ParameterFace, place: number, model: Known): Gloss {
   const cells = model.cells.filter(({ strands }) => strands.includes(place));
   const named = cells.slice(0, NAMED).map(({ title }) => title);
-  const more = cells.length > NAMED ? [...named.slice(0, 2), counted(cells.length - 2, "cell")] : named;
+  const more = cells.length > NAMED ? [...named.slice(0, 2), `${cells.length - 2} more cells`] : named;
   return {
     lead: [],
     where: parameter.note,

@@ -64,8 +64,7 @@ function runOf(scene: Scene, cell: SceneCell, ties: TieLines, lighting: Lighting
   const leavesAbove = cell.above || all.some((y) => y < top);
   const leavesBelow = cell.below || all.some((y) => y > bottom);
   // Of a cord that only passes through, nothing can be told but that it is long.
-  if (ys.length === 0 && !(lit && leavesAbove && leavesBelow)) return null;
-  if (ys.length < 2 && !leavesAbove && !leavesBelow) return null;
+  if (ys.length === 0 || (ys.length === 1 && !leavesAbove && !leavesBelow)) return null;
   const ends = lines
     .filter(({ y }) => inView(y))
     .map(({ id, y, quotes }): End => {

@@ -17,7 +17,7 @@ interface Hanging {
   readonly x: number;
   readonly dashed: boolean;
   readonly tie: End | null;
-  readonly letter: { readonly id: string; readonly x: number; readonly y: number } | null;
+  readonly letter: StrandDrawing["letters"][number] | null;
 }
 
 export interface LaidStrands {
@@ -51,7 +51,7 @@ function hangings(scene: Scene, ties: TieLines): Hanging[][] {
   const made: Hanging[][] = scene.strands.map(() => []);
   for (const cell of scene.cells) {
     if (cell.box === null) continue;
-    const { ys, tight } = entriesOf(cell.box, cell.strands.length, cell.quoted);
+    const { ys, tight, small } = entriesOf(cell.box, cell.strands.length, cell.quoted);
     const end = frame.size === "narrow" ? frame.edge : frame.edge - 8;
     const middle = ((ys[0] ?? 0) + (ys.at(-1) ?? 0)) / 2;
     const row = Math.min(end, ROW_END - LETTER_WIDTH * cell.strands.length - TO_LETTER);
@@ -64,7 +64,12 @@ function hangings(scene: Scene, ties: TieLines): Hanging[][] {
         dashed: cell.state !== "stands" && cell.changed.includes(place),
         tie: null,
         letter: frame.letters
-          ? { id: `${cell.slot} ${place}`, x: x + TO_LETTER + (tight ? LETTER_WIDTH * k : 0), y: tight ? middle : y }
+          ? {
+              id: `${cell.slot} ${place}`,
+              x: x + TO_LETTER + (tight ? LETTER_WIDTH * k : 0),
+              y: tight ? middle : y,
+              small,
+            }
           : null,
       });
     });

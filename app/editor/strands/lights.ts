@@ -33,7 +33,7 @@ export class Lights {
     sheet.addEventListener("focusin", (event) => this.focus(event.target), { signal });
     sheet.addEventListener("focusout", () => this.focus(null), { signal });
     for (const name of ["pointerdown", "keydown"] as const) {
-      sheet.addEventListener(name, () => this.follow(null), { signal, capture: true });
+      sheet.addEventListener(name, ({ target }) => isCommand(target) || this.letGo(), { signal, capture: true });
     }
   }
 
@@ -42,10 +42,16 @@ export class Lights {
     this.listening.abort();
   }
 
-  /** Lights a cell until a key or the pointer is pressed. */
-  follow(slot: string | null): void {
-    if (slot === null && this.followed === null) return;
-    this.followed = slot === null ? null : { on: "cell", slot };
+  /** Lights a cell, or the number set in an element, until a key or the pointer is pressed. */
+  hold(what: string | Element): void {
+    this.followed = typeof what === "string" ? { on: "cell", slot: what } : { on: "number", element: what };
+    this.onChange();
+  }
+
+  /** Ends what `hold` began. */
+  letGo(): void {
+    if (this.followed === null) return;
+    this.followed = null;
     this.onChange();
   }
 
@@ -63,7 +69,7 @@ export class Lights {
     switch (target.on) {
       case "number": {
         const quote = quotes.find(({ id }) => id === idOf(target.element));
-        return quote === undefined ? null : { lit: "number", ...quote, pointed: true };
+        return quote === undefined ? null : { lit: "number", ...quote, pointed: pointed !== null };
       }
       case "cell":
         return { lit: "cord", slot: target.slot, pointed: pointed !== null };
@@ -91,6 +97,11 @@ export class Lights {
     this.focused = target;
     this.onChange();
   }
+}
+
+/** Commands about what is lit are no reason to let it go. */
+function isCommand(target: EventTarget | null): boolean {
+  return target instanceof Element && target.closest(".tail, .hl-slip") !== null;
 }
 
 function targetOf(at: EventTarget | null): Target | null {

@@ -35,8 +35,8 @@ export function StrandsDrawing({ watch, parameters }: Props) {
         </g>
       </svg>
       {strands.map(({ place, letters, lit }) =>
-        letters.map(({ id, x, y }) => (
-          <Letter key={id} place={place} tex={symbols[place] ?? ""} x={x} y={y} lit={lit} />
+        letters.map(({ id, x, y, small }) => (
+          <Letter key={id} place={place} tex={symbols[place] ?? ""} x={x} y={y} small={small} lit={lit} />
         )),
       )}
     </div>

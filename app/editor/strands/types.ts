@@ -107,7 +107,7 @@ export interface StrandDrawing {
   readonly dashed: string;
   readonly dots: readonly { readonly x: number; readonly y: number }[];
   readonly ties: readonly End[];
-  readonly letters: readonly { readonly id: string; readonly x: number; readonly y: number }[];
+  readonly letters: readonly { readonly id: string; readonly x: number; readonly y: number; readonly small: boolean }[];
 }
 
 /** One strand of a cord: where it runs beneath the others, and where above them. */
