@@ -176,7 +176,7 @@ describe("at the critical drift", () => {
     expect(remarks).toContain("At μ = 1.414");
     const rates =
       SETUP + cell("sweep sw", "over: {mu: 1.2 to 3}", "vary: {beta: [1, 2]}", "points: 4", "record: {s0: w.s0}");
-    expect(figureIn(rates, "sw").remarks[0]).toContain("At μ = 1.414 (β = 1), μ = 2 (β = 2) the drift is critical");
+    expect(figureIn(rates, "sw").remarks[0]).toContain("At μ = 1.414 (β = 1) and μ = 2 (β = 2) the drift is critical");
   });
 });
 
@@ -187,6 +187,15 @@ describe("gaps", () => {
     expect(reasonOf(valueIn(text, "sw.lam(1)"))).toContain("between");
     expect(figure.remarks.join(" ")).toMatch(/No lam for μ from 1 to 1\.25: /);
     expect(figure.series[0]?.y.slice(0, 2)).toEqual([null, null]);
+  });
+
+  test("gaps of several curves for one reason are told together", () => {
+    const text =
+      LARVAE +
+      cell("sweep sw", "over: {mu: 1 to 3}", "vary: {beta: [1, 2]}", "points: 5", "record: {lambda: larvae.decay}");
+    const told = figureIn(text, "sw").remarks.filter((remark) => remark.startsWith("No "));
+    expect(told).toHaveLength(1);
+    expect(told[0]).toMatch(/^No λ for μ at 1 \(β = 1\) and from 1 to 1\.5 \(β = 2\): /);
   });
 
   test("where a cell refuses, every record of it gives the reason", () => {

@@ -4,6 +4,7 @@ import { shortNumber } from "../values.ts";
 import type { SweepCurve, SweepData } from "./model.ts";
 
 const MOST_GAPS = 4;
+const MOST_PLACES = 6;
 
 /** What the caption has to say: where curves break and why, and where something is missing and why. */
 export function sweepRemarks(data: SweepData, presentation: Presentation): readonly string[] {
@@ -23,37 +24,59 @@ function jumpRemarks(data: SweepData, presentation: Presentation): string[] {
       places.set(why, [...(places.get(why) ?? []), where]);
     }
   }
-  return [...places].map(([why, where]) => `At ${where.join(", ")} ${why}`);
+  return [...places].map(([why, where]) => `At ${listed(where)} ${why}`);
 }
 
+/** "No λ for μ from 1 to 1.414 (β = 1) and from 1 to 2 (β = 2): …", one sentence for each quantity and reason. */
 function gapRemarks(data: SweepData, presentation: Presentation): string[] {
-  const gaps = data.record.flatMap((name) => data.curves.flatMap((curve) => gapsOf(data, curve, name, presentation)));
-  const more = gaps.length - MOST_GAPS;
-  return more > 0 ? [...gaps.slice(0, MOST_GAPS), `And ${more} more ${more === 1 ? "gap" : "gaps"}.`] : gaps;
+  const over = labelText(presentation.symbolOf(data.over));
+  const remarks = data.record.flatMap((name) => {
+    const places = new Map<string, string[]>();
+    for (const curve of data.curves) {
+      const which = curveWords(data, curve, presentation);
+      for (const { from, to, reason } of gapsOf(curve, name)) {
+        const where = from === to ? `at ${shortNumber(from)}` : `from ${shortNumber(from)} to ${shortNumber(to)}`;
+        places.set(reason, [...(places.get(reason) ?? []), `${where}${which}`]);
+      }
+    }
+    const told = labelText(presentation.symbolOf(name));
+    return [...places].map(([reason, where]) => `No ${told} for ${over} ${listed(where)}: ${reason}`);
+  });
+  const more = remarks.length - MOST_GAPS;
+  return more > 0
+    ? [...remarks.slice(0, MOST_GAPS), `And ${more} more ${more === 1 ? "kind of gap" : "kinds of gap"}.`]
+    : remarks;
+}
+
+interface Gap {
+  readonly from: number;
+  readonly to: number;
+  readonly reason: string;
 }
 
 /** Neighbouring points without a value for one reason are one gap. */
-function gapsOf(data: SweepData, curve: SweepCurve, name: string, presentation: Presentation): string[] {
+function gapsOf(curve: SweepCurve, name: string): Gap[] {
   const order = [...curve.x.keys()].sort((a, b) => (curve.x[a] ?? 0) - (curve.x[b] ?? 0));
-  const gaps: { from: number; to: number; reason: string }[] = [];
-  let open = false;
+  const gaps: Gap[] = [];
+  let isOpen = false;
   for (const index of order) {
     const value = curve.recorded[index]?.[name];
     const x = curve.x[index] ?? Number.NaN;
     const last = gaps.at(-1);
-    if (value?.type !== "refused") open = false;
-    else if (open && last !== undefined && last.reason === value.reason) last.to = x;
+    if (value?.type !== "refused") isOpen = false;
+    else if (isOpen && last?.reason === value.reason) gaps[gaps.length - 1] = { ...last, to: x };
     else {
       gaps.push({ from: x, to: x, reason: value.reason });
-      open = true;
+      isOpen = true;
     }
   }
-  const over = labelText(presentation.symbolOf(data.over));
-  return gaps.map(({ from, to, reason }) => {
-    const where =
-      from === to ? `at ${over} = ${shortNumber(from)}` : `for ${over} from ${shortNumber(from)} to ${shortNumber(to)}`;
-    return `No ${labelText(presentation.symbolOf(name))} ${where}${curveWords(data, curve, presentation)}: ${reason}`;
-  });
+  return gaps;
+}
+
+function listed(parts: readonly string[]): string {
+  const shown =
+    parts.length > MOST_PLACES ? [...parts.slice(0, MOST_PLACES), `${parts.length - MOST_PLACES} more`] : parts;
+  return shown.length < 2 ? (shown[0] ?? "") : `${shown.slice(0, -1).join(", ")} and ${shown.at(-1)}`;
 }
 
 function curveWords({ vary }: SweepData, { at }: SweepCurve, presentation: Presentation): string {

@@ -1,4 +1,5 @@
 import type { TableColumn, TableData } from "../../figures/index.ts";
+import { labelText } from "../../figures/index.ts";
 import type { PrintOptions, Value } from "../../formulas/index.ts";
 import type { Yaml } from "../../paper/index.ts";
 import type { Presentation } from "../presentation.ts";
@@ -23,7 +24,7 @@ export function viewTable(data: TableCellData, presentation: Presentation): Cell
     ...rowNames.map((name) => tableEntry(data.rows[name]?.[row] ?? GAP)),
     ...names.map((name) => tableEntry(data.columns[name]?.[row] ?? GAP, looks.get(name)?.options ?? {})),
   ]);
-  const table: TableData = { columns, rows, remarks: reasonsForGaps(data, names, rowNames) };
+  const table: TableData = { columns, rows, remarks: reasonsForGaps(data, names, rowNames, presentation) };
   return { figure: null, table, points: null };
 }
 
@@ -67,12 +68,20 @@ function headOf(name: string, head: string | null): TableColumn {
   return { name, head: tex, tex: true };
 }
 
-function reasonsForGaps(data: TableCellData, names: readonly string[], rowNames: readonly string[]): string[] {
+function reasonsForGaps(
+  data: TableCellData,
+  names: readonly string[],
+  rowNames: readonly string[],
+  presentation: Presentation,
+): string[] {
   const reasons = names.flatMap((name) =>
     (data.columns[name] ?? []).flatMap((value, row) => {
       if (value.type !== "refused") return [];
       const where = rowNames
-        .map((rowName) => `${rowName} = ${tableEntry(data.rows[rowName]?.[row] ?? GAP).text}`)
+        .map(
+          (rowName) =>
+            `${labelText(presentation.symbolOf(rowName))} = ${tableEntry(data.rows[rowName]?.[row] ?? GAP).text}`,
+        )
         .join(", ");
       return [`No ${name} at ${where}: ${value.reason}`];
     }),
