@@ -63,7 +63,7 @@ export function questionsAbout(
   const distance = () => decimalNear((0.02 * 400 ** random()) / decay[0], 1 + Math.floor(17 * random()), random);
   const x = distance();
   const starts = randomStarts(x, distance, random);
-  const bits = last * perTerm + 3 * decay[0] * x.double;
+  const bits = last * perTerm + 3 * decay[0] * x.double + powerBits(model, last);
   const reference = new ReferenceAnswers(exact, Math.min(bits, 2500));
   const asked = { t, exact, reference, random };
   return [
@@ -73,6 +73,14 @@ export function questionsAbout(
     ...aboutLaw(asked, starts, last),
     ...(t.regime === "away" ? aboutLaw(asked, "far", last) : []),
   ];
+}
+
+/** Bits of n^{−1−d} at the largest n, where the law falls as a power. */
+function powerBits({ drift, rate, diffusion, offspring }: ExactModel["model"], last: number): number {
+  const description = describeProcess({ drift, rate, diffusion, offspring });
+  if (description.regime !== "toward") return 0;
+  const root = Math.sqrt(Math.max(0, drift * drift - 4 * diffusion * description.malthusian.value));
+  return (1 + (root - drift) / Math.max(1e-9, -drift - root)) * (1 + Math.log2(last));
 }
 
 interface Asked {
@@ -221,24 +229,19 @@ function aboutLaw({ t, reference, random }: Asked, exactStarts: ExactStarts, las
       "p_n",
       `n = ${n}`,
       () => absorbedProbability(t, starts, n),
-      () => real(at(law(), n)),
+      () => reference.probability(law(), n),
     );
     ask(
       "p_n of the law",
       `n = ${n}`,
       () => termOf(whole(), n),
-      () => real(at(law(), n)),
+      () => reference.probability(law(), n),
     );
     ask(
       "P(K > n)",
       `n = ${n}`,
       () => absorbedAbove(t, starts, n),
-      () => {
-        const below = law()
-          .slice(0, n + 1)
-          .reduce((sum, p) => sum + p, 0n);
-        return real(reference.f.one - below);
-      },
+      () => reference.above(law(), n),
     );
   }
   const settled = once(() => {

@@ -1,6 +1,6 @@
 import type { Decimal, ExactModel } from "./exact-model.ts";
 import { excessOf, toFixed } from "./exact-model.ts";
-import { Fixed, type Real } from "./fixed.ts";
+import { Fixed, lengthOf, type Real } from "./fixed.ts";
 import { fieldSeries, fixedPointSeries, flowSeries, linearisingAtOne, linearisingSeries, multiplied } from "./flow.ts";
 import { at, generating } from "./generating.ts";
 import { type Constants, constantsOf, ReferenceTrajectory } from "./reference-process.ts";
@@ -15,6 +15,8 @@ export type ExactStarts = readonly ExactStart[] | "far";
 
 /** Bits beyond those that the smallest value asked for needs. */
 const GUARD = 128;
+/** Bits that a probability must keep beyond what the recursion's rounding may have grown to. */
+const JUDGED = 90;
 /** Powers of t kept in the expansion at s0. */
 const SINGULAR_ORDER = 41;
 
@@ -103,6 +105,27 @@ export class ReferenceAnswers {
     const a = fieldSeries(f, constants, 0n, trajectory.at(place).slope, order);
     const start = trajectory.amplitude(place);
     return linearisingSeries(f, a, trajectory.decay, start, order).map((b, n) => (n === 0 ? 0n : -f.divide(b, start)));
+  }
+
+  /** P(K = n) of a law, or null where the recursion's rounding leaves less than it takes to judge an error. */
+  probability(law: readonly bigint[], n: number): Real | null {
+    return this.judgeable(at(law, n), n);
+  }
+
+  /** P(K > n), the same. */
+  above(law: readonly bigint[], n: number): Real | null {
+    return this.judgeable(
+      law.slice(0, n + 1).reduce((rest, p) => rest - p, this.f.one),
+      n,
+    );
+  }
+
+  private judgeable(value: bigint, n: number): Real | null {
+    const { f, trajectory } = this;
+    const top = this.s0 ?? f.one;
+    const growth =
+      trajectory.point === 0n ? 0 : n * Math.max(0, Math.log2(f.toNumber(f.divide(top, trajectory.point))));
+    return value !== 0n && lengthOf(value) < growth + JUDGED ? null : this.real(value);
   }
 
   private single(x: bigint, order: number): readonly bigint[] {
