@@ -67,12 +67,12 @@ function measuresOf(margin: number): Measures {
   }
   return {
     size: "narrow",
-    edge: -5,
-    inner: -26,
-    outer: -34,
+    edge: -4,
+    inner: -28.5,
+    outer: -35,
     gap: 5.5,
     lanes: 4,
-    cordLanes: { outer: -18, inner: -11, gap: 8, most: 2 },
+    cordLanes: { outer: -19, inner: -11, gap: 8, most: 2 },
     letters: false,
     gloss: null,
   };

@@ -25,7 +25,9 @@ export function layCords(scene: Scene, ties: TieLines, lighting: Lighting): Laid
     .filter(({ lit }) => lit || scene.mode === "shown");
   const bundling = runs.length > frame.cordLanes.most;
   const single = bundling ? runs.filter(({ lit }) => lit) : runs;
-  const bundled = bundling ? runs.filter(({ lit }) => !lit) : [];
+  // A narrow margin has no room for a bundle beside what is lit.
+  const lone = frame.size === "narrow" && single.length > 0;
+  const bundled = bundling && !lone ? runs.filter(({ lit }) => !lit) : [];
   const spans = single.map(({ cell, from, to }) => ({ id: cell.slot, from, to }));
   const lanes = packLanes([...spans, ...(bundled.length === 0 ? [] : [spanOf(bundled)])], scene.lanes);
   const laneX = laneXs(scene, lanes);

@@ -20,6 +20,9 @@ export function StrandsCommands({ desk, watch }: Props) {
   };
   // What is lit by the caret or the keys stays lit while the pointer goes to the command.
   const keep = (event: React.MouseEvent) => event.preventDefault();
+  const pointed = view.picture?.dim === true && view.gloss !== null;
+  // What is pointed at for a moment takes the place of the commands where there is no room for both.
+  if (pointed && view.picture?.frame.size === "middle") return <GlossLine view={view} />;
   return (
     <span className="hl-strands-commands">
       <GlossLine view={view} />
