@@ -42,7 +42,10 @@ describe("the specimen paper", { timeout: 60_000 }, () => {
 
   test("it shows every kind of cell there is, and every environment of a proof", () => {
     const kinds = new Set(paper.cells.map(({ kind }) => kind));
-    for (const kind of ["parameters", "process", "profile", "counts", "tail", "table", "formula"]) {
+    for (const kind of [
+      ...["parameters", "process", "profile", "counts", "tail", "simulate", "figure", "table", "formula"],
+      ...["check", "sweep", "solve"],
+    ]) {
       expect(kinds.has(kind), kind).toBe(true);
     }
     for (const word of [":::definition", ":::theorem", ":::proposition", ":::proof", ":::remark", "[^d]:"]) {
@@ -74,6 +77,11 @@ describe("the specimen paper", { timeout: 60_000 }, () => {
     const constant = -value(report, "T", "slope_at_start") / (2 * Math.sqrt(Math.PI * beta * (s0 - 1)));
     expect(value(report, "T", "constant") / constant).toBeCloseTo(1, 11);
     expect(Math.abs(value(report, "T", "ratio") - 1)).toBeLessThan(0.05);
+    // What the paper claims of its own numbers, it checks: the tail law far out, and the drawn families.
+    for (const check of ["beyond", "drawn"]) {
+      const found = report.cells[check];
+      expect(found?.status === "computed" && found.values.verdict, check).toEqual({ text: "holds" });
+    }
     // A family that arrives has at least one settler; from far out 1/B of them.
     expect(value(report, "arrival", "given")).toBeGreaterThanOrEqual(1);
     expect(value(report, "arrival", "far") * value(report, "w", "amplitude")).toBeCloseTo(1, 12);
