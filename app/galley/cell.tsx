@@ -16,7 +16,7 @@ export function CellParts({ node, setting }: { readonly node: CellNode; readonly
     <>
       <Parts node={node} set={set} setting={setting} />
       {set.finding?.isGrave === true ? (
-        <p className="g-absent">
+        <p className="g-finding">
           <span className="g-dagger">‡</span> {`${cellTitle(set)}: ${set.finding.words}`}
         </p>
       ) : null}

@@ -1,4 +1,5 @@
 import { describe, expect, test } from "vitest";
+import { findingOf } from "../../app/cells/index.ts";
 import { toDouble } from "../../app/formulas/index.ts";
 import { integrable, references } from "../solvers/reference.ts";
 import { cell, computed, keyOf, LARVAE, plannedCell, planOf, quantityOf, valueIn } from "./papers.ts";
@@ -127,8 +128,11 @@ describe("what cannot be solved says so", () => {
     const below = solved("vary: mu", "between: 1 to 3", "where: w.amplitude - 0.8");
     const inside = solved("vary: mu", "between: 1.5 to 3", "where: w.amplitude - 0.8");
     expect(Math.abs(below.root - inside.root)).toBeLessThan(below.error + inside.error);
-    const { results } = computed(below.text);
-    expect(results.get("r")?.method).toContain("no value below mu = 1.");
+    const { plan, results } = computed(below.text);
+    const result = results.get("r");
+    const finding = result === undefined ? null : findingOf(plannedCell(plan, "r"), result, plan);
+    expect(finding?.isGrave).toBe(false);
+    expect(finding?.words).toMatch(/^The formula has no value at mu = 1: .*here the regime is between\.$/);
   });
 
   test("nowhere a value", () => {

@@ -69,18 +69,17 @@ export const SOLVE: KindOf<SolveCell, SolveData> = {
       residual: valueAt(model, found.root.value, context),
     };
     const data = { unanswered: withoutValuesWords(found, model.vary, from, to) };
-    const partly = data.unanswered === null ? "" : `; ${data.unanswered}`;
     return {
       values,
       data,
-      method: `Bracketed, ${found.evaluations} steps${recomputedWords("step", context)}${partly}`,
+      method: `Bracketed, ${found.evaluations} steps${recomputedWords("step", context)}`,
     };
   },
 
   call: () => undefined,
   view: () => ({ figure: null, table: null, points: null }),
   finding: ({ unanswered }) =>
-    unanswered === null ? null : { isGrave: false, words: `The formula under \`where\` has ${unanswered}.` },
+    unanswered === null ? null : { isGrave: false, words: `The formula has ${unanswered}` },
 };
 
 function readBetween(body: Body): Interval {

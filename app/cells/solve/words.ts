@@ -24,15 +24,12 @@ export function whyNoRoot(found: NoRoot, name: string, from: number, to: number)
   }
 }
 
-/** Where the formula had no value, and why; null where it had one at both ends. */
+/** At which end of the interval the formula had no value, and why; null where it had one at both. */
 export function withoutValuesWords(found: Root, name: string, from: number, to: number): string | null {
   if (found.unanswered === null) return null;
   const [low, high] = found.answered;
-  const parts = [
-    ...(low > from ? [`below ${name} = ${at(low)}`] : []),
-    ...(high < to ? [`above ${name} = ${at(high)}`] : []),
-  ];
-  return parts.length === 0 ? null : `no value ${parts.join(" and ")}`;
+  const ends = [...(low > from ? [from] : []), ...(high < to ? [to] : [])].map((x) => `${name} = ${at(x)}`);
+  return ends.length === 0 ? null : `no value at ${ends.join(" and ")}: ${found.unanswered}`;
 }
 
 function at(x: number): string {
