@@ -3,6 +3,7 @@ import { type ChangeSet, EditorSelection, EditorState, type Text } from "@codemi
 import { EditorView } from "@codemirror/view";
 import fc from "fast-check";
 import { afterEach, beforeAll, describe, expect, test, vi } from "vitest";
+import { KINDS } from "../../app/cells/index.ts";
 import type { SheetModel } from "../../app/editor/model/types.ts";
 import { SheetReader } from "../../app/editor/reading/sheet-reader.ts";
 import { glossField, setProblems } from "../../app/editor/text/glosses.ts";
@@ -258,6 +259,21 @@ test("a plate that cannot be drawn says so, and the rest of the sheet stands", (
   expect(view.contentDOM.textContent).toContain("Theorem 1.1");
   expect(reported).toHaveBeenCalled();
   reported.mockClear();
+});
+
+test("a view that cannot be made leaves the other cells, the numbers and the text on the sheet", () => {
+  const counts = KINDS.get("counts");
+  if (counts === undefined) throw new Error("There are no counts.");
+  const drawing = vi.spyOn(counts, "view").mockImplementation(() => {
+    throw new Error("the axis has no end.");
+  });
+  const { view, host } = sheetOf(SAMPLE);
+  apply(view, read(SAMPLE), host);
+  expect(view.contentDOM.textContent).toContain("‡ Figure 1 cannot be drawn: the axis has no end. Its result is kept");
+  expect(view.contentDOM.querySelector(".hl-number")?.textContent).toBe("2.3483315");
+  drawing.mockRestore();
+  apply(view, read(SAMPLE), host);
+  expect(view.contentDOM.textContent).not.toContain("cannot be drawn");
 });
 
 test("a fault is said under its line, or at the plate while its working is put away", () => {

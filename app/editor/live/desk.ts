@@ -16,7 +16,10 @@ import { requestsOf } from "./requests.ts";
 import { ResultFetcher } from "./result-fetcher.ts";
 import { createStore, type Store } from "./store.ts";
 
-export type DeskOptions = Pick<SessionOptions, "paperId" | "person" | "writes" | "first">;
+export interface DeskOptions extends Pick<SessionOptions, "paperId" | "person" | "writes" | "first"> {
+  /** Gives the worker that reads the text; it is ended with the desk. */
+  takeReader(): Worker;
+}
 
 /** What the parts around the text watch. */
 export interface DeskView {
@@ -205,10 +208,9 @@ export class Desk {
       nonce: this.nonce,
       onUpdate: (update) => this.reading?.onUpdate(update),
     });
-    const worker = new Worker(new URL("../reading/paper.worker.ts", import.meta.url), { type: "module" });
     this.reading = new Reading(
       this.view,
-      worker,
+      this.options.takeReader(),
       () => this.session.bibliography.toString(),
       (model) => this.onModel(model),
       (borders) => this.store.set({ borders }),

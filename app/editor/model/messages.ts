@@ -8,6 +8,8 @@ import type { CellFace, SheetModel } from "./types.ts";
  */
 export type ToWorker =
   | { readonly tell: "text"; readonly version: number; readonly text: string; readonly bibliography: string }
+  /** A text that will most likely be told: to be read already. It is not answered. */
+  | { readonly tell: "ahead"; readonly text: string; readonly bibliography: string }
   /** What has changed in the text told before. */
   | {
       readonly tell: "edits";

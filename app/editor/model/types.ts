@@ -217,6 +217,8 @@ export interface CellFace {
 export interface ShownView {
   readonly sign: string;
   readonly view: CellView;
+  /** Why there is nothing to draw although there is a result: the view could not be made. */
+  readonly fault?: string;
 }
 
 export interface ProblemFace {

@@ -26,11 +26,16 @@ export class PlateBoundary extends Component<Props, State> {
 
   override render(): ReactNode {
     if (this.state.fault === null) return this.props.children;
-    return (
-      <p className="hl-gloss hl-gloss-error">
-        <b aria-hidden="true">‡ </b>
-        {this.props.title} cannot be drawn: {this.state.fault}. Its result is kept; its working may be edited.
-      </p>
-    );
+    return <PlateFault title={this.props.title} fault={this.state.fault} />;
   }
+}
+
+/** Said in the place of a plate that cannot be drawn. */
+export function PlateFault({ title, fault }: { readonly title: string; readonly fault: string }) {
+  return (
+    <p className="hl-gloss hl-gloss-error">
+      <b aria-hidden="true">‡ </b>
+      {title} cannot be drawn: {fault.replace(/\.$/, "")}. Its result is kept; its working may be edited.
+    </p>
+  );
 }

@@ -7,13 +7,13 @@ import { useStrandWatch } from "../strands/use-strands.ts";
 import type { StrandWatch } from "../strands/watch.ts";
 import { BibliographyPlace } from "./bibliography-place.tsx";
 import { SheetHead, SheetNotices, SheetRule, SheetVoice } from "./sheet-head.tsx";
-import type { SheetPageProps } from "./sheet-page.tsx";
+import type { SheetProps } from "./sheet-page.tsx";
 import { PlainText } from "./sheet-preface.tsx";
 import { SheetTail } from "./sheet-tail.tsx";
 import { useDeskView } from "./use-desk-view.ts";
 
 /** The live sheet: running head, rule, text, bibliography, tail line, over one desk. */
-export default function Sheet(props: SheetPageProps) {
+export default function Sheet(props: SheetProps) {
   const place = useRef<HTMLDivElement>(null);
   const sheet = useRef<HTMLDivElement>(null);
   const desk = useDesk(props, place);
@@ -44,7 +44,7 @@ export default function Sheet(props: SheetPageProps) {
 }
 
 /** Opens the desk when the place is on the page, and ends it with the page. */
-function useDesk(props: SheetPageProps, place: RefObject<HTMLDivElement | null>): Desk | null {
+function useDesk(props: SheetProps, place: RefObject<HTMLDivElement | null>): Desk | null {
   const [desk, setDesk] = useState<Desk | null>(null);
   const first = useRef(props);
   useEffect(() => {
@@ -59,7 +59,7 @@ function useDesk(props: SheetPageProps, place: RefObject<HTMLDivElement | null>)
 
 interface PartProps {
   readonly desk: Desk;
-  readonly props: SheetPageProps;
+  readonly props: SheetProps;
 }
 
 /** The plain setting, until the text is typeset. The text's own place is the editor's, so its class is set by hand. */

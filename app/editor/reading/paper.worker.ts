@@ -18,6 +18,7 @@ let toldBorders = "{}";
 self.onmessage = ({ data }: MessageEvent<Told>) => {
   have = data.have;
   reader.hear(data.message, have);
+  if (data.message.tell === "ahead") return;
   clearTimeout(resting);
   unanswered += 1;
   // Behind the messages that are in the queue already: they are answered together.

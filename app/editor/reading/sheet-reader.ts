@@ -54,6 +54,10 @@ export class SheetReader {
       case "text":
         this.hearText(message.version, message.text, message.bibliography);
         return;
+      case "ahead":
+        this.hearText(0, message.text, message.bibliography);
+        this.paper ??= readPaper(message.text, message.bibliography);
+        return;
       case "edits":
         this.hearText(message.version, edited(this.text, message.edits), message.bibliography);
         return;

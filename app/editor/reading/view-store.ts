@@ -1,4 +1,4 @@
-import { type CellResult, type Plan, viewCell } from "../../cells/index.ts";
+import { type CellResult, type CellView, type Plan, viewCell } from "../../cells/index.ts";
 import type { CellFace, ShownView } from "../model/types.ts";
 
 /** Remembers which view of each cell was sent, so that a figure crosses to the page only when it has changed. */
@@ -19,10 +19,20 @@ export class ViewStore {
       const planned = plan.byId.get(face.id);
       const result = results.get(face.id);
       const drawn = planned !== undefined && result !== undefined && face.parts.length > 0;
-      views[face.slot] = drawn ? { sign: face.viewSign, view: viewCell(planned, result, plan, results) } : null;
+      views[face.slot] = drawn ? viewOf(face.viewSign, () => viewCell(planned, result, plan, results)) : null;
     }
     for (const slot of this.sent.keys()) if (!now.has(slot)) views[slot] = null;
     this.sent = now;
     return views;
+  }
+}
+
+/** One cell that cannot be drawn must not keep the others, and the text, from the page. */
+function viewOf(sign: string, make: () => CellView): ShownView {
+  try {
+    return { sign, view: make() };
+  } catch (error) {
+    const fault = error instanceof Error ? error.message : String(error);
+    return { sign, view: { figure: null, table: null, points: null }, fault };
   }
 }

@@ -3,7 +3,7 @@ import { flushSync } from "react-dom";
 import { createRoot, type Root } from "react-dom/client";
 import type { CellFace } from "../model/types.ts";
 import { CellPlate } from "../parts/cell-plate.tsx";
-import { PlateBoundary } from "../parts/plate-boundary.tsx";
+import { PlateBoundary, PlateFault } from "../parts/plate-boundary.tsx";
 import { element } from "./element.ts";
 import { sheetHost } from "./host.ts";
 
@@ -67,7 +67,11 @@ export class CellWidget extends WidgetType {
     flushSync(() =>
       root.render(
         <PlateBoundary sign={this.sign} title={this.face.title}>
-          <CellPlate face={this.face} view={shown?.view ?? null} open={this.open} host={host} />
+          {shown?.fault === undefined ? (
+            <CellPlate face={this.face} view={shown?.view ?? null} open={this.open} host={host} />
+          ) : (
+            <PlateFault title={this.face.title} fault={shown.fault} />
+          )}
         </PlateBoundary>,
       ),
     );

@@ -1,0 +1,31 @@
+import type { Told } from "../model/messages.ts";
+
+/**
+ * The page's worker, begun before the live sheet is here: it reads the text that the server sent with the page while
+ * the sheet's own scripts are still on their way, so that the first question finds the text read.
+ */
+export class ReaderAhead {
+  private worker: Worker | null = null;
+
+  begin(text: string, bibliography: string): void {
+    this.worker = openWorker();
+    this.worker.postMessage({ message: { tell: "ahead", text, bibliography }, have: 0 } satisfies Told);
+  }
+
+  /** The worker, which is the caller's to end; a new one if it was taken before. */
+  take(): Worker {
+    const taken = this.worker ?? openWorker();
+    this.worker = null;
+    return taken;
+  }
+
+  /** Ends the worker, unless it was taken. */
+  end(): void {
+    this.worker?.terminate();
+    this.worker = null;
+  }
+}
+
+function openWorker(): Worker {
+  return new Worker(new URL("../reading/paper.worker.ts", import.meta.url), { type: "module" });
+}
