@@ -1,7 +1,7 @@
 import { toDouble } from "../formulas/index.ts";
 import type { Paper } from "../paper/index.ts";
 import type { Border, Branches } from "./borders.ts";
-import { borderWords, findBordersSteps, finish, openSide, sameBranches } from "./borders.ts";
+import { borderWords, findBordersSteps, finish, mergedBorders, openSide, sameBranches } from "./borders.ts";
 import { computePlan, quickCells } from "./compute.ts";
 import { planPaper } from "./plan.ts";
 import { isJudged, isRefusal, standingsAt } from "./standings.ts";
@@ -61,11 +61,8 @@ export function* answerRangeSteps(
   const places = parameter === undefined ? [] : placesOf(parameter);
   if (readers.length === 0 || places.length === 0) return { parameter: name, borders: [] };
   const judged = readers.filter((cell) => isJudged(cell, plan, name));
-  const borders = yield* findBordersSteps(
-    places,
-    (x) => standingsAt(plan, name, x, judged, options.known),
-    sameBranches,
-  );
+  const found = yield* findBordersSteps(places, (x) => standingsAt(plan, name, x, judged, options.known), sameBranches);
+  const borders = mergedBorders(found);
   if (borders.length === 0) return { parameter: name, borders: [] };
   const stretches: (readonly Missing[])[] = [];
   const ends = [places[0] ?? 0, ...borders.flatMap(({ below, above }) => [below, above]), places.at(-1) ?? 0];

@@ -12,6 +12,8 @@ export interface Border<T> {
 /** An interval is halved so often at most: enough to part neighbouring doubles of one sign and size. */
 const HALVINGS = 128;
 const MOST_BORDERS = 12;
+/** Borders nearer to each other than this, relative to their place, are one. */
+const ROUNDING = 64 * Number.EPSILON;
 
 /**
  * The borders between the first and the last of some places, found by bisection between neighbours whose answers differ.
@@ -48,6 +50,18 @@ export function findBorders<T>(
   same: (a: T, b: T) => boolean,
 ): Border<T>[] {
   return finish(findBordersSteps(places, answerAt, same));
+}
+
+/** Borders that only rounding parts, of two cells whose drifts are critical together, as one. */
+export function mergedBorders<T>(borders: readonly Border<T>[]): Border<T>[] {
+  const merged: Border<T>[] = [];
+  for (const border of borders) {
+    const last = merged.at(-1);
+    const near = ROUNDING * Math.max(Math.abs(border.below), Math.abs(border.above));
+    if (last === undefined || border.below - last.above > near) merged.push(border);
+    else merged[merged.length - 1] = { ...border, below: last.below, lower: last.lower };
+  }
+  return merged;
 }
 
 /** Takes all steps of a search. */

@@ -1,6 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
-import { findBorders } from "../../app/cells/borders.ts";
+import { findBorders, mergedBorders } from "../../app/cells/borders.ts";
 import { adaptedPoints } from "../../app/cells/sweep/adapt.ts";
 import { movementWords } from "../../app/cells/sweep/finding.ts";
 
@@ -110,6 +110,20 @@ describe("borders", () => {
         },
       ),
     );
+  });
+
+  test("those that only rounding parts are one", () => {
+    const [a, b] = [Math.SQRT2, Math.SQRT2 * (1 + 4 * Number.EPSILON)];
+    const pieceAt = (x: number) => [a, b, 2].filter((cut) => cut <= x).length;
+    const found = findBorders([1, 3], pieceAt, (x, y) => x === y);
+    expect(found).toHaveLength(3);
+    const merged = mergedBorders(found);
+    expect(merged.map(({ lower, upper }) => [lower, upper])).toEqual([
+      [0, 2],
+      [2, 3],
+    ]);
+    expect(merged[0]?.below).toBeLessThan(a);
+    expect(merged[0]?.above).toBe(b);
   });
 
   test("there are none where nothing changes, or no place is given", () => {

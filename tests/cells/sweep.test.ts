@@ -169,6 +169,27 @@ describe("at the critical drift", () => {
     expect(numberIn(text, "sw.points")).toBe(6);
   });
 
+  test("with fewer points than the ends at a jump take, nothing is drawn across it all the same", () => {
+    const text = SETUP + cell("sweep sw", "over: {mu: 1 to 3}", "scale: adapted", "points: 3", "record: {s0: w.s0}");
+    const [series] = figureIn(text, "sw").series;
+    expect(numberIn(text, "sw.points")).toBe(3);
+    const gap = series?.y.indexOf(null) ?? -1;
+    expect(series?.x[gap - 1]).toBeLessThan(Math.SQRT2);
+    expect(series?.x[gap + 1]).toBeGreaterThan(Math.SQRT2);
+  });
+
+  test("processes that are critical together break a curve once", () => {
+    const text =
+      LARVAE +
+      cell("process pups", "drift: mu", "rate: 3*beta/3*0.1*10") +
+      cell("sweep sw", "over: {mu: 1 to 3}", "scale: adapted", "record: {a: larvae.limit + pups.limit}");
+    const figure = figureIn(text, "sw");
+    expect(figure.verticals).toHaveLength(1);
+    expect(figure.remarks[0]).toContain("the drift is critical in larvae and pups");
+    const x = figure.series[0]?.x ?? [];
+    expect(x.every((place, index) => index === 0 || place > (x[index - 1] ?? 0))).toBe(true);
+  });
+
   test("both critical drifts of one sweep are found, and the one of each curve", () => {
     const both = LARVAE + cell("sweep sw", "over: {mu: -3 to 3}", "scale: adapted", "record: {q: larvae.limit}");
     const remarks = figureIn(both, "sw").remarks.join(" ");

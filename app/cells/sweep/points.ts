@@ -1,6 +1,6 @@
 import type { Value } from "../../formulas/index.ts";
 import type { Border, BorderWords, Branches } from "../borders.ts";
-import { borderWords, findBorders, openSide, sameBranches } from "../borders.ts";
+import { borderWords, findBorders, mergedBorders, openSide, sameBranches } from "../borders.ts";
 import type { ComputeContext } from "../context.ts";
 import { CellFault } from "../context.ts";
 import type { VariedValues } from "../varying.ts";
@@ -94,9 +94,8 @@ function placesOf(range: Range): readonly number[] {
 /** Points where they were asked for; the curve breaks between those that a jump parts. */
 function fixedCurve(x: readonly number[], recordAt: (x: number) => Recorded, probe: Probe): Curve {
   const increasing = [...new Set(x)].sort((a, b) => a - b);
-  const jumps = findBorders(increasing, (at) => probe.branchesAt(at), sameBranches);
-  const piece = x.map((at) => jumps.filter((jump) => jump.above <= at).length);
-  return { x, piece, recorded: x.map(recordAt), jumps: jumps.map(jumpAt) };
+  const jumps = jumpsOn(increasing, probe);
+  return { x, piece: piecesOf(x, jumps), recorded: x.map(recordAt), jumps };
 }
 
 /** Points where what is recorded bends, on stretches from jump to jump, each with its one-sided ends. */
@@ -108,13 +107,13 @@ function adaptedCurve(
   const looks = Array.from({ length: LOOKS + 1 }, (_, index) =>
     index === LOOKS ? to : from + ((to - from) * index) / LOOKS,
   );
-  const found = findBorders(looks, (at) => probe.branchesAt(at), sameBranches);
-  // Each stretch has two ends; of jumps beyond what the points allow, the last ones stand between two stretches only.
-  const jumps = found.slice(0, Math.max(0, Math.floor(count / 2) - 1)).map(jumpAt);
-  const starts = [from, ...jumps.map((jump) => jump.above)];
-  const ends = [...jumps.map((jump) => jump.below), to];
+  const jumps = jumpsOn(looks, probe);
+  // Each stretch has two ends; where there are fewer points than that takes, the last jumps have none beside them.
+  const parting = jumps.slice(0, Math.max(0, Math.floor(count / 2) - 1));
+  const starts = [from, ...parting.map((jump) => jump.above)];
+  const ends = [...parting.map((jump) => jump.below), to];
   const stretches = starts.map((start, index): Stretch => {
-    const [first, last] = [index > 0, index < jumps.length];
+    const [first, last] = [index > 0, index < parting.length];
     return {
       from: start,
       to: ends[index] ?? to,
@@ -122,12 +121,16 @@ function adaptedCurve(
     };
   });
   const points = adaptedPoints(stretches, count, recordAt, heightsFor);
-  return {
-    x: points.map((point) => point.x),
-    piece: points.map((point) => point.stretch),
-    recorded: points.map((point) => point.found),
-    jumps,
-  };
+  const x = points.map((point) => point.x);
+  return { x, piece: piecesOf(x, jumps), recorded: points.map((point) => point.found), jumps };
+}
+
+function jumpsOn(places: readonly number[], probe: Probe): readonly Jump[] {
+  return mergedBorders(findBorders(places, (at) => probe.branchesAt(at), sameBranches)).map(jumpAt);
+}
+
+function piecesOf(x: readonly number[], jumps: readonly Jump[]): readonly number[] {
+  return x.map((at) => jumps.filter((jump) => jump.above <= at).length);
 }
 
 /** The side that does not reach the border is left a few doubles before it, so that a break can be drawn in between. */
