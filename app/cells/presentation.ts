@@ -40,9 +40,11 @@ export interface DrawnView {
   readonly figure: Figure | null;
   /** What it draws among other curves. */
   readonly series: readonly Series[];
+  /** The axes that these series stand on in its own figure; null where that shows something else. */
+  readonly axes: Pick<Figure, "x" | "y"> | null;
 }
 
-export const NOTHING_DRAWN: DrawnView = { figure: null, series: [] };
+export const NOTHING_DRAWN: DrawnView = { figure: null, series: [], axes: null };
 
 /** Keys that every kind has, or every kind with a figure. None of them changes a result. */
 export const PRESENTATION_KEYS: readonly (KeyDocumentation & { readonly figuresOnly: boolean })[] = [

@@ -52,5 +52,8 @@ function drawnView(id: string, kindName: string, data: unknown, plan: Plan): Dra
   const planned = plan.byId.get(id);
   const looks = looksOf(planned?.kind === kindName ? planned.cell : { name: id, body: null }, plan);
   const { figure } = kind.view(data, looks);
-  return { figure, series: kind.drawn?.(data, looks) ?? figure?.series ?? [] };
+  const own = kind.drawn?.(data, looks);
+  return own === undefined
+    ? { figure, series: figure?.series ?? [], axes: figure }
+    : { figure, series: own, axes: null };
 }

@@ -48,6 +48,9 @@ export interface PlacedSeries {
   readonly arrow: readonly [Point, Point, Point] | null;
 }
 
+/** What is fine and grey lies under the curves, the principal one over them: series are drawn in this order. */
+export const weight = ({ principal, thin }: PlacedSeries): number => (principal ? 1 : thin ? -1 : 0);
+
 /** Stems nearer than this would run into one area: their heads alone are drawn. */
 const CLOSEST_STEMS = 3;
 

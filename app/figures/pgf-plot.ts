@@ -1,5 +1,6 @@
 import { isWords } from "./label.ts";
 import type { PlacedLabel } from "./labels.ts";
+import { weight } from "./layout-series.ts";
 import type { Columns } from "./pgf-data.ts";
 import { seriesLines } from "./pgf-series.ts";
 import { axisNumber, number, place, xAt, yAt } from "./pgf-units.ts";
@@ -32,10 +33,12 @@ export function axisLines(
   at: readonly [number, number] | null,
   setting: LabelSetting,
 ): readonly string[] {
-  const drawn = plot.series.flatMap((placed, i) => {
-    const own = columns[i];
-    return own ? seriesLines(placed, i, own, figure, plot, dataFile) : [];
-  });
+  const drawn = [...plot.series.entries()]
+    .sort(([, a], [, b]) => weight(a) - weight(b))
+    .flatMap(([i, placed]) => {
+      const own = columns[i];
+      return own ? seriesLines(placed, i, own, figure, plot, dataFile) : [];
+    });
   return [
     `\\begin{axis}[${axisOptions(figure, plot, at)}]`,
     ...plot.levels.map((line) => {
@@ -48,7 +51,8 @@ export function axisLines(
     }),
     ...drawn,
     ...plot.yTicks.map((tick) => tickNode(tick.tex, tick.position, plot)),
-    ...[...plot.labels, ...plot.dotLabels].flatMap((label) => labelLines(label, plot, setting)),
+    ...plot.labels.flatMap((label) => labelLines(label, plot, setting, "")),
+    ...plot.dotLabels.flatMap((label) => labelLines(label, plot, setting, PAPER_BEHIND)),
     ...[...plot.topLabels, plot.xLabel, plot.yLabel].flatMap((label) =>
       label ? [node(label, plot, setting, "base")] : [],
     ),
@@ -93,7 +97,10 @@ function referenceLine({ fine }: PlacedLine, ...ends: readonly (readonly [number
   return `\\addplot[plate-edge, ${look}, forget plot] coordinates {${points.join(" ")}};`;
 }
 
-function labelLines(label: PlacedLabel, plot: PlotLayout, setting: LabelSetting): string[] {
+/** Within the plot paper keeps a label apart from lines that pass behind it. */
+const PAPER_BEHIND = "fill=white, fill opacity=0.75, text opacity=1, ";
+
+function labelLines(label: PlacedLabel, plot: PlotLayout, setting: LabelSetting, behind: string): string[] {
   const leader = label.leader ? /^M(\S+) (\S+)L(\S+) (\S+)$/.exec(label.leader) : null;
   const lines: string[] = [];
   if (leader) {
@@ -103,7 +110,7 @@ function labelLines(label: PlacedLabel, plot: PlotLayout, setting: LabelSetting)
     ];
     lines.push(`\\draw[${colourName(label)}, line width=0.4pt] (${from}) -- (${to});`);
   }
-  lines.push(node(label, plot, setting, "mid"));
+  lines.push(node(label, plot, setting, "mid", behind));
   return lines;
 }
 
@@ -112,10 +119,16 @@ const colourName = (label: PlacedLabel) =>
 
 const SIDES = { start: "west", middle: "", end: "east" } as const;
 
-function node(label: PlacedLabel, plot: PlotLayout, setting: LabelSetting, height: "mid" | "base"): string {
+function node(
+  label: PlacedLabel,
+  plot: PlotLayout,
+  setting: LabelSetting,
+  height: "mid" | "base",
+  behind = "",
+): string {
   const side = SIDES[label.anchor];
   const anchor = height === "mid" ? side || "center" : `base ${side}`.trim();
-  return `\\node[anchor=${anchor}, inner sep=0pt, text=${colourName(label)}, font=${PRINT_FONT}] at (${place(label.x, label.y, plot)}) {${setLabel(label.tex, setting)}};`;
+  return `\\node[anchor=${anchor}, inner sep=0pt, ${behind}text=${colourName(label)}, font=${PRINT_FONT}] at (${place(label.x, label.y, plot)}) {${setLabel(label.tex, setting)}};`;
 }
 
 /** A number of the vertical axis, which has no line of its own. */

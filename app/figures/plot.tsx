@@ -2,7 +2,7 @@ import { DrawnBand, DrawnSeries } from "./drawn-series.tsx";
 import type { LabelRun } from "./label.ts";
 import type { PlacedLabel } from "./labels.ts";
 import { TICK_LENGTH } from "./layout-axes.ts";
-import type { PlacedSeries } from "./layout-series.ts";
+import { type PlacedSeries, weight } from "./layout-series.ts";
 import { PALETTES, type Palette, type Theme } from "./palette.ts";
 import type { PlacedLine, PlotLayout } from "./plot-layout.ts";
 import { Runs } from "./runs.tsx";
@@ -39,9 +39,7 @@ export function Plot({ plot, theme }: { readonly plot: PlotLayout; readonly them
   );
 }
 
-/** What is fine and grey lies under the curves, the principal one over them. */
 const byWeight = (a: PlacedSeries, b: PlacedSeries) => weight(a) - weight(b);
-const weight = ({ principal, thin }: PlacedSeries) => (principal ? 1 : thin ? -1 : 0);
 
 const placeOf = ({ tex, x, y }: PlacedLabel) => `${tex} ${x} ${y}`;
 

@@ -63,7 +63,7 @@ function xAxis(
   cells: readonly DrawnView[],
   { x, symbolOf }: Presentation,
 ): Figure["x"] {
-  const axes = cells.flatMap(({ figure }) => figure?.x ?? []);
+  const axes = cells.flatMap((cell) => cell.axes?.x ?? []);
   const scale = over === null && axes.length > 0 && axes.every((axis) => axis.scale === "log") ? "log" : "linear";
   const label = over === null ? (axes[0]?.label ?? "") : symbolOf(over);
   return labelledAxis(label, scale, { ...x, range: x.range ?? interval });
@@ -71,7 +71,7 @@ function xAxis(
 
 /** The vertical label that all cells drawn share; curves of formulas are named at their ends. */
 function commonLabel(formulas: readonly string[], cells: readonly DrawnView[]): string {
-  const labels = new Set(cells.map(({ figure }) => figure?.y.label ?? ""));
+  const labels = new Set(cells.flatMap(({ axes }) => axes?.y.label ?? []));
   const [only] = labels;
   return formulas.length === 0 && labels.size === 1 ? (only ?? "") : "";
 }
@@ -82,7 +82,7 @@ function isLogarithmic({ samples }: FigureData, cells: readonly DrawnView[]): bo
     data.curves.flatMap(({ recorded }) => recorded.flatMap(Object.values<Value>)),
   );
   const isPositive = values.every((value) => value.type !== "number" || value.quantity.mantissa > 0);
-  return isPositive && (drawnInLogs(values) || cells.some(({ figure }) => figure?.y.scale === "log"));
+  return isPositive && (drawnInLogs(values) || cells.some(({ axes }) => axes?.y.scale === "log"));
 }
 
 function levelsOf({ levels }: FigureData, presentation: Presentation): readonly Level[] {

@@ -54,7 +54,7 @@ interface Gap {
   readonly reason: string;
 }
 
-/** Neighbouring points without a value for one reason are one gap. */
+/** Neighbouring points without a value for one reason are one gap; the reason is said of its first point. */
 function gapsOf(curve: SweepCurve, name: string): Gap[] {
   const order = [...curve.x.keys()].sort((a, b) => (curve.x[a] ?? 0) - (curve.x[b] ?? 0));
   const gaps: Gap[] = [];
@@ -64,13 +64,20 @@ function gapsOf(curve: SweepCurve, name: string): Gap[] {
     const x = curve.x[index] ?? Number.NaN;
     const last = gaps.at(-1);
     if (value?.type !== "refused") isOpen = false;
-    else if (isOpen && last?.reason === value.reason) gaps[gaps.length - 1] = { ...last, to: x };
+    else if (isOpen && last !== undefined && isAlike(last.reason, value.reason))
+      gaps[gaps.length - 1] = { ...last, to: x };
     else {
       gaps.push({ from: x, to: x, reason: value.reason });
       isOpen = true;
     }
   }
   return gaps;
+}
+
+/** Whether two reasons differ at most in their numbers. */
+function isAlike(a: string, b: string): boolean {
+  const withoutNumbers = (reason: string) => reason.replace(/[−-]?\d[\d.]*(?:e[+-]?\d+)?/g, "#");
+  return a === b || withoutNumbers(a) === withoutNumbers(b);
 }
 
 function listed(parts: readonly string[]): string {
