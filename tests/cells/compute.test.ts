@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import type { CellResult } from "../../app/cells/index.ts";
 import { computeCell, computePlan } from "../../app/cells/index.ts";
-import { cell, computed, LARVAE, plannedCell, planOf } from "./papers.ts";
+import { cell, computed, HALF_DIE, LARVAE, plannedCell, planOf } from "./papers.ts";
 
 const PAPER = `${LARVAE}${cell("profile w", "of: larvae")}${cell("counts K", "of: larvae", "start: 1")}${cell("formula f", "a: K.mean")}`;
 
@@ -66,7 +66,8 @@ describe("computing a plan", () => {
   });
 
   test("what reads a failed cell waits for it, and names it", () => {
-    const { outcomes } = computed(PAPER, { mu: "-2" });
+    // the process computes; its trajectory is refused, and K fails
+    const { outcomes } = computed(PAPER.replace("rate: beta", HALF_DIE), { mu: "-2" });
     expect(outcomes.get("larvae")?.status).toBe("computed");
     expect(outcomes.get("K")?.status).toBe("failed");
     expect(outcomes.get("f")).toEqual({ status: "waiting", needs: ["K"] });

@@ -1,7 +1,9 @@
 import { describe, expect, test } from "vitest";
+import type { CellResult } from "../../app/cells/index.ts";
+import { viewCell } from "../../app/cells/index.ts";
 import type { Value } from "../../app/formulas/index.ts";
 import { log10Of, toDouble } from "../../app/formulas/index.ts";
-import { cell, computed, LARVAE, quantityOf, reasonOf, valueIn } from "./papers.ts";
+import { cell, computed, HALF_DIE, LARVAE, plannedCell, quantityOf, reasonOf, valueIn } from "./papers.ts";
 
 /**
  * Reference values for binary branching at rate 1, D = 1/2, drift 2.
@@ -204,15 +206,74 @@ describe("between the critical drifts", () => {
   });
 });
 
-describe("a regime without these answers", () => {
-  const back = computed(PAPER, { mu: "-2" });
+describe("a process without these answers", () => {
+  const back = computed(PAPER.replace("rate: beta", HALF_DIE), { mu: "-2" });
 
-  test("profile, counts and tail fail at their `of`, with the critical drift", () => {
+  test("profile, counts and tail fail at their `of`, with the reason", () => {
     for (const id of ["w", "K", "T"]) {
       const outcome = back.outcomes.get(id);
       if (outcome?.status !== "failed") throw new Error(`${id}: ${outcome?.status}`);
-      expect(outcome.failure.message).toContain("1.41421");
+      expect(outcome.failure.message).toContain("mean offspring 1");
       expect(outcome.failure.line).toBe((back.plan.byId.get(id)?.line ?? 0) + 1);
     }
+  });
+});
+
+/** Source: reference toward/binary/mu-2, computed by an independent method (Taylor series in 65 digits, exact recursion in s). */
+const TOWARD = {
+  index: 5.828427124746190097603377,
+  mean: 1.796403189323233738330646,
+  p: { 1: 0.63795358900911389758887, 10: 0.002054621551807641522669974, 1000: 5.385323687015474317129752e-15 },
+  w: 0.3800225216784078645092367,
+} as const;
+
+describe("a drift toward the barrier", () => {
+  const { results, outcomes, plan } = computed(PAPER, { mu: "-2" });
+  const value = (id: string, name: string): Value | undefined => results.get(id)?.values[name];
+
+  test("everything computes, and what has no meaning is refused alone", () => {
+    for (const [id, outcome] of outcomes) expect([id, outcome.status]).toEqual([id, "computed"]);
+    agrees(value("K", "mean"), TOWARD.mean);
+    agrees(value("T", "exponent"), TOWARD.index);
+    for (const [n, p] of Object.entries(TOWARD.p)) agrees(valueIn(PAPER, `K(${n})`, { mu: "-2" }), p);
+    agrees(valueIn(PAPER, "w(1, 1/2)", { mu: "-2" }), TOWARD.w);
+    for (const id of ["w", "K", "T"]) expect(toDouble(quantityOf(value(id, "s0")))).toBe(1);
+    expect(toDouble(quantityOf(value("K", "infinite")))).toBe(0);
+    expect(toDouble(quantityOf(value("T", "slope_at_start")))).toBe(0);
+    expect(reasonOf(value("w", "amplitude"))).toContain("the regime is toward");
+    expect(reasonOf(valueIn(PAPER, "K.moment(6)", { mu: "-2" }))).toContain("d = 5.82843");
+    expect(reasonOf(valueIn(PAPER, "w(1, 1.5)", { mu: "-2" }))).toContain("infinite for every s above 1");
+  });
+
+  test("the tail is drawn on logarithmic axes with its power", () => {
+    const view = viewCell(plannedCell(plan, "T"), results.get("T") as CellResult, plan, results);
+    expect([view.figure?.x.scale, view.figure?.y.scale]).toEqual(["log", "log"]);
+    expect(view.figure?.series.map(({ mark }) => mark)).toEqual(["points", "line"]);
+    expect(view.figure?.alternative).toMatch(
+      /approaches the power 1760000 n\^\(−1−d\), d = 5\.828\. At n = 1000 it is 0\.935302 times/,
+    );
+  });
+
+  test("the curve from s0 = 1 stays at 1, and the others set the range", () => {
+    const view = viewCell(plannedCell(plan, "w"), results.get("w") as CellResult, plan, results);
+    const last = view.figure?.series.find(({ role }) => role === "principal");
+    expect(new Set(last?.y)).toEqual(new Set([1]));
+    expect(last?.x.at(-1)).toBeLessThan(40);
+    expect(view.figure?.alternative).toContain("stays at 1");
+    expect(view.figure?.remarks).toContain("No curve for s = 2, which is beyond s0 = 1.");
+  });
+
+  test("more terms than one are refused at their key", () => {
+    const text = `${LARVAE}${cell("tail T", "of: larvae", "start: 1", "terms: 3")}`;
+    const outcome = computed(text, { mu: "-2" }).outcomes.get("T");
+    expect(outcome?.status === "failed" && outcome.failure.message).toContain("the leading term alone");
+  });
+
+  test("at the critical drift the tail is the logarithmic law, and the variance infinite", () => {
+    const { results: critical } = computed(PAPER, { mu: "-sqrt(2)" });
+    // Source: P. Maillard, Ann. Inst. H. Poincaré Probab. Stat. 49 (2013): λ x e^{λx}, λ = √2, x = 1.
+    agrees(critical.get("T")?.values.constant, Math.SQRT2 * Math.exp(Math.SQRT2));
+    expect(toDouble(quantityOf(critical.get("T")?.values.exponent))).toBe(1);
+    expect(reasonOf(critical.get("K")?.values.variance)).toContain("infinite");
   });
 });

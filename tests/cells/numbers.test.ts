@@ -1,11 +1,11 @@
 import { describe, expect, test } from "vitest";
 import { captionOf, evaluateNumber, paperScope } from "../../app/cells/index.ts";
-import { cell, computed, LARVAE, plannedCell } from "./papers.ts";
+import { cell, computed, HALF_DIE, LARVAE, plannedCell } from "./papers.ts";
 
 const PAPER = `${LARVAE.replace("beta: 1", "beta: {value: 1, unit: 1/day}")}${cell("profile w", "of: larvae")}${cell("counts K", "of: larvae", "start: 1", "caption: 'How *many* reach $0$.'")}`;
 
-function printed(prose: string, overrides: Record<string, string> = {}) {
-  const { paper, plan, results } = computed(`${PAPER}\n\n${prose}\n`, overrides);
+function printed(prose: string, overrides: Record<string, string> = {}, text = PAPER) {
+  const { paper, plan, results } = computed(`${text}\n\n${prose}\n`, overrides);
   return paper.numbers.map((number) => evaluateNumber(number, plan, results));
 }
 
@@ -41,6 +41,7 @@ describe("numbers of the prose", () => {
     const [missing, unknown, broken, refused] = printed(
       "A :value[K.mean], a :value[L.mean], a :value[K.mean +], a :value[log(mu)].",
       { mu: "-2" },
+      PAPER.replace("rate: beta", HALF_DIE),
     );
     expect(missing).toMatchObject({ printed: null, problem: "`K` has no result.", needs: ["K"] });
     expect(unknown?.problem).toContain("`L` is not a cell");

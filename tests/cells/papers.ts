@@ -16,6 +16,9 @@ rate: beta
 \`\`\`
 `;
 
+/** In place of `rate: beta`: the mean number of children is 1, and a drift ≤ 0 leaves the cells that read the process without a trajectory. */
+export const HALF_DIE = "rate: beta\noffspring: {0: 1/2, 2: 1/2}";
+
 /** A fenced cell: `cell("counts K", "of: larvae", "start: 1")`. */
 export function cell(info: string, ...lines: string[]): string {
   return `\n\`\`\`${info}\n${lines.join("\n")}\n\`\`\`\n`;

@@ -93,9 +93,9 @@ function tailValues({ law, upTo, compared, missing }: TailData): Record<string, 
     s0: estimateValue(law.s0),
     slope_at_start: estimateValue(law.slopeAtStart),
     constant: estimateValue(law.constant),
-    exponent: estimateValue(law.exponent),
     ratio: last === undefined ? refusedValue(missing ?? notReached(law, upTo)) : ratioOf(last, missing),
     omitted: exactValue(tailProbability(law, upTo).omitted),
+    exponent: estimateValue(law.exponent),
   };
 }
 
