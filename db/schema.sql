@@ -5,7 +5,9 @@ CREATE TABLE public.computations (
     cells text[] NOT NULL,
     begun_at timestamp with time zone DEFAULT CURRENT_TIMESTAMP NOT NULL,
     seconds double precision DEFAULT '0'::double precision NOT NULL,
-    ended_at timestamp with time zone
+    ended_at timestamp with time zone,
+    work json,
+    begun_times integer DEFAULT 1 NOT NULL
 );
 
 CREATE SEQUENCE public.computations_id_seq
@@ -84,6 +86,14 @@ CREATE TABLE public.people (
     created_at timestamp with time zone DEFAULT CURRENT_TIMESTAMP NOT NULL
 );
 
+CREATE TABLE public.result_parts (
+    key text NOT NULL,
+    index integer NOT NULL,
+    part json NOT NULL,
+    seconds double precision NOT NULL,
+    created_at timestamp with time zone DEFAULT CURRENT_TIMESTAMP NOT NULL
+);
+
 CREATE TABLE public.results (
     key text NOT NULL,
     kind text NOT NULL,
@@ -129,6 +139,9 @@ ALTER TABLE ONLY public.papers
 ALTER TABLE ONLY public.people
     ADD CONSTRAINT people_pkey PRIMARY KEY (id);
 
+ALTER TABLE ONLY public.result_parts
+    ADD CONSTRAINT result_parts_pkey PRIMARY KEY (key, index);
+
 ALTER TABLE ONLY public.results
     ADD CONSTRAINT results_pkey PRIMARY KEY (key);
 
@@ -137,6 +150,8 @@ ALTER TABLE ONLY public.sessions
 
 CREATE INDEX computations_person_id_begun_at_index ON public.computations USING btree (person_id, begun_at);
 
+CREATE INDEX computations_unfinished ON public.computations USING btree (id) WHERE ((ended_at IS NULL) AND (work IS NOT NULL));
+
 CREATE INDEX identities_person_id_index ON public.identities USING btree (person_id);
 
 CREATE INDEX identities_provider_login_index ON public.identities USING btree (provider, login);
@@ -144,6 +159,8 @@ CREATE INDEX identities_provider_login_index ON public.identities USING btree (p
 CREATE INDEX members_person_id_index ON public.members USING btree (person_id);
 
 CREATE INDEX paper_updates_paper_id_doc_id_index ON public.paper_updates USING btree (paper_id, doc, id);
+
+CREATE INDEX result_parts_created_at_index ON public.result_parts USING btree (created_at);
 
 CREATE INDEX sessions_expires_at_index ON public.sessions USING btree (expires_at);
 

@@ -79,6 +79,7 @@ export async function startServer(environment: Environment, log: Logger): Promis
   services.attachSockets(server, { isOwnOrigin, sharesPort: fromSources });
   const sweeping = setInterval(() => {
     database.sessions.sweep().catch((error: unknown) => log.error({ err: error }, "ended sessions were not swept"));
+    database.parts.sweep().catch((error: unknown) => log.error({ err: error }, "left parts were not swept"));
   }, HOUR_MS);
   sweeping.unref();
 

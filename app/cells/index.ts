@@ -8,6 +8,8 @@ export { computeCell, computePlan, quickCells } from "./compute.ts";
 export type { KeyDocumentation, KindDocumentation } from "./kind.ts";
 export { evaluateNumber, paperScope } from "./numbers.ts";
 export { parameterWords } from "./parameter-values.ts";
+export type { CellPart, SplitCell } from "./parts.ts";
+export { beginCell, computePart, mergeParts } from "./parts.ts";
 export { planPaper } from "./plan.ts";
 export { captionOf, PRESENTATION_KEYS } from "./presentation.ts";
 export type { Provenance } from "./provenance.ts";

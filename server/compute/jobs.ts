@@ -1,6 +1,7 @@
 import type { CellResult, CellTask } from "../../app/cells/index.ts";
 import type { Database, SignalLine } from "../../db/index.server.ts";
 import { unlessAborted } from "./abandon.ts";
+import { computeInParts } from "./in-parts.ts";
 import { type ComputeHooks, type Pool, StoppedError } from "./pool.ts";
 
 /** How a job ended. */
@@ -42,6 +43,7 @@ interface Job {
 export interface JobsOptions {
   readonly pool: Pool;
   readonly results: Database["results"];
+  readonly parts: Database["parts"];
   /** Claims keys against the other processes. */
   readonly signals: Pick<SignalLine, "claim" | "release">;
   /** A thread was stopped, or ended by itself: its `cause` is for the log. */
@@ -55,7 +57,7 @@ const LOOK_EVERY_MS = 300;
  * Computations by key. Whoever asks for a key that is being computed follows that computation: there is one job for a
  * key in this process, and one process at a time has the claim to it.
  *
- *     asked ──▶ claimed ──its needs have ended──▶ has a thread ──▶ computed (kept under the key), failed
+ *     asked ──▶ claimed ──its needs have ended──▶ has a thread, one or more for its parts ──▶ computed (kept under the key), failed
  *       │          └── a need has no result ──▶ waiting
  *       └── another process has the claim: looks for its result; takes the claim when that process is gone
  *
@@ -153,7 +155,7 @@ export class Jobs {
   }
 
   async #compute(request: JobRequest, followers: ReadonlySet<Follower>, cancel: AbortSignal): Promise<JobEnd> {
-    const { pool, results } = this.#options;
+    const { pool, results, parts } = this.#options;
     const { key, task } = request;
     const missing: string[] = [];
     const read = new Map<string, CellResult>();
@@ -172,7 +174,9 @@ export class Jobs {
         const refusal = await request.refusal();
         if (refusal) throw new StoppedError("stopped", refusal);
         const job = this.#jobs.get(key);
-        if (job) job.begun = true;
+        // A cell in parts begins with the first.
+        if (!job || job.begun) return;
+        job.begun = true;
         for (const follower of followers) follower.begun();
       },
       progress: (done, total) => {
@@ -180,12 +184,16 @@ export class Jobs {
       },
       ended: (seconds) => request.used(seconds),
     };
-    const outcome = await pool.compute(task, read, hooks, cancel);
+    if (request.replace) await parts.forget(key);
+    const whole = await pool.compute(task, read, hooks, cancel);
+    const outcome =
+      whole.status === "split" ? await computeInParts({ pool, parts }, task, whole, hooks, cancel) : whole;
     switch (outcome.status) {
       case "computed": {
         const { result } = outcome;
         const { kind, solver, seconds } = result;
         await results.keep({ key, kind, solver, seconds, result }, request.replace);
+        if (whole.status === "split") await parts.forget(key);
         return { end: "computed", result };
       }
       case "failed":

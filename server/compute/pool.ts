@@ -1,9 +1,9 @@
 import { fileURLToPath } from "node:url";
 import { MessageChannel } from "node:worker_threads";
 import { Piscina } from "piscina";
-import type { CellResult, CellTask, Outcome } from "../../app/cells/index.ts";
+import type { CellPart, CellResult, CellTask, Outcome, SplitCell } from "../../app/cells/index.ts";
 import type { PaperText } from "../../app/context.ts";
-import type { ComputeJob, PlannedWork } from "./worker.ts";
+import type { ComputeJob, MergeJob, PartJob, PlannedWork } from "./worker.ts";
 
 const HEAP_MB = 512;
 /** With the start of the thread, where it has to be started. */
@@ -31,6 +31,9 @@ export interface ComputeHooks {
   ended(seconds: number): Promise<void>;
 }
 
+/** A job without the port that the pool gives it. */
+type JobOnCell = Omit<ComputeJob, "progress"> | Omit<PartJob, "progress"> | Omit<MergeJob, "progress">;
+
 /** A cell that was stopped or whose thread died; `message` is for the author of the cell. */
 export class StoppedError extends Error {
   readonly reason: "cancelled" | "stopped";
@@ -47,7 +50,7 @@ export class StoppedError extends Error {
  */
 export class Pool {
   readonly #options: PoolOptions;
-  readonly #cells: Piscina<ComputeJob, Outcome>;
+  readonly #cells: Piscina<ComputeJob | PartJob | MergeJob, unknown>;
   readonly #plans: Piscina<PaperText, PlannedWork[]>;
   readonly #waiting: (() => void)[] = [];
   #free: number;
@@ -80,20 +83,56 @@ export class Pool {
     }
   }
 
+  /** How many jobs on cells are done at once. */
+  get threads(): number {
+    return this.#options.threads;
+  }
+
   /**
-   * Computes a cell as soon as a thread is free.
+   * Computes a cell as soon as a thread is free, or says into what it splits.
    * @throws what `hooks.begun` throws; StoppedError when it is cancelled, takes too long or too much memory
    */
-  async compute(
+  compute(
     task: CellTask,
     results: ReadonlyMap<string, CellResult>,
     hooks: ComputeHooks,
     cancel: AbortSignal,
+  ): Promise<Outcome | SplitCell> {
+    return this.#inTurn("compute", { task, results: [...results] }, hooks, cancel);
+  }
+
+  /** Computes one part of a cell that splits. @throws as compute */
+  part(
+    task: CellTask,
+    { shared }: SplitCell,
+    index: number,
+    hooks: ComputeHooks,
+    cancel: AbortSignal,
+  ): Promise<CellPart | Extract<Outcome, { status: "failed" }>> {
+    return this.#inTurn("part", { task, shared, index }, hooks, cancel);
+  }
+
+  /** Makes a cell's result of all its parts. @throws as compute */
+  merge(
+    task: CellTask,
+    { shared }: SplitCell,
+    parts: readonly CellPart[],
+    hooks: ComputeHooks,
+    cancel: AbortSignal,
   ): Promise<Outcome> {
+    return this.#inTurn("merge", { task, shared, parts }, hooks, cancel);
+  }
+
+  async close(): Promise<void> {
+    await Promise.all([this.#cells.destroy(), this.#plans.destroy()]);
+  }
+
+  /** @param name of the worker's function, which gives an `Answer` for that job */
+  async #inTurn<Answer>(name: string, job: JobOnCell, hooks: ComputeHooks, cancel: AbortSignal): Promise<Answer> {
     await this.#thread(cancel);
     try {
       await hooks.begun();
-      return await this.#run(task, results, hooks, cancel);
+      return (await this.#run(name, job, hooks, cancel)) as Answer;
     } finally {
       const next = this.#waiting.shift();
       // The thread goes from hand to hand while somebody waits for it.
@@ -102,16 +141,7 @@ export class Pool {
     }
   }
 
-  async close(): Promise<void> {
-    await Promise.all([this.#cells.destroy(), this.#plans.destroy()]);
-  }
-
-  async #run(
-    task: CellTask,
-    results: ReadonlyMap<string, CellResult>,
-    hooks: ComputeHooks,
-    cancel: AbortSignal,
-  ): Promise<Outcome> {
+  async #run(name: string, job: JobOnCell, hooks: ComputeHooks, cancel: AbortSignal): Promise<unknown> {
     const { cellLimitMs, heapMb = HEAP_MB } = this.#options;
     const limit = new AbortController();
     const { port1, port2 } = new MessageChannel();
@@ -128,8 +158,8 @@ export class Pool {
     port1.unref();
     try {
       return await this.#cells.run(
-        { task, results: [...results], progress: port2 },
-        { name: "compute", transferList: [port2], signal: AbortSignal.any([cancel, limit.signal]) },
+        { ...job, progress: port2 },
+        { name, transferList: [port2], signal: AbortSignal.any([cancel, limit.signal]) },
       );
     } catch (error) {
       if (cancel.aborted) throw cancelled(error);

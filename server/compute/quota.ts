@@ -4,17 +4,17 @@ const HOUR_MS = 3_600_000;
 
 /** Solver seconds that a person may use within any hour. What is found ready under its key costs nothing. */
 export class Quota {
-  readonly #results: Database["results"];
+  readonly #computations: Database["computations"];
   readonly #seconds: number;
 
-  constructor(results: Database["results"], secondsAnHour: number) {
-    this.#results = results;
+  constructor(computations: Database["computations"], secondsAnHour: number) {
+    this.#computations = computations;
     this.#seconds = secondsAnHour;
   }
 
   /** The words in which more is refused, or null while there is time left. @param now milliseconds since 1970 */
   async refusal(personId: string, now: number = Date.now()): Promise<string | null> {
-    const used = await this.#results.secondsSince(personId, new Date(now - HOUR_MS));
+    const used = await this.#computations.secondsSince(personId, new Date(now - HOUR_MS));
     let total = used.reduce((sum, { seconds }) => sum + seconds, 0);
     if (total < this.#seconds) return null;
     // The oldest leave the hour first: when enough have, there is time again.

@@ -1,13 +1,14 @@
 import type { CellResult } from "../../app/cells/index.ts";
-import type { ComputeRequest, ComputeService, Person } from "../../app/context.ts";
+import type { ComputeRequest, ComputeService } from "../../app/context.ts";
 import type { Database } from "../../db/index.server.ts";
 import type { LiveTexts } from "../sync/index.ts";
-import { unlessAborted } from "./abandon.ts";
 import { Board, type Computable } from "./board.ts";
-import { claimOf, type Follower, type JobEnd, Jobs } from "./jobs.ts";
+import { claimOf, Jobs } from "./jobs.ts";
 import { Pool, type PoolOptions, StoppedError } from "./pool.ts";
 import { Quota } from "./quota.ts";
 import { isBlocked, isComputable, unmet, withNeeds } from "./selection.ts";
+import { type TakenUp, Unfinished } from "./unfinished.ts";
+import { type Asking, Waits } from "./waits.ts";
 import type { PlannedWork } from "./worker.ts";
 
 /** Characters of a text and its bibliography that are read here; a long paper has a tenth of it. */
@@ -21,25 +22,14 @@ export interface ComputeOptions extends PoolOptions {
   readonly onProblem: (error: unknown, where: string) => void;
 }
 
-/** A cell that is waited for on behalf of a paper. */
-interface Wait {
-  readonly paperId: string;
-  readonly cell: Computable;
-  readonly follower: Follower;
-  readonly board: Board;
-  /** Given with the name of who cancels. */
-  readonly cancel: AbortController;
-  /** Settles when the paper shows how it ended. */
-  readonly shown: Promise<void>;
-}
-
 /** Computes the cells of papers, and writes how it goes into what they show. */
 export class Computations implements ComputeService {
   readonly #options: ComputeOptions;
   readonly #pool: Pool;
   readonly #jobs: Jobs;
   readonly #quota: Quota;
-  readonly #waits = new Set<Wait>();
+  readonly #unfinished: Unfinished;
+  readonly #waits: Waits;
 
   constructor(options: ComputeOptions) {
     const { database, texts, secondsAnHour } = options;
@@ -48,18 +38,34 @@ export class Computations implements ComputeService {
     this.#jobs = new Jobs({
       pool: this.#pool,
       results: database.results,
+      parts: database.parts,
       signals: texts.signals,
       onStopped: (error) => options.onProblem(error, "a cell was stopped"),
     });
-    this.#quota = new Quota(database.results, secondsAnHour);
+    this.#quota = new Quota(database.computations, secondsAnHour);
+    this.#unfinished = new Unfinished({
+      computations: database.computations,
+      signals: texts.signals,
+      begin: (taken) => this.#takeUp(taken),
+      giveUp: (taken) => this.#giveUp(taken),
+      onProblem: options.onProblem,
+    });
+    this.#waits = new Waits({
+      database,
+      jobs: this.#jobs,
+      quota: this.#quota,
+      isLeft: (record) => this.#unfinished.isLeft(record),
+      onProblem: options.onProblem,
+    });
     texts.listen(({ signal, paperId, cells, by }) => {
       if (signal === "cancel" && typeof paperId === "string" && typeof by === "string") {
-        this.#cancelHere(paperId, cells === "all" || !Array.isArray(cells) ? "all" : cells, by);
+        void this.#waits.cancel(paperId, cells === "all" || !Array.isArray(cells) ? "all" : cells, by);
       }
     });
     texts.onShownLoaded((paperId) => {
       this.#clearStale(paperId).catch((error) => options.onProblem(error, "stale work"));
     });
+    void this.#unfinished.look();
   }
 
   async compute(request: ComputeRequest): ReturnType<ComputeService["compute"]> {
@@ -83,7 +89,7 @@ export class Computations implements ComputeService {
       const result = kept.get(cell.key);
       return result && isReady(cell) && shown[cell.slot]?.key !== cell.key ? [[cell, result]] : [];
     });
-    const underWay = new Set([...this.#waits].filter((wait) => wait.paperId === paperId).map(({ cell }) => cell.key));
+    const underWay = this.#waits.keysOf(paperId);
     const absent = wanted.filter((cell) => !isReady(cell));
     const missing = absent.filter((cell) => !underWay.has(cell.key));
 
@@ -107,8 +113,10 @@ export class Computations implements ComputeService {
 
   async cancel(request: Parameters<ComputeService["cancel"]>[0]): Promise<void> {
     const { paperId, person, cells } = request;
+    // What nobody does just now is taken up first, so that it is cancelled as all else.
+    await this.#unfinished.look();
     await this.#options.texts.send({ signal: "cancel", paperId, cells, by: person.name });
-    await Promise.all(this.#cancelHere(paperId, cells, person.name));
+    await this.#waits.cancel(paperId, cells, person.name);
     await this.#clearStale(paperId);
   }
 
@@ -140,18 +148,19 @@ export class Computations implements ComputeService {
 
   /** True while a thread of this process computes a cell of this id. */
   isComputing(id: string): boolean {
-    return [...this.#waits].some(({ cell }) => cell.id === id && this.#jobs.hasThread(cell.key));
+    return this.#waits.isComputing(id);
   }
 
   /** Resolves when nothing is being computed for the paper in this process. */
   async settled(paperId: string): Promise<void> {
-    await Promise.all([...this.#waits].filter((wait) => wait.paperId === paperId).map(({ shown }) => shown));
+    await this.#waits.settled(paperId);
   }
 
-  /** Ends what is being computed, as if it had not been asked, and the threads. */
+  /** Ends what is being computed and the threads: what takes long is left to the next process, the rest is as if it had not been asked. */
   async close(): Promise<void> {
+    this.#unfinished.end();
     await this.#jobs.close();
-    await Promise.all([...this.#waits].map(({ shown }) => shown));
+    await this.#waits.settled();
     await this.#pool.close();
   }
 
@@ -173,100 +182,49 @@ export class Computations implements ComputeService {
     board: Board,
     begun: string,
   ): Promise<void> {
-    const { results } = this.#options.database;
-    const record = await results.openComputation(
-      paperId,
-      person.id,
-      cells.map(({ id }) => id),
+    const record = await this.#unfinished.open(paperId, person.id, cells);
+    this.#follow(
+      record,
+      cells.map((cell) => this.#waits.add({ paperId, person, begun, record }, cell, board, force ?? false)),
     );
-    const all = cells.map((cell) => this.#wait(paperId, person, cell, board, begun, record, force ?? false));
-    Promise.all(all)
-      .then(() => results.closeComputation(record))
+  }
+
+  /** Closes the record when all that is waited for has ended. */
+  #follow(record: number, shown: readonly Promise<void>[]): void {
+    Promise.all(shown)
+      .then(() => this.#unfinished.close(record))
       .catch((error) => this.#options.onProblem(error, "record of a computation"));
   }
 
-  #wait(
-    paperId: string,
-    person: Person,
-    cell: Computable,
-    board: Board,
-    begun: string,
-    record: number,
-    replace: boolean,
-  ): Promise<void> {
-    const { database, onProblem } = this.#options;
-    const tell = (told: Promise<void>) => void told.catch((error) => onProblem(error, "what a paper shows"));
-    const follower: Follower = {
-      // A quick cell is there before anybody could read that it is being computed.
-      begun: () => {
-        if (!cell.quick) tell(board.work(cell, { state: "computing", begun, done: 0, total: 0 }));
-      },
-      progress: (done, total) => tell(board.progress(cell, done, total)),
-    };
-    const ended = this.#jobs.follow(
-      {
-        key: cell.key,
-        task: cell.task,
-        replace,
-        refusal: () => this.#quota.refusal(person.id),
-        used: (seconds) => database.results.addSeconds(record, seconds),
-      },
-      follower,
+  /** Goes on with what another process left: the cells that the paper still shows as waiting or computing. */
+  async #takeUp({ id: record, paperId, personId, personName, begunAt, cells }: TakenUp): Promise<void> {
+    const { texts } = this.#options;
+    const begun = begunAt.toISOString();
+    const board = new Board(texts, paperId, personName, begun);
+    const { work } = await texts.shown(paperId);
+    const open = cells.filter(({ slot, key }) => {
+      const mark = work[slot];
+      return mark?.key === key && (mark.state === "waiting" || mark.state === "computing");
+    });
+    const asking: Asking = { paperId, person: { id: personId, name: personName }, begun, record };
+    for (const cell of open) await board.work(cell, { state: "waiting", begun, needs: unmet(cell, open) });
+    this.#follow(
+      record,
+      open.map((cell) => this.#waits.add(asking, cell, board, false)),
     );
-    const cancel = new AbortController();
-    const shown = unlessAborted(ended, cancel.signal, (): JobEnd => ({ end: "cancelled" }))
-      .catch((error): JobEnd => {
-        onProblem(error, `cell ${cell.id}`);
-        return { end: "failed", entry: "", message: "It could not be computed just now. Recompute tries again." };
-      })
-      .then((end) => this.#show(wait, end, person))
-      .catch((error) => onProblem(error, "what a paper shows"))
-      .finally(() => this.#waits.delete(wait));
-    const wait: Wait = { paperId, cell, follower, board, cancel, shown };
-    this.#waits.add(wait);
-    return shown;
   }
 
-  async #show({ paperId, cell, board, cancel }: Wait, end: JobEnd, person: Person): Promise<void> {
+  async #giveUp({ paperId, personName, begunAt, cells, begunTimes }: TakenUp): Promise<void> {
     const at = new Date().toISOString();
-    switch (end.end) {
-      case "computed":
-        await this.#options.database.results.recordForPaper(paperId, [cell.key], person.id);
-        await board.computed(cell, end.result);
-        break;
-      case "failed": {
-        const line = cell.task.lines[end.entry] ?? cell.line;
-        await board.work(cell, { state: "failed", at, line, message: end.message });
-        break;
-      }
-      case "waiting":
-        await board.work(cell, { state: "waiting", begun: at, needs: end.needs });
-        break;
-      case "cancelled":
-        // Cancelled by nobody: this process ends.
-        if (cancel.signal.aborted) await board.cancelled(cell, String(cancel.signal.reason), at);
-        else await board.forget(cell);
-        break;
-    }
-  }
-
-  /** Cancels what this process computes for the paper's cells, and what reads them. */
-  #cancelHere(paperId: string, ids: readonly string[] | "all", by: string): Promise<void>[] {
-    const waits = [...this.#waits].filter((wait) => wait.paperId === paperId);
-    const stopped = new Set(waits.map(({ cell }) => cell.id).filter((id) => ids === "all" || ids.includes(id)));
-    // Waits stand in dependency order, so one pass finds all that read a cancelled cell.
-    for (const { cell } of waits) if (cell.needs.some((need) => stopped.has(need))) stopped.add(cell.id);
-    const cancelled = waits.filter(({ cell }) => stopped.has(cell.id));
-    for (const wait of cancelled) {
-      wait.cancel.abort(by);
-      this.#jobs.leave(wait.cell.key, wait.follower);
-    }
-    return cancelled.map(({ shown }) => shown);
+    const message = `It was begun ${begunTimes - 1} times, and each time the server ended before it was done. Recompute tries again.`;
+    const board = new Board(this.#options.texts, paperId, personName, begunAt.toISOString());
+    for (const cell of cells) await board.work(cell, { state: "failed", at, line: cell.line, message });
   }
 
   /** Takes away work that no process does: one was killed over it. */
   async #clearStale(paperId: string): Promise<void> {
     const { texts } = this.#options;
+    await this.#unfinished.look();
     const { work } = await texts.shown(paperId);
     for (const [slot, { key, state }] of Object.entries(work)) {
       if ((state !== "waiting" && state !== "computing") || this.#jobs.isRunning(key) || isBlocked(work, slot))

@@ -2,4 +2,4 @@
 import { register } from "tsx/esm/api";
 
 register();
-export const { compute, plan } = await import("./worker.ts");
+export const { compute, part, merge, plan } = await import("./worker.ts");

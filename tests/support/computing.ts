@@ -1,6 +1,6 @@
 import type { Knex } from "knex";
 import type { CellWork, ShownCell } from "../../app/cells/types.ts";
-import { connect, openDatabase } from "../../db/index.server.ts";
+import { connect, type Database, openDatabase } from "../../db/index.server.ts";
 import { Computations, type ComputeOptions } from "../../server/compute/index.ts";
 import { bundled } from "./bundled.ts";
 import { freshDatabaseUrl } from "./database.ts";
@@ -9,6 +9,7 @@ import { type Invented, inventPaper, inventPerson, type LiveServer, startLiveSer
 /** A process that computes, without pages. */
 export interface Computing {
   readonly knex: Knex;
+  readonly database: Database;
   readonly databaseUrl: string;
   readonly server: LiveServer;
   readonly service: Computations;
@@ -25,8 +26,9 @@ export async function startComputing(
   const knex = connect(url);
   const server = await startLiveServer(knex, url);
   const problems: unknown[] = [];
+  const database = openDatabase(knex);
   const service = new Computations({
-    database: openDatabase(knex),
+    database,
     texts: server.texts,
     threads: 1,
     cellLimitMs: 60_000,
@@ -38,6 +40,7 @@ export async function startComputing(
   });
   return {
     knex,
+    database,
     databaseUrl: url,
     server,
     service,
@@ -110,7 +113,7 @@ export class Desk {
   }
 
   /** Records of what was computed for the paper, in the order of asking. */
-  async records(): Promise<{ seconds: number; cells: string[] }[]> {
+  async records(): Promise<{ seconds: number; cells: string[]; ended_at: Date | null }[]> {
     return this.computing.knex("computations").where({ paper_id: this.paperId }).orderBy("id");
   }
 }

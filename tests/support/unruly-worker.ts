@@ -2,11 +2,11 @@
  * The worker of computations, in which cells of some names misbehave before they compute as usual:
  * `Slow…` takes 300 ms and tells its progress, `Spin…` never ends, `Heap…` fills the memory, `Exit…` ends the thread.
  */
-import { type ComputeJob, compute as computeOrderly, plan } from "../../server/compute/worker.ts";
+import { type ComputeJob, compute as computeOrderly, merge, part, plan } from "../../server/compute/worker.ts";
 
 const SLOW_MS = 300;
 
-export { plan };
+export { merge, part, plan };
 
 export function compute(job: ComputeJob): ReturnType<typeof computeOrderly> {
   const { id } = job.task;
