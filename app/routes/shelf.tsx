@@ -45,6 +45,7 @@ export default function Shelf({ loaderData, actionData }: Route.ComponentProps) 
         right={
           <>
             <span className="head-name">{name}</span>
+            <CommandLink to="/manual">Manual</CommandLink>
             <CommandLink to="/settings">Settings</CommandLink>
           </>
         }

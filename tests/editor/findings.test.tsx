@@ -2,8 +2,8 @@ import { renderToStaticMarkup } from "react-dom/server";
 import { expect, test } from "vitest";
 import { StateLine } from "../../app/editor/parts/state-line.tsx";
 import { SheetReader } from "../../app/editor/reading/sheet-reader.ts";
-import type { SheetHost } from "../../app/editor/text/host.ts";
 import { computed, tellText } from "./sample.ts";
+import { silentHost } from "./silent-host.ts";
 
 const PAPER = `\`\`\`parameters
 mu: 2
@@ -19,22 +19,7 @@ that: mu < 3
 \`\`\`
 `;
 
-const nothing = () => {};
-const HOST: SheetHost = {
-  commands: {
-    recompute: nothing,
-    cancel: nothing,
-    letStand: nothing,
-    showWorking: nothing,
-    putAway: nothing,
-    goToCell: nothing,
-    goToLine: nothing,
-  },
-  writes: true,
-  macros: {},
-  views: new Map(),
-  columnWidth: 660,
-};
+const HOST = silentHost();
 
 function sheetOf(text: string) {
   const reader = new SheetReader();

@@ -11,6 +11,7 @@ import { type SheetHost, sheetHost } from "../../app/editor/text/host.ts";
 import { applyModel, setAttention, setPressed, sheetField, showWorking } from "../../app/editor/text/sheet-field.ts";
 import { likeABrowser } from "./dom.ts";
 import { computed, SAMPLE, tellText } from "./sample.ts";
+import { silentHost } from "./silent-host.ts";
 
 beforeAll(likeABrowser);
 
@@ -19,27 +20,8 @@ afterEach(() => {
   for (const view of open.splice(0)) view.destroy();
 });
 
-function hostOf(): SheetHost {
-  const nothing = () => {};
-  return {
-    commands: {
-      recompute: nothing,
-      cancel: nothing,
-      letStand: nothing,
-      showWorking: nothing,
-      putAway: nothing,
-      goToCell: nothing,
-      goToLine: nothing,
-    },
-    writes: true,
-    macros: {},
-    views: new Map(),
-    columnWidth: 660,
-  };
-}
-
 function sheetOf(text: string, extensions: readonly ReturnType<typeof EditorState.readOnly.of>[] = []) {
-  const host = hostOf();
+  const host = silentHost();
   const parent = document.body.appendChild(document.createElement("div"));
   const view = new EditorView({
     parent,

@@ -82,6 +82,7 @@ export class Desk {
     this.requests = requestsOf(options.paperId);
     this.host = {
       commands: this.commands(),
+      plateOf: (id) => `/papers/${options.paperId}/plates/${encodeURIComponent(id)}`,
       writes: options.writes,
       macros: {},
       views: new Map<string, ShownView>(),
@@ -100,8 +101,8 @@ export class Desk {
       },
       onBibliography: () => this.reading?.textChanged(),
       onPeople: (people) => this.store.set({ people }),
-      onJoined: (own) => {
-        const words = `Connected. ${own} ${own === 1 ? "change" : "changes"} by you ${own === 1 ? "was" : "were"} joined.`;
+      onJoined: (joined) => {
+        const words = `Connected. ${joined}`;
         this.store.set({ notice: { words, amiss: false } });
         this.announcer.say(words);
       },
@@ -235,6 +236,7 @@ export class Desk {
       if (view === null) this.host.views.delete(slot);
       else this.host.views.set(slot, view);
     }
+    if (this.store.get().model === null) this.goToAddress();
     this.store.set({ model });
     this.fetcher.want(model.wanted);
     if (!model.preview) this.announcer.hearCells(model.cells);
@@ -242,6 +244,12 @@ export class Desk {
       this.wantsKept = false;
       void this.showKept(model);
     }
+  }
+
+  /** A line named in the page's address, as `#line-37`, is where one wants to be. */
+  private goToAddress(): void {
+    const named = /^#line-(\d+)$/.exec(window.location.hash)?.[1];
+    if (named !== undefined) requestAnimationFrame(() => this.host.commands.goToLine(Number(named)));
   }
 
   /** Results kept under the new keys appear without being asked for; all else waits. */

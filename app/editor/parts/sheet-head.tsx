@@ -26,6 +26,7 @@ export function SheetHead({ desk, props }: Props) {
           {props.person === null ? null : (
             <CommandLink to={`/papers/${props.paperId}/title-page`}>Title page</CommandLink>
           )}
+          <CommandLink to="/manual">Manual</CommandLink>
           <CommandLink to={`/papers/${props.paperId}/galley`}>Galley</CommandLink>
         </>
       }

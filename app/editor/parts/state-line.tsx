@@ -51,6 +51,15 @@ export function StateLine({ face, open, host }: Props) {
           of={face.title}
           onPress={() => (open ? host.commands.putAway(face.slot) : host.commands.showWorking(face.slot))}
         />
+        {face.hasResult && face.state !== "preview" ? (
+          <a
+            className="command hl-small hl-quiet"
+            href={host.plateOf(face.id)}
+            aria-label={`Open as plate, ${face.title}`}
+          >
+            Open as plate
+          </a>
+        ) : null}
       </span>
     </div>
   );

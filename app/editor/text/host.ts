@@ -15,6 +15,8 @@ export interface CellCommands {
 /** What the typeset pieces of the text need from the page around them. */
 export interface SheetHost {
   readonly commands: CellCommands;
+  /** The address of a cell's plate. */
+  plateOf(id: string): string;
   /** May change the text and recompute. */
   readonly writes: boolean;
   /** TeX macros of the front matter, of the newest answer. */
