@@ -6,7 +6,12 @@ import type { CellWork, ParameterChange, ShownCell } from "../../cells/index.ts"
 import { type Kept, watchKept } from "../kept.ts";
 import { BIBLIOGRAPHY_NAME, SHOWN_NAMES, SOCKET_PATHS, TEXT_NAME } from "../protocol.ts";
 import { type Connection, closingOf } from "./connection.ts";
+import { JoinedChanges } from "./joined-changes.ts";
+import { followNetwork } from "./network.ts";
 import { forgetPrivateCopy, privateCopyName } from "./private-copies.ts";
+
+/** After a joining, how long the others' names are waited for, in ms. */
+const NAMES_MS = 400;
 
 /** What a paper shows, in the form in which pages and workers pass it on. */
 export interface ShownRecords {
@@ -29,8 +34,8 @@ export interface SessionOptions {
   onBibliography(): void;
   /** Names of the others whose pages are open. */
   onPeople(names: readonly string[]): void;
-  /** Words written while away were joined with the others'. */
-  onJoined(own: number): void;
+  /** What was written here while away, or by others meanwhile, was joined: a sentence that says how much by whom. */
+  onJoined(words: string): void;
 }
 
 /** One page's hold on a paper: its text and what it shows, live, with a private copy for spells without connection. */
@@ -108,22 +113,36 @@ function joinText(options: SessionOptions, person: { readonly id: string }, doc:
     connect: false,
   });
   const unwatch = watchKept(provider, options.onKept);
+  const unfollow = followNetwork(provider);
+  const names = namesByClient(awareness);
   let everLive = false;
-  let away = { since: new Date(), own: 0 };
+  let away = { since: new Date(), changes: new JoinedChanges() };
+  let telling: ReturnType<typeof setTimeout> | undefined;
   provider.on("sync", (synced) => {
     if (!synced) return;
-    if (everLive && away.own > 0) options.onJoined(away.own);
+    const { changes } = away;
+    // The others' names come after their words.
+    if (everLive) telling = setTimeout(() => tellJoined(changes), NAMES_MS);
     everLive = true;
-    away = { since: new Date(), own: 0 };
+    away = { since: new Date(), changes: new JoinedChanges() };
     options.onConnection({ state: "live" });
     options.onText();
   });
-  doc.on("update", (_update: Uint8Array, origin: unknown) => {
-    if (origin !== provider && origin !== copy && !provider.synced) away.own += 1;
+  const tellJoined = (changes: JoinedChanges) => {
+    const words = changes.words((client) => names.get(client));
+    if (words !== null) options.onJoined(words);
+  };
+  for (const name of [TEXT_NAME, BIBLIOGRAPHY_NAME]) {
+    doc.getText(name).observe((event, { origin }) => {
+      if (everLive && origin !== provider && origin !== copy && !provider.synced) away.changes.noteOwn(event);
+    });
+  }
+  doc.on("update", (update: Uint8Array, origin: unknown) => {
+    if (everLive && origin === provider && !provider.synced) away.changes.noteOthers(update);
   });
   provider.on("connection-close", () => {
     // Counted from the loss, not from the last vain attempt.
-    if (provider.wsUnsuccessfulReconnects === 0) away = { since: new Date(), own: 0 };
+    if (provider.wsUnsuccessfulReconnects === 0) away = { since: new Date(), changes: new JoinedChanges() };
     options.onConnection({ state: "away", since: away.since });
   });
   provider.on("closed", ({ code }) => {
@@ -145,6 +164,8 @@ function joinText(options: SessionOptions, person: { readonly id: string }, doc:
     again: () => provider.connect(),
     stop() {
       unwatch();
+      unfollow();
+      clearTimeout(telling);
       provider.destroy();
       void copy?.destroy();
     },
@@ -170,13 +191,26 @@ function joinShown(options: SessionOptions): Tie {
   doc.on("update", tell);
   const provider = new WebsocketProvider(socketBase() + SOCKET_PATHS.shown, options.paperId, doc, { disableBc: true });
   provider.awareness.setLocalState(null);
+  const unfollow = followNetwork(provider);
   return {
     again: () => provider.connect(),
     stop() {
+      unfollow();
       provider.destroy();
       doc.destroy();
     },
   };
+}
+
+/** Who wrote as which client, of all who were here at any time since the page was opened. */
+function namesByClient(awareness: Awareness): ReadonlyMap<number, string> {
+  const names = new Map<number, string>();
+  awareness.on("change", () => {
+    for (const [client, state] of awareness.getStates()) {
+      if (typeof state.user?.name === "string") names.set(client, state.user.name);
+    }
+  });
+  return names;
 }
 
 function watchPeople(awareness: Awareness, onPeople: (names: readonly string[]) => void): Tie {
