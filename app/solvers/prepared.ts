@@ -1,5 +1,6 @@
 import type { Contour } from "./contour.ts";
 import { contoursFor } from "./contours.ts";
+import { curvatureError } from "./curvature.ts";
 import { SolverError } from "./errors.ts";
 import { lawUnit } from "./input-rounding.ts";
 import { nonlinearity } from "./offspring.ts";
@@ -98,7 +99,11 @@ function radiusSpread(t: Trajectory, reader: TrajectoryReader): number {
 /** What half a unit in each input does to the factor of s0^−n. */
 function factorSpread(t: Trajectory, reader: TrajectoryReader, starts: Starts): number {
   const { turning } = reader;
-  const base = t.amplitudeSpread + (turning === null ? t.decaySpread : turning.excessSpread + turning.amplitudeSpread);
+  const base =
+    t.amplitudeSpread +
+    (turning === null
+      ? t.decaySpread
+      : turning.excessSpread + turning.amplitudeSpread + curvatureError(t, reader, turning));
   if (starts === "far") return base;
   const perParticle = starts.reduce(
     (sum, s) => sum + s.particles * (base + reader.decay * s.position * (t.decaySpread + 2 * ROUNDING)),

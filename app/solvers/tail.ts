@@ -1,5 +1,5 @@
+import { curvatureError } from "./curvature.ts";
 import { SolverError } from "./errors.ts";
-import { nonlinearity } from "./offspring.ts";
 import { divide, LN2, logarithm, multiply } from "./pairs.ts";
 import { profileConstants, profileSlopeAt, radius } from "./profile.ts";
 import { ROUNDING, readerOf, type TrajectoryReader } from "./reader.ts";
@@ -42,7 +42,7 @@ export function tailLaw(t: Trajectory, starts: Starts, terms: number): Answer<Ta
     turning.excessSpread +
     turning.amplitudeSpread +
     spreadOfStarts(t, reader, starts) +
-    curvatureCondition(t, reader, turning) * (PLACE_ROUNDINGS * ROUNDING + turning.excessSpread);
+    curvatureError(t, reader, turning);
   return {
     kind: "square-root",
     s0: radius(turning, t.base),
@@ -81,18 +81,6 @@ const NO_POWER =
 
 /** Roundings in the constant: the turning point's expansion, its inverse, the expansion at the start. */
 const CONSTANT_ROUNDINGS = 64;
-
-/** Roundings in u at the turning point. */
-const PLACE_ROUNDINGS = 2;
-
-/** By what factor a relative change of s0 − 1 changes w″ where w turns, and with it the constant: 1 and less where the law is smooth there,
- *  much where w turns just below the pole of a geometric law or, near the critical drift toward the barrier, just above 1. */
-function curvatureCondition(t: Trajectory, reader: TrajectoryReader, turning: Turning): number {
-  const u = -turning.excess[0];
-  const { derivative } = nonlinearity(reader.law, u);
-  const curvature = 2 * (reader.topExpansion().re[2] as number);
-  return Math.abs(((t.strength[0] * derivative - t.ratio[0]) * u) / curvature);
-}
 
 function spreadOfStarts(t: Trajectory, reader: TrajectoryReader, starts: Starts): number {
   if (starts === "far") return t.amplitudeSpread;
