@@ -172,8 +172,8 @@ function TableBlock({ node, setting }: { readonly node: Table; readonly setting:
   const [head, ...rows] = node.children;
   const side = (k: number) => ({ textAlign: node.align?.[k] ?? "left" }) as const;
   return (
-    <section className="g-grid" aria-label={`Table in line ${node.position?.start.line ?? 0}`} {...reachable}>
-      <table className="g-table">
+    <section className="paper-grid" aria-label={`Table in line ${node.position?.start.line ?? 0}`} {...reachable}>
+      <table className="paper-table">
         <thead>
           <tr>
             {head?.children.map((entry, k) => (

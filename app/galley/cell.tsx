@@ -122,8 +122,8 @@ interface ResultTableProps {
 
 export function ResultTable({ name, table, setting }: ResultTableProps) {
   return (
-    <section className="g-grid" aria-label={name} {...reachable}>
-      <table className="g-table g-results">
+    <section className="paper-grid" aria-label={name} {...reachable}>
+      <table className="paper-table paper-results">
         <thead>
           <tr>
             {table.columns.map((column) => (

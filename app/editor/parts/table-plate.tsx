@@ -10,8 +10,8 @@ interface TablePlateProps {
 /** A table of results: rules above, below and under the head, numbers to the right, unsupported digits grey. */
 export function TablePlate({ table, macros }: TablePlateProps) {
   return (
-    <section className="hl-grid" aria-label="Table" ref={reachable}>
-      <table className="hl-table hl-results">
+    <section className="paper-grid" aria-label="Table" ref={reachable}>
+      <table className="paper-table paper-results">
         <thead>
           <tr>
             {table.columns.map((column) => (

@@ -134,8 +134,8 @@ function grid(
 ): HTMLElement {
   const cell = (tag: "th" | "td") => (content: readonly Run[], column: number) =>
     element(tag, "", [runs(content, macros)], { style: `text-align:${align[column] ?? "left"}` });
-  return element("div", "hl-grid", [
-    element("table", "hl-table", [
+  return element("div", "paper-grid", [
+    element("table", "paper-table", [
       element("thead", "", [element("tr", "", head.map(cell("th")))]),
       element(
         "tbody",
