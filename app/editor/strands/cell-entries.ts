@@ -34,7 +34,8 @@ export function entriesOf(box: NonNullable<SceneCell["box"]>, strands: number, q
     return { ys: rising(first, gap, strands), ring: first + gap * strands, ...closeness(gap) };
   }
   const ys = rising(top + 6, gap, strands);
-  return { ys, ring: Math.min(bottom, (ys.at(-1) ?? top) + RING_GAP), ...closeness(GAP) };
+  const last = ys.at(-1) ?? top;
+  return { ys, ring: Math.max(last + GAP, Math.min(bottom, last + RING_GAP)), ...closeness(GAP) };
 }
 
 function rising(first: number, gap: number, count: number): number[] {

@@ -80,7 +80,8 @@ class Walk {
 
   /** The plate's own command takes the focus: from there the keys go on, and a reader says which plate it is. */
   private focusPlate(slot: string, patience: number): void {
-    const plate = this.view.contentDOM.querySelector(`.hl-cell[data-slot="${CSS.escape(slot)}"]`);
+    const cells = [...this.view.contentDOM.querySelectorAll<HTMLElement>(".hl-cell[data-slot]")];
+    const plate = cells.find(({ dataset }) => dataset.slot === slot);
     const command = plate?.querySelector<HTMLElement>(".hl-offers button");
     if (command != null) command.focus({ preventScroll: true });
     else if (patience > 0) requestAnimationFrame(() => this.focusPlate(slot, patience - 1));
