@@ -77,7 +77,7 @@ function alternative(data: GeneratingFunctionData): string {
     end === null
       ? ""
       : end > 1
-        ? ` At s0 = ${shortNumber(end)} each ends with a vertical tangent; beyond it E s^K is infinite.`
+        ? ` At s0 = ${shortNumber(end)} ${curves.some(({ start }) => start === 0) ? "those from x > 0 end" : "each ends"} with a vertical tangent; beyond it E s^K is infinite.`
         : " Beyond s = 1 E s^K is infinite.";
   return `E_x[s^K] for x = ${starts}, ${range}: ${told.join("; ")}.${last}`;
 }
