@@ -1,7 +1,7 @@
 import WebSocket from "ws";
 import { WebsocketProvider } from "y-websocket";
 import * as Y from "yjs";
-import { SOCKET_PATHS, TEXT_NAME } from "../app/editor/protocol.ts";
+import { MESSAGE_KEPT, SOCKET_PATHS, TEXT_NAME } from "../app/editor/protocol.ts";
 import type { ServedPaper } from "./served-paper.ts";
 
 /** Between two letters of one of the others [ms]. */
@@ -30,6 +30,8 @@ export async function othersTyping(
         WebSocketPolyfill: OwnSocket as unknown as typeof globalThis.WebSocket,
         disableBc: true,
       });
+      // What is committed is told to each that writes; nobody is asked here.
+      provider.messageHandlers[MESSAGE_KEPT] = () => undefined;
       await synced(provider);
       const text = doc.getText(TEXT_NAME);
       const share = (who + 1) / (count + 2);

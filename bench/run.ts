@@ -1,6 +1,6 @@
 /**
  * Times what a reader waits for, as ratios within one run so that they do not depend on the machine:
- * npm run bench [-- solvers] [papers] [keystroke]; without a subject, all of them.
+ * npm run bench [-- solvers] [simulation] [papers] [keystroke]; without a subject, all of them.
  */
 
 /** Makes this file a module, so that it may wait. */
@@ -11,10 +11,15 @@ export interface Subject {
 /** Each subject has a file of its own, loaded when it is asked for. */
 const SUBJECTS: Readonly<Record<string, () => Promise<Subject>>> = {
   solvers: async () => ({ print: (await import("./solvers.ts")).printSolvers }),
+  simulation: async () => ({ print: (await import("./simulation.ts")).printSimulation }),
   papers: async () => ({ print: (await import("./papers.ts")).printPapers }),
   keystroke: async () => {
     const [{ printKeystrokes }, { longPaper }] = await Promise.all([import("./keystroke.ts"), import("./papers.ts")]);
     return { print: () => printKeystrokes(longPaper()) };
+  },
+  opening: async () => {
+    const [{ printOpening }, { longPaper }] = await Promise.all([import("./opening.ts"), import("./papers.ts")]);
+    return { print: () => printOpening(longPaper()) };
   },
 };
 
