@@ -99,17 +99,14 @@ function radiusSpread(t: Trajectory, reader: TrajectoryReader): number {
 /** What half a unit in each input does to the factor of s0^−n. */
 function factorSpread(t: Trajectory, reader: TrajectoryReader, starts: Starts): number {
   const { turning } = reader;
-  const base =
-    t.amplitudeSpread +
-    (turning === null
-      ? t.decaySpread
-      : turning.excessSpread + turning.amplitudeSpread + curvatureError(t, reader, turning));
-  if (starts === "far") return base;
+  const base = t.amplitudeSpread + (turning === null ? t.decaySpread : turning.excessSpread + turning.amplitudeSpread);
+  const curvature = turning === null ? 0 : curvatureError(t, reader, turning);
+  if (starts === "far") return base + curvature;
   const perParticle = starts.reduce(
     (sum, s) => sum + s.particles * (base + reader.decay * s.position * (t.decaySpread + 2 * ROUNDING)),
     0,
   );
-  return base + perParticle + ownRoundings(t, starts);
+  return base + perParticle + curvature + ownRoundings(t, starts);
 }
 
 const NONE: ScaledEstimate = { mantissa: 0, exponent: 0, error: 0 };
