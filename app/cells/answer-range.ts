@@ -1,7 +1,16 @@
 import { toDouble } from "../formulas/index.ts";
 import type { Paper } from "../paper/index.ts";
 import type { Border, Branches } from "./borders.ts";
-import { borderWords, findBordersSteps, finish, mergedBorders, openSide, sameBranches } from "./borders.ts";
+import {
+  borderWords,
+  DOUBLES,
+  findBordersSteps,
+  finish,
+  mergedBorders,
+  openSide,
+  sameBranches,
+  WHOLE_NUMBERS,
+} from "./borders.ts";
 import { computePlan, quickCells } from "./compute.ts";
 import { planPaper } from "./plan.ts";
 import { isJudged, isRefusal, standingsAt } from "./standings.ts";
@@ -58,17 +67,19 @@ export function* answerRangeSteps(
   const parameter = plan.parameters.find((each) => each.name === name);
   const quick = quickCells(plan);
   const readers = plan.cells.filter((cell) => quick.has(cell.id) && cell.parameters.includes(name));
-  const places = parameter === undefined ? [] : placesOf(parameter);
+  const grid = parameter !== undefined && counts(parameter) ? WHOLE_NUMBERS : DOUBLES;
+  const places = parameter === undefined ? [] : increasing(placesOf(parameter).map(grid));
   if (readers.length === 0 || places.length === 0) return { parameter: name, borders: [] };
   const judged = readers.filter((cell) => isJudged(cell, plan, name));
-  const found = yield* findBordersSteps(places, (x) => standingsAt(plan, name, x, judged, options.known), sameBranches);
+  const standings = (x: number) => standingsAt(plan, name, x, judged, options.known);
+  const found = yield* findBordersSteps(places, standings, sameBranches, grid);
   const borders = mergedBorders(found);
   if (borders.length === 0) return { parameter: name, borders: [] };
   const stretches: (readonly Missing[])[] = [];
   const ends = [places[0] ?? 0, ...borders.flatMap(({ below, above }) => [below, above]), places.at(-1) ?? 0];
   for (let index = 0; index < ends.length; index += 2) {
     const [from = 0, to = 0] = ends.slice(index, index + 2);
-    stretches.push(yield* missingAt(paper, name, from + (to - from) / 2, readers, options));
+    stretches.push(yield* missingAt(paper, name, grid(from + (to - from) / 2), readers, options));
   }
   return { parameter: name, borders: borders.map((border, index) => answerBorder(border, stretches, index)) };
 }
@@ -83,6 +94,12 @@ interface Missing {
   readonly reason: string;
 }
 
+/** Whether a parameter goes in whole numbers alone: its scale, its step and its present value are whole. */
+function counts({ min, step, value }: PlannedParameter): boolean {
+  const present = value.type === "number" ? toDouble(value.quantity) : Number.NaN;
+  return step !== null && [step, min ?? 0, present].every(Number.isInteger);
+}
+
 /** Where to look: over the scale, its present value among them, or around that value. */
 function placesOf({ min, max, value }: PlannedParameter): number[] {
   const present = value.type === "number" ? toDouble(value.quantity) : null;
@@ -91,11 +108,11 @@ function placesOf({ min, max, value }: PlannedParameter): number[] {
     const even = Array.from({ length: LOOKS + 1 }, (_, index) =>
       index === LOOKS ? max : min + ((max - min) * index) / LOOKS,
     );
-    return increasing([...even, ...around.filter((x) => x > min && x < max)]);
+    return [...even, ...around.filter((x) => x > min && x < max)];
   }
   if (present === null) return [];
   const size = present === 0 ? 1 : Math.abs(present);
-  return increasing([...around, ...REACH.flatMap((share) => [present - share * size, present + share * size])]);
+  return [...around, ...REACH.flatMap((share) => [present - share * size, present + share * size])];
 }
 
 function increasing(places: readonly number[]): number[] {

@@ -9,6 +9,13 @@ export interface Border<T> {
   readonly upper: T;
 }
 
+/** The place to ask in a number's stead. */
+export type Grid = (x: number) => number;
+
+export const DOUBLES: Grid = (x) => x;
+/** Of a parameter that counts: asked between two whole numbers, cells would only say that it is none. */
+export const WHOLE_NUMBERS: Grid = Math.floor;
+
 /** An interval is halved so often at most: enough to part neighbouring doubles of one sign and size. */
 const HALVINGS = 128;
 const MOST_BORDERS = 12;
@@ -18,12 +25,13 @@ const ROUNDING = 64 * Number.EPSILON;
 /**
  * The borders between the first and the last of some places, found by bisection between neighbours whose answers differ.
  * Of several changes between two neighbours all are found unless they undo each other there. One answer is asked a step.
- * @param places increasing @param same whether two answers are one
+ * @param places increasing @param same whether two answers are one @param grid the places that may be asked
  */
 export function* findBordersSteps<T>(
   places: readonly number[],
   answerAt: (x: number) => T,
   same: (a: T, b: T) => boolean,
+  grid: Grid = DOUBLES,
 ): Generator<void, Border<T>[]> {
   const borders: Border<T>[] = [];
   const [first] = places;
@@ -34,7 +42,7 @@ export function* findBordersSteps<T>(
     yield;
     const upper = answerAt(to);
     while (!same(lower, upper) && borders.length < MOST_BORDERS) {
-      const border: Border<T> = yield* bisected({ below: from, above: to, lower, upper }, answerAt, same);
+      const border: Border<T> = yield* bisected({ below: from, above: to, lower, upper }, answerAt, same, grid);
       borders.push(border);
       [from, lower] = [border.above, border.upper];
     }
@@ -76,10 +84,11 @@ function* bisected<T>(
   border: Border<T>,
   answerAt: (x: number) => T,
   same: (a: T, b: T) => boolean,
+  grid: Grid,
 ): Generator<void, Border<T>> {
   let { below, above, upper } = border;
   for (let halving = 0; halving < HALVINGS; halving += 1) {
-    const middle = below + (above - below) / 2;
+    const middle = grid(below + (above - below) / 2);
     if (middle <= below || middle >= above) break;
     yield;
     const answer = answerAt(middle);

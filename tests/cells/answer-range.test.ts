@@ -146,3 +146,14 @@ test("the search goes in many small steps", () => {
   expect(count).toBeGreaterThan(48 + 40 + 2 * (1 + 3));
   expect(count).toBeLessThan(48 + 64 + 2 * (1 + 3));
 });
+
+test("a parameter that counts is asked at whole numbers alone", () => {
+  const counting = (least: number) =>
+    `${LARVAE}${cell("parameters", `last: {value: 1000, min: ${least}, max: 2000, step: 100}`)}${cell("tail T", "of: larvae", "start: 1", "up_to: last")}`;
+  expect(bordersOf(counting(200), "last")).toEqual([]);
+  // `up_to` is at least 1.
+  const [border, ...others] = bordersOf(counting(-200), "last");
+  expect(others).toEqual([]);
+  expect([border?.below, border?.above]).toEqual([0, 1]);
+  expect(border?.sides.below.without.map(({ id }) => id)).toEqual(["T"]);
+});

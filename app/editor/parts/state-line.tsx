@@ -51,7 +51,7 @@ export function StateLine({ face, open, host }: Props) {
           of={face.title}
           onPress={() => (open ? host.commands.putAway(face.slot) : host.commands.showWorking(face.slot))}
         />
-        {face.hasResult && face.state !== "preview" ? (
+        {face.provenance.length > 0 && face.state !== "preview" ? (
           <a
             className="command hl-small hl-quiet"
             href={host.plateOf(face.id)}
