@@ -41,6 +41,8 @@ class SlowReader implements Reader {
     };
     this.waiting = 0;
     this.onmessage?.(new MessageEvent("message", { data }));
+    // What is asked next is gathered for a moment.
+    vi.advanceTimersByTime(100);
   }
 
   terminate(): void {

@@ -1,4 +1,3 @@
-import { IndexeddbPersistence } from "y-indexeddb";
 import { Awareness } from "y-protocols/awareness";
 import { WebsocketProvider } from "y-websocket";
 import * as Y from "yjs";
@@ -8,7 +7,8 @@ import { BIBLIOGRAPHY_NAME, SHOWN_NAMES, SOCKET_PATHS, TEXT_NAME } from "../prot
 import { type Connection, closingOf } from "./connection.ts";
 import { JoinedChanges } from "./joined-changes.ts";
 import { followNetwork } from "./network.ts";
-import { forgetPrivateCopy, privateCopyName } from "./private-copies.ts";
+import { forgetPrivateCopy } from "./private-copies.ts";
+import { openPrivateCopy } from "./private-copy.ts";
 
 /** After a joining, how long the others' names are waited for, in ms. */
 const NAMES_MS = 400;
@@ -106,7 +106,7 @@ interface Tie {
 }
 
 function joinText(options: SessionOptions, person: { readonly id: string }, doc: Y.Doc, awareness: Awareness): Tie {
-  const copy = options.writes ? new IndexeddbPersistence(privateCopyName(options.paperId, person.id), doc) : null;
+  const copy = options.writes ? openPrivateCopy(options.paperId, person.id, doc) : null;
   const provider = new WebsocketProvider(socketBase() + SOCKET_PATHS.text, options.paperId, doc, {
     awareness,
     disableBc: true,
@@ -134,7 +134,8 @@ function joinText(options: SessionOptions, person: { readonly id: string }, doc:
   };
   for (const name of [TEXT_NAME, BIBLIOGRAPHY_NAME]) {
     doc.getText(name).observe((event, { origin }) => {
-      if (everLive && origin !== provider && origin !== copy && !provider.synced) away.changes.noteOwn(event);
+      if (everLive && origin !== provider && copy?.isOrigin(origin) !== true && !provider.synced)
+        away.changes.noteOwn(event);
     });
   }
   doc.on("update", (update: Uint8Array, origin: unknown) => {
@@ -148,14 +149,14 @@ function joinText(options: SessionOptions, person: { readonly id: string }, doc:
   provider.on("closed", ({ code }) => {
     options.onConnection({ state: "closed", code });
     if (closingOf(code).forgets && copy !== null) {
-      void copy.destroy().then(() => forgetPrivateCopy(options.paperId, person.id));
+      void copy.close().then(() => forgetPrivateCopy(options.paperId, person.id));
     }
   });
   // The private copy first, so that words from before a reload are in the first exchange.
   const begin = () => provider.connect();
   if (copy === null) begin();
   else {
-    void Promise.race([copy.whenSynced, patience()]).then(() => {
+    void Promise.race([copy.whenRead, patience()]).then(() => {
       if (doc.getText(TEXT_NAME).length > 0) options.onText();
       begin();
     });
@@ -167,7 +168,7 @@ function joinText(options: SessionOptions, person: { readonly id: string }, doc:
       unfollow();
       clearTimeout(telling);
       provider.destroy();
-      void copy?.destroy();
+      void copy?.close();
     },
   };
 }

@@ -18,6 +18,8 @@ export interface Reader {
 
 /** How long after a keystroke the text is given to the worker, in ms: a burst is read once. */
 const GATHER_MS = 20;
+/** Between two questions, in ms, however fast one types, and others with one. */
+const BETWEEN_MS = 100;
 /** How long the writing must rest before faults of the text are pointed out, in ms. */
 const REST_MS = 700;
 
@@ -40,6 +42,7 @@ export class Reading {
   private timer: ReturnType<typeof setTimeout> | undefined;
   private rest: ReturnType<typeof setTimeout> | undefined;
   private typedAt = 0;
+  private askedAt = Number.NEGATIVE_INFINITY;
   /** A newest-only message that waits for the answer at hand: a private trial. */
   private nextPreview: ToWorker | null = null;
 
@@ -71,8 +74,8 @@ export class Reading {
   /** The text or the bibliography has changed. */
   textChanged(): void {
     this.stale = true;
-    clearTimeout(this.timer);
-    this.timer = setTimeout(() => this.ask(), GATHER_MS);
+    if (this.timer !== undefined) return;
+    this.timer = setTimeout(() => this.ask(), Math.max(GATHER_MS, this.askedAt + BETWEEN_MS - Date.now()));
   }
 
   tellShown(shown: ShownRecords): void {
@@ -104,8 +107,10 @@ export class Reading {
 
   private ask(): void {
     clearTimeout(this.timer);
+    this.timer = undefined;
     if (this.open > 0) return;
     this.stale = false;
+    this.askedAt = Date.now();
     this.version += 1;
     const { doc } = this.view.state;
     const { version } = this;
@@ -138,7 +143,9 @@ export class Reading {
       console.error(`The sheet could not be read: ${message.message}`);
     }
     if (this.open > 0) return;
-    if (this.stale) this.ask();
+    // A trial's end must not be told before the text that it led to.
+    if (this.stale && this.nextPreview !== null) this.ask();
+    else if (this.stale) this.textChanged();
     if (this.nextPreview !== null) {
       const next = this.nextPreview;
       this.nextPreview = null;

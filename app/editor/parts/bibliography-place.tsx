@@ -6,7 +6,8 @@ import { useDeskView } from "./use-desk-view.ts";
 
 /** The place below the sheet where what is cited stands, as it will be printed, and its BibTeX. */
 export function BibliographyPlace({ desk }: { readonly desk: Desk }) {
-  const model = useDeskView(desk, (view) => view.model);
+  const bibliography = useDeskView(desk, ({ model }) => model?.bibliography ?? null);
+  const macros = useDeskView(desk, ({ model }) => model?.macros ?? null);
   const ready = useDeskView(desk, (view) => view.ready);
   const [open, setOpen] = useState(false);
   const source = useRef<HTMLDivElement>(null);
@@ -15,7 +16,7 @@ export function BibliographyPlace({ desk }: { readonly desk: Desk }) {
     const view = desk.openBibliography(source.current);
     return () => view.destroy();
   }, [open, desk]);
-  if (!ready || model === null) return null;
+  if (!ready || bibliography === null || macros === null) return null;
   return (
     <section className="hl-bibliography" id="bibliography" aria-label="Bibliography">
       <h2 className="hl-heading-2">
@@ -24,11 +25,11 @@ export function BibliographyPlace({ desk }: { readonly desk: Desk }) {
           {open ? "Put the BibTeX away" : "Show the BibTeX"}
         </Command>
       </h2>
-      {model.bibliography.length === 0 ? <p className="hl-none">Nothing is cited yet.</p> : null}
+      {bibliography.length === 0 ? <p className="hl-none">Nothing is cited yet.</p> : null}
       <ol className="hl-entries">
-        {model.bibliography.map((entry) => (
+        {bibliography.map((entry) => (
           <li key={entry.key} value={entry.number}>
-            <Runs runs={entry.runs} macros={model.macros} />
+            <Runs runs={entry.runs} macros={macros} />
           </li>
         ))}
       </ol>

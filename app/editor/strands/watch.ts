@@ -56,6 +56,8 @@ export class StrandWatch {
   private ticking = false;
   private soon: ReturnType<typeof setTimeout> | undefined;
   private firstAsked: number | null = null;
+  /** Of the text when it was last measured [px]. */
+  private height = 0;
   private ended = false;
   private places: Places | null = null;
 
@@ -137,7 +139,11 @@ export class StrandWatch {
    */
   private onUpdate(update: ViewUpdate): void {
     const sheetChanged = update.startState.field(sheetField) !== update.state.field(sheetField);
-    if (update.heightChanged || update.viewportChanged || (update.selectionSet && !update.docChanged)) this.ask();
+    // The editor's own guess of heights, which moves nothing on the page, does not count: it has not measured yet.
+    const height = update.docChanged ? this.height : this.view.contentHeight;
+    const grown = Math.abs(height - this.height) > 1;
+    this.height = height;
+    if (grown || update.viewportChanged || (update.selectionSet && !update.docChanged)) this.ask();
     else if (update.docChanged || sheetChanged || update.geometryChanged) this.askSoon();
   }
 

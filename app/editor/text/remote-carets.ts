@@ -28,6 +28,7 @@ class RemoteCarets {
   private readonly text: Y.Text;
   private readonly awareness: Awareness;
   private telling: ReturnType<typeof setTimeout> | undefined;
+  private redrawing: number | null = null;
   private toldAt = Number.NEGATIVE_INFINITY;
   private readonly heard: (change: { added: number[]; updated: number[]; removed: number[] }) => void;
 
@@ -36,7 +37,7 @@ class RemoteCarets {
     this.awareness = awareness;
     this.heard = ({ added, updated, removed }) => {
       const others = [...added, ...updated, ...removed].some((client) => client !== awareness.clientID);
-      if (others) view.dispatch({ annotations: moved.of(true) });
+      if (others) this.redrawSoon(view);
     };
     awareness.on("change", this.heard);
   }
@@ -50,6 +51,16 @@ class RemoteCarets {
   destroy(): void {
     this.awareness.off("change", this.heard);
     clearTimeout(this.telling);
+    if (this.redrawing !== null) cancelAnimationFrame(this.redrawing);
+  }
+
+  /** Once before the next paint, however many carets have moved. */
+  private redrawSoon(view: EditorView): void {
+    if (this.redrawing !== null) return;
+    this.redrawing = requestAnimationFrame(() => {
+      this.redrawing = null;
+      view.dispatch({ annotations: moved.of(true) });
+    });
   }
 
   private tellOwnSoon(view: EditorView): void {

@@ -124,13 +124,25 @@ function withoutEmptied(marks: DecorationSet, changes: ChangeDesc): DecorationSe
   let left = marks;
   changes.iterChangedRanges((fromA, toA, fromB, toB) => {
     if (toA === fromA) return;
-    left = left.update({
-      filter: (from, to, mark) => mark.point || from < to,
-      filterFrom: fromB,
-      filterTo: toB,
-    });
+    const stays = (from: number, to: number, mark: Decoration) => mark.point || from < to;
+    left = without(left, fromB, toB, stays);
   });
   return left;
+}
+
+/** Without the marks from..to that do not stay. The very set where all do: then nothing of it need be compared. */
+function without(
+  marks: DecorationSet,
+  filterFrom: number,
+  filterTo: number,
+  filter: (from: number, to: number, mark: Decoration) => boolean,
+): DecorationSet {
+  let all = true;
+  marks.between(filterFrom, filterTo, (from, to, mark) => {
+    all = filter(from, to, mark);
+    return all ? undefined : false;
+  });
+  return all ? marks : marks.update({ filter, filterFrom, filterTo });
 }
 
 interface Bounds {
@@ -196,11 +208,9 @@ function changedLook(slot: string, before: Workshop["faces"], after: Workshop["f
 function withoutFilledBlanks(closed: DecorationSet, changes: ChangeDesc, doc: Text): DecorationSet {
   let left = closed;
   changes.iterChangedRanges((_fromA, _toA, fromB, toB) => {
-    left = left.update({
-      filter: (from, _to, mark) => mark.spec.class !== BLANK || doc.lineAt(from).length === 0,
-      filterFrom: doc.lineAt(fromB).from,
-      filterTo: doc.lineAt(toB).to,
-    });
+    const stays = (from: number, _to: number, mark: Decoration) =>
+      mark.spec.class !== BLANK || doc.lineAt(from).length === 0;
+    left = without(left, doc.lineAt(fromB).from, doc.lineAt(toB).to, stays);
   });
   return left;
 }
