@@ -1,14 +1,15 @@
-import { EditorView } from "@codemirror/view";
-import type { Kept } from "../kept.ts";
-import type { Borders } from "../model/borders.ts";
+import type { TransactionSpec } from "@codemirror/state";
+import type { EditorView } from "@codemirror/view";
 import { yamlScalar } from "../model/scale.ts";
-import type { CellFace, SheetModel, ShownView } from "../model/types.ts";
+import type { SheetModel, ShownView } from "../model/types.ts";
 import { createSheetEditor, createSourceEditor } from "../text/editor.ts";
 import type { CellCommands, SheetHost } from "../text/host.ts";
+import { focusPlate, goToLine, goToPlace, lineInAddress, showPlace, turnWorking } from "../text/moving.ts";
 import { findPlace } from "../text/places.ts";
-import { sheetField, showWorking } from "../text/sheet-field.ts";
+import { sheetField } from "../text/sheet-field.ts";
 import { Announcer } from "./announcer.ts";
 import type { Connection } from "./connection.ts";
+import { type DeskView, FIRST_VIEW, TO_RECOMPUTE } from "./desk-view.ts";
 import { openSession, type PaperSession, type SessionOptions, type ShownRecords } from "./paper-session.ts";
 import { forgetPrivateCopies } from "./private-copies.ts";
 import { Reading } from "./reading.ts";
@@ -16,46 +17,16 @@ import { requestsOf } from "./requests.ts";
 import { ResultFetcher } from "./result-fetcher.ts";
 import { createStore, type Store } from "./store.ts";
 
+export type { DeskView } from "./desk-view.ts";
+
 export interface DeskOptions extends Pick<SessionOptions, "paperId" | "person" | "writes" | "first"> {
   /** Gives the worker that reads the text; it is ended with the desk. */
   takeReader(): Worker;
 }
 
-/** What the parts around the text watch. */
-export interface DeskView {
-  readonly model: SheetModel | null;
-  readonly connection: Connection;
-  readonly kept: Kept;
-  readonly people: readonly string[];
-  /** A refusal, or word of a joining; null when there is nothing to say. */
-  readonly notice: { readonly words: string; readonly amiss: boolean } | null;
-  readonly heard: string;
-  /** Where along the parameters cells answer otherwise, as far as it is known. */
-  readonly borders: Borders;
-  /** The text stands on the sheet. */
-  readonly ready: boolean;
-}
-
-/** States from which "Recompute all" sets out. What stands on purpose is left standing. */
-const TO_RECOMPUTE: ReadonlySet<CellFace["state"]> = new Set<CellFace["state"]>([
-  "outOfDate",
-  "cancelled",
-  "empty",
-  "failed",
-]);
-
 /** Everything that belongs to one open paper: its session, its text on the sheet, its reading, and the commands. */
 export class Desk {
-  readonly store: Store<DeskView> = createStore<DeskView>({
-    model: null,
-    connection: { state: "joining" },
-    kept: { all: false, at: null },
-    people: [],
-    notice: null,
-    heard: "",
-    borders: {},
-    ready: false,
-  });
+  readonly store: Store<DeskView> = createStore<DeskView>(FIRST_VIEW);
   private readonly options: DeskOptions;
   private readonly session: PaperSession;
   private readonly host: SheetHost;
@@ -164,6 +135,24 @@ export class Desk {
     this.reading?.tellPreview(this.settled, this.trial);
   }
 
+  /** What may be asked of a cell. */
+  get cellCommands(): CellCommands {
+    return this.host.commands;
+  }
+
+  /** One edit of the text, and one step to undo. */
+  edit(change: TransactionSpec): void {
+    this.session.undo.text.stopCapturing();
+    this.view?.dispatch({ userEvent: "input", ...change });
+    this.session.undo.text.stopCapturing();
+  }
+
+  /** Says something in the tail line, and to those who listen. */
+  tell(words: string): void {
+    this.store.set({ notice: { words, amiss: false } });
+    this.announcer.say(words);
+  }
+
   /** Says something to those who listen to the page. */
   readonly say = (words: string): void => this.announcer.say(words);
 
@@ -185,16 +174,18 @@ export class Desk {
 
   /** Brings a place of the text into view and leaves the caret where it is. */
   show(position: number): void {
-    const { view } = this;
-    view?.dispatch({ effects: EditorView.scrollIntoView(Math.min(position, view.state.doc.length), { y: "center" }) });
+    if (this.view !== null) showPlace(this.view, position);
+  }
+
+  /** Brings a plate into view and gives it the keys, once it is drawn. */
+  showPlate(position: number): void {
+    this.show(position);
+    const slot = this.store.get().model?.cells.find(({ from }) => from === position)?.slot;
+    if (this.view !== null && slot !== undefined) focusPlate(this.view, slot);
   }
 
   goTo(position: number): void {
-    const { view } = this;
-    if (view === null) return;
-    const at = Math.min(position, view.state.doc.length);
-    view.dispatch({ selection: { anchor: at }, scrollIntoView: true });
-    view.focus();
+    if (this.view !== null) goToPlace(this.view, position);
   }
 
   private begin(): void {
@@ -248,8 +239,8 @@ export class Desk {
 
   /** A line named in the page's address, as `#line-37`, is where one wants to be. */
   private goToAddress(): void {
-    const named = /^#line-(\d+)$/.exec(window.location.hash)?.[1];
-    if (named !== undefined) requestAnimationFrame(() => this.host.commands.goToLine(Number(named)));
+    const line = lineInAddress(window.location.hash);
+    if (line !== null) requestAnimationFrame(() => this.host.commands.goToLine(line));
   }
 
   /** Results kept under the new keys appear without being asked for; all else waits. */
@@ -266,35 +257,14 @@ export class Desk {
       recompute: (cell) => void this.recompute([cell.id]),
       cancel: (cell) => void this.ask(this.requests.cancel([cell.id])),
       letStand: (cell) => void this.ask(this.requests.letStand(cell.id, this.textNow())),
-      showWorking: (slot) => this.openWorking(slot, true),
-      putAway: (slot) => this.openWorking(slot, false),
+      showWorking: (slot) => this.view !== null && turnWorking(this.view, slot, true, this.options.writes),
+      putAway: (slot) => this.view !== null && turnWorking(this.view, slot, false, this.options.writes),
       goToCell: (slot) => {
         const cell = this.store.get().model?.cells.find((each) => each.slot === slot);
         if (cell !== undefined) this.goTo(Math.max(0, cell.from - 1));
       },
-      goToLine: (line) => {
-        const { view } = this;
-        if (view !== null) this.goTo(view.state.doc.line(Math.min(line, view.state.doc.lines)).to);
-      },
+      goToLine: (line) => this.view !== null && goToLine(this.view, line),
     };
-  }
-
-  /** Opens a working with the caret in it, for one who writes; or puts it away with the caret after it. */
-  private openWorking(slot: string, open: boolean): void {
-    const { view } = this;
-    if (view === null) return;
-    const place = findPlace(
-      view.state.field(sheetField).places,
-      (piece) => piece.piece === "cell" && piece.slot === slot,
-    );
-    if (place === null) return;
-    view.dispatch({ effects: showWorking.of({ slot, open: open && !this.options.writes }) });
-    if (!this.options.writes) return;
-    const { doc } = view.state;
-    const after = Math.min(doc.length, place.to + 1);
-    view.dispatch({ selection: { anchor: open ? doc.lineAt(place.from).to + 1 : Math.min(doc.length, after + 1) } });
-    if (open) view.focus();
-    else if (after >= doc.length) view.contentDOM.blur();
   }
 
   private async recompute(ids: readonly string[]): Promise<void> {

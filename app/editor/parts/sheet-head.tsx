@@ -1,4 +1,5 @@
-import { CommandLink, RunningHead } from "../../ui/index.ts";
+import { Command, CommandLink, RunningHead } from "../../ui/index.ts";
+import type { StripName } from "../keys/types.ts";
 import type { Desk } from "../live/desk.ts";
 import { ClosedNotice } from "./closed-notice.tsx";
 import { ParameterRule } from "./parameter-rule.tsx";
@@ -14,20 +15,46 @@ interface Props {
 }
 
 /** The running head. Like all that stands around the text it watches its own parts alone: a keystroke draws none anew. */
-export function SheetHead({ desk, props }: Props) {
+export function SheetHead({ desk, props, onCommand }: Props & { onCommand(open: StripName): void }) {
   return (
     <RunningHead
       home={props.person === null ? "/" : "/shelf"}
-      left={props.person === null ? null : <CommandLink to="/shelf">Shelf</CommandLink>}
+      left={
+        <>
+          {props.person === null ? null : (
+            <CommandLink to="/shelf" className="hl-only-wide">
+              Shelf
+            </CommandLink>
+          )}
+          <Command className="hl-only-wide" onClick={() => onCommand("outline")}>
+            Outline
+          </Command>
+          <Command className="hl-only-wide" onClick={() => onCommand("find")}>
+            Find
+          </Command>
+        </>
+      }
       title={<SheetTitle desk={desk} title={props.title} />}
       right={
         <>
           <People desk={desk} />
           {props.person === null ? null : (
-            <CommandLink to={`/papers/${props.paperId}/title-page`}>Title page</CommandLink>
+            <CommandLink to={`/papers/${props.paperId}/title-page`} className="hl-only-wide">
+              Title page
+            </CommandLink>
           )}
-          <CommandLink to="/manual">Manual</CommandLink>
-          <CommandLink to={`/papers/${props.paperId}/galley`}>Galley</CommandLink>
+          <CommandLink to="/manual" className="hl-only-wide">
+            Manual
+          </CommandLink>
+          <CommandLink to={`/papers/${props.paperId}/galley`} className="hl-only-wide">
+            Galley
+          </CommandLink>
+          <Command className="hl-only-wide" onClick={() => onCommand("commands")}>
+            Commands
+          </Command>
+          <Command className="hl-only-narrow" onClick={() => onCommand("commands")}>
+            More
+          </Command>
         </>
       }
     />

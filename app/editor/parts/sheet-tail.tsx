@@ -1,6 +1,7 @@
-import { useRef } from "react";
 import { Command, TailLine } from "../../ui/index.ts";
+import { goToErratum } from "../keys/errata-walk.ts";
 import type { Desk, DeskView } from "../live/desk.ts";
+import { TO_RECOMPUTE } from "../live/desk-view.ts";
 import type { CellFace, Erratum, SheetModel } from "../model/types.ts";
 import { StrandsCommands } from "../strands/strands-commands.tsx";
 import type { StrandWatch } from "../strands/watch.ts";
@@ -56,20 +57,13 @@ export function keptWords(
 }
 
 function Errata({ desk, writes }: Pick<Props, "desk" | "writes">) {
-  const last = useRef(-1);
   // As words: where the errata stand moves with each keystroke above them, and what is said of them does not.
   const told = useDeskView(desk, ({ model }) => (model === null ? "" : toldOf(model)));
   if (told === "") return null;
   const { count, words, working, due }: Told = JSON.parse(told);
   if (count === 0 && working === 0 && !due) return <span>Errata none</span>;
   const next = () => {
-    const errata = desk.store.get().model?.errata ?? [];
-    const found = errata.find(({ from }) => from > last.current) ?? errata[0];
-    if (found === undefined) return;
-    last.current = found.from;
-    // A plate is shown as it stands; in a sentence the caret goes to what is amiss.
-    if (found.what === "cell") desk.show(found.from);
-    else desk.goTo(found.from);
+    if (desk.view !== null) goToErratum({ desk, view: desk.view }, 1);
   };
   return (
     <span className="hl-errata">
@@ -80,7 +74,11 @@ function Errata({ desk, writes }: Pick<Props, "desk" | "writes">) {
       )}
       <span className="hl-errata-words">{words}</span>
       {working > 0 ? <span>{counted(working, "cell")} being computed</span> : null}
-      {writes && working > 0 ? <Command onClick={() => desk.cancelAll()}>Cancel</Command> : null}
+      {writes && working > 0 ? (
+        <Command className="hl-cancel-all" onClick={() => desk.cancelAll()}>
+          Cancel
+        </Command>
+      ) : null}
       {writes && due ? <Command onClick={() => desk.recomputeAll()}>Recompute all</Command> : null}
     </span>
   );
@@ -100,7 +98,7 @@ function toldOf({ errata, cells }: SheetModel): string {
     count: errata.length,
     words: errataWords(errata),
     working: cells.filter((cell) => isUnderWay(cell, cells)).length,
-    due: cells.some((cell) => cell.sound && RECOMPUTED.has(cell.state)),
+    due: cells.some((cell) => cell.sound && TO_RECOMPUTE.has(cell.state)),
   };
   return JSON.stringify(told);
 }
@@ -114,8 +112,6 @@ export function isUnderWay(cell: CellFace, cells: readonly CellFace[]): boolean 
     needed === undefined || (needed.state !== "failed" && (needed.state !== "waiting" || isUnderWay(needed, cells)))
   );
 }
-
-const RECOMPUTED: ReadonlySet<string> = new Set(["outOfDate", "cancelled", "empty", "failed"]);
 
 /** "Table 1 and 2 numbers in line 41 are out of date". */
 export function errataWords(errata: readonly Erratum[]): string {

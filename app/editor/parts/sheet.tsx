@@ -1,4 +1,6 @@
-import { type RefObject, useEffect, useRef, useState } from "react";
+import { type RefObject, useEffect, useRef, useState, useSyncExternalStore } from "react";
+import { SheetStrip } from "../keys/sheet-strip.tsx";
+import { useSheetAtHand } from "../keys/use-strips.ts";
 import { Desk } from "../live/desk.ts";
 import { NumberSlip } from "../strands/number-slip.tsx";
 import { SheetStrands } from "../strands/sheet-strands.tsx";
@@ -17,12 +19,15 @@ export default function Sheet(props: SheetProps) {
   const place = useRef<HTMLDivElement>(null);
   const sheet = useRef<HTMLDivElement>(null);
   const desk = useDesk(props, place);
-  const strands = useStrandWatch(desk, sheet, props.person?.id ?? null);
+  const personId = props.person?.id ?? null;
+  const strands = useStrandWatch(desk, sheet, personId);
+  const ready = useReady(desk);
+  const atHand = useSheetAtHand({ desk, strands, ready, writes: props.writes, paperId: props.paperId, personId });
   return (
     <div className="hl-sheet" ref={sheet}>
       {desk === null ? null : (
         <>
-          <SheetHead desk={desk} props={props} />
+          <SheetHead desk={desk} props={props} onCommand={(open) => atHand?.strips.set({ open })} />
           <SheetRule desk={desk} />
           {strands === null ? null : <Heads desk={desk} strands={strands} />}
           <SheetNotices desk={desk} props={props} />
@@ -35,7 +40,12 @@ export default function Sheet(props: SheetProps) {
         <div ref={place} className="hl-text hl-untyped" />
         {desk === null ? null : <BibliographyPlace desk={desk} />}
       </main>
-      {desk === null ? null : <SheetTail desk={desk} writes={props.writes} strands={strands} />}
+      {desk === null ? null : (
+        <div className="hl-foot">
+          {atHand === null ? null : <SheetStrip sheet={atHand} personId={personId} />}
+          <SheetTail desk={desk} writes={props.writes} strands={strands} />
+        </div>
+      )}
       {desk === null || strands === null ? null : (
         <NumberSlip desk={desk} watch={strands} sheet={sheet} writes={props.writes} />
       )}
@@ -55,6 +65,14 @@ function useDesk(props: SheetProps, place: RefObject<HTMLDivElement | null>): De
     return () => opened.end();
   }, [place]);
   return desk;
+}
+
+/** Whether the text stands on the sheet. */
+function useReady(desk: Desk | null): boolean {
+  return useSyncExternalStore(
+    (onChange) => desk?.store.watch(onChange) ?? (() => {}),
+    () => desk?.store.get().ready ?? false,
+  );
 }
 
 interface PartProps {

@@ -1,4 +1,5 @@
 import { EditorView } from "@codemirror/view";
+import { focusPlate } from "../text/moving.ts";
 import type { Lights } from "./lights.ts";
 import type { Lit } from "./types.ts";
 
@@ -20,9 +21,6 @@ interface Station {
 }
 
 const trails = new WeakMap<EditorView, Walk>();
-
-/** The page may scroll and draw a plate anew before it can be gone to: so many frames are waited for it. */
-const PATIENCE = 30;
 
 /** Follows strands from number to cell to parameter, and back to where one was. */
 class Walk {
@@ -64,7 +62,7 @@ class Walk {
     this.leave();
     this.view.dispatch({ effects: EditorView.scrollIntoView(at, { y: "center" }) });
     this.trail.lights.hold(slot);
-    this.focusPlate(slot, PATIENCE);
+    focusPlate(this.view, slot);
     return true;
   }
 
@@ -76,15 +74,6 @@ class Walk {
     handle.focus();
     handle.scrollIntoView({ block: "nearest", inline: "center" });
     return true;
-  }
-
-  /** The plate's own command takes the focus: from there the keys go on, and a reader says which plate it is. */
-  private focusPlate(slot: string, patience: number): void {
-    const cells = [...this.view.contentDOM.querySelectorAll<HTMLElement>(".hl-cell[data-slot]")];
-    const plate = cells.find(({ dataset }) => dataset.slot === slot);
-    const command = plate?.querySelector<HTMLElement>(".hl-offers button");
-    if (command != null) command.focus({ preventScroll: true });
-    else if (patience > 0) requestAnimationFrame(() => this.focusPlate(slot, patience - 1));
   }
 
   private leave(): void {

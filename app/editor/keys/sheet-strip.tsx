@@ -1,0 +1,49 @@
+import { ErrataList } from "../finding/errata-list.tsx";
+import { bindingWords } from "./binding.ts";
+import { CommandList } from "./command-list.tsx";
+import { Strip } from "./strip.tsx";
+import type { SheetAtHand, StripName } from "./types.ts";
+import { useStrips } from "./use-strips.ts";
+
+interface Props {
+  readonly sheet: SheetAtHand;
+  readonly personId: string | null;
+}
+
+const TITLES: Readonly<Record<StripName, string>> = {
+  commands: "Commands",
+  find: "Find",
+  rename: "Rename",
+  outline: "Outline",
+  errata: "Errata",
+};
+
+/** What stands above the tail line: the strip that is open, and word of the composing key while it waits. */
+export function SheetStrip({ sheet, personId }: Props) {
+  const open = useStrips(sheet.strips, (strips) => strips.open);
+  const composing = useStrips(sheet.strips, (strips) => strips.composing);
+  const binding = useStrips(sheet.strips, (strips) => strips.binding);
+  return (
+    <>
+      {open === null ? null : (
+        <Strip key={open} title={TITLES[open]} onClose={() => sheet.strips.set({ open: null })}>
+          <Body open={open} sheet={sheet} personId={personId} />
+        </Strip>
+      )}
+      {composing ? (
+        <p className="hl-composing" aria-hidden="true">
+          <kbd>{bindingWords(binding)}</kbd> and a letter; <kbd>?</kbd> lists them, <kbd>Esc</kbd> leaves
+        </p>
+      ) : null}
+    </>
+  );
+}
+
+function Body({ open, sheet, personId }: Props & { readonly open: StripName }) {
+  switch (open) {
+    case "errata":
+      return <ErrataList sheet={sheet} />;
+    default:
+      return <CommandList sheet={sheet} personId={personId} />;
+  }
+}
