@@ -28,7 +28,7 @@ export default defineConfig({
       {
         test: {
           name: "e2e",
-          include: ["tests/e2e/**/*.test.ts"],
+          include: ["tests/e2e/**/*.test.{ts,tsx}"],
           globalSetup: ["./tests/support/database.ts", "./tests/support/application.ts"],
           testTimeout: 180_000,
           hookTimeout: 120_000,

@@ -13,6 +13,21 @@ describe("points as CSV", () => {
     expect(figureToCsv(two)).toBe("x,a,b,b low,b high\r\n0,0.30000000000000004,,,\r\n1,,5,4,6\r\n2,,6,5,7\r\n");
   });
 
+  it("gives a curve in the plane, panels and an inset abscissas of their own, and a band both its ends", () => {
+    const orbit = figure({ series: [series({ name: "orbit", parametric: true, x: [0, 1, 0], y: [1, 0, -1] })] });
+    const band = figure({
+      series: [series({ name: "b", mark: "band", x: [5, 6], y: [null, null], low: [1, 2], high: [3, 4] })],
+    });
+    expect(figureToCsv(orbit)).toBe("orbit x,orbit\r\n0,1\r\n1,0\r\n0,-1\r\n");
+    const panels = figure({ series: [], panels: [orbit, band].map((one) => ({ title: "", figure: one })) });
+    expect(figureToCsv(panels)).toBe(
+      "(a) orbit x,(a) orbit,(b) x,(b) b low,(b) b high\r\n0,1,5,1,3\r\n1,0,6,2,4\r\n0,-1,,,\r\n",
+    );
+    expect(figureToCsv({ ...band, inset: { figure: orbit, corner: null } })).toBe(
+      "x,b low,b high,inset orbit x,inset orbit\r\n5,1,3,0,1\r\n6,2,4,1,0\r\n,,,0,-1\r\n",
+    );
+  });
+
   it("writes numbers below the double's range with their power of ten", () => {
     expect(figureToCsv(deepLaw).trimEnd().split("\r\n").at(-1)).toBe("1000,1e-741");
   });
