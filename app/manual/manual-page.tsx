@@ -1,7 +1,7 @@
 import "./manual.css";
 import { CommandLink, RunningHead, TailLine } from "../ui/index.ts";
 import { ourMarkup } from "../ui/markup.ts";
-import type { Entry, KindPages, ManualContents } from "./contents.ts";
+import type { Entry, KindPages, ManualContents } from "./contents.server.ts";
 
 interface Props {
   /** Where the mark leads. */

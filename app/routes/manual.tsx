@@ -1,5 +1,6 @@
 import { personContext } from "../context.ts";
-import { ManualPage, manualContents } from "../manual/index.ts";
+import { manualContents } from "../manual/index.server.ts";
+import { ManualPage } from "../manual/index.ts";
 import type { Route } from "./+types/manual";
 
 /** Open to anyone. */

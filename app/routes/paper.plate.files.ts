@@ -1,6 +1,6 @@
 import { refusal, requirePaper } from "../access/index.server.ts";
 import { servicesContext } from "../context.ts";
-import { FILE_NAMES, findPlate, takeAway } from "../plate/index.ts";
+import { FILE_NAMES, findPlate, takeAway } from "../plate/index.server.ts";
 import type { Route } from "./+types/paper.plate.files";
 import { fileName, readPrinted, refusePrint } from "./parts/printed.server.ts";
 

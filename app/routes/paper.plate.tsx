@@ -1,6 +1,7 @@
 import { refusal, requirePaper } from "../access/index.server.ts";
 import { servicesContext } from "../context.ts";
-import { findPlate, PlatePage, plateFace } from "../plate/index.ts";
+import { findPlate, plateFace } from "../plate/index.server.ts";
+import { PlatePage } from "../plate/index.ts";
 import type { Route } from "./+types/paper.plate";
 import { readPrinted } from "./parts/printed.server.ts";
 

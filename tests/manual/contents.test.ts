@@ -4,7 +4,8 @@ import { createMemoryRouter, RouterProvider } from "react-router";
 import { describe, expect, it } from "vitest";
 import { KINDS } from "../../app/cells/index.ts";
 import { FUNCTIONS } from "../../app/formulas/index.ts";
-import { ManualPage, manualContents } from "../../app/manual/index.ts";
+import { manualContents } from "../../app/manual/index.server.ts";
+import { ManualPage } from "../../app/manual/index.ts";
 
 const contents = manualContents();
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { findPlate, type Plate, plateFace, takeAway } from "../../app/plate/index.ts";
+import { findPlate, type Plate, plateFace, takeAway } from "../../app/plate/index.server.ts";
 import { computed, NOTHING_SHOWN } from "../export/sample.ts";
 
 const TEXT = `---
@@ -108,6 +108,13 @@ describe("what is taken away of a plate", () => {
     const [main, ...data] = taken.latex.files;
     expect(main?.text).toContain("standalone");
     for (const { name } of data) expect(main?.text).toContain(name);
+  });
+
+  it("the figure as an SVG file that stands alone", () => {
+    const svg = textOf("plate.svg");
+    expect(svg).toMatch(/^<\?xml /);
+    expect(svg).toContain("<svg");
+    expect(svg).not.toContain("var(--");
   });
 
   it("nothing where the cell has no such part, or there is no such file", () => {

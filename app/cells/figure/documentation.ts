@@ -2,7 +2,7 @@ import type { KindDocumentation } from "../kind.ts";
 
 export const FIGURE_DOCUMENTATION: KindDocumentation = {
   name: "figure",
-  label: "Plate",
+  label: "Figure",
   summary:
     "Curves of formulas, of other cells, or both in one plate; with bands, levels, an inset, or as panels side by side.",
   keys: [

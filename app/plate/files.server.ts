@@ -1,5 +1,6 @@
 import { cellRecord } from "../cells/index.ts";
 import { type LatexPaper, plateToLatex } from "../export/index.ts";
+import { figureToSvg } from "../figures/index.server.ts";
 import { figureToCsv, tableToCsv } from "../figures/index.ts";
 import type { GalleyPaperProps } from "../galley/index.ts";
 import { setPaper } from "../print/index.ts";
@@ -16,6 +17,7 @@ const CSV = "text/csv; charset=utf-8";
 const FILES: ReadonlyMap<string, Take> = new Map<string, Take>([
   ["points.csv", ({ view }) => (view.figure ? { type: CSV, text: figureToCsv(view.figure) } : null)],
   ["table.csv", ({ view }) => (view.table ? { type: CSV, text: tableToCsv(view.table) } : null)],
+  ["plate.svg", ({ view }) => (view.figure ? { type: "image/svg+xml", text: figureToSvg(view.figure) } : null)],
   ["result.json", takeRecord],
   ["plate.pdf", takeLatex],
 ]);
