@@ -120,6 +120,9 @@ function ownRoundings(t: Trajectory, starts: readonly Start[]): number {
 
 const FACTOR_ROUNDINGS = 8;
 
+/** Roundings that the two contours have in common: the turning point's expansion, and the first ones on the way from it. */
+const SHARED_ROUNDINGS = 64;
+
 /** Values at from, …, to with all errors: rounding, difference of the two contours, spread of the inputs. */
 export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstimate[] {
   const { values, rounding } = sumRange(law.fine, from, to);
@@ -133,7 +136,7 @@ export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstim
     }
     const value = values[i] as number;
     const spread =
-      Math.abs(value) * (n * law.radiusSpread + law.factorSpread + (law.spreadAt?.(n) ?? 0) + 8 * ROUNDING);
+      Math.abs(value) * (n * law.radiusSpread + law.factorSpread + (law.spreadAt?.(n) ?? 0) + SHARED_ROUNDINGS * ROUNDING);
     const error = (rounding[i] as number) + Math.abs(value) * (methodError[i] as number) + spread;
     // a probability is not below 0: where the rounding is larger than the value, that much is known
     read.push(
