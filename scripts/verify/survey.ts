@@ -1,7 +1,8 @@
 import { SolverError } from "../../app/solvers/errors.ts";
 import { type ExactModel, KINDS, type Kind, randomModel } from "./exact-model.ts";
 import { judge, type Verdict } from "./judge.ts";
-import { type Question, questionsAbout } from "./questions.ts";
+import type { Question } from "./question.ts";
+import { questionsAbout } from "./questions.ts";
 
 /** What became of one question. */
 export interface Outcome {
