@@ -136,7 +136,8 @@ export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstim
     }
     const value = values[i] as number;
     const spread =
-      Math.abs(value) * (n * law.radiusSpread + law.factorSpread + (law.spreadAt?.(n) ?? 0) + SHARED_ROUNDINGS * ROUNDING);
+      Math.abs(value) *
+      (n * law.radiusSpread + law.factorSpread + (law.spreadAt?.(n) ?? 0) + SHARED_ROUNDINGS * ROUNDING);
     const error = (rounding[i] as number) + Math.abs(value) * (methodError[i] as number) + spread;
     // a probability is not below 0: where the rounding is larger than the value, that much is known
     read.push(
