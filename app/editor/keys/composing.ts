@@ -41,3 +41,14 @@ export function pressEscape(event: KeyboardEvent, sheet: SheetAtHand): boolean {
   cancel.focus();
   return true;
 }
+
+/**
+ * The browser's own key for finding, within the text: only what is in view of a long text is on the page, so that the
+ * browser would not find the rest.
+ */
+export function pressFind(event: KeyboardEvent, sheet: SheetAtHand): boolean {
+  const wanted = event.key.toLowerCase() === "f" && event.ctrlKey !== event.metaKey && !event.altKey && !event.shiftKey;
+  if (!wanted || !sheet.view.dom.contains(document.activeElement)) return false;
+  sheet.strips.set({ open: "find" });
+  return true;
+}

@@ -1,4 +1,5 @@
 import { ErrataList } from "../finding/errata-list.tsx";
+import { FindStrip } from "../finding/find-strip.tsx";
 import { bindingWords } from "./binding.ts";
 import { CommandList } from "./command-list.tsx";
 import { Strip } from "./strip.tsx";
@@ -43,6 +44,8 @@ function Body({ open, sheet, personId }: Props & { readonly open: StripName }) {
   switch (open) {
     case "errata":
       return <ErrataList sheet={sheet} />;
+    case "find":
+      return <FindStrip sheet={sheet} />;
     default:
       return <CommandList sheet={sheet} personId={personId} />;
   }

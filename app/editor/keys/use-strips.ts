@@ -4,7 +4,7 @@ import type { Desk } from "../live/desk.ts";
 import { createStore, type Store } from "../live/store.ts";
 import type { StrandWatch } from "../strands/watch.ts";
 import { readBinding } from "./binding.ts";
-import { pressComposing, pressEscape } from "./composing.ts";
+import { pressComposing, pressEscape, pressFind } from "./composing.ts";
 import type { SheetAtHand, Strips } from "./types.ts";
 
 interface Given {
@@ -48,7 +48,7 @@ function useComposingKey(sheet: SheetAtHand | null): void {
     if (sheet === null) return;
     // Before the text and its parts, so that a command's letter is not written.
     const first = (event: KeyboardEvent) => {
-      if (!pressComposing(event, sheet)) return;
+      if (!pressComposing(event, sheet) && !pressFind(event, sheet)) return;
       event.preventDefault();
       event.stopPropagation();
     };

@@ -4,6 +4,8 @@ import { drawSelection, EditorView, gutters, keymap, type ViewUpdate } from "@co
 import { yCollab, yUndoManagerKeymap } from "y-codemirror.next";
 import type { Awareness } from "y-protocols/awareness";
 import type * as Y from "yjs";
+import { suggestionList } from "../writing/index.ts";
+import { foundField, foundNews } from "./found.ts";
 import { glossField } from "./glosses.ts";
 import { type SheetHost, sheetHost } from "./host.ts";
 import { lineNumbers } from "./line-numbers.ts";
@@ -31,6 +33,7 @@ export function createSheetEditor(options: EditorOptions): EditorView {
       extensions: [
         ground(options.nonce, host.writes, "Text of the paper"),
         sheetHost.of(host),
+        host.writes ? suggestionList : [],
         keymap.of([
           { key: "Enter", run: enter },
           { key: "Shift-Enter", run: lineBreak },
@@ -38,6 +41,8 @@ export function createSheetEditor(options: EditorOptions): EditorView {
         keymap.of(yUndoManagerKeymap),
         keymap.of(defaultKeymap),
         yCollab(text, null, { undoManager: undo }),
+        foundField,
+        foundNews,
         sheetField,
         glossField,
         lineNumbers,

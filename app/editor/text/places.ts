@@ -43,6 +43,15 @@ export function touched(places: RangeSet<Place>, state: EditorState): Set<Piece>
   return opened;
 }
 
+/** The pieces that hide a stretch of the source while they are closed, or some of it. */
+export function hiding(places: RangeSet<Place>, stretch: { readonly from: number; readonly to: number }): Set<Piece> {
+  const hidden = new Set<Piece>();
+  places.between(stretch.from, stretch.to, (from, to, { piece }) => {
+    if (OPENABLE.has(piece.piece) && from < stretch.to && to > stretch.from) hidden.add(piece);
+  });
+  return hidden;
+}
+
 const OPENABLE: ReadonlySet<Piece["piece"]> = new Set<Piece["piece"]>(["set", "dressed", "cell"]);
 
 /** Widens from..to to whole lines, as blocks need. */

@@ -12,8 +12,9 @@ import { Decoration, type DecorationSet, EditorView } from "@codemirror/view";
 import type { CellFace, Piece, SheetModel } from "../model/types.ts";
 import { sameLook } from "./cell-widget.tsx";
 import { BLANK, closedDecorations, openedDecorations, type Workshop } from "./decorate.ts";
+import { foundField } from "./found.ts";
 import { afterDelta } from "./piece-list.ts";
-import { type Place, placesOf, touched } from "./places.ts";
+import { hiding, type Place, placesOf, touched } from "./places.ts";
 import { WidgetStore } from "./widgets.ts";
 
 /** An answer of the worker, with the text that it is about and what has changed since that was asked. */
@@ -223,6 +224,8 @@ function openPieces(sheet: Omit<Sheet, "opened" | "shown">, state: EditorState, 
   // An answer that comes while the pointer is pressed has new pieces: those at the old places stay as they were.
   const byCaret = sheet.attention && !state.readOnly && !(sheet.pressed && before.opened.size === 0);
   const opened = byCaret ? touched(sheet.places, state) : new Set<Piece>();
+  const found = state.field(foundField, false)?.here ?? null;
+  if (found !== null) for (const piece of hiding(sheet.places, found)) opened.add(piece);
   if (sheet.workings.size > 0) {
     for (const cursor = sheet.places.iter(); cursor.value !== null; cursor.next()) {
       const { piece } = cursor.value;

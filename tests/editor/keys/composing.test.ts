@@ -122,14 +122,14 @@ describe("the composing key", () => {
   });
 
   test("Esc puts the strip away; with none open it brings Cancel under the keys", () => {
-    const escape = () => pressEscape(new KeyboardEvent("keydown", { key: "Escape" }), at.sheet);
+    const pressEsc = () => pressEscape(new KeyboardEvent("keydown", { key: "Escape" }), at.sheet);
     at.sheet.strips.set({ open: "outline" });
-    expect(escape()).toBe(true);
+    expect(pressEsc()).toBe(true);
     expect(at.sheet.strips.get().open).toBeNull();
-    expect(escape()).toBe(false);
+    expect(pressEsc()).toBe(false);
     const cancel = document.body.appendChild(document.createElement("button"));
     cancel.className = "hl-cancel-all";
-    expect(escape()).toBe(true);
+    expect(pressEsc()).toBe(true);
     expect(document.activeElement).toBe(cancel);
   });
 });
