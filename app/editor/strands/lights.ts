@@ -37,6 +37,11 @@ export class Lights {
     }
   }
 
+  /** What is lit is what the pointer is on. */
+  get underPointer(): boolean {
+    return this.pointed !== null;
+  }
+
   end(): void {
     clearTimeout(this.timer);
     this.listening.abort();

@@ -1,4 +1,4 @@
-import { type RefObject, useEffect, useRef } from "react";
+import { type RefObject, useCallback, useEffect, useRef } from "react";
 import { Command } from "../../ui/index.ts";
 import type { Desk } from "../live/desk.ts";
 import { followStrand } from "./follow.ts";
@@ -27,23 +27,18 @@ export function NumberSlip({ desk, watch, sheet, writes }: Props) {
   useEffect(() => {
     if (tapped.element !== null) place.current?.focus({ preventScroll: true });
   }, [tapped.element]);
+  const { forget } = tapped;
+  const close = useCallback(() => {
+    forget();
+    watch.lights.letGo();
+  }, [forget, watch]);
+  useEscape(tapped.element !== null, close);
   const { view } = desk;
   if (!narrow || tapped.element === null || view === null || gloss === null) return null;
-  const close = () => {
-    tapped.forget();
-    watch.lights.letGo();
-  };
   const number = numberAt(view, tapped.element);
   const said = gloss.lead.map(({ name, known, unknown }) => `${name} = ${known}${unknown}`).join("; ");
   return (
-    <section
-      ref={place}
-      className="hl-slip"
-      role="dialog"
-      aria-label={said}
-      tabIndex={-1}
-      onKeyDown={(event) => event.key === "Escape" && close()}
-    >
+    <section ref={place} className="hl-slip" role="dialog" aria-label={said} tabIndex={-1}>
       <div className="hl-slip-head">
         <span>{gloss.lead.map(({ name }) => name).join("; ")}</span>
         <Command onClick={close}>Close</Command>
@@ -86,6 +81,17 @@ export function NumberSlip({ desk, watch, sheet, writes }: Props) {
       </div>
     </section>
   );
+}
+
+/** Esc closes, wherever the focus is. */
+function useEscape(open: boolean, close: () => void): void {
+  useEffect(() => {
+    if (!open) return;
+    const ended = new AbortController();
+    const onKey = ({ key }: KeyboardEvent) => key === "Escape" && close();
+    document.addEventListener("keydown", onKey, { signal: ended.signal });
+    return () => ended.abort();
+  }, [open, close]);
 }
 
 interface DigitsProps {

@@ -26,7 +26,7 @@ export function StrandsCommands({ desk, watch }: Props) {
   return (
     <span className="hl-strands-commands">
       <GlossLine view={view} />
-      {view.leads && view.picture?.dim !== true ? (
+      {view.leads ? (
         <Command onMouseDown={keep} onClick={() => act(followStrand)}>
           Follow the strand
         </Command>

@@ -1,4 +1,4 @@
-import { type RefObject, useEffect, useState } from "react";
+import { type RefObject, useCallback, useEffect, useState } from "react";
 import type { Desk } from "../live/desk.ts";
 import { QUOTES } from "./quoted.ts";
 import { elementAt, numberAt } from "./tapped-number.ts";
@@ -18,6 +18,7 @@ export function useTapped(
   narrow: boolean,
 ): { readonly element: Element | null; forget(): void } {
   const [tapped, setTapped] = useState<Tapped | null>(null);
+  const forget = useCallback(() => setTapped(null), []);
   useEffect(() => {
     const place = sheet.current;
     if (!narrow || place === null) return;
@@ -47,6 +48,6 @@ export function useTapped(
   }, [tapped, desk, watch]);
   return {
     element: tapped?.element ?? null,
-    forget: () => setTapped(null),
+    forget,
   };
 }

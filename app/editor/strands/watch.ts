@@ -21,7 +21,7 @@ export interface StrandsView {
   readonly heads: readonly HeadDrawing[];
   readonly gloss: Gloss | null;
   readonly mode: StrandsMode;
-  /** What is lit leads to something that can be gone to. */
+  /** What is lit, and stays so while the pointer goes to a command, leads to something that can be gone to. */
   readonly leads: boolean;
   /** The line one comes back to from what was followed; null: nothing was. */
   readonly backTo: number | null;
@@ -193,9 +193,10 @@ export class StrandWatch {
     if (sign !== this.sign) {
       this.sign = sign;
       const gloss = scene.lit === null ? null : glossOf(scene.lit, model, reach);
-      const leads = scene.lit !== null && scene.lit.lit !== "strand";
-      this.store.set({ picture: layOut(scene), gloss, leads });
+      this.store.set({ picture: layOut(scene), gloss });
     }
+    const leads = scene.lit !== null && scene.lit.lit !== "strand" && !this.lights.underPointer;
+    this.store.set({ leads });
     this.drawHeads(places, places.viewTop);
   }
 
