@@ -2,7 +2,17 @@ import type { PackedSheet } from "./messages.ts";
 import type { CellFace, SheetModel } from "./types.ts";
 
 /** Parts that mostly stay as they are from one answer to the next: told only when they are others. */
-const LASTING = ["front", "macros", "parameters", "problems", "bibliography", "wanted", "errata"] as const;
+const LASTING = [
+  "front",
+  "macros",
+  "parameters",
+  "problems",
+  "bibliography",
+  "wanted",
+  "errata",
+  "words",
+  "names",
+] as const;
 type Lasting = (typeof LASTING)[number];
 
 /** Remembers what the last answer told, so that the next tells what is other. The worker's side. */
@@ -59,6 +69,8 @@ export function unpackSheet(before: SheetModel | null, packed: PackedSheet): She
     bibliography: lasting("bibliography"),
     wanted: lasting("wanted"),
     errata: lasting("errata"),
+    words: lasting("words"),
+    names: lasting("names"),
     preview: packed.preview,
   };
 }

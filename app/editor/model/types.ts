@@ -1,4 +1,5 @@
 import type { CellView, Finding } from "../../cells/index.ts";
+import type { LanguageWords, PaperNames } from "./knowledge.ts";
 
 /**
  * What the page's worker makes of a paper for the sheet: everything that is typeset, by its place in the text.
@@ -24,6 +25,9 @@ export interface SheetModel {
   readonly wanted: readonly string[];
   /** What is out of date or failed, for the tail line and to walk through. */
   readonly errata: readonly Erratum[];
+  /** What may be written: of the language, and of this paper. */
+  readonly words: LanguageWords;
+  readonly names: PaperNames;
   /** Set while parameters are tried privately. */
   readonly preview: boolean;
 }

@@ -16,6 +16,7 @@ import type { Ground } from "./border-finder.ts";
 import { type CellTelling, cellFaces, cellNodesOf, titlesOf } from "./cell-faces.ts";
 import { errataOf } from "./errata.ts";
 import { frontFace, frontPieces } from "./front-face.ts";
+import { LANGUAGE_WORDS, namesOf } from "./knowledge.ts";
 import { type CellStanding, numberFaces } from "./number-faces.ts";
 import { parameterFaces, parameterPieces } from "./parameter-faces.ts";
 import { byPlace, PieceStore } from "./piece-store.ts";
@@ -125,6 +126,8 @@ export class SheetReader {
       bibliography: bibliographyFaces(paper),
       wanted: this.results.missing(tellings.map(({ shown: of }) => of?.key)),
       errata: errataOf(cells, pieces, problems, paper.text),
+      words: LANGUAGE_WORDS,
+      names: namesOf(paper, resting, titles),
       preview: names.size > 0,
     };
   }

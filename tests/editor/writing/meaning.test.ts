@@ -1,0 +1,50 @@
+import { describe, expect, test } from "vitest";
+import { KINDS } from "../../../app/cells/index.ts";
+import { SheetReader } from "../../../app/editor/reading/sheet-reader.ts";
+import { meaningAt } from "../../../app/editor/writing/meaning.ts";
+import { SAMPLE, tellText } from "../sample.ts";
+
+const reader = new SheetReader();
+reader.hear(tellText(SAMPLE));
+const knowledge = reader.sheet();
+
+/** What is said where `|` stands. */
+function at(marked: string) {
+  const offset = marked.indexOf("|");
+  const text = marked.slice(0, offset) + marked.slice(offset + 1);
+  const found = meaningAt(text, offset, knowledge);
+  return found && { ...found, word: text.slice(found.from, found.to) };
+}
+
+describe("What a word means", () => {
+  test("a kind and a key, with what stands when it is left out", () => {
+    expect(at("```cou|nts K\n```")).toMatchObject({
+      term: "Counts",
+      words: KINDS.get("counts")?.documentation.summary,
+      word: "counts",
+    });
+    expect(at("```counts K\nup|_to: 3\n```")).toMatchObject({
+      words: "largest n of the law, at most 100000; otherwise 100",
+    });
+    expect(at("```counts K\nof|: larvae")?.words).toContain("required");
+    expect(at("```counts K\nnonsense|: 3")).toBeNull();
+    expect(at("```parameters\nx: {value: 1, ma|x: 2}")?.words).toBe("right end of its scale");
+  });
+
+  test("what formulas read: parameters with their note, cells, members, functions", () => {
+    expect(at(":value[m|u]")?.words).toBe("parameter, 1.6; drift");
+    expect(at(":value[K.me|an]{digits=3}")).toMatchObject({ word: "K.mean", words: "E K, given that K is finite" });
+    expect(at("$\\value{|K(3)}$")).toMatchObject({ term: "K(n)", words: "P(K = n), also beyond up_to" });
+    expect(at("```check c\nthat: sq|rt(2) > 1")?.term).toBe("sqrt(x)");
+    expect(at("```counts L\nof: larv|ae\n```")?.words).toBe("process larvae");
+    expect(at(":value[un|known]")).toBeNull();
+  });
+
+  test("the target of a reference, and a citation's entry", () => {
+    expect(at("See :ref[K|].")).toMatchObject({ term: "Figure 1", words: "The law of $K$." });
+    expect(at("By :ref[kp|p]")?.term).toBe("Equation (1)");
+    expect(at("By :cite[none, kesten1978|]")?.words).toMatch(/Kesten.*Branching.*1978/);
+    expect(at("By :cite[none|]")).toBeNull();
+    expect(at("Plain wo|rds with mu.")).toBeNull();
+  });
+});
