@@ -17,6 +17,8 @@ export { durationWords, provenance } from "./provenance.ts";
 export type { CellRecord } from "./record.ts";
 export { cellRecord } from "./record.ts";
 export { KINDS } from "./registry.ts";
+export type { NoRenaming, Renaming } from "./renaming/rename.ts";
+export { nameAt, renames } from "./renaming/rename.ts";
 export type { Report, ReportedCell, ReportedValue } from "./report.ts";
 export { reportPaper } from "./report.ts";
 export { reportAsText } from "./report-text.ts";
