@@ -1,6 +1,7 @@
 import { type ComplexSeries, type Composer, complexComposer, complexSeries, type Register } from "./complex-series.ts";
 import type { Branching } from "./offspring.ts";
 import type { Trajectory } from "./types.ts";
+import { SLOW_RATIO } from "./walk.ts";
 
 /** A Taylor polynomial of u about a complex ξ, in double precision. */
 export interface Expansion extends ComplexSeries {
@@ -16,6 +17,12 @@ const ORDER = 24;
 const LAST_TERM = 2 ** -55;
 /** Share of the damping's own scale that one expansion covers. */
 const DAMPING_SHARE = 4;
+
+/** Rounds of the slow motion, and what ends them; see walk.ts. */
+const SLOW_ROUNDS = 80;
+const SLOW_GAIN = 0.7;
+const SETTLED = 2 ** -51;
+const LONGEST = 1;
 
 /** u and du/dξ at a complex point. */
 export interface PointValue {
@@ -51,6 +58,7 @@ export class Expander {
 
   /** Fills `into` with the expansion about ξ of the solution with the given u and slope there. `from` may belong to `into`'s own evaluation. */
   expand(xiRe: number, xiIm: number, at: PointValue, into: Expansion): void {
+    if (this.ratio < SLOW_RATIO && this.expandSlow(xiRe, xiIm, at, into)) return;
     const { ratio, strength, work, register } = this;
     const { re, im } = work;
     re[0] = at.re;
@@ -68,12 +76,46 @@ export class Expander {
     into.im.set(im);
     into.xiRe = xiRe;
     into.xiIm = xiIm;
-    into.reach = this.reachOf(into);
+    into.reach = this.reachOf(into, ORDER / (DAMPING_SHARE * (1 + Math.abs(ratio))));
   }
 
-  private reachOf(c: Expansion): number {
+  /** The slow motion through u, see walk.ts. @returns false where its rounds win nothing. */
+  private expandSlow(xiRe: number, xiIm: number, at: PointValue, into: Expansion): boolean {
+    const { ratio, strength, work, register } = this;
+    const { re, im } = work;
+    re.fill(0);
+    im.fill(0);
+    re[0] = at.re;
+    im[0] = at.im;
+    let before = Number.POSITIVE_INFINITY;
+    for (let round = 0; round < SLOW_ROUNDS; round += 1) {
+      let moved = 0;
+      for (let k = 0; k < ORDER; k += 1) {
+        this.compose(k, register);
+        const share = 1 / ((1 + ratio) * (k + 1));
+        const bend = (k + 1) * (k + 2);
+        const a = (strength * register.re - ratio * (re[k] as number) - bend * (re[k + 2] ?? 0)) * share;
+        const b = (strength * register.im - ratio * (im[k] as number) - bend * (im[k + 2] ?? 0)) * share;
+        const own = Math.hypot(a - (re[k + 1] as number), b - (im[k + 1] as number)) / Math.hypot(a, b);
+        if (own > 0) moved += own * 4 ** -k;
+        re[k + 1] = a;
+        im[k + 1] = b;
+      }
+      if (moved <= SETTLED) break;
+      if (!(moved < SLOW_GAIN * before)) return false;
+      before = moved;
+    }
+    into.re.set(re);
+    into.im.set(im);
+    into.xiRe = xiRe;
+    into.xiIm = xiIm;
+    into.reach = this.reachOf(into, LONGEST);
+    return true;
+  }
+
+  private reachOf(c: Expansion, longest: number): number {
     const size = Math.hypot(c.re[0] as number, c.im[0] as number);
-    let reach = ORDER / (DAMPING_SHARE * (1 + Math.abs(this.ratio)));
+    let reach = longest;
     for (const k of [ORDER - 1, ORDER]) {
       const last = Math.hypot(c.re[k] as number, c.im[k] as number);
       if (last > 0) reach = Math.min(reach, ((LAST_TERM * size) / last) ** (1 / k));

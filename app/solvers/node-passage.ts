@@ -1,6 +1,6 @@
 import { SolverError } from "./errors.ts";
 import { chartRest, chartValue, type NodeChart } from "./node-chart.ts";
-import { add, divide, exponential, multiply, pair, scale, subtract, toNumber } from "./pairs.ts";
+import { add, divide, exponential, multiply, pair, scale, subtract, toNumber, ZERO } from "./pairs.ts";
 import type { Pair } from "./types.ts";
 
 /** A point of the trajectory near w = 1: ξ of its own, u = 1 − w and du/d(λ_s x). */
@@ -71,7 +71,9 @@ function carried(chart: NodeChart, from: Met, to: NodeKnot): { zeta: Pair; eta: 
   // on the way to larger u; λ_s x is not known here but through u, which is ζ to leading order
   const factor = divide(to.u, from.knot.u);
   const way = Math.log(factor[0]);
-  return { zeta: multiply(from.zeta, factor), eta: moveEta(chart, from.zeta, from.eta, pair(way)) };
+  // what is lost in rounding must not be carried on at the fast rate
+  const known = Math.abs(from.eta[0]) > PATH_ERROR * Math.abs(from.zeta[0]);
+  return { zeta: multiply(from.zeta, factor), eta: known ? moveEta(chart, from.zeta, from.eta, pair(way)) : ZERO };
 }
 
 /** η after λ_s x has grown by `way`. */

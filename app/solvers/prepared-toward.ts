@@ -189,7 +189,7 @@ function read(
 const LEG_ROUNDINGS = 32;
 /** Where the damping limits the steps on the trajectory, each loses some digits. */
 const STIFF = 100;
-const STIFF_ROUNDINGS = 8192;
+const STIFF_ROUNDINGS = 65_536;
 /** s^−n at which a term no longer counts, as −ln: the amplitudes rise like L^{d + 1}. */
 const FALLEN = 300;
 

@@ -110,6 +110,8 @@ function factorSpread(t: Trajectory, reader: TrajectoryReader, starts: Starts): 
 }
 
 const NONE: ScaledEstimate = { mantissa: 0, exponent: 0, error: 0 };
+/** Of a probability that is above 0, but whose every term passes below the double's range. */
+const BELOW_RANGE: ScaledEstimate = { mantissa: 0, exponent: -960, error: 1 };
 
 /** Of a product of many factors that are not near 1, and of the scale's power. */
 function ownRoundings(t: Trajectory, starts: readonly Start[]): number {
@@ -140,11 +142,11 @@ export function readLaw(law: PreparedLaw, from: number, to: number): ScaledEstim
       (n * law.radiusSpread + law.factorSpread + (law.spreadAt?.(n) ?? 0) + SHARED_ROUNDINGS * ROUNDING);
     const error = (rounding[i] as number) + Math.abs(value) * (methodError[i] as number) + spread;
     // a probability is not below 0: where the rounding is larger than the value, that much is known
-    read.push(
+    const at =
       value < 0 && !takenOut(law, n)
         ? scaledByPower(0, error - value, law.log2Radius, n, law.extra)
-        : scaledByPower(value, error, law.log2Radius, n, law.extra),
-    );
+        : scaledByPower(value, error, law.log2Radius, n, law.extra);
+    read.push(at.mantissa === 0 && at.error === 0 ? BELOW_RANGE : at);
   }
   return read;
 }

@@ -4,6 +4,7 @@ import { toNumber } from "./pairs.ts";
 import { Rays } from "./rays.ts";
 import { saddleOf } from "./saddle.ts";
 import type { Base, Knot, Trajectory, Turning } from "./types.ts";
+import { SLOW_RATIO } from "./walk.ts";
 
 /** Which side of w = 1: below (w < 1, z > 0) or above (w > 1, z < 0). */
 export type Side = "below" | "above";
@@ -50,7 +51,7 @@ export class TrajectoryReader {
     this.decay = toNumber(t.decay);
     this.expander = new Expander(t, this.law);
     this.turning = "refused" in t.turning ? null : t.turning;
-    this.rays = t.ratio[0] < STIFF_RATIO ? new Rays(this) : null;
+    this.rays = t.ratio[0] < STIFF_RATIO && t.ratio[0] >= SLOW_RATIO ? new Rays(this) : null;
     this.sterile = this.turning === null && t.edge === null && t.passage === null;
     if (this.sterile) this.largest = Number.POSITIVE_INFINITY;
     else if (t.passage !== null) this.largest = 1 / this.base.scale[0];

@@ -92,8 +92,10 @@ export function firstKnot(origin: OriginSeries, sign: 1 | -1, order: number, min
   return { xi: minusLog, u: value, slope: negate(multiply(z, derivative)) };
 }
 
-/** Taylor coefficients of u about a knot, by the equation itself. */
+/** Taylor coefficients of u about a knot, by the equation itself; where the damping is strong, those of the slow motion through u. */
 export function expand(n: Normalised, knot: PairKnot, order: number): PairSeries {
+  const slow = n.ratio[0] < SLOW_RATIO ? expandSlow(n, knot.u, order) : null;
+  if (slow !== null) return slow;
   const c = new PairSeries(order + 1);
   c.set(0, knot.u);
   c.set(1, knot.slope);
@@ -106,17 +108,56 @@ export function expand(n: Normalised, knot: PairKnot, order: number): PairSeries
   return c;
 }
 
+/** (1 + ratio) u′ = strength·M(u) − ratio u − u″, solved again and again with the last u″: the trajectory differs from what this comes to
+ *  by e^{−|ratio|} or so. Each round wins a factor of the order of the number of the coefficient over the damping's excess; null where it
+ *  wins none, because M is steep there.
+ *  Source: slow motion at strong damping; N. Fenichel, J. Differential Equations 31 (1979) 53–98. */
+function expandSlow(n: Normalised, u: Pair, order: number): PairSeries | null {
+  const c = new PairSeries(order + 3);
+  c.set(0, u);
+  const damping = add(ONE, n.ratio);
+  let before = Number.POSITIVE_INFINITY;
+  for (let round = 0; round < SLOW_ROUNDS; round += 1) {
+    const compose = pairComposer(n.law, c);
+    let moved = 0;
+    for (let k = 0; k < order; k += 1) {
+      const pull = add(multiply(n.ratio, c.at(k)), scale(c.at(k + 2), (k + 1) * (k + 2)));
+      const next = divide(subtract(multiply(n.strength, compose(k)), pull), scale(damping, k + 1));
+      // a step is a fraction of the radius of convergence, so that later coefficients count less
+      const own = Math.abs(toNumber(subtract(next, c.at(k + 1)))) / Math.abs(next[0]);
+      if (next[0] !== 0) moved += own * 4 ** -k;
+      c.set(k + 1, next);
+    }
+    if (moved <= SETTLED) return c;
+    if (!(moved < SLOW_GAIN * before)) return null;
+    before = moved;
+  }
+  return null;
+}
+
+/** Slow over fast rate below which the trajectory is told from the slow motion by less than any rounding. */
+export const SLOW_RATIO = -1200;
+const SLOW_ROUNDS = 160;
+/** What a round must win, and what ends them. */
+const SLOW_GAIN = 0.7;
+const SETTLED = 2 ** -98;
+
 /** Length of the step over which the expansion's last terms stay below the tolerance relative to u, and the fast damping is resolved. */
 function stepLength(c: PairSeries, n: Normalised, settings: WalkSettings): number {
   const { order, tolerance } = settings;
   const size = Math.abs(c.high[0] as number);
-  let length = order / (4 * (1 + Math.abs(n.ratio[0])));
+  // a series of the slow motion goes on beyond the order that the equation itself fills
+  const isSlow = c.high.length > order + 1;
+  let length = isSlow ? SLOW_STEP : order / (4 * (1 + Math.abs(n.ratio[0])));
   for (const k of [order - 1, order]) {
     const last = Math.abs(c.high[k] as number);
     if (last > 0) length = Math.min(length, ((tolerance * size) / last) ** (1 / k));
   }
   return length;
 }
+
+/** Longest step of the slow motion. */
+const SLOW_STEP = 1 / 4;
 
 /** u and du/dξ at ξ + h. */
 export function moved(knot: PairKnot, c: PairSeries, h: Pair, order: number): PairKnot {

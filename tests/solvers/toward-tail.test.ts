@@ -122,7 +122,7 @@ test("P(K > n) at large n is what the power law leaves: Σ_{k > n} c k^{−1−d
   expect(toDouble(given(absorbedAbove(t, one(1), n))) / ((law.constant.value * n ** -d) / d)).toBeCloseTo(1, 4);
 });
 
-test("errors hold against inputs moved within their rounding, and are no caricature", () => {
+test("errors hold against inputs moved within their rounding, and are no caricature", { timeout: 60_000 }, () => {
   // Computed by an independent method: the same numbers of models whose inputs are moved 2^20 times further.
   const random = new SeededRandom(20261203);
   let judged = 0;

@@ -84,8 +84,10 @@ describe("against the exact recursion in 100 digits", () => {
     }
   });
 
-  test("where the law falls faster than doubles can follow, no digit is claimed that does not hold", () => {
-    for (const drift of [-8, -12]) {
+  test("where the law falls faster than doubles can follow, no digit is claimed that does not hold", {
+    timeout: 60_000,
+  }, () => {
+    for (const drift of [-8, -12, -26, -100]) {
       const exact = { drift, rate: 1, diffusion: 0.5, probabilities: [0, 0, 1] };
       const law = given(absorbedLaw(trajectoryOf(binary(drift)), one(1), 60));
       const recursed = lawByRecursion(exact, 1, 60);
@@ -96,7 +98,7 @@ describe("against the exact recursion in 100 digits", () => {
         expect(Math.abs(mantissa * size - Number(recursed[n]))).toBeLessThanOrEqual(error * size);
         if (error < 1e-6 * mantissa) known += 1;
       }
-      expect(known).toBeGreaterThanOrEqual(10);
+      expect(known).toBeGreaterThanOrEqual(5);
     }
   });
 });
@@ -248,5 +250,25 @@ describe("beside the law itself", () => {
     const text = JSON.stringify(t);
     expect(JSON.parse(text)).toEqual(t);
     expect(text.length).toBeLessThan(6000);
+  });
+});
+
+describe("mean below 1 and a drift strongly toward the barrier, where the damping is strong", () => {
+  test.each([
+    ["0.99", { ...binary(-5), offspring: { law: "poisson", mean: 0.99 } }],
+    ["0.5", { ...binary(-30), offspring: finite(0.75, 0, 0.25) }],
+  ] as const)("mean %s: the law sums to 1 with its tail, and gives w and the mean", (_name, model) => {
+    const t = trajectoryOf(model);
+    const law = given(absorbedLaw(t, one(1), 40));
+    const p = law.mantissa.map((m, n) => m * 2 ** (law.exponent[n] as number));
+    const total = p.reduce((sum, value) => sum + value, toDouble(given(absorbedAbove(t, one(1), 40))));
+    expect(Math.abs(total - 1)).toBeLessThan(1e-9);
+    for (const s of [-0.5, 0, 0.9]) {
+      const sum = p.reduceRight((all, value) => all * s + value, 0);
+      expect(Math.abs(sum - given(profileAt(t, 1, s)).value)).toBeLessThan(1e-9);
+    }
+    const { mean } = absorbedMoments(t, one(1));
+    const summed = p.reduce((sum, value, n) => sum + n * value, 0);
+    expect(Math.abs(summed - mean.value)).toBeLessThan(1e-9);
   });
 });
