@@ -61,6 +61,7 @@ export function readPlaces({ view, column, rule }: Grounds): Places {
   };
 }
 
+/** The last whole step of scrolling at or before y. */
 export function inSteps(y: number): number {
   return Math.floor(y / STEP) * STEP;
 }
