@@ -43,9 +43,8 @@ export function DrawnSeries({
           key={`${mark.x} ${mark.y}`}
           mark={mark}
           radius={series.radius}
-          ring={series.ring}
+          filling={series.ring === null ? colour : series.ring === "open" ? "none" : palette.paper}
           colour={colour}
-          paper={palette.paper}
           unit={unit}
         />
       ))}
@@ -82,14 +81,14 @@ const stems = (marks: readonly Mark[], foot: number) =>
 interface MarkProps {
   readonly mark: Mark;
   readonly radius: number;
-  readonly ring: boolean;
+  /** What the mark is filled with: its own colour, or as a ring paper or nothing. */
+  readonly filling: string;
   readonly colour: string;
-  readonly paper: string;
   readonly unit: number;
 }
 
 /** A point with the bar of its interval, without caps; a mean is a ring. */
-function DrawnMark({ mark: { x, y, bar }, radius, ring, colour, paper, unit }: MarkProps) {
+function DrawnMark({ mark: { x, y, bar }, radius, filling, colour, unit }: MarkProps) {
   return (
     <g>
       {bar ? (
@@ -99,8 +98,14 @@ function DrawnMark({ mark: { x, y, bar }, radius, ring, colour, paper, unit }: M
           strokeWidth={BAR_WIDTH * unit}
         />
       ) : null}
-      {y === null ? null : ring ? (
-        <circle {...at({ x, y })} r={radius.toFixed(2)} fill={paper} stroke={colour} strokeWidth={RING_WIDTH * unit} />
+      {y === null ? null : filling !== colour ? (
+        <circle
+          {...at({ x, y })}
+          r={radius.toFixed(2)}
+          fill={filling}
+          stroke={colour}
+          strokeWidth={RING_WIDTH * unit}
+        />
       ) : (
         <circle {...at({ x, y })} r={radius.toFixed(2)} fill={colour} />
       )}

@@ -4,14 +4,14 @@ import { labelBox, seriesInk } from "./ink.ts";
 import { type LabelRun, labelRuns } from "./label.ts";
 import { placeLabels } from "./labels.ts";
 import { placedTicks, placeTopLabels, placeXLabel, placeYLabel, TOP_ROW, ticksApart } from "./layout-axes.ts";
-import { placeSeries } from "./layout-series.ts";
+import { isRing, placeSeries } from "./layout-series.ts";
 import { runsWidth } from "./measure.ts";
 import { seriesColours } from "./palette.ts";
 import type { PlacedLine, PlateSize, PlotLayout } from "./plot-layout.ts";
 import { type Ends, isWithin, plotted, xEnds, yEnds } from "./range.ts";
 import { fittingLabels, sideRoom, startLabelsGiveScale, wantedLabels } from "./side-labels.ts";
 import { linearTicks, logTicks, type Tick } from "./ticks.ts";
-import type { Axis, Figure, Level } from "./types.ts";
+import type { Axis, Figure, Level, Series } from "./types.ts";
 
 export const FONT_SIZE = 12.5;
 /** Lengths of axis, in font sizes, for one tick. */
@@ -146,10 +146,16 @@ function naturalHeight(width: number, fontSize: number, labels: number, hasScale
 
 const SMALLER = 0.5;
 
-/** Of the size of marks, the share that each series takes: one that would hide another is smaller. */
+/** A ring that goes round other series' marks, which are seen within it. */
+const ROUND = 1.5;
+
+/** Of the size of marks, the share that each series takes: one that would hide another is smaller, a ring goes round it. */
 function markShares(figure: Figure): readonly number[] {
+  const isRound = (series: Series) =>
+    isRing(series) && figure.series.some((other) => other.mark !== "line" && other.mark !== "band" && !isRing(other));
   let smaller = 0;
   return figure.series.map((series) => {
+    if (isRound(series)) return ROUND;
     if (series.mark !== "points" || series.role === "principal") return 1;
     smaller += 1;
     return Math.max(0.3, SMALLER ** (smaller - 1));

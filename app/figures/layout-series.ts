@@ -37,8 +37,8 @@ export interface PlacedSeries {
   readonly bandPoints: readonly (BandPoint | null)[];
   readonly marks: readonly Mark[];
   readonly radius: number;
-  /** Means with intervals are rings. */
-  readonly ring: boolean;
+  /** Means with intervals are rings: filled with paper, or open round other marks. */
+  readonly ring: "filled" | "open" | null;
   /** Foot of the stems; null when none are drawn. */
   readonly foot: number | null;
   /** Dot where a labelled curve starts on the vertical axis. */
@@ -65,6 +65,8 @@ export interface Placing {
   readonly labelsAreTicks: boolean;
 }
 
+export const isRing = (series: Series): boolean => series.mark === "points" && series.low !== undefined;
+
 /** Puts one series on the plate: its path or marks, its band or bars, its dots. */
 export function placeSeries(series: Series, colour: Colour, figure: Figure, placing: Placing): PlacedSeries {
   const { inner, unit } = placing;
@@ -87,7 +89,7 @@ export function placeSeries(series: Series, colour: Colour, figure: Figure, plac
     bandPoints,
     marks,
     radius,
-    ring: series.mark === "points" && series.low !== undefined,
+    ring: isRing(series) ? (placing.share > 1 ? "open" : "filled") : null,
     foot: series.mark === "stems" && spacing >= CLOSEST_STEMS * unit ? inner.bottom : null,
     start:
       lined && placing.labelsAreTicks && series.labelAt === "start" && first && isInside(first, inner) ? first : null,

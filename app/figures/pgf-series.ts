@@ -40,9 +40,14 @@ export function seriesLines(
       const { x, y } = columns.stems;
       lines.push(`\\addplot[${colour}, draw opacity=0.55, ${FINE}, no marks, forget plot] ${fromFile(x, y)}`);
     }
-    const filled = placed.ring ? `mark options={fill=white, ${ORDINARY}}` : "mark options={solid}";
+    const filled =
+      placed.ring === null
+        ? "mark=*, mark options={solid}"
+        : placed.ring === "open"
+          ? `mark=o, mark options={${ORDINARY}}`
+          : `mark=*, mark options={fill=white, ${ORDINARY}}`;
     lines.push(
-      `\\addplot[${colour}, only marks, mark=*, mark size=${number(placed.radius * 0.95)}pt, ${filled}, ${restrict(plot)}] ${fromFile(columns.x, columns.y)}`,
+      `\\addplot[${colour}, only marks, mark size=${number(placed.radius * 0.95)}pt, ${filled}, ${restrict(plot)}] ${fromFile(columns.x, columns.y)}`,
     );
   }
   return [...lines, ...dotLines(placed, colour, plot), ...arrowLine(placed, colour, plot)];

@@ -20,10 +20,11 @@ export function textBoxes(layout: FigureLayout): readonly TextBox[] {
           const baseline = plot.frame.bottom + TICK_LENGTH + fontSize;
           return { ...textBox(runs, position, baseline - fontSize * 0.36, "middle", fontSize), text: words(runs) };
         }),
-      ...plot.yTicks.map(({ runs, position }) => ({
-        ...textBox(runs, plot.tickEnd, position, "end", fontSize),
-        text: words(runs),
-      })),
+      ...plot.yTicks.map(({ runs, position }) => {
+        // Digits do not go below their baseline.
+        const { left: from, right, top: above, bottom } = textBox(runs, plot.tickEnd, position, "end", fontSize);
+        return { left: from, right, top: above, bottom: bottom - fontSize * 0.15, text: words(runs) };
+      }),
       ...[plot.xLabel, plot.yLabel, ...plot.topLabels].flatMap((label) =>
         label ? [{ ...labelBox(label, fontSize, "baseline"), text: words(label.runs) }] : [],
       ),
