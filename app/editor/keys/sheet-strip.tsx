@@ -1,3 +1,4 @@
+import { lazy, Suspense } from "react";
 import { ErrataList } from "../finding/errata-list.tsx";
 import { FindStrip } from "../finding/find-strip.tsx";
 import { bindingWords } from "./binding.ts";
@@ -10,6 +11,11 @@ interface Props {
   readonly sheet: SheetAtHand;
   readonly personId: string | null;
 }
+
+const reading = () => import("../finding/reading-strips.ts");
+const OutlineStrip = lazy(async () => ({ default: (await reading()).OutlineStrip }));
+const RenameStrip = lazy(async () => ({ default: (await reading()).RenameStrip }));
+const FETCHING = <p className="hl-strip-words">Reading the paper</p>;
 
 const TITLES: Readonly<Record<StripName, string>> = {
   commands: "Commands",
@@ -46,7 +52,19 @@ function Body({ open, sheet, personId }: Props & { readonly open: StripName }) {
       return <ErrataList sheet={sheet} />;
     case "find":
       return <FindStrip sheet={sheet} />;
-    default:
+    case "outline":
+      return (
+        <Suspense fallback={FETCHING}>
+          <OutlineStrip sheet={sheet} />
+        </Suspense>
+      );
+    case "rename":
+      return (
+        <Suspense fallback={FETCHING}>
+          <RenameStrip sheet={sheet} />
+        </Suspense>
+      );
+    case "commands":
       return <CommandList sheet={sheet} personId={personId} />;
   }
 }

@@ -203,7 +203,7 @@ export class Desk {
     this.reading = new Reading(
       this.view,
       this.options.takeReader(),
-      () => this.session.bibliography.toString(),
+      () => this.bibliographyNow(),
       (model) => this.onModel(model),
       (borders) => this.store.set({ borders }),
     );
@@ -269,13 +269,18 @@ export class Desk {
 
   private async recompute(ids: readonly string[]): Promise<void> {
     if (ids.length === 0) return;
-    await this.ask(this.requests.compute(this.textNow(), this.session.bibliography.toString(), ids));
+    await this.ask(this.requests.compute(this.textNow(), this.bibliographyNow(), ids));
   }
 
   private async ask(request: Promise<{ readonly refused: string } | null>): Promise<void> {
     const answer = await request;
     this.store.set({ notice: answer === null ? null : { words: answer.refused, amiss: true } });
     if (answer !== null) this.announcer.say(answer.refused);
+  }
+
+  /** The paper's BibTeX as it is now. */
+  bibliographyNow(): string {
+    return this.session.bibliography.toString();
   }
 
   private textNow(): string {
