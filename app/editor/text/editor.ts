@@ -4,7 +4,7 @@ import { drawSelection, EditorView, gutters, keymap, type ViewUpdate } from "@co
 import { yCollab, yUndoManagerKeymap } from "y-codemirror.next";
 import type { Awareness } from "y-protocols/awareness";
 import type * as Y from "yjs";
-import { meaningGloss, pairs, suggestionList } from "../writing/index.ts";
+import { meaningGloss, pairs, pasting, suggestionList } from "../writing/index.ts";
 import { foundField, foundNews } from "./found.ts";
 import { glossField } from "./glosses.ts";
 import { type SheetHost, sheetHost } from "./host.ts";
@@ -33,7 +33,7 @@ export function createSheetEditor(options: EditorOptions): EditorView {
       extensions: [
         ground(options.nonce, host.writes, "Text of the paper"),
         sheetHost.of(host),
-        host.writes ? [suggestionList, meaningGloss, pairs] : [],
+        host.writes ? [suggestionList, meaningGloss, pairs, pasting] : [],
         keymap.of([
           { key: "Enter", run: enter },
           { key: "Shift-Enter", run: lineBreak },
