@@ -15,6 +15,8 @@ import { silentHost } from "../silent-host.ts";
 
 const WIDTH = 660;
 const MARGIN = 400;
+/** After so long the keys have rested, and strands have followed what was written. */
+const RESTED_MS = 600;
 
 beforeAll(() => {
   likeABrowser();
@@ -73,7 +75,8 @@ describe("measuring", () => {
     for (let k = 0; k < 20; k += 1) view.dispatch({ changes: { from: SAMPLE.length, insert: "a" } });
     expect(measured).not.toHaveBeenCalled();
     let before = 0;
-    for (let frame = 0; frame < 6; frame += 1) {
+    // Long enough for the keys to have rested.
+    for (const end = Date.now() + RESTED_MS; Date.now() < end; ) {
       await new Promise((done) => requestAnimationFrame(done));
       expect(measured.mock.calls.length - before).toBeLessThanOrEqual(1);
       before = measured.mock.calls.length;
@@ -86,7 +89,9 @@ describe("measuring", () => {
   test("where nothing has moved nothing is drawn anew", async () => {
     const before = watch.store.get().picture;
     expect(before).not.toBeNull();
+    const measured = vi.spyOn(column, "getBoundingClientRect");
     view.dispatch({ changes: { from: SAMPLE.length, insert: "a" } });
+    await vi.waitFor(() => expect(measured).toHaveBeenCalled(), { timeout: 5000 });
     await frames();
     expect(watch.store.get().picture).toBe(before);
   });
@@ -95,7 +100,7 @@ describe("measuring", () => {
     watch.end();
     const measured = vi.spyOn(column, "getBoundingClientRect");
     view.dispatch({ changes: { from: 0, insert: "\n" } });
-    await frames();
+    await new Promise((done) => setTimeout(done, RESTED_MS));
     expect(measured).not.toHaveBeenCalled();
   });
 
