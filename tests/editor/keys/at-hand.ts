@@ -8,6 +8,7 @@ import { FIRST_VIEW } from "../../../app/editor/live/desk-view.ts";
 import { createStore } from "../../../app/editor/live/store.ts";
 import type { SheetModel } from "../../../app/editor/model/types.ts";
 import { SheetReader } from "../../../app/editor/reading/sheet-reader.ts";
+import { foundField, foundNews } from "../../../app/editor/text/found.ts";
 import { glossField } from "../../../app/editor/text/glosses.ts";
 import { sheetHost } from "../../../app/editor/text/host.ts";
 import { applyModel, setAttention, sheetField } from "../../../app/editor/text/sheet-field.ts";
@@ -21,7 +22,7 @@ export function sheetAtHand(text: string, { writes = true, computing = true } = 
     parent: document.body.appendChild(document.createElement("div")),
     state: EditorState.create({
       doc: text,
-      extensions: [sheetHost.of(host), sheetField, glossField, EditorState.readOnly.of(!writes)],
+      extensions: [sheetHost.of(host), foundField, foundNews, sheetField, glossField, EditorState.readOnly.of(!writes)],
     }),
   });
   const store = createStore({ ...FIRST_VIEW, ready: true });
@@ -41,6 +42,7 @@ export function sheetAtHand(text: string, { writes = true, computing = true } = 
     store,
     view,
     cellCommands: { ...host.commands, ...asked },
+    bibliographyNow: () => "",
     edit: (change: Parameters<EditorView["dispatch"]>[0]) => view.dispatch(change),
     ...asked,
   };
