@@ -5,6 +5,7 @@ import { ClosedNotice } from "./closed-notice.tsx";
 import { ParameterRule } from "./parameter-rule.tsx";
 import { Runs } from "./runs.tsx";
 import type { SheetPageProps } from "./sheet-page.tsx";
+import { RulePlace } from "./sheet-preface.tsx";
 import { TrialNotice } from "./trial-notice.tsx";
 import { useDeskView } from "./use-desk-view.ts";
 import { listed } from "./words.ts";
@@ -74,9 +75,11 @@ function People({ desk }: { readonly desk: Desk }) {
 }
 
 /** The rule with the paper's parameters. */
-export function SheetRule({ desk }: { readonly desk: Desk }) {
+export function SheetRule({ desk, text }: { readonly desk: Desk; readonly text: string }) {
+  const read = useDeskView(desk, ({ model }) => model !== null);
   const parameters = useDeskView(desk, ({ model }) => model?.parameters ?? NO_PARAMETERS);
   const borders = useDeskView(desk, (view) => view.borders);
+  if (!read) return <RulePlace text={text} />;
   return (
     <ParameterRule
       parameters={parameters}

@@ -10,11 +10,17 @@ export function SheetPreface({ title, text }: Props) {
   return (
     <>
       <RunningHead home="/shelf" left={<CommandLink to="/shelf">Shelf</CommandLink>} title={title} />
+      <RulePlace text={text} />
       <main className="hl-column hl-preface">
         <PlainText title={title} text={text} />
       </main>
     </>
   );
+}
+
+/** Holds the place of the rule until the parameters are read, where the text has any. */
+export function RulePlace({ text }: Pick<Props, "text">) {
+  return /^(`{3,}|~{3,})[ \t]*parameters\b/m.test(text) ? <div className="hl-rule-place" /> : null;
 }
 
 /** The text alone, as it stands in the column until the live sheet covers it. */

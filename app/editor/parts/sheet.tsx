@@ -1,4 +1,4 @@
-import { type RefObject, useEffect, useRef, useState, useSyncExternalStore } from "react";
+import { type RefObject, useEffect, useLayoutEffect, useRef, useState, useSyncExternalStore } from "react";
 import { SheetStrip } from "../keys/sheet-strip.tsx";
 import { useSheetAtHand } from "../keys/use-strips.ts";
 import { Desk } from "../live/desk.ts";
@@ -28,7 +28,7 @@ export default function Sheet(props: SheetProps) {
       {desk === null ? null : (
         <>
           <SheetHead desk={desk} props={props} onCommand={(open) => atHand?.strips.set({ open })} />
-          <SheetRule desk={desk} />
+          <SheetRule desk={desk} text={props.first.text} />
           {strands === null ? null : <Heads desk={desk} strands={strands} />}
           <SheetNotices desk={desk} props={props} />
           <SheetVoice desk={desk} />
@@ -57,7 +57,8 @@ export default function Sheet(props: SheetProps) {
 function useDesk(props: SheetProps, place: RefObject<HTMLDivElement | null>): Desk | null {
   const [desk, setDesk] = useState<Desk | null>(null);
   const first = useRef(props);
-  useEffect(() => {
+  // Before the first paint, so that the head does not go and come.
+  useLayoutEffect(() => {
     if (place.current === null) return;
     const { nonce, ...options } = first.current;
     const opened = new Desk(options, place.current, nonce);

@@ -20,7 +20,12 @@ export function StrandsDrawing({ watch, parameters }: Props) {
   const symbols = parameters.map(({ symbol }) => symbol);
   return (
     <div className={`hl-strands hl-strands-${frame.size}${picture.dim ? " hl-strands-dim" : ""}`} aria-hidden="true">
-      <svg width="100%" height={Math.max(0, picture.bottom - picture.top)} style={{ top: picture.top }}>
+      {/* Moved and not placed: a place that changes while one scrolls would count, and be drawn, as a shift of the page. */}
+      <svg
+        width="100%"
+        height={Math.max(0, picture.bottom - picture.top)}
+        style={{ transform: `translateY(${picture.top}px)` }}
+      >
         <title>Strands</title>
         <g transform={`translate(0 ${-picture.top})`}>
           {picture.strandBundle === null ? null : <Bundle bundle={picture.strandBundle} />}
