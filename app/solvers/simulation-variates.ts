@@ -120,19 +120,21 @@ function fill(draws: Float64Array, from: number, generator: Generator, law: Zigg
     s3 = (s3 << 11) | (s3 >>> 21);
 
     const layer = high & (LAYERS - 1);
-    let x = fraction(high, low) * (widths[layer] as number);
-    if (x >= (widths[layer + 1] as number)) {
+    const x = fraction(high, low) * (widths[layer] as number);
+    const sign = 1 - ((high >>> 7) & signs);
+    // Written in either branch: a number that might come of the call would be boxed at each draw.
+    if (x < (widths[layer + 1] as number)) draws[j] = sign * x;
+    else {
       state[0] = s0;
       state[1] = s1;
       state[2] = s2;
       state[3] = s3;
-      x = unlikely(layer, x, generator, law);
+      draws[j] = sign * unlikely(layer, x, generator, law);
       s0 = state[0] as number;
       s1 = state[1] as number;
       s2 = state[2] as number;
       s3 = state[3] as number;
     }
-    draws[j] = x * (1 - ((high >>> 7) & signs));
   }
   state[0] = s0;
   state[1] = s1;
