@@ -16,7 +16,8 @@ import { type Suggestion, suggestionsAt } from "./suggest.ts";
 
 /** How long the writing rests before suggestions are looked for, in ms: never within a keystroke's own frame. */
 const REST_MS = 120;
-const MOST_SHOWN = 60;
+/** Shown at once; the arrows lead on to the next so many. So nothing scrolls that the keyboard could not reach. */
+const MOST_SHOWN = 8;
 
 interface Listed extends Completion {
   readonly suggestion: Suggestion;
