@@ -74,11 +74,11 @@ function runsOf(nodes: readonly PaperNode[]): readonly Run[] {
   };
   const visit = (node: PaperNode): void => {
     if (node.type === "inlineMath") {
-      const tex = mathTex(node, ({ formula }) => `\\text{${formula.replace(/[\\{}_^$%#&~]/g, " ")}}`);
+      const tex = mathTex(node, () => "\\ldots");
       add({ run: "math", tex }, node.value.length);
     } else if ("children" in node) for (const child of node.children) visit(child);
     else {
-      const words = plainText(node);
+      const words = plainText(node, () => "…");
       add(
         { run: "text", text: words.length <= left ? words : `${words.slice(0, left).replace(/\s+\S*$/, "")} …` },
         words.length,

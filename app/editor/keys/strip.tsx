@@ -16,10 +16,20 @@ export function Strip({ title, children, onClose }: Props) {
   useEffect(() => {
     const before = document.activeElement;
     const strip = place.current;
-    strip
-      ?.querySelector<HTMLElement>("[data-first], .hl-strip-body button, .hl-strip-body a, .hl-strip-close")
-      ?.focus();
+    const take = (): boolean => {
+      const first =
+        strip?.querySelector<HTMLElement>("[data-first]") ??
+        strip?.querySelector<HTMLElement>(".hl-strip-body button, .hl-strip-body a");
+      (first ?? strip?.querySelector<HTMLElement>(".hl-strip-close"))?.focus();
+      return first != null;
+    };
+    // What is fetched first comes a little later, and takes the keys if they still are at Close.
+    const watch = new MutationObserver(() => {
+      if (document.activeElement?.matches(".hl-strip-close") !== true || take()) watch.disconnect();
+    });
+    if (!take() && strip !== null) watch.observe(strip, { childList: true, subtree: true });
     return () => {
+      watch.disconnect();
       // By now the strip is off the page, and what had the keys in it has lost them.
       const lost = document.activeElement === null || document.activeElement === document.body;
       if (lost && before instanceof HTMLElement && before.isConnected) before.focus({ preventScroll: true });

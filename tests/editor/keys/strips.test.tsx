@@ -55,7 +55,7 @@ test("the list has every command by name and letter; Close gives the keys back t
     const entry = button(words)?.closest("li");
     expect(entry?.querySelector("kbd")?.textContent, words).toBe(letter ?? "");
   }
-  expect(place.querySelector("section")?.contains(document.activeElement)).toBe(true);
+  expect(document.activeElement?.textContent).toBe("Another key");
   press("Close");
   expect(place.querySelector("section")).toBeNull();
   expect(document.activeElement).toBe(before);
@@ -93,6 +93,21 @@ test("errata are a list that leads to each of them", () => {
   expect(at.asked.goTo).toHaveBeenCalledExactlyOnceWith(60);
   act(() => at.store.set({ model: { ...model, errata: [] } }));
   expect(place.textContent).toContain("Errata none. Every number is current.");
+});
+
+test("find takes the keys at its field, and outline at its first place once it is read", async () => {
+  at.sheet.strips.set({ open: "find" });
+  act(() => root.render(<SheetStrip sheet={at.sheet} personId={null} />));
+  expect(document.activeElement?.matches("input.hl-strip-field")).toBe(true);
+  await act(async () => {
+    at.sheet.strips.set({ open: "outline" });
+    await import("../../../app/editor/finding/reading-strips.ts");
+    await new Promise((done) => setTimeout(done, 50));
+  });
+  expect(document.activeElement?.textContent).toBe("1 Model");
+  press("1 Model");
+  expect(at.sheet.strips.get().open).toBeNull();
+  await vi.waitFor(() => expect(at.asked.goTo).toHaveBeenCalledExactlyOnceWith(SAMPLE.indexOf("## Model")));
 });
 
 test("find: counts as one types, walks, replaces all, and closes what it had opened", () => {
