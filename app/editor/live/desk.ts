@@ -24,6 +24,9 @@ export interface DeskOptions extends Pick<SessionOptions, "paperId" | "person" |
   takeReader(): Worker;
 }
 
+/** How long the tail line says what was done, in ms. */
+const TOLD_MS = 12_000;
+
 /** Everything that belongs to one open paper: its session, its text on the sheet, its reading, and the commands. */
 export class Desk {
   readonly store: Store<DeskView> = createStore<DeskView>(FIRST_VIEW);
@@ -147,9 +150,11 @@ export class Desk {
     this.session.undo.text.stopCapturing();
   }
 
-  /** Says something in the tail line, and to those who listen. */
+  /** Says something in the tail line for a while, and to those who listen. */
   tell(words: string): void {
-    this.store.set({ notice: { words, amiss: false } });
+    const notice = { words, amiss: false };
+    this.store.set({ notice });
+    setTimeout(() => this.store.get().notice === notice && this.store.set({ notice: null }), TOLD_MS);
     this.announcer.say(words);
   }
 
