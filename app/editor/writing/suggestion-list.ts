@@ -9,7 +9,7 @@ import {
   startCompletion,
 } from "@codemirror/autocomplete";
 import { EditorState, type Extension, Prec } from "@codemirror/state";
-import { type EditorView, keymap } from "@codemirror/view";
+import { EditorView, keymap, showTooltip } from "@codemirror/view";
 import { sheetField } from "../text/sheet-field.ts";
 import { wordsWithMath } from "./set-words.ts";
 import { type Suggestion, suggestionsAt } from "./suggest.ts";
@@ -24,10 +24,19 @@ interface Listed extends Completion {
 }
 
 /**
+ * The editor hides what floats beside a place within the scroll margins of its own top and end. Here these margins are
+ * those of the window, for the rule and the tail line, and the text's first and last lines are in full sight.
+ */
+const inFullSight = EditorView.updateListener.of(({ state }) => {
+  for (const floating of state.facet(showTooltip)) if (floating !== null) Object.assign(floating, { clip: false });
+});
+
+/**
  * Suggestions beneath the line: arrows choose, Enter or Tab accepts, Esc leaves, Ctrl-Space asks for them. While none
  * are shown all of these keep their meaning.
  */
 export const suggestionList: Extension = [
+  inFullSight,
   EditorState.phrases.of({ Completions: "Suggestions" }),
   autocompletion({
     override: [suggest],
