@@ -205,7 +205,7 @@ describe("private trials", () => {
   test("that a solver refuses say why", () => {
     reader.hear(tellText(SAMPLE));
     showAll(SAMPLE);
-    reader.hear({ tell: "preview", settled: {}, trial: { mu: "-2" } });
+    reader.hear({ tell: "preview", settled: {}, trial: { beta: "-1" } });
     const face = cell(reader.sheet(), "K");
     expect(["failed", "waiting"]).toContain(face.state);
     expect(face.hasResult).toBe(true);

@@ -57,8 +57,9 @@ function misses(counts: SimulatedCounts, plan: SimulationPlan, law: readonly num
   }).length;
 }
 
-// Seeds are fixed, so that what passes goes on passing. Each interval misses with probability at most 0.001: of fresh
-// seeds, the 120 comparisons of one process would all hold with probability at least 0.88.
+// Seeds are fixed, so that what passes goes on passing. Each of the 120 comparisons of one process misses with probability
+// at most 0.001, so one in nine processes is expected to have a miss; three or more come by chance once in 3800 times.
+const MOST_MISSES = 2;
 const SEEDS = Array.from({ length: 20 }, (_, i) => i + 1);
 
 describe("the law of K, by 20 seeds, within intervals of 99.9 %", () => {
@@ -100,7 +101,7 @@ describe("the law of K, by 20 seeds, within intervals of 99.9 %", () => {
   test.each(cases)("%s", (_, model, starts) => {
     const law = computedLaw(model, starts);
     const plans = SEEDS.map((seed) => planned(model, starts, { seed, replicates: 10_000 }));
-    expect(plans.map((plan) => misses(simulated(plan), plan, law))).toEqual(SEEDS.map(() => 0));
+    expect(plans.reduce((sum, plan) => sum + misses(simulated(plan), plan, law), 0)).toBeLessThanOrEqual(MOST_MISSES);
   });
 
   test("an explicit law: drift toward the barrier at the speed where the front is elementary", () => {
@@ -109,7 +110,7 @@ describe("the law of K, by 20 seeds, within intervals of 99.9 %", () => {
     const rho = Math.exp(-1 / Math.sqrt(3));
     const law = coefficients((s) => 1 - (1 - s) / (rho + (1 - rho) * Math.sqrt(1 - s)) ** 2);
     const plans = SEEDS.map((seed) => planned(binary(-5 / (2 * Math.sqrt(3))), at(1), { seed }));
-    expect(plans.map((plan) => misses(simulated(plan), plan, law))).toEqual(SEEDS.map(() => 0));
+    expect(plans.reduce((sum, plan) => sum + misses(simulated(plan), plan, law), 0)).toBeLessThanOrEqual(MOST_MISSES);
     expect(plans[0]?.tailIndex).toBeCloseTo(1.5, 12);
   });
 
