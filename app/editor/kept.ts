@@ -2,7 +2,6 @@ import { readVarUint, readVarUint8Array } from "lib0/decoding";
 import type { WebsocketProvider } from "y-websocket";
 import { MESSAGE_KEPT } from "./protocol.ts";
 
-/** So long after the last edit it is told that all is kept, in ms: not once for each letter, and never before it is so. */
 const CALM_MS = 250;
 
 /** How far the server has committed what this page wrote. */
@@ -16,9 +15,14 @@ export interface Kept {
 /**
  * Watches which of the page's edits are committed. Call it before the provider connects.
  * @param onChange called when an edit is made and when one is acknowledged
+ * @param calmMs so long after the last edit it is told that all is kept: not once for each letter, and never before it is so
  * @returns ends the watch
  */
-export function watchKept(provider: WebsocketProvider, onChange: (kept: Kept) => void): () => void {
+export function watchKept(
+  provider: WebsocketProvider,
+  onChange: (kept: Kept) => void,
+  calmMs: number = CALM_MS,
+): () => void {
   let sent = 0;
   let kept = 0;
   let joined = false;
@@ -29,7 +33,7 @@ export function watchKept(provider: WebsocketProvider, onChange: (kept: Kept) =>
   const tell = () => {
     clearTimeout(timer);
     const all = joined && kept === sent;
-    const calm = editedAt + CALM_MS - Date.now();
+    const calm = editedAt + calmMs - Date.now();
     if (all && calm > 0) {
       timer = setTimeout(tell, calm);
       return;

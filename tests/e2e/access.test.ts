@@ -1,12 +1,12 @@
 import AxeBuilder from "@axe-core/playwright";
 import type { Browser } from "playwright-core";
 import { afterAll, beforeAll, expect, inject, test } from "vitest";
+import { RULES } from "./axe-rules.ts";
 import { openBrowser, signedIn, type Visitor, visitor } from "./people.ts";
 import { SheetOnPage } from "./sheet.ts";
 
-/** Common practice: axe-core's rules for WCAG 2.2 A and AA, on every place of the product, in both themes. */
+/** On every place of the product, in both themes. */
 const application = inject("applicationUrl");
-const RULES = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa"];
 
 let browser: Browser;
 let author: Visitor;

@@ -102,9 +102,10 @@ export class Page {
       connect: false,
       maxBackoffTime: 200,
     });
-    watchKept(this.provider, (kept) => {
+    const onKept = (kept: Kept) => {
       this.kept = kept;
-    });
+    };
+    watchKept(this.provider, onKept, 0);
     this.provider.on("closed", (closed) => {
       this.closed = closed;
     });
