@@ -1,17 +1,13 @@
 import type { KindDocumentation } from "../kind.ts";
+import { OF_A_PROCESS, START } from "../process/reading.ts";
 
 export const COUNTS_DOCUMENTATION: KindDocumentation = {
   name: "counts",
   label: "Counts",
   summary: "The law of K, the number of particles ever absorbed at the barrier.",
   keys: [
-    { name: "of", meaning: "a process", required: true, fallback: null },
-    {
-      name: "start",
-      meaning: "where the first particle starts, or a map of positions to numbers of particles: {1: 3, 2: 2}",
-      required: true,
-      fallback: null,
-    },
+    OF_A_PROCESS,
+    START,
     { name: "up_to", meaning: "largest n of the law, at most 100000", required: false, fallback: "100" },
   ],
   ownKeys: false,

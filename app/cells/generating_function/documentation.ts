@@ -1,11 +1,12 @@
 import type { KindDocumentation } from "../kind.ts";
+import { OF_A_PROCESS } from "../process/reading.ts";
 
 export const GENERATING_FUNCTION_DOCUMENTATION: KindDocumentation = {
   name: "generating_function",
   label: "Generating function",
   summary: "g(s) = E_x[s^K; K finite] as a function of s, for one or more starts x, up to s0 where it ends.",
   keys: [
-    { name: "of", meaning: "a process", required: true, fallback: null },
+    OF_A_PROCESS,
     {
       name: "start",
       meaning: "where the particle starts, or a list of starts, each a curve",

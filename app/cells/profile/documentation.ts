@@ -1,11 +1,12 @@
 import type { KindDocumentation } from "../kind.ts";
+import { OF_A_PROCESS } from "../process/reading.ts";
 
 export const PROFILE_DOCUMENTATION: KindDocumentation = {
   name: "profile",
   label: "Profile",
   summary: "w(x, s) = E_x[s^K; K finite] along the half-line, for one or more s up to the turning value s0.",
   keys: [
-    { name: "of", meaning: "a process", required: true, fallback: null },
+    OF_A_PROCESS,
     {
       name: "s",
       meaning: "values of s from −1 to s0; `s0` is the turning value, 1 where the drift is toward the barrier",

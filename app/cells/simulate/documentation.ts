@@ -1,4 +1,5 @@
 import type { KindDocumentation } from "../kind.ts";
+import { OF_A_PROCESS, START } from "../process/reading.ts";
 
 export const SIMULATE_DOCUMENTATION: KindDocumentation = {
   name: "simulate",
@@ -6,13 +7,8 @@ export const SIMULATE_DOCUMENTATION: KindDocumentation = {
   summary:
     "K by simulation, exact in law without a step of time: a check of the computed law that shares nothing with it.",
   keys: [
-    { name: "of", meaning: "a process", required: true, fallback: null },
-    {
-      name: "start",
-      meaning: "where the first particle starts, or a map of positions to numbers of particles: {1: 3, 2: 2}",
-      required: true,
-      fallback: null,
-    },
+    OF_A_PROCESS,
+    START,
     { name: "replicates", meaning: "how many, from 2", required: false, fallback: "100000" },
     { name: "seed", meaning: "a whole number; equal seeds give equal results", required: false, fallback: "1" },
     { name: "confidence", meaning: "of the intervals, each by itself", required: false, fallback: "0.95" },

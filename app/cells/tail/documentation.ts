@@ -1,4 +1,5 @@
 import type { KindDocumentation } from "../kind.ts";
+import { OF_A_PROCESS, START } from "../process/reading.ts";
 
 export const TAIL_DOCUMENTATION: KindDocumentation = {
   name: "tail",
@@ -6,13 +7,8 @@ export const TAIL_DOCUMENTATION: KindDocumentation = {
   summary:
     "The law of K for large n, P(K = n) ~ C n^{−3/2} s0^{−n}, against the exact law; where the drift is toward the barrier C n^{−1−d}, at the critical one C/(n log n)².",
   keys: [
-    { name: "of", meaning: "a process", required: true, fallback: null },
-    {
-      name: "start",
-      meaning: "where the first particle starts, or a map of positions to numbers of particles: {1: 3, 2: 2}",
-      required: true,
-      fallback: null,
-    },
+    OF_A_PROCESS,
+    START,
     { name: "up_to", meaning: "the n at which the law is compared, at most 100000", required: false, fallback: "1000" },
     {
       name: "terms",
