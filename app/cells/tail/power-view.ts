@@ -19,7 +19,7 @@ export function powerFigure(data: TailData, compared: readonly Comparison[], pre
     series: [
       {
         name: "P(K=n)",
-        label: "P(K=n)",
+        label: "exact",
         labelAt: "start",
         mark: "points",
         role: "ordinary",
