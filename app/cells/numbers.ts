@@ -34,7 +34,7 @@ export function paperScope(plan: Plan, results: ReadonlyMap<string, CellResult>)
 
 /** Evaluates and prints a number of the prose. Never throws: what cannot be printed has a problem in words. */
 export function evaluateNumber(
-  number: BoundNumber,
+  number: Pick<BoundNumber, "formula" | "options">,
   plan: Plan,
   results: ReadonlyMap<string, CellResult>,
 ): EvaluatedNumber {

@@ -158,6 +158,20 @@ test("a text that cannot be read keeps the sheet as it was", () => {
   said.mockClear();
 });
 
+test("a question for values is answered by itself, while a text is with the worker", async () => {
+  const { reader, reading, models } = begin("a");
+  const asked = reading.values(["K.mean"]);
+  const later = reading.values(["mu"]);
+  const [value] = [{ formula: "K.mean", known: "0.2", unknown: "", rest: "", reason: "" }];
+  reader.onmessage?.(
+    new MessageEvent("message", { data: { tell: "values", answers: 0, question: 1, values: [value] } as const }),
+  );
+  expect(await asked).toEqual([value]);
+  expect(models).toEqual([]);
+  reading.end();
+  expect(await later).toEqual([]);
+});
+
 test("its end ends the worker", () => {
   const { reader, reading } = begin("a");
   reading.end();

@@ -212,6 +212,24 @@ describe("private trials", () => {
   });
 });
 
+describe("what formulas are now", () => {
+  test("is told by the results that are shown, with the reason where there is no value", () => {
+    expect(reader.values(["1 + 1"])).toEqual([]);
+    reader.hear(tellText(SAMPLE));
+    reader.sheet();
+    expect(reader.values(["K.mean"])[0]).toMatchObject({ known: "", reason: "`K` has no result." });
+    showAll(SAMPLE);
+    reader.sheet();
+    // First moment e^{-λx}, λ = μ + √(μ² − 2β), x = 1, μ = 1.6, β = 1: Harris, The Theory of Branching Processes (1963).
+    const mean = Math.exp(-(1.6 + Math.sqrt(1.6 ** 2 - 2)));
+    const [value, sum, word, wrong] = reader.values(["K.mean", "1 + 1", "larvae.regime", "K.men"]);
+    expect(Number(value?.known)).toBeCloseTo(mean, 7);
+    expect(sum).toEqual({ formula: "1 + 1", known: "2", unknown: "", rest: "", reason: "" });
+    expect(word?.known).toBe("away");
+    expect(wrong?.reason).not.toBe("");
+  });
+});
+
 test("texts of any kind are read", () => {
   for (const text of [
     "",

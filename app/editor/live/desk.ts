@@ -1,5 +1,6 @@
 import type { TransactionSpec } from "@codemirror/state";
 import type { EditorView } from "@codemirror/view";
+import type { ValueNow } from "../model/messages.ts";
 import { yamlScalar } from "../model/scale.ts";
 import type { SheetModel, ShownView } from "../model/types.ts";
 import { createSheetEditor, createSourceEditor } from "../text/editor.ts";
@@ -149,6 +150,10 @@ export class Desk {
     this.view?.dispatch({ userEvent: "input", ...change });
     this.session.undo.text.stopCapturing();
   }
+
+  /** What formulas are on the sheet that is shown; none before there is one. */
+  readonly valuesNow = async (formulas: readonly string[]): Promise<readonly ValueNow[]> =>
+    (await this.reading?.values(formulas)) ?? [];
 
   /** Says something in the tail line for a while, and to those who listen. */
   tell(words: string): void {

@@ -2,7 +2,7 @@ import { ChangeSet, type Text } from "@codemirror/state";
 import type { EditorView, ViewUpdate } from "@codemirror/view";
 import type { CellResult } from "../../cells/index.ts";
 import type { Borders } from "../model/borders.ts";
-import type { FromWorker, TextEdit, Told, ToWorker } from "../model/messages.ts";
+import type { FromWorker, TextEdit, Told, ToWorker, ValueNow } from "../model/messages.ts";
 import { unpackSheet } from "../model/packing.ts";
 import type { SheetModel } from "../model/types.ts";
 import { setProblems } from "../text/glosses.ts";
@@ -45,6 +45,9 @@ export class Reading {
   private askedAt = Number.NEGATIVE_INFINITY;
   /** A newest-only message that waits for the answer at hand: a private trial. */
   private nextPreview: ToWorker | null = null;
+  /** Who waits for values, by the number of the question. */
+  private readonly waiting = new Map<number, (values: readonly ValueNow[]) => void>();
+  private questions = 0;
 
   constructor(
     view: EditorView,
@@ -98,7 +101,19 @@ export class Reading {
     else this.send(message);
   }
 
+  /** What formulas are on the sheet that is shown. */
+  values(formulas: readonly string[]): Promise<readonly ValueNow[]> {
+    this.questions += 1;
+    const question = this.questions;
+    return new Promise((resolve) => {
+      this.waiting.set(question, resolve);
+      this.reader.postMessage({ message: { tell: "values", question, formulas }, have: 0 });
+    });
+  }
+
   end(): void {
+    for (const answer of this.waiting.values()) answer([]);
+    this.waiting.clear();
     clearTimeout(this.timer);
     clearTimeout(this.rest);
     this.reader.onmessage = null;
@@ -139,6 +154,9 @@ export class Reading {
       this.showProblems(model);
     } else if (message.tell === "borders") {
       this.onBorders(message.borders);
+    } else if (message.tell === "values") {
+      this.waiting.get(message.question)?.(message.values);
+      this.waiting.delete(message.question);
     } else if (message.tell === "fault") {
       console.error(`The sheet could not be read: ${message.message}`);
     }

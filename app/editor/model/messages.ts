@@ -32,7 +32,21 @@ export type ToWorker =
       readonly tell: "preview";
       readonly settled: Readonly<Record<string, string>>;
       readonly trial: Readonly<Record<string, string>>;
-    };
+    }
+  /** What these formulas are by the results that are shown. Answered by itself, with its number, and changes nothing. */
+  | { readonly tell: "values"; readonly question: number; readonly formulas: readonly string[] };
+
+/** What a formula is now, as a sentence would print it. */
+export interface ValueNow {
+  readonly formula: string;
+  /** Supported digits; "" where there is no value. */
+  readonly known: string;
+  /** Digits which the error does not support: grey. */
+  readonly unknown: string;
+  readonly rest: string;
+  /** Why there is no value; "" where there is one. */
+  readonly reason: string;
+}
 
 /** Places are those of the text before all edits of the message; they come in its order and do not overlap. */
 export interface TextEdit {
@@ -61,5 +75,6 @@ export type FromWorker =
   | { readonly tell: "sheet"; readonly answers: number; readonly model: PackedSheet; readonly seconds: number }
   /** Where along the parameters cells answer otherwise, by parameter; found while the worker has nothing else to do. */
   | { readonly tell: "borders"; readonly answers: 0; readonly borders: Borders }
+  | { readonly tell: "values"; readonly answers: 0; readonly question: number; readonly values: readonly ValueNow[] }
   /** The sheet could not be made; the one before stays. */
   | { readonly tell: "fault"; readonly answers: number; readonly message: string };

@@ -16,9 +16,15 @@ let resting: ReturnType<typeof setTimeout> | undefined;
 let toldBorders = "{}";
 
 self.onmessage = ({ data }: MessageEvent<Told>) => {
+  const { message } = data;
+  if (message.tell === "values") {
+    const { question, formulas } = message;
+    self.postMessage({ tell: "values", answers: 0, question, values: reader.values(formulas) } satisfies FromWorker);
+    return;
+  }
   have = data.have;
-  reader.hear(data.message, have);
-  if (data.message.tell === "ahead") return;
+  reader.hear(message, have);
+  if (message.tell === "ahead") return;
   clearTimeout(resting);
   unanswered += 1;
   // Behind the messages that are in the queue already: they are answered together.

@@ -1,4 +1,5 @@
 import {
+  type CellResult,
   type CellState,
   cellState,
   computePlan,
@@ -10,7 +11,7 @@ import {
   type ShownPaper,
 } from "../../cells/index.ts";
 import { type Paper, readPaper } from "../../paper/index.ts";
-import type { TextEdit, ToWorker } from "../model/messages.ts";
+import type { TextEdit, ToWorker, ValueNow } from "../model/messages.ts";
 import type { SheetModel } from "../model/types.ts";
 import type { Ground } from "./border-finder.ts";
 import { type CellTelling, cellFaces, cellNodesOf, titlesOf } from "./cell-faces.ts";
@@ -23,9 +24,15 @@ import { byPlace, PieceStore } from "./piece-store.ts";
 import { collectPieces } from "./pieces.ts";
 import { bibliographyFaces, problemFaces } from "./problem-faces.ts";
 import { ResultStore } from "./result-store.ts";
+import { valueNow } from "./value-now.ts";
 import { ViewStore } from "./view-store.ts";
 
 type Overrides = Readonly<Record<string, string>>;
+
+interface Drawn {
+  readonly plan: Plan;
+  readonly results: ReadonlyMap<string, CellResult>;
+}
 
 /**
  * All that the page's worker holds of a paper: its text, what it shows, the results, and what is tried privately.
@@ -48,6 +55,8 @@ export class SheetReader {
   private readonly pieces = new PieceStore();
   /** The answer whose pieces the page has. */
   private have = 0;
+  /** What the last sheet was drawn up from. */
+  private drawn: Drawn | null = null;
 
   hear(message: ToWorker, have = 0): void {
     this.have = have;
@@ -76,6 +85,8 @@ export class SheetReader {
         this.settled = message.settled;
         this.trial = message.trial;
         return;
+      case "values":
+        return;
     }
   }
 
@@ -100,6 +111,7 @@ export class SheetReader {
     const results = new Map(
       tellings.flatMap(({ planned, result }) => (result === undefined ? [] : [[planned.id, result]])),
     );
+    this.drawn = { plan, results };
     const nodes = cellNodesOf(paper);
     const titles = titlesOf(plan, nodes);
     const standings = new Map<string, CellStanding>();
@@ -130,6 +142,12 @@ export class SheetReader {
       names: namesOf(paper, resting, titles),
       preview: names.size > 0,
     };
+  }
+
+  /** What formulas are on the sheet as it was last drawn up. */
+  values(formulas: readonly string[]): ValueNow[] {
+    const { drawn } = this;
+    return drawn === null ? [] : formulas.map((formula) => valueNow(formula, drawn.plan, drawn.results));
   }
 
   /** What the search for borders of the parameters needs; null while one is under the hand. */
