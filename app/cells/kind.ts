@@ -24,6 +24,20 @@ export interface KindDocumentation {
   readonly shows: readonly string[];
   /** A body that computes, given a process `larvae`. */
   readonly example: string;
+  readonly offered: OfferedCell;
+}
+
+/** How a cell of the kind is set for one who only says that one is wanted. */
+export interface OfferedCell {
+  /** Its name, or how that begins where it is taken; "" where the kind is best without one. */
+  readonly name: string;
+  /** Further words by which one may ask for it. */
+  readonly words: string;
+  /**
+   * Its body. What stands in «» is taken from the paper: «process» or another kind is the name of a cell of that kind, and
+   * the rest is told in app/editor/case/ground.ts. What one will want to change first stands between ‹ and ›.
+   */
+  readonly body: string;
 }
 
 export interface KeyDocumentation {

@@ -23,4 +23,9 @@ export const CHECK_DOCUMENTATION: KindDocumentation = {
   parts: [],
   shows: [],
   example: "that: K.mean < 0.05\nbecause: So few reach the shore that none is the usual case.",
+  offered: {
+    name: "bound",
+    words: "compare inequality less than holds agree",
+    body: "that: ‹«number» < «above»›\nbecause: why it should hold",
+  },
 };

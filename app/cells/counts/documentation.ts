@@ -34,4 +34,9 @@ export const COUNTS_DOCUMENTATION: KindDocumentation = {
   parts: ["figure", "table", "points"],
   shows: ["figure"],
   example: "of: larvae\nstart: 1\nup_to: 200",
+  offered: {
+    name: "K",
+    words: "absorbed law distribution number many probability stems mean variance moments",
+    body: "of: «process»\nstart: ‹«start»›\nup_to: 100\ncaption: The law of $K$, the number absorbed.",
+  },
 };

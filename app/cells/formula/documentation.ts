@@ -11,4 +11,9 @@ export const FORMULA_DOCUMENTATION: KindDocumentation = {
   parts: [],
   shows: [],
   example: "excess: mu - sqrt(2*beta)\ntwice: 2*excess",
+  offered: {
+    name: "derived",
+    words: "calculate quantity expression quotient ratio number",
+    body: "first: ‹«number»/2›",
+  },
 };

@@ -31,4 +31,9 @@ export const GENERATING_FUNCTION_DOCUMENTATION: KindDocumentation = {
   parts: ["figure", "points"],
   shows: ["figure"],
   example: "of: larvae\nstart: [1/2, 1, 2]",
+  offered: {
+    name: "g",
+    words: "series powers radius s0",
+    body: "of: «process»\nstart: ‹«start»›\ncaption: The generating function of $K$, up to $s_0$ where it ends.",
+  },
 };

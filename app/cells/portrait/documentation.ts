@@ -25,4 +25,9 @@ export const PORTRAIT_DOCUMENTATION: KindDocumentation = {
   parts: ["figure", "points"],
   shows: ["figure"],
   example: "of: larvae",
+  offered: {
+    name: "plane",
+    words: "phase plane trajectory orbit orbits",
+    body: "of: ‹«process»›\ncaption: All profiles of «process» lie on one trajectory of the phase plane.",
+  },
 };

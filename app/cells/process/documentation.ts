@@ -33,4 +33,9 @@ export const PROCESS_DOCUMENTATION: KindDocumentation = {
   parts: [],
   shows: [],
   example: "drift: 2\nrate: 1\noffspring: binary",
+  offered: {
+    name: "family",
+    words: "branching diffusion drift rate offspring particles motion",
+    body: "drift: ‹«drift»›\nrate: «rate»\noffspring: binary",
+  },
 };

@@ -34,4 +34,9 @@ export const PROFILE_DOCUMENTATION: KindDocumentation = {
   parts: ["figure", "points"],
   shows: ["figure"],
   example: "of: larvae\ns: [0, 1/2, 2, s0]",
+  offered: {
+    name: "w",
+    words: "curves wave solution barrier s0",
+    body: "of: «process»\ns: ‹[0, 1/2, s0]›\ncaption: The profiles $w(x,s)$ of «process» for some $s$ up to $s_0$.",
+  },
 };

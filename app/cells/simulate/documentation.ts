@@ -44,4 +44,9 @@ export const SIMULATE_DOCUMENTATION: KindDocumentation = {
   parts: ["figure", "table", "points"],
   shows: ["figure"],
   example: "of: larvae\nstart: 1\nreplicates: 20000",
+  offered: {
+    name: "S",
+    words: "simulate chance random draw replicates drawn",
+    body: "of: «process»\nstart: ‹«start»›\nreplicates: 20000\ncaption: The law of $K$ by simulation.",
+  },
 };

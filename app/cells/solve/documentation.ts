@@ -28,4 +28,9 @@ export const SOLVE_DOCUMENTATION: KindDocumentation = {
   parts: [],
   shows: [],
   example: "vary: mu\nbetween: 1.45 to 4\nwhere: K.s0 - 3",
+  offered: {
+    name: "level",
+    words: "solve zero equation where becomes inverse",
+    body: "vary: «varied»\nbetween: «low» to «high»\nwhere: «measured» - ‹«near»›",
+  },
 };

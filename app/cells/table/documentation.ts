@@ -26,4 +26,9 @@ export const TABLE_DOCUMENTATION: KindDocumentation = {
   shows: ["table"],
   example:
     "rows: {n: 1 to 4}\ncolumns:\n  exact: K(n)\n  share: {formula: K(n)/(1 - K(0)), head: share, digits: 3, as: percent}",
+  offered: {
+    name: "rows",
+    words: "rows columns values list",
+    body: "rows: {«dummy»: «from» to «few»}\ncolumns:\n  «column»: ‹«curve»›\ncaption: The values of `«curve»`.",
+  },
 };

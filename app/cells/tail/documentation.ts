@@ -30,4 +30,9 @@ export const TAIL_DOCUMENTATION: KindDocumentation = {
   parts: ["figure", "table", "points"],
   shows: ["figure"],
   example: "of: larvae\nstart: 1\nup_to: 1000",
+  offered: {
+    name: "T",
+    words: "asymptotic asymptotics large n constant exponent decay",
+    body: "of: «process»\nstart: ‹«start»›\nup_to: 1000\ncaption: The law of $K$ for large $n$.",
+  },
 };

@@ -22,4 +22,9 @@ export const YAGLOM_DOCUMENTATION: KindDocumentation = {
   parts: ["figure", "table", "points"],
   shows: ["figure"],
   example: "of: larvae\nup_to: 60",
+  offered: {
+    name: "Y",
+    words: "yaglom limit conditional given absorbed far start",
+    body: "of: «process»\nup_to: ‹60›\ncaption: The law of $K$ given that any is absorbed, for a far start.",
+  },
 };

@@ -34,6 +34,8 @@ export interface KindWords extends Word {
   readonly ownKeys: boolean;
   readonly keys: readonly KeyWord[];
   readonly parts: readonly string[];
+  /** How the case sets a cell of the kind. */
+  readonly offered: { readonly name: string; readonly words: string; readonly body: string };
 }
 
 /** What one paper has named. */

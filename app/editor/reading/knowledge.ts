@@ -12,13 +12,14 @@ import type { CellWords, LabelWords, LanguageWords, PaperNames, Word } from "../
 
 /** What the language has, from the definitions that check a paper. */
 export const LANGUAGE_WORDS: LanguageWords = {
-  kinds: [...KINDS.values()].map(({ documentation: { name, label, summary, ownKeys, keys, parts } }) => ({
+  kinds: [...KINDS.values()].map(({ documentation: { name, label, summary, ownKeys, keys, parts, offered } }) => ({
     name,
     label,
     meaning: summary,
     ownKeys,
     keys,
     parts,
+    offered,
   })),
   presentation: PRESENTATION_KEYS,
   functions: FUNCTIONS.map(({ name, form, meaning }) => ({ name, form, meaning })),
