@@ -14,6 +14,7 @@ export { planPaper } from "./plan.ts";
 export { captionOf, PRESENTATION_KEYS } from "./presentation.ts";
 export type { Provenance } from "./provenance.ts";
 export { durationWords, provenance } from "./provenance.ts";
+export { figureReadings } from "./readings.ts";
 export type { CellRecord } from "./record.ts";
 export { cellRecord } from "./record.ts";
 export { KINDS } from "./registry.ts";

@@ -1,6 +1,7 @@
 /** Figures: one description, from which the page's SVG, the print's pgfplots and the CSV are made. */
 export { type Crossing, crossings, levelCrossings } from "./crossings.ts";
 export { figureToCsv, tableToCsv } from "./csv.ts";
+export { FigureReading } from "./figure-reading.tsx";
 export { isWords, type LabelRun, labelRuns, labelText } from "./label.ts";
 export { type FigureLayout, layoutFigure, panelLetter } from "./layout.ts";
 export type { Theme } from "./palette.ts";
@@ -13,6 +14,7 @@ export { thinBandRemark } from "./thin-bands.ts";
 export type {
   Axis,
   Corner,
+  CurveReadings,
   Dot,
   Figure,
   Inset,

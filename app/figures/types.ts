@@ -101,6 +101,14 @@ export interface Panel {
   readonly figure: Figure;
 }
 
+/** What the points of a curve say when they are asked: only digits that their errors support. */
+export interface CurveReadings {
+  /** Of the series, as the figure names it, with the letter of its panel. */
+  readonly name: string;
+  /** By index into the series: "x = 0.24, w = 4.487"; "" for a gap. */
+  readonly texts: readonly string[];
+}
+
 /** A table of results: each cell is a printed number or text. */
 export interface TableData {
   readonly columns: readonly TableColumn[];

@@ -1,11 +1,12 @@
 import "katex/dist/katex.min.css";
+import "../figures/figure-reading.css";
 import "../galley/galley.css";
 import "./plate.css";
+import { type CurveReadings, type Figure, FigurePlate, FigureReading } from "../figures/index.ts";
 import { CommandLink, RunningHead, TailLine } from "../ui/index.ts";
 import { ourMarkup } from "../ui/markup.ts";
 import { PlateBeside } from "./beside.tsx";
 import type { PlateFace } from "./plate.ts";
-import { PlateReader } from "./reader.tsx";
 
 interface Props {
   readonly paperId: string;
@@ -36,10 +37,10 @@ export function PlatePage({ paperId, paperTitle, face }: Props) {
           {figure ? (
             <>
               <div className="plate-wide">
-                <PlateReader figure={figure} readings={face.readings} width={WIDE} height={WIDE_HEIGHT} />
+                <ReadPlate figure={figure} readings={face.readings} width={WIDE} height={WIDE_HEIGHT} />
               </div>
               <div className="plate-narrow">
-                <PlateReader figure={figure} readings={face.readings} width={NARROW} />
+                <ReadPlate figure={figure} readings={face.readings} width={NARROW} />
               </div>
             </>
           ) : null}
@@ -51,6 +52,23 @@ export function PlatePage({ paperId, paperTitle, face }: Props) {
       </main>
       <TailLine left={`Plate of ${title}`} right={`Working in line ${line}`} />
     </>
+  );
+}
+
+interface ReadPlateProps {
+  readonly figure: Figure;
+  readonly readings: readonly CurveReadings[];
+  /** [px] */
+  readonly width: number;
+  readonly height?: number;
+}
+
+function ReadPlate({ figure, readings, width, height }: ReadPlateProps) {
+  return (
+    <div className="figure-read" style={{ maxWidth: width }}>
+      <FigurePlate figure={figure} width={width} height={height} />
+      <FigureReading figure={figure} readings={readings} width={width} height={height} curvesByTab />
+    </div>
   );
 }
 

@@ -1,10 +1,9 @@
 import type { CellResult, CellView, PlannedCell } from "../cells/index.ts";
-import { evaluateNumber, KINDS, viewCell } from "../cells/index.ts";
-import type { Figure } from "../figures/index.ts";
+import { evaluateNumber, figureReadings, KINDS, viewCell } from "../cells/index.ts";
+import type { CurveReadings, Figure } from "../figures/index.ts";
 import { type PrintedNumber, printNumber } from "../formulas/index.ts";
 import { type GalleyPaperProps, type PlateMarkup, renderPlate } from "../galley/index.ts";
 import { renderMath } from "../ui/math.ts";
-import { type CurveReadings, figureReadings } from "./readings.ts";
 
 /** One cell of a paper with what it shows. */
 export interface Plate {

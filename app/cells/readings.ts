@@ -1,13 +1,5 @@
-import { pointsTable } from "../cells/index.ts";
-import { type Figure, labelText, panelLetter, pointGroups, type Series } from "../figures/index.ts";
-
-/** What a point of a curve says when it is asked: only digits that its error supports. */
-export interface CurveReadings {
-  /** Of the series, as the figure names it, with the letter of its panel. */
-  readonly name: string;
-  /** By index into the series: "x = 0.24, w = 4.487"; "" for a gap. */
-  readonly texts: readonly string[];
-}
+import { type CurveReadings, type Figure, labelText, panelLetter, pointGroups, type Series } from "../figures/index.ts";
+import { pointsTable } from "./table-parts.ts";
 
 /** Readings of every curve, in the order in which a plate places them: an inset after its figure, panels in turn. */
 export function figureReadings(figure: Figure, prefix = ""): CurveReadings[] {
