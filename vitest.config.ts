@@ -11,7 +11,7 @@ export default defineConfig({
           // Every folder but those of the other projects: a new one is not left out in silence.
           include: ["tests/**/*.test.{ts,tsx}"],
           exclude: ["tests/{db,server,access,routes,e2e}/**"],
-          setupFiles: ["./tests/support/noise-fails.ts"],
+          setupFiles: ["./tests/support/noise-fails.ts", "./tests/support/fixed-draws.ts"],
           testTimeout: 20_000,
         },
       },
@@ -19,7 +19,7 @@ export default defineConfig({
         test: {
           name: "server",
           include: ["tests/{db,server,access,routes}/**/*.test.{ts,tsx}"],
-          setupFiles: ["./tests/support/noise-fails.ts"],
+          setupFiles: ["./tests/support/noise-fails.ts", "./tests/support/fixed-draws.ts"],
           globalSetup: ["./tests/support/database.ts"],
           testTimeout: 30_000,
           hookTimeout: 60_000,
