@@ -31,10 +31,34 @@ export class Generator {
     return (((sum << 7) | (sum >>> 25)) + s0) | 0;
   }
 
+  /** The next words, as many as there is room for: what `next` would give one by one, with the state kept out of memory. */
+  fill(words: Int32Array): void {
+    const { state } = this;
+    let s0 = state[0] as number;
+    let s1 = state[1] as number;
+    let s2 = state[2] as number;
+    let s3 = state[3] as number;
+    for (let i = 0; i < words.length; i += 1) {
+      const sum = (s0 + s3) | 0;
+      words[i] = (((sum << 7) | (sum >>> 25)) + s0) | 0;
+      const shifted = s1 << 9;
+      s2 ^= s0;
+      s3 ^= s1;
+      s1 ^= s2;
+      s0 ^= s3;
+      s2 ^= shifted;
+      s3 = (s3 << 11) | (s3 >>> 21);
+    }
+    state[0] = s0;
+    state[1] = s1;
+    state[2] = s2;
+    state[3] = s3;
+  }
+
   /** Uniform on the multiples of 2^−53 in [0, 1). */
   uniform(): number {
     const high = this.next();
-    return fraction(high, this.next());
+    return place(high, this.next()) * 2 ** -53;
   }
 
   /** Goes on by 2^64 steps. */
@@ -50,9 +74,9 @@ export class Generator {
   }
 }
 
-/** 53 of 64 random bits as a multiple of 2^−53 in [0, 1); the 11 low bits of `high` are left for other use. */
-export function fraction(high: number, low: number): number {
-  return (low >>> 0) * 2 ** -53 + (high >>> 11) * 2 ** -21;
+/** 53 of 64 random bits as a whole number below 2^53; the 11 low bits of `high` are left for other use. */
+export function place(high: number, low: number): number {
+  return (high >>> 11) * 2 ** 32 + (low >>> 0);
 }
 
 /**

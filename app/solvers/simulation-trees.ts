@@ -1,7 +1,7 @@
 import { SolverError } from "./errors.ts";
+import { AHEAD, type Moves } from "./simulation-moves.ts";
 import { type ChildrenTable, childrenTable } from "./simulation-offspring.ts";
-import { AHEAD, type Variates } from "./simulation-variates.ts";
-import type { ProcessModel, Start } from "./types.ts";
+import type { Offspring, Start } from "./types.ts";
 
 /** Where a tree is not followed further. */
 export interface TreeEnds {
@@ -18,39 +18,27 @@ export interface TreeEnds {
 const FIRST_ROOM = 1024;
 /** Particles alive at once: 80 MB of positions. */
 const MOST_ALIVE = 10_000_000;
-/** So often a tree that goes on looks at how many steps there were. */
-const CHECKED_EVERY = 1_000_000;
-/** Beyond this many units a bridge touches the barrier with probability below e^−64, less than a rounding of anything. */
-const NEVER = 64;
 
 /**
  * Grows one tree after another and counts what is absorbed. Each particle goes on by draws of its own, so that the order in
- * which those alive are followed does not change the law of K.
- *
- * A particle at y lives an exponential time t and is then at z = y + drift t + √(2 D t) N. The path between is a Brownian
- * bridge, which touches 0 with probability exp(−y z/(D t)): the probability that an exponential draw is beyond y z/(D t).
- * So K has its law exactly, without any step of time.
- * Source: the reflection principle; I. Karatzas, S. E. Shreve, Brownian Motion and Stochastic Calculus (1991), section 2.8.
+ * which those alive are followed does not change the law of K; and as they decide whether the path of a whole life touches the
+ * barrier, K has its law exactly, without any step of time.
+ * Source: as simulation-moves.ts.
  */
 export class Trees {
   /** Particles followed so far. */
   steps = 0;
-  readonly #variates: Variates;
+  readonly #moves: Moves;
   readonly #children: ChildrenTable;
   readonly #ends: TreeEnds;
-  /** In units of D t: how far it drifts, and the mean life. */
-  readonly #drift: number;
-  readonly #life: number;
   /** Positions of the particles alive: a stack, or a heap with the lowest at 0. */
   #alive = new Float64Array(FIRST_ROOM);
 
   /** @throws SolverError "bad_parameter" for an offspring law that cannot be drawn from */
-  constructor(model: ProcessModel, variates: Variates, ends: TreeEnds) {
-    this.#variates = variates;
-    this.#children = childrenTable(model.offspring);
+  constructor(offspring: Offspring, moves: Moves, ends: TreeEnds) {
+    this.#moves = moves;
+    this.#children = childrenTable(offspring);
     this.#ends = ends;
-    this.#drift = model.drift / model.diffusion;
-    this.#life = model.diffusion / model.rate;
   }
 
   /** K of one replicate; the cap where it comes to that.
@@ -67,34 +55,27 @@ export class Trees {
 
   /** How many of one particle's tree are absorbed, `most` at most. Everything the loop touches is a local: it is what simulations spend their time in. */
   #absorbed(start: number, most: number): number {
-    const variates = this.#variates;
-    const { normals, exponentials, generator } = variates;
+    const moves = this.#moves;
+    const { shifts, limits, generator } = moves;
     const { below, certain } = this.#children;
     const { lowestFirst } = this.#ends;
     const cut = this.#ends.cut ?? Number.POSITIVE_INFINITY;
-    const drift = this.#drift;
-    const life = this.#life;
-    let normal = variates.normal;
-    let exponential = variates.exponential;
+    let next = moves.next;
     let alive = this.#alive;
     let size = 0;
     let absorbed = 0;
     let steps = 0;
     let y = start;
     for (;;) {
+      if (next === AHEAD) {
+        moves.more();
+        next = 0;
+        this.#count(steps);
+        steps = 0;
+      }
       steps += 1;
-      if (exponential >= AHEAD - 1) {
-        variates.drawExponentials(exponential);
-        exponential = 0;
-      }
-      if (normal === AHEAD) {
-        variates.drawNormals();
-        normal = 0;
-      }
-      const unit = life * (exponentials[exponential++] as number);
-      const z = y + drift * unit + Math.sqrt(2 * unit) * (normals[normal++] as number);
-      const isCrossed = z <= 0 || (y * z < NEVER * unit && (exponentials[exponential++] as number) * unit > y * z);
-      if (isCrossed) {
+      const z = y + (shifts[next] as number);
+      if (y * z <= (limits[next++] as number)) {
         absorbed += 1;
         if (absorbed >= most) break;
       } else if (z <= cut) {
@@ -106,7 +87,12 @@ export class Trees {
         }
         if (size + children > alive.length) alive = this.#moreRoom(size + children);
         if (lowestFirst) for (let i = 0; i < children; i += 1) rise(alive, size++, z);
-        else for (let i = 0; i < children; i += 1) alive[size++] = z;
+        else if (children > 0) {
+          // One of them is followed at once.
+          for (let i = 1; i < children; i += 1) alive[size++] = z;
+          y = z;
+          continue;
+        }
       }
       if (size === 0) break;
       if (lowestFirst) {
@@ -117,13 +103,8 @@ export class Trees {
         size -= 1;
         y = alive[size] as number;
       }
-      if (steps >= CHECKED_EVERY) {
-        this.#count(steps);
-        steps = 0;
-      }
     }
-    variates.normal = normal;
-    variates.exponential = exponential;
+    moves.next = next;
     this.#count(steps);
     return absorbed;
   }

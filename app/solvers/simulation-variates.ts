@@ -1,8 +1,6 @@
-import { fraction, type Generator } from "./simulation-generator.ts";
+import { type Generator, place } from "./simulation-generator.ts";
 
 const LAYERS = 256;
-/** Draws made ahead at a time: few enough that what a stream leaves over costs nothing. */
-export const AHEAD = 256;
 
 /**
  * A decreasing density f on [0, ∞) cut into 256 layers of equal area.
@@ -12,8 +10,12 @@ export const AHEAD = 256;
  */
 interface Ziggurat {
   readonly widths: Float64Array;
+  /** widths·2^−53: what a place below 2^53 is multiplied with */
+  readonly scales: Float64Array;
   readonly heights: Float64Array;
-  density(x: number): number;
+  /** f(x) = exp(−(linear + square x) x): said by numbers, because a function would be called, and its value boxed, at each look. */
+  readonly linear: number;
+  readonly square: number;
   /** A draw from beyond `from`. */
   tail(generator: Generator, from: number): number;
   /** 2 where the sign is random, 0 where the draw is positive. */
@@ -25,7 +27,8 @@ interface Ziggurat {
 const NORMAL = ziggurat({
   edge: 3.6541528853610088,
   area: 4.92867323399e-3,
-  density: (x) => Math.exp((-x * x) / 2),
+  linear: 0,
+  square: 0.5,
   inverse: (y) => Math.sqrt(-2 * Math.log(y)),
   tail: normalTail,
   signs: 2,
@@ -33,53 +36,53 @@ const NORMAL = ziggurat({
 const EXPONENTIAL = ziggurat({
   edge: 7.69711747013105,
   area: 3.949659822581572e-3,
-  density: (x) => Math.exp(-x),
+  linear: 1,
+  square: 0,
   inverse: (y) => -Math.log(y),
   tail: exponentialTail,
   signs: 0,
 });
 
 /**
- * Normal and exponential draws of one stream, made ahead: whoever draws takes `normals[normal]` and counts on, and asks for
- * more at the end. Each draw takes 64 bits, 8 for the layer, one for the sign and 53 for the place, none of them used twice,
- * and the tails are those of the laws.
+ * Fills `draws` with normal ones, mean 0 and variance 1. Each takes two words of 32 random bits: 8 for the layer, one for the
+ * sign and 53 for the place, none of them used twice; where these do not decide, more of the generator. The tails are those of the law.
  * Source: Marsaglia and Tsang, as above; J. A. Doornik, An improved ziggurat method to generate normal random samples
  * (2005), for why layer and place must not share bits.
+ * @param words twice as many as draws, at least
  */
-export class Variates {
-  readonly generator: Generator;
-  /** Mean 0, variance 1. */
-  readonly normals = new Float64Array(AHEAD);
-  /** Mean 1. */
-  readonly exponentials = new Float64Array(AHEAD);
-  /** How many of each were taken. */
-  normal = AHEAD;
-  exponential = AHEAD;
+export function drawNormals(draws: Float64Array, words: Int32Array, generator: Generator): void {
+  fill(draws, words, generator, NORMAL);
+}
 
-  constructor(generator: Generator) {
-    this.generator = generator;
-  }
+/** Fills `draws` with exponential ones, mean 1, by the same way. */
+export function drawExponentials(draws: Float64Array, words: Int32Array, generator: Generator): void {
+  fill(draws, words, generator, EXPONENTIAL);
+}
 
-  drawNormals(): void {
-    fill(this.normals, 0, this.generator, NORMAL);
-  }
-
-  /** @param taken how many of the last ones were taken: the others come first again */
-  drawExponentials(taken: number): void {
-    this.exponentials.copyWithin(0, taken);
-    fill(this.exponentials, AHEAD - taken, this.generator, EXPONENTIAL);
+/** A look into the table for nearly every draw. */
+function fill(draws: Float64Array, words: Int32Array, generator: Generator, law: Ziggurat): void {
+  const { widths, scales, signs } = law;
+  for (let i = 0; i < draws.length; i += 1) {
+    const high = words[2 * i] as number;
+    const layer = high & (LAYERS - 1);
+    const x = place(high, words[2 * i + 1] as number) * (scales[layer] as number);
+    const sign = 1 - ((high >>> 7) & signs);
+    draws[i] = sign * x;
+    if (x >= (widths[layer + 1] as number)) draws[i] = sign * unlikely(layer, x, generator, law);
   }
 }
 
 function ziggurat(law: {
   edge: number;
   area: number;
-  density: (x: number) => number;
+  linear: number;
+  square: number;
   inverse: (y: number) => number;
   tail: Ziggurat["tail"];
   signs: 0 | 2;
 }): Ziggurat {
-  const { edge, area, density, inverse, tail, signs } = law;
+  const { edge, area, linear, square, inverse, tail, signs } = law;
+  const density = (x: number): number => Math.exp(-(linear + square * x) * x);
   const widths = new Float64Array(LAYERS + 1);
   widths[0] = area / density(edge);
   widths[1] = edge;
@@ -88,71 +91,20 @@ function ziggurat(law: {
     widths[i] = inverse(density(below) + area / below);
   }
   const heights = widths.map((x, i) => (i === 0 ? 0 : density(x)));
-  return { widths, heights, density, tail, signs };
-}
-
-/** Two steps of the generator and a look into the table for nearly every draw: the loop in which simulations spend their time. */
-function fill(draws: Float64Array, from: number, generator: Generator, law: Ziggurat): void {
-  const { widths, signs } = law;
-  const state = generator.state;
-  let s0 = state[0] as number;
-  let s1 = state[1] as number;
-  let s2 = state[2] as number;
-  let s3 = state[3] as number;
-  for (let j = from; j < draws.length; j += 1) {
-    let sum = (s0 + s3) | 0;
-    const high = (((sum << 7) | (sum >>> 25)) + s0) | 0;
-    let shifted = s1 << 9;
-    s2 ^= s0;
-    s3 ^= s1;
-    s1 ^= s2;
-    s0 ^= s3;
-    s2 ^= shifted;
-    s3 = (s3 << 11) | (s3 >>> 21);
-    sum = (s0 + s3) | 0;
-    const low = (((sum << 7) | (sum >>> 25)) + s0) | 0;
-    shifted = s1 << 9;
-    s2 ^= s0;
-    s3 ^= s1;
-    s1 ^= s2;
-    s0 ^= s3;
-    s2 ^= shifted;
-    s3 = (s3 << 11) | (s3 >>> 21);
-
-    const layer = high & (LAYERS - 1);
-    const x = fraction(high, low) * (widths[layer] as number);
-    const sign = 1 - ((high >>> 7) & signs);
-    // Written in either branch: a number that might come of the call would be boxed at each draw.
-    if (x < (widths[layer + 1] as number)) draws[j] = sign * x;
-    else {
-      state[0] = s0;
-      state[1] = s1;
-      state[2] = s2;
-      state[3] = s3;
-      draws[j] = sign * unlikely(layer, x, generator, law);
-      s0 = state[0] as number;
-      s1 = state[1] as number;
-      s2 = state[2] as number;
-      s3 = state[3] as number;
-    }
-  }
-  state[0] = s0;
-  state[1] = s1;
-  state[2] = s2;
-  state[3] = s3;
+  return { widths, scales: widths.map((x) => x * 2 ** -53), heights, linear, square, tail, signs };
 }
 
 /** One draw in a hundred: beyond the part of its layer that lies wholly below the density. */
 function unlikely(layer: number, x: number, generator: Generator, law: Ziggurat): number {
-  const { widths, heights, density, tail } = law;
+  const { widths, scales, heights, linear, square, tail } = law;
   for (;;) {
     if (layer === 0) return tail(generator, widths[1] as number);
     const bottom = heights[layer] as number;
     const top = heights[layer + 1] as number;
-    if (bottom + generator.uniform() * (top - bottom) < density(x)) return x;
+    if (bottom + generator.uniform() * (top - bottom) < Math.exp(-(linear + square * x) * x)) return x;
     const high = generator.next();
     layer = high & (LAYERS - 1);
-    x = fraction(high, generator.next()) * (widths[layer] as number);
+    x = place(high, generator.next()) * (scales[layer] as number);
     if (x < (widths[layer + 1] as number)) return x;
   }
 }

@@ -10,8 +10,8 @@ import {
   varianceAway,
 } from "./simulation-cut.ts";
 import { Generator, seededState } from "./simulation-generator.ts";
+import { Moves } from "./simulation-moves.ts";
 import { Trees } from "./simulation-trees.ts";
-import { Variates } from "./simulation-variates.ts";
 import { checkStarts } from "./sources.ts";
 import type { Answer, ProcessModel, Regime, Start } from "./types.ts";
 
@@ -195,7 +195,7 @@ function triedSteps(plan: SimulationPlan): number {
 function treesOf(plan: SimulationPlan, stream: Generator, mostSteps: number): Trees {
   const { cut, cap, regime } = plan;
   const ends = { cut, cap, mostSteps, lowestFirst: regime === "between" };
-  return new Trees(plan.model, new Variates(new Generator(stream.state)), ends);
+  return new Trees(plan.model.offspring, new Moves(new Generator(stream.state), plan.model), ends);
 }
 
 /** Counts of a variable whose values are mostly small. */
