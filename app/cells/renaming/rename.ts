@@ -3,13 +3,14 @@ import type { Paper } from "../../paper/index.ts";
 import { readPaper } from "../../paper/index.ts";
 import { isName } from "../names.ts";
 import { planPaper } from "../plan.ts";
+import { edited, type TextEdit } from "../text-edits.ts";
 import { type Named, namesOfPaper, usesOf, whatIsNamed } from "./uses.ts";
 
 /** A name of a paper changed everywhere it is used. */
 export interface Renaming {
   readonly what: Named;
   /** In rising order; to be made as one. */
-  readonly edits: readonly { readonly from: number; readonly to: number; readonly insert: string }[];
+  readonly edits: readonly TextEdit[];
 }
 
 export interface NoRenaming {
@@ -55,7 +56,8 @@ export function nameAt(paper: Paper, place: number): string | null {
   return null;
 }
 
-function unfitName(what: Named, name: string): string {
+/** Why a name cannot be that of a parameter, a cell or a label, whatever else the paper names; "" when it can. */
+export function unfitName(what: Named, name: string): string {
   if (what === "label") {
     return /^[A-Za-z0-9][\w:.-]*$/.test(name)
       ? ""
@@ -100,14 +102,4 @@ function problemsOf(paper: Paper): readonly { readonly line: number; readonly me
 function withName(message: string, from: string, to: string): string {
   const escaped = from.replace(/[.*+?^${}()|[\]\\]/g, "\\$&");
   return message.replace(/ Did you mean .*$/, "").replace(new RegExp(`(?<!\\w)${escaped}(?!\\w)`, "g"), to);
-}
-
-function edited(text: string, edits: Renaming["edits"]): string {
-  let made = "";
-  let at = 0;
-  for (const edit of edits) {
-    made += text.slice(at, edit.from) + edit.insert;
-    at = edit.to;
-  }
-  return made + text.slice(at);
 }

@@ -1,0 +1,84 @@
+import type { Yaml, YamlEntry } from "../../paper/index.ts";
+import type { TextEdit } from "../text-edits.ts";
+import { type Around, endOf } from "./scalar.ts";
+
+/** A map of a cell's body, in braces or with an entry a line. */
+export type YamlMap = Extract<Yaml, { yaml: "map" }>;
+
+/** How a map is written. */
+export function aroundOf(text: string, map: YamlMap): Around {
+  return text.charAt(map.from) === "{" ? "flow" : "block";
+}
+
+/** A further entry after a map's last, written as the author writes them: on the same line, or on one of its own. */
+export function addedEntry(text: string, map: YamlMap, entry: string): TextEdit {
+  const last = map.entries.at(-1);
+  const flow = aroundOf(text, map) === "flow";
+  if (last === undefined) {
+    const at = flow ? map.from + 1 : map.from;
+    return { from: at, to: at, insert: flow ? entry : `${entry}\n` };
+  }
+  const at = flow ? endOf(text, last.value) : lineEnd(text, endOf(text, last.value));
+  const own = startsLine(text, last) && /^\s*(?:\n|$)/.test(text.slice(at));
+  if (!flow) return { from: at, to: at, insert: `\n${indentOf(text, last)}${entry}` };
+  return { from: at, to: at, insert: own ? `,\n${indentOf(text, last)}${entry}` : `, ${entry}` };
+}
+
+/** Takes an entry out of a map that keeps others. A comment behind it on its line stays. */
+export function removedEntry(text: string, map: YamlMap, entry: YamlEntry): readonly TextEdit[] {
+  const at = map.entries.indexOf(entry);
+  const [before, after] = [map.entries[at - 1], map.entries[at + 1]];
+  const to = endOf(text, entry.value);
+  if (aroundOf(text, map) === "block") {
+    const comment = /^[ \t]+(?=#)/.exec(text.slice(to));
+    if (comment !== null && !text.slice(entry.keyFrom, to).includes("\n"))
+      return [cut(entry.keyFrom, to + comment[0].length)];
+    return [cut(startsLine(text, entry) ? lineStart(text, entry.keyFrom) : entry.keyFrom, nextLine(text, to))];
+  }
+  if (after !== undefined) return [cut(entry.keyFrom, after.keyFrom)];
+  if (before === undefined) return [cut(entry.keyFrom, to)];
+  const from = endOf(text, before.value);
+  const between = text.slice(from, entry.keyFrom);
+  const comma = from + between.indexOf(",");
+  return between.includes("#") && comma >= from ? [cut(comma, comma + 1), cut(entry.keyFrom, to)] : [cut(from, to)];
+}
+
+/** The whole lines of an entry in a body with an entry a line, with comments directly above it. */
+export function linesOf(text: string, entry: YamlEntry): { readonly from: number; readonly to: number } {
+  const indent = indentOf(text, entry);
+  let from = lineStart(text, entry.keyFrom);
+  for (;;) {
+    const above = lineStart(text, Math.max(0, from - 1));
+    if (above === from || !text.startsWith(`${indent}#`, above)) break;
+    from = above;
+  }
+  return { from, to: nextLine(text, endOf(text, entry.value)) };
+}
+
+/** What stands before an entry's key on its line. */
+export function indentOf(text: string, entry: Pick<YamlEntry, "keyFrom">): string {
+  return text.slice(lineStart(text, entry.keyFrom), entry.keyFrom);
+}
+
+/** Whether an entry is the first of its line. */
+export function startsLine(text: string, entry: Pick<YamlEntry, "keyFrom">): boolean {
+  return /^[\s>]*$/.test(indentOf(text, entry));
+}
+
+export function lineStart(text: string, at: number): number {
+  return text.lastIndexOf("\n", at - 1) + 1;
+}
+
+export function lineEnd(text: string, at: number): number {
+  const end = text.indexOf("\n", at);
+  return end < 0 ? text.length : end;
+}
+
+/** Where the line after the one of a place begins. */
+export function nextLine(text: string, at: number): number {
+  return Math.min(text.length, lineEnd(text, at) + 1);
+}
+
+function cut(from: number, to: number): TextEdit {
+  return { from, to, insert: "" };
+}
