@@ -22,6 +22,7 @@ const MU: ParameterFace = {
   was: null,
   wasShown: "",
   overridden: false,
+  hangs: "Figure 1 and 2 numbers hang from it",
 };
 
 beforeAll(() => {

@@ -76,8 +76,11 @@ describe("values as they are shown and written", () => {
     [400000, "400000", null, "400\u2009000"],
     [1000, "1000", 1, "1000"],
     [-0.5, "-0.5", 0.1, "−0.5"],
+    [Math.SQRT2, "sqrt(2)", null, "1.41421"],
+    [Math.SQRT2 * 1000, "1000*sqrt(2)", 0.5, "1414.21"],
+    [3, "1 + 2", 0.05, "3.00"],
     [1e-7, "1e-7", null, "1e-7"],
-    [Math.SQRT2, "sqrt(2)", 0.01, "1.41"],
+    [Math.SQRT2, "sqrt(2)", 0.01, "1.41421"],
   ] as const)("%d of %s with step %s is %s", (value, source, step, shown) => {
     expect(shownValue(value, source, step)).toBe(shown);
   });

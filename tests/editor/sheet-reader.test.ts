@@ -127,6 +127,28 @@ describe("states", () => {
     ]);
   });
 
+  test("what hangs from a parameter is told: what is printed and how many numbers, else what prints nothing", () => {
+    const hangs = (text: string) => {
+      reader.hear(tellText(text));
+      return reader.sheet().parameters.map((each) => each.hangs);
+    };
+    expect(hangs(SAMPLE)).toEqual(["Figure 1 and 2 numbers hang from it", "Figure 1 and 1 number hang from it"]);
+    const alone = "```parameters\na: 1\nb: 2\nc: a\n```\n\n```formula f\nx: c\n```\n\n:value[b]\n";
+    expect(hangs(alone)).toEqual(["formula f hangs from it", "1 number hangs from it", "formula f hangs from it"]);
+    expect(hangs("```parameters\na: 1\n```\n")).toEqual(["Nothing hangs from it"]);
+  });
+
+  test("what a formula comes to is shown with six digits, also when it is tried", () => {
+    const text = "```parameters\na: sqrt(2)\nb: {value: 1, step: 0.5}\n```\n";
+    reader.hear(tellText(text));
+    expect(reader.sheet().parameters.map(({ shown, plain }) => [shown, plain])).toEqual([
+      ["1.41421", false],
+      ["1.0", true],
+    ]);
+    reader.hear({ tell: "preview", settled: { b: "a/3" }, trial: {} });
+    expect(reader.sheet().parameters[1]).toMatchObject({ shown: "0.471405", overridden: true });
+  });
+
   test("prose, captions and notes change no state", () => {
     reader.hear(tellText(SAMPLE));
     showAll(SAMPLE);

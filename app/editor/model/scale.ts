@@ -82,16 +82,20 @@ export function isPlainNumber(source: string): boolean {
 
 /**
  * A parameter's value as the rule shows it: with the decimals of its step or of its own source, whichever are more,
- * thousands parted by thin spaces. "2" with step 0.05 is shown as 2.00.
+ * thousands parted by thin spaces. "2" with step 0.05 is shown as 2.00. What a formula comes to has six digits.
  */
 export function shownValue(value: number, source: string, step: number | null): string {
-  const decimals = Math.min(10, Math.max(decimalsOf(source), step === null ? 0 : decimalsOf(String(step))));
+  const own = isPlainNumber(source) ? source : String(Number(value.toPrecision(FORMULA_DIGITS)));
+  const decimals = Math.min(10, Math.max(decimalsOf(own), step === null ? 0 : decimalsOf(String(step))));
   const size = Math.abs(value);
   if (value !== 0 && (size >= 1e9 || size < 1e-5)) return sourceOf(value);
   const [whole = "", part] = value.toFixed(decimals).split(".");
   const parted = whole.replace(/\B(?=(\d{3})+(?!\d))/g, whole.replace("-", "").length > 4 ? "\u2009" : "");
   return (part === undefined ? parted : `${parted}.${part}`).replace("-", "−");
 }
+
+/** So many digits of what a formula comes to are shown. */
+const FORMULA_DIGITS = 6;
 
 function decimalsOf(source: string): number {
   if (!isPlainNumber(source)) return 0;

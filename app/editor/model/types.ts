@@ -164,6 +164,8 @@ export interface ParameterFace {
   readonly was: number | null;
   readonly wasShown: string;
   readonly overridden: boolean;
+  /** "Figure 1, Table 2 and 5 numbers hang from it". */
+  readonly hangs: string;
 }
 
 export type CellStateName =

@@ -1,5 +1,5 @@
 import { captionOf, KINDS, type Plan, type PlannedCell, PRESENTATION_KEYS } from "../../cells/index.ts";
-import { FUNCTIONS } from "../../formulas/index.ts";
+import { FUNCTIONS, printExact, toDouble } from "../../formulas/index.ts";
 import {
   bibliographyItem,
   ENVIRONMENTS,
@@ -9,6 +9,7 @@ import {
   type Target,
 } from "../../paper/index.ts";
 import type { CellWords, LabelWords, LanguageWords, PaperNames, Word } from "../model/knowledge.ts";
+import { isPlainNumber, shownValue } from "../model/scale.ts";
 
 /** What the language has, from the definitions that check a paper. */
 export const LANGUAGE_WORDS: LanguageWords = {
@@ -45,10 +46,7 @@ export function namesOf(paper: Paper, plan: Plan, titles: ReadonlyMap<string, st
 
 function readNames(paper: Paper, plan: Plan, titles: ReadonlyMap<string, string>): PaperNames {
   return {
-    parameters: plan.parameters.map(({ name, source, unit, note }) => ({
-      name,
-      meaning: [`parameter, ${source}${unit === "" ? "" : ` ${unit}`}`, note].filter((part) => part !== "").join("; "),
-    })),
+    parameters: plan.parameters.map((parameter) => ({ name: parameter.name, meaning: parameterMeaning(parameter) })),
     cells: plan.cells.flatMap((planned) => {
       const { name } = planned.cell;
       return name === null || planned.kind === "parameters" ? [] : [cellWords(name, planned, titles)];
@@ -61,6 +59,19 @@ function readNames(paper: Paper, plan: Plan, titles: ReadonlyMap<string, string>
         .join(""),
     })),
   };
+}
+
+/** "parameter, sqrt(2*beta) = 1.41421 per day; drift; from 1.45 to 4 in steps of 0.05": value, unit, note and range. */
+function parameterMeaning({ source, value, min, max, step, unit, note }: Plan["parameters"][number]): string {
+  const number = value.type === "number" ? shownValue(toDouble(value.quantity), source, null) : "no value";
+  const stands = isPlainNumber(source) ? source : `${source} = ${number}`;
+  const range = [
+    ...(min === null ? [] : [`from ${printExact(min)}`]),
+    ...(max === null ? [] : [`${min === null ? "up " : ""}to ${printExact(max)}`]),
+    ...(step === null ? [] : [`in steps of ${printExact(step)}`]),
+  ].join(" ");
+  const measured = unit === "" ? stands : `${stands} ${unit}`;
+  return [`parameter, ${measured}`, note, range].filter((part) => part !== "").join("; ");
 }
 
 function cellWords(name: string, planned: PlannedCell, titles: ReadonlyMap<string, string>): CellWords {

@@ -131,7 +131,7 @@ export class SheetReader {
       front,
       macros: paper.front.macros,
       pieces: this.pieces.since(this.have, pieces),
-      parameters: parameterFaces(resting, tellings),
+      parameters: parameterFaces(resting, tellings, { cells, numbers: paper.numbers.map(numbers.face) }),
       cells,
       views: this.views.changed(plan, results, cells),
       problems,

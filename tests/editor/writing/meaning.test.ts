@@ -32,12 +32,23 @@ describe("What a word means", () => {
   });
 
   test("what formulas read: parameters with their note, cells, members, functions", () => {
-    expect(at(":value[m|u]")?.words).toBe("parameter, 1.6; drift");
+    expect(at(":value[m|u]")?.words).toBe("parameter, 1.6; drift; from 1.45 to 4 in steps of 0.05");
+    expect(at("```process p\ndrift: bet|a\n```")?.words).toBe("parameter, 1");
     expect(at(":value[K.me|an]{digits=3}")).toMatchObject({ word: "K.mean", words: "E K, given that K is finite" });
     expect(at("$\\value{|K(3)}$")).toMatchObject({ term: "K(n)", words: "P(K = n), also beyond up_to" });
     expect(at("```check c\nthat: sq|rt(2) > 1")?.term).toBe("sqrt(x)");
     expect(at("```counts L\nof: larv|ae\n```")?.words).toBe("process larvae");
     expect(at(":value[un|known]")).toBeNull();
+  });
+
+  test("a parameter that is a formula says what it comes to, with its unit and as much of a range as it has", () => {
+    const text =
+      "```parameters\na: {value: sqrt(2), unit: m, max: 9}\nb: {value: a, min: 0, step: 1, note: the other}\n```\n";
+    reader.hear(tellText(text));
+    expect(reader.sheet().names.parameters.map(({ meaning }) => meaning)).toEqual([
+      "parameter, sqrt(2) = 1.41421 m; up to 9",
+      "parameter, a = 1.41421; the other; from 0 in steps of 1",
+    ]);
   });
 
   test("the target of a reference, and a citation's entry", () => {
