@@ -14,6 +14,6 @@ export const FORMULA_DOCUMENTATION: KindDocumentation = {
   offered: {
     name: "derived",
     words: "calculate quantity expression quotient ratio number",
-    body: "first: ‹«number»/2›",
+    body: "«key»: ‹«number»/2›",
   },
 };
