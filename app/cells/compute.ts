@@ -4,6 +4,7 @@ import type { ReadCell } from "./context.ts";
 import { CellFault, ComputeContext, evaluated, NotKnownYet } from "./context.ts";
 import type { Branch, Computed, Kind } from "./kind.ts";
 import { KINDS } from "./registry.ts";
+import { scopeOver } from "./scope.ts";
 import type { CellResult, CellTask, Outcome, Plan } from "./types.ts";
 import { numberValue } from "./values.ts";
 
@@ -58,40 +59,6 @@ export function quickCells(plan: Plan): ReadonlySet<string> {
     if (cell.key !== null && cell.quick && cell.needs.every((id) => quick.has(id))) quick.add(cell.id);
   }
   return quick;
-}
-
-/** A scope over parameters and results; a cell that has no result but a reason gives that reason. */
-export function scopeOver(
-  parameters: (name: string) => Value | undefined,
-  results: ReadonlyMap<string, ReadCell>,
-): Scope {
-  const result = (of: string): CellResult | Value | undefined => {
-    const found = results.get(of);
-    return found !== undefined && "refused" in found ? { type: "refused", reason: found.refused } : found;
-  };
-  return {
-    name: parameters,
-    member(of, member) {
-      const found = result(of);
-      if (found === undefined || "type" in found) return found;
-      return Object.hasOwn(found.values, member) ? found.values[member] : undefined;
-    },
-    call(of, member, args) {
-      const found = result(of);
-      if (found === undefined || "type" in found) return found;
-      return called(found, member, args);
-    },
-  };
-}
-
-/** What a callable gives; arguments that the solver cannot take are refused in its words. */
-function called(result: CellResult, member: string, args: readonly Quantity[]): Value | undefined {
-  try {
-    return KINDS.get(result.kind)?.call(result.data, member, args);
-  } catch (error) {
-    if (error instanceof SolverError) return { type: "refused", reason: error.message };
-    throw error;
-  }
 }
 
 function plannedOutcome(planned: Plan["cells"][number], results: ReadonlyMap<string, CellResult>): Outcome {

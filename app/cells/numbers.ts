@@ -2,10 +2,10 @@ import type { Formula, PrintedNumber, Scope, Value } from "../formulas/index.ts"
 import { freeNames, printNumber } from "../formulas/index.ts";
 import type { BoundNumber } from "../paper/index.ts";
 import { parsedFormula } from "./body.ts";
-import { scopeOver } from "./compute.ts";
 import { evaluated } from "./context.ts";
 import { listOfNames } from "./names.ts";
 import { KINDS } from "./registry.ts";
+import { scopeOver } from "./scope.ts";
 import type { CellResult, Plan } from "./types.ts";
 import { refusedValue } from "./values.ts";
 

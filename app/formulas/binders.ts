@@ -34,21 +34,38 @@ export function bindEvaluator(
       if (value.type !== "number") return notANumber(value, binder);
       quantities.push(value.quantity);
     }
+    const within = new Within(scope, variable);
     const bodyAt: Body = (x) => {
       spend(budget, 1);
-      return body(withVariable(scope, variable, x), budget);
+      within.value = number(x);
+      return body(within, budget);
     };
     return rule(bodyAt, quantities, variable, budget);
   };
 }
 
-function withVariable(scope: Scope, variable: string, x: Quantity): Scope {
-  const value = number(x);
-  return {
-    name: (name) => (name === variable ? value : scope.name(name)),
-    member: (of, member) => scope.member(of, member),
-    call: (of, member, args) => scope.call(of, member, args),
-  };
+/** A scope with a dummy variable in it, whose value goes from term to term: one object for a sum of many terms. */
+class Within implements Scope {
+  value: Value | undefined;
+  readonly #around: Scope;
+  readonly #variable: string;
+
+  constructor(around: Scope, variable: string) {
+    this.#around = around;
+    this.#variable = variable;
+  }
+
+  name(name: string): Value | undefined {
+    return name === this.#variable ? this.value : this.#around.name(name);
+  }
+
+  member(of: string, member: string): Value | undefined {
+    return this.#around.member(of, member);
+  }
+
+  call(of: string, member: string, args: readonly Quantity[]): Value | undefined {
+    return this.#around.call(of, member, args);
+  }
 }
 
 /** The two whole numbers that bound a sum or a search, or why they do not. */
