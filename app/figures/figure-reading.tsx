@@ -1,4 +1,4 @@
-import { type KeyboardEvent, type PointerEvent, useEffect, useMemo, useRef, useState } from "react";
+import { type KeyboardEvent, type PointerEvent, useEffect, useLayoutEffect, useMemo, useRef, useState } from "react";
 import { type PlacedPoint, placePoints } from "./point-places.ts";
 import { type Curve, nearestPoint, type PointAsked, readableCurves } from "./readable-curves.ts";
 import type { CurveReadings, Figure } from "./types.ts";
@@ -9,6 +9,8 @@ interface Props {
   /** Of the plate beneath, as it was laid out [px]. */
   readonly width: number;
   readonly height?: number;
+  /** Where the pointer was when this came under it, in the window. */
+  readonly pointed?: { readonly clientX: number; readonly clientY: number } | null;
   /** Whether Tab comes to the curves. */
   readonly curvesByTab: boolean;
   /** Takes the keys as it appears: to the first curve. */
@@ -21,7 +23,8 @@ interface Props {
  * Lies over a plate and reads it: by the pointer, and by the keyboard with Tab from curve to curve and the arrows along
  * one. Each curve is a slider whose value is said in words. What holds it and the plate has the class `figure-read`.
  */
-export function FigureReading({ figure, readings, width, height, curvesByTab, takesKeys = false, onLeave }: Props) {
+export function FigureReading(props: Props) {
+  const { figure, readings, width, height, pointed = null, curvesByTab, takesKeys = false, onLeave } = props;
   const placed = useMemo(() => placePoints(figure, { width, height }), [figure, width, height]);
   const curves = useMemo(() => readableCurves(placed.curves, readings), [placed, readings]);
   const [asked, setAsked] = useState<PointAsked | null>(null);
@@ -30,11 +33,16 @@ export function FigureReading({ figure, readings, width, height, curvesByTab, ta
     if (takesKeys) ground.current?.querySelector<HTMLElement>("[role=slider]")?.focus();
   }, [takesKeys]);
   const point = asked === null ? undefined : curves[asked.curve]?.points[asked.at];
-  const find = (event: PointerEvent<HTMLDivElement>) => {
-    const { left, top, width: drawn } = event.currentTarget.getBoundingClientRect();
+  const pointAt = (place: Element, { clientX, clientY }: { readonly clientX: number; readonly clientY: number }) => {
+    const { left, top, width: drawn } = place.getBoundingClientRect();
     const unit = width / drawn;
-    setAsked(nearestPoint(curves, (event.clientX - left) * unit, (event.clientY - top) * unit));
+    setAsked(nearestPoint(curves, (clientX - left) * unit, (clientY - top) * unit));
   };
+  const first = useRef(() => {
+    if (ground.current !== null && pointed !== null) pointAt(ground.current, pointed);
+  });
+  useLayoutEffect(() => first.current(), []);
+  const find = (event: PointerEvent<HTMLDivElement>) => pointAt(event.currentTarget, event);
   const placeOf = ({ x, y }: PlacedPoint) => ({
     left: `${((100 * x) / placed.width).toFixed(3)}%`,
     top: `${((100 * y) / placed.height).toFixed(3)}%`,

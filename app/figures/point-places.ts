@@ -1,3 +1,4 @@
+import type { Frame } from "./curve.ts";
 import { layoutOnPage } from "./layout.ts";
 import type { PlateSize } from "./plot-layout.ts";
 import { isWithin, plotted, plottedY } from "./range.ts";
@@ -8,6 +9,8 @@ export interface PlacedCurve {
   /** The figure whose axes it is drawn on: the whole, a panel or an inset. */
   readonly figure: Figure;
   readonly series: Series;
+  /** Between the axes, on the plate. */
+  readonly frame: Frame;
   readonly points: readonly PlacedPoint[];
 }
 
@@ -34,9 +37,16 @@ export function placePoints(figure: Figure, size: Omit<PlateSize, "fontSize">): 
     const { frame, inner, x, y } = plot;
     const across = (at: number) => left + frame.left + ((at - x.low) / (x.high - x.low)) * (frame.right - frame.left);
     const down = (at: number) => top + inner.bottom - ((at - y.low) / (y.high - y.low)) * (inner.bottom - inner.top);
+    const onPlate: Frame = {
+      left: left + frame.left,
+      right: left + frame.right,
+      top: top + frame.top,
+      bottom: top + frame.bottom,
+    };
     return part.series.map((series) => ({
       figure: part,
       series,
+      frame: onPlate,
       points: series.x.flatMap((value, i) => {
         const px = plotted(part.x, value);
         const py = plottedY(part.y, series, i);

@@ -1,4 +1,4 @@
-import type { SheetHost } from "../../app/editor/text/host.ts";
+import { hostAtRest, type SheetHost } from "../../app/editor/text/host.ts";
 
 /** A page around a text under test: every command does nothing. */
 export function silentHost(): SheetHost {
@@ -15,8 +15,7 @@ export function silentHost(): SheetHost {
     },
     plateOf: (id) => `/papers/p/plates/${id}`,
     writes: true,
-    macros: {},
-    views: new Map(),
-    columnWidth: 660,
+    tell: nothing,
+    ...hostAtRest(),
   };
 }

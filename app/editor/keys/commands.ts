@@ -2,6 +2,7 @@ import { TO_RECOMPUTE } from "../live/desk-view.ts";
 import { followBack, followStrand } from "../strands/follow.ts";
 import { cellAtHand, isWorkingOpen } from "./cell-at-hand.ts";
 import { goToErratum } from "./errata-walk.ts";
+import { FIGURE_COMMANDS } from "./figure-commands.ts";
 import { quoteRefused, quoteValue } from "./quote.ts";
 import type { CommandGroup, SheetAtHand, SheetCommand } from "./types.ts";
 
@@ -85,6 +86,7 @@ export const SHEET_COMMANDS: readonly SheetCommand[] = [
     unavailable: noRule,
     act: () => ruleHandle()?.focus(),
   },
+  ...FIGURE_COMMANDS,
   {
     id: "next-erratum",
     group: "Errata and strands",
@@ -135,7 +137,7 @@ export const SHEET_COMMANDS: readonly SheetCommand[] = [
   { id: "commands", group: "Text", words: "This list", letter: "?", act: opens("commands") },
 ];
 
-export const COMMAND_GROUPS: readonly CommandGroup[] = ["Places", "Cells", "Errata and strands", "Text"];
+export const COMMAND_GROUPS: readonly CommandGroup[] = ["Places", "Cells", "Figures", "Errata and strands", "Text"];
 
 /** Those that a person may give on this sheet. */
 export function commandsFor(writes: boolean): readonly SheetCommand[] {

@@ -29,7 +29,7 @@ export interface SheetAtHand {
 }
 
 /** The groups of the list, in its order. */
-export type CommandGroup = "Places" | "Cells" | "Errata and strands" | "Text";
+export type CommandGroup = "Places" | "Cells" | "Figures" | "Errata and strands" | "Text";
 
 /** One command of the sheet: the composing key, the list of keys and the menu are made from these. */
 export interface SheetCommand {

@@ -2,9 +2,9 @@ import type { TransactionSpec } from "@codemirror/state";
 import type { EditorView } from "@codemirror/view";
 import type { ValueNow } from "../model/messages.ts";
 import { yamlScalar } from "../model/scale.ts";
-import type { SheetModel, ShownView } from "../model/types.ts";
+import type { SheetModel } from "../model/types.ts";
 import { createSheetEditor, createSourceEditor } from "../text/editor.ts";
-import type { CellCommands, SheetHost } from "../text/host.ts";
+import { type CellCommands, hostAtRest, type SheetHost } from "../text/host.ts";
 import { focusPlate, goToLine, goToPlace, lineInAddress, showPlace, turnWorking } from "../text/moving.ts";
 import { findPlace } from "../text/places.ts";
 import { sheetField } from "../text/sheet-field.ts";
@@ -59,9 +59,8 @@ export class Desk {
       commands: this.commands(),
       plateOf: (id) => `/papers/${options.paperId}/plates/${encodeURIComponent(id)}`,
       writes: options.writes,
-      macros: {},
-      views: new Map<string, ShownView>(),
-      columnWidth: 660,
+      tell: (words) => this.tell(words),
+      ...hostAtRest(),
     };
     this.fetcher = new ResultFetcher(this.requests, (results) => this.reading?.tellResults(results));
     if (options.person !== null) void forgetPrivateCopies(options.person.id);

@@ -1,7 +1,8 @@
-import { memo, type ReactNode, useCallback, useState } from "react";
+import { memo, type ReactNode } from "react";
 import type { CellView } from "../../cells/index.ts";
-import { type Figure, FigurePlate } from "../../figures/index.ts";
 import type { CellFace } from "../model/types.ts";
+import { FigureCommands } from "../plates/figure-commands.tsx";
+import { SheetFigure } from "../plates/sheet-figure.tsx";
 import type { SheetHost } from "../text/host.ts";
 import { Runs } from "./runs.tsx";
 import { StateLine } from "./state-line.tsx";
@@ -14,27 +15,6 @@ interface Props {
   readonly host: SheetHost;
 }
 
-interface PlateProps {
-  readonly figure: Figure;
-  /** Of the column, before the plate's own is known [px]. */
-  readonly width: number;
-}
-
-/** A figure as wide as the column. The same figure in the same width is not drawn again when text above it changes. */
-const Plate = memo(({ figure, width }: PlateProps) => {
-  const [measured, setMeasured] = useState(0);
-  const watch = useCallback((place: HTMLDivElement | null) => {
-    if (place === null) return;
-    const observer = new ResizeObserver(() => setMeasured(Math.round(place.clientWidth)));
-    observer.observe(place);
-    return () => observer.disconnect();
-  }, []);
-  return (
-    <div ref={watch}>
-      <FigurePlate figure={figure} width={measured > 0 ? measured : width} />
-    </div>
-  );
-});
 const Rows = memo(TablePlate);
 
 /** A cell as it stands on the sheet: what it prints, its caption, and how it came to be. */
@@ -69,6 +49,9 @@ export function CellPlate({ face, view, open, host }: Props) {
           {remark}
         </p>
       ))}
+      {view?.figure && face.parts.some(({ part }) => part === "figure") ? (
+        <FigureCommands face={face} open={open} host={host} />
+      ) : null}
     </section>
   );
 }
@@ -87,7 +70,7 @@ function Part({ part, view, face, host, children }: PartProps) {
     return (
       <>
         <div className="hl-figure">
-          {view?.figure ? <Plate figure={view.figure} width={host.columnWidth} /> : <Frame face={face} />}
+          {view?.figure ? <SheetFigure figure={view.figure} slot={face.slot} host={host} /> : <Frame face={face} />}
         </div>
         {children}
       </>

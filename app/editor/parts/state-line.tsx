@@ -51,7 +51,7 @@ export function StateLine({ face, open, host }: Props) {
           of={face.title}
           onPress={() => (open ? host.commands.putAway(face.slot) : host.commands.showWorking(face.slot))}
         />
-        {face.provenance.length > 0 && face.state !== "preview" ? (
+        {face.provenance.length > 0 && face.state !== "preview" && !hasFigure(face) ? (
           <a
             className="command hl-small hl-quiet"
             href={host.plateOf(face.id)}
@@ -63,6 +63,11 @@ export function StateLine({ face, open, host }: Props) {
       </span>
     </div>
   );
+}
+
+/** A figure has its own commands beneath it. */
+function hasFigure({ parts }: CellFace): boolean {
+  return parts.some(({ part }) => part === "figure");
 }
 
 /** What the result itself says, whatever the state of its cell; what is grave bears the mark. */

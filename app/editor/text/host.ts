@@ -1,5 +1,7 @@
 import { Facet } from "@codemirror/state";
+import { createStore, type Store } from "../live/store.ts";
 import type { CellFace, ShownView } from "../model/types.ts";
+import { PLATES_AT_REST, type PlatesView } from "../plates/types.ts";
 
 /** What a person may ask of a cell on the sheet. */
 export interface CellCommands {
@@ -22,8 +24,17 @@ export interface SheetHost {
   /** TeX macros of the front matter, of the newest answer. */
   macros: Readonly<Record<string, string>>;
   readonly views: Map<string, ShownView>;
+  /** What becomes of the plates on this page alone. */
+  readonly plates: Store<PlatesView>;
+  /** Says something in the tail line, and to those who listen. */
+  tell(words: string): void;
   /** Of the text [px]; plates are drawn to it. */
   columnWidth: number;
+}
+
+/** What the page knows before its first answer. */
+export function hostAtRest(): Pick<SheetHost, "macros" | "views" | "plates" | "columnWidth"> {
+  return { macros: {}, views: new Map(), plates: createStore(PLATES_AT_REST), columnWidth: 660 };
 }
 
 /** The page around the text; one for each editor. The last one given wins, and there must be one. */

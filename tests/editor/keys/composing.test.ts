@@ -77,8 +77,8 @@ describe("the composing key", () => {
   });
 
   test("a sign without a command is not written, and that is said", () => {
-    expect(compose("y")).toBe(true);
-    expect(at.asked.tell).toHaveBeenCalledWith("No command has the letter y; ? lists them.");
+    expect(compose("%")).toBe(true);
+    expect(at.asked.tell).toHaveBeenCalledWith("No command has the letter %; ? lists them.");
   });
 
   test("a cell's command is for the cell at the caret, and is refused with the reason elsewhere", () => {
