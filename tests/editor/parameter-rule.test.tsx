@@ -37,12 +37,18 @@ const onTry = vi.fn<(name: string, source: string | null) => void>();
 const onSay = vi.fn<(words: string) => void>();
 let borders: Borders = {};
 const onSet = vi.fn<(name: string, source: string) => void>();
+const onJudge = vi.fn<(name: string, source: string) => Promise<string>>();
+const editing = { change: vi.fn(), add: vi.fn(), move: vi.fn() };
+let writes = true;
 
 beforeEach(() => {
   vi.useFakeTimers();
   onTry.mockReset();
   onSet.mockReset();
   onSay.mockReset();
+  onJudge.mockReset().mockResolvedValue("");
+  for (const asked of Object.values(editing)) asked.mockReset();
+  writes = true;
   borders = {};
   place = document.body.appendChild(document.createElement("div"));
   root = createRoot(place);
@@ -55,7 +61,17 @@ afterEach(() => {
 
 function draw(...parameters: ParameterFace[]): void {
   act(() =>
-    root.render(<ParameterRule parameters={parameters} borders={borders} onTry={onTry} onSet={onSet} onSay={onSay} />),
+    root.render(
+      <ParameterRule
+        parameters={parameters}
+        borders={borders}
+        onTry={onTry}
+        onSet={onSet}
+        onJudge={onJudge}
+        editing={writes ? editing : null}
+        onSay={onSay}
+      />,
+    ),
   );
 }
 
@@ -127,17 +143,93 @@ test("Esc puts back, and nothing is set", () => {
   expect(onSet).not.toHaveBeenCalled();
 });
 
-test("digits open the field; Enter sets a formula as well; Esc closes it", () => {
+test("digits open the field; Enter sets a formula as well; Esc closes it", async () => {
   draw(MU);
   press("2");
   expect(place.querySelector("input")?.value).toBe("2");
   type("sqrt(2)");
   press("Enter");
+  await act(async () => {});
+  expect(onJudge.mock.calls).toEqual([["mu", "sqrt(2)"]]);
   expect(onSet.mock.calls).toEqual([["mu", "sqrt(2)"]]);
   press("3");
   press("Escape");
   expect(place.querySelector("input")).toBeNull();
   expect(onSet).toHaveBeenCalledTimes(1);
+});
+
+test("a plain number stands at once; nothing is asked about it", () => {
+  draw(MU);
+  press("2");
+  press("Enter");
+  expect([onSet.mock.calls, onJudge.mock.calls]).toEqual([[["mu", "2"]], []]);
+});
+
+test("a formula that cannot stand stays in its field, which says why, until it is written otherwise", async () => {
+  const fault = "`bta` is not a parameter of this paper. Did you mean `beta`?";
+  onJudge.mockResolvedValue(fault);
+  draw(MU);
+  press("2");
+  type("2*bta");
+  press("Enter");
+  await act(async () => {});
+  const field = place.querySelector("input");
+  expect([field?.value, field?.getAttribute("aria-invalid")]).toEqual(["2*bta", "true"]);
+  expect(document.getElementById(field?.getAttribute("aria-describedby") ?? "")?.textContent).toBe(fault);
+  expect([word(), onSay.mock.calls]).toEqual([`‡ ${fault}`, [[fault]]]);
+  type("2*beta");
+  expect([field?.getAttribute("aria-invalid"), word()]).toEqual([null, null]);
+  expect(onSet).not.toHaveBeenCalled();
+  press("Escape");
+  expect(handle().textContent).toBe("1.60");
+});
+
+test("an answer to what was put back meanwhile sets nothing", async () => {
+  let answer = (_: string) => {};
+  onJudge.mockReturnValue(new Promise((resolve) => (answer = resolve)));
+  draw(MU);
+  press("2");
+  type("sqrt(2)");
+  press("Enter");
+  press("Escape");
+  await act(async () => answer(""));
+  expect(onSet).not.toHaveBeenCalled();
+});
+
+test("Alt and Shift with an arrow move the parameter, and try nothing", () => {
+  draw(MU);
+  press("ArrowLeft", { altKey: true, shiftKey: true });
+  press("ArrowRight", { altKey: true, shiftKey: true });
+  expect(editing.move.mock.calls).toEqual([
+    ["mu", -1],
+    ["mu", 1],
+  ]);
+  expect(onTry).not.toHaveBeenCalled();
+});
+
+test("for one who writes, the note opens the entry, and there is a command to add", () => {
+  draw(MU, { ...MU, name: "beta", note: "" }, { ...MU, name: "x", note: "start", plain: false, source: "2*mu" });
+  const buttons = [...place.querySelectorAll("button")];
+  expect(buttons.map((button) => [button.textContent, button.getAttribute("aria-label")])).toEqual([
+    ["drift", "drift: change mu"],
+    ["Describe", "Describe: change beta"],
+    ["start = 2*mu", "start = 2*mu: change x"],
+    ["Add", "Add a parameter"],
+  ]);
+  act(() => buttons[1]?.click());
+  act(() => buttons[3]?.click());
+  expect([editing.change.mock.calls, editing.add.mock.calls.length]).toEqual([[["beta"]], 1]);
+});
+
+test("for one who reads, notes are words and nothing is edited, and values are tried", () => {
+  writes = false;
+  draw(MU);
+  expect(place.querySelector("button")).toBeNull();
+  expect(place.querySelector(".hl-par-note")?.textContent).toBe("drift");
+  press("ArrowRight", { altKey: true, shiftKey: true });
+  expect(editing.move).not.toHaveBeenCalled();
+  press("ArrowRight");
+  expect(onTry).toHaveBeenLastCalledWith("mu", "1.65");
 });
 
 test("a trial gives way when the text has another value", () => {
@@ -211,7 +303,7 @@ test("a border is marked on the scale, and described with the value", () => {
   expect(mark?.getAttribute("x1")).toBe(`${(((Math.SQRT2 - 1) / 3) * 100).toFixed(3)}%`);
   const description = handle().getAttribute("aria-describedby") ?? "";
   expect(document.getElementById(description)?.textContent).toBe(
-    "Below mu = 1.414, where the drift is critical in larvae, K is infinite with positive probability.",
+    "Figure 1 and 2 numbers hang from it. Below mu = 1.414, where the drift is critical in larvae, K is infinite with positive probability.",
   );
   expect(word()).toBeNull();
 });
@@ -270,8 +362,12 @@ test("what is pointed at has the line before what has the keys, which has it aga
   expect(word()).toContain("Below μ = 1.414");
 });
 
-test("a parameter without borders says nothing", () => {
+test("a parameter without borders tells what hangs from it alone", () => {
   draw(WIDE);
   act(() => handle().focus());
-  expect([word(), handle().getAttribute("aria-describedby")]).toEqual([null, null]);
+  const description = handle().getAttribute("aria-describedby") ?? "";
+  expect([word(), document.getElementById(description)?.textContent]).toEqual([
+    null,
+    "Figure 1 and 2 numbers hang from it.",
+  ]);
 });

@@ -11,7 +11,7 @@ const REST_MS = 250;
 /** Gives a parameter, cell or label another name wherever it is used; says before in how many places. */
 export function RenameStrip({ sheet }: { readonly sheet: SheetAtHand }) {
   const { desk, view } = sheet;
-  const [name, setName] = useState(() => nameAtCaret(sheet));
+  const [name, setName] = useState(() => sheet.strips.get().about ?? nameAtCaret(sheet));
   const [wanted, setWanted] = useState("");
   const [seen, setSeen] = useState<Renaming | NoRenaming | null>(null);
   useEffect(() => {

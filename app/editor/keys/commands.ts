@@ -4,6 +4,7 @@ import { cellAtHand, isWorkingOpen } from "./cell-at-hand.ts";
 import { goToErratum } from "./errata-walk.ts";
 import { FIGURE_COMMANDS } from "./figure-commands.ts";
 import { quoteRefused, quoteValue } from "./quote.ts";
+import { RULE_COMMANDS } from "./rule-commands.ts";
 import type { CommandGroup, SheetAtHand, SheetCommand } from "./types.ts";
 
 /** In the order of the list. A new command of the sheet is one entry here. */
@@ -78,14 +79,7 @@ export const SHEET_COMMANDS: readonly SheetCommand[] = [
     unavailable: noCell,
     act: withCell(turnWorking),
   },
-  {
-    id: "rule",
-    group: "Cells",
-    words: "Go to the parameter rule",
-    letter: "p",
-    unavailable: noRule,
-    act: () => ruleHandle()?.focus(),
-  },
+  ...RULE_COMMANDS,
   ...FIGURE_COMMANDS,
   {
     id: "next-erratum",
@@ -162,7 +156,7 @@ export function give(command: SheetCommand, sheet: SheetAtHand): void {
 }
 
 function opens(open: NonNullable<ReturnType<SheetAtHand["strips"]["get"]>["open"]>): SheetCommand["act"] {
-  return ({ strips }) => strips.set({ open });
+  return ({ strips }) => strips.set({ open, about: null });
 }
 
 type FaceAtHand = NonNullable<ReturnType<typeof cellAtHand>>;
@@ -209,14 +203,6 @@ function nothingDue({ desk }: SheetAtHand): string {
 
 function noErrata({ desk }: SheetAtHand): string {
   return (desk.store.get().model?.errata.length ?? 0) > 0 ? "" : "Errata none. Every number is current.";
-}
-
-function ruleHandle(): HTMLElement | null {
-  return document.querySelector<HTMLElement>(".hl-rule [role=spinbutton]");
-}
-
-function noRule(): string {
-  return ruleHandle() === null ? "This paper has no parameters yet." : "";
 }
 
 function strandsAway({ strands }: SheetAtHand): string {

@@ -17,7 +17,10 @@ const OutlineStrip = lazy(async () => ({ default: (await reading()).OutlineStrip
 const RenameStrip = lazy(async () => ({ default: (await reading()).RenameStrip }));
 const FETCHING = <p className="hl-strip-words">Reading the paper</p>;
 
-const TITLES: Readonly<Record<StripName, string>> = {
+/** What opens above the tail line; a parameter's entry opens beneath the rule. */
+type TailStrip = Exclude<StripName, "parameter">;
+
+const TITLES: Readonly<Record<TailStrip, string>> = {
   commands: "Commands",
   find: "Find",
   rename: "Rename",
@@ -32,7 +35,7 @@ export function SheetStrip({ sheet, personId }: Props) {
   const binding = useStrips(sheet.strips, (strips) => strips.binding);
   return (
     <>
-      {open === null ? null : (
+      {open === null || open === "parameter" ? null : (
         <Strip key={open} title={TITLES[open]} onClose={() => sheet.strips.set({ open: null })}>
           <Body open={open} sheet={sheet} personId={personId} />
         </Strip>
@@ -46,7 +49,7 @@ export function SheetStrip({ sheet, personId }: Props) {
   );
 }
 
-function Body({ open, sheet, personId }: Props & { readonly open: StripName }) {
+function Body({ open, sheet, personId }: Props & { readonly open: TailStrip }) {
   switch (open) {
     case "errata":
       return <ErrataList sheet={sheet} />;

@@ -4,12 +4,14 @@ import type { Store } from "../live/store.ts";
 import type { StrandWatch } from "../strands/watch.ts";
 import type { Binding } from "./binding.ts";
 
-/** What may stand between rules above the tail line; one at a time. */
-export type StripName = "commands" | "find" | "rename" | "outline" | "errata";
+/** What may stand between rules above the tail line, or beneath the parameter rule; one at a time. */
+export type StripName = "commands" | "find" | "rename" | "outline" | "errata" | "parameter";
 
 /** What the strip shows and what the composing key waits for. */
 export interface Strips {
   readonly open: StripName | null;
+  /** The name that it was opened with: of the parameter to change, or of what to rename; null: with none. */
+  readonly about: string | null;
   /** The composing key was pressed: the next key is a command's letter. */
   readonly composing: boolean;
   readonly binding: Binding;

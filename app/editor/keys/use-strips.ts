@@ -20,7 +20,7 @@ interface Given {
 export function useSheetAtHand({ desk, strands, ready, writes, paperId, personId }: Given): SheetAtHand | null {
   const navigate = useNavigate();
   const [strips] = useState<Store<Strips>>(() =>
-    createStore<Strips>({ open: null, composing: false, binding: readBinding(personId) }),
+    createStore<Strips>({ open: null, about: null, composing: false, binding: readBinding(personId) }),
   );
   const view = ready ? (desk?.view ?? null) : null;
   const sheet = useMemo<SheetAtHand | null>(

@@ -125,12 +125,13 @@ export class Desk {
     const places = view.state.field(sheetField).places;
     const found = findPlace(places, (piece) => piece.piece === "parameter" && piece.name === name);
     if (found === null) return;
-    this.session.undo.text.stopCapturing();
-    view.dispatch({
-      changes: { from: found.from, to: found.to, insert: yamlScalar(source) },
-      userEvent: "input.parameter",
-    });
-    this.session.undo.text.stopCapturing();
+    const changes = { from: found.from, to: found.to, insert: yamlScalar(source) };
+    this.editParameters({ changes, userEvent: "input.parameter" });
+  }
+
+  /** One edit of parameters: what was tried ends with it, and results that are kept already appear. */
+  editParameters(change: TransactionSpec): void {
+    this.edit(change);
     this.trial = {};
     this.wantsKept = true;
     // The text first: the trial ends only when what it led to is in the sheet, and nothing older shows in between.

@@ -1,11 +1,14 @@
-import { type CSSProperties, type KeyboardEvent, type PointerEvent, useId, useRef, useState } from "react";
+import { type CSSProperties, type KeyboardEvent, type PointerEvent, useId, useRef } from "react";
 import type { BorderFace } from "../model/borders.ts";
 import { freeStep, type Scale, scaleOf, shownValue, sourceOf, stepped, valueAt } from "../model/scale.ts";
 import type { ParameterFace } from "../model/types.ts";
+import type { RuleEditing } from "../rule/rule-editing.ts";
 import { strandColour } from "../text/contents.ts";
 import { ParameterField } from "./parameter-field.tsx";
+import { ParameterNote } from "./parameter-note.tsx";
 import { ParameterScale } from "./parameter-scale.tsx";
 import { useTrial } from "./parameter-trial.ts";
+import { useTyping } from "./parameter-typing.ts";
 import { type RuleWord, useAttended, useRuleWord } from "./rule-word.ts";
 import { Runs } from "./runs.tsx";
 
@@ -15,6 +18,9 @@ interface Props {
   readonly place: number;
   onTry(name: string, source: string | null): void;
   onSet(name: string, source: string): void;
+  onJudge(name: string, source: string): Promise<string>;
+  /** null: for one who only reads. */
+  readonly editing: RuleEditing | null;
   readonly onSay: (words: string) => void;
   readonly onWord: (name: string, word: RuleWord | null) => void;
 }
@@ -29,11 +35,11 @@ const DIRECTIONS: Readonly<Record<string, 1 | -1>> = { ArrowRight: 1, ArrowUp: 1
  *
  *     at rest ──drag or arrow──▶ tried (previewed privately) ──release, Enter, or a pause──▶ set (one edit) ──▶ at rest
  *        │                            └──Esc──▶ at rest, as before
- *        └──digit, Enter or click──▶ typed ──Enter──▶ set;  ──Esc──▶ at rest, as before
+ *        └──digit, Enter or click──▶ typed ──Enter──▶ set, or said what is wrong;  ──Esc──▶ at rest, as before
  */
-export function ParameterIndex({ parameter, borders, place, onTry, onSet, onSay, onWord }: Props) {
+export function ParameterIndex({ parameter, borders, place, editing, onTry, onSet, onJudge, onSay, onWord }: Props) {
   const trial = useTrial(parameter, onTry, onSet);
-  const [typed, setTyped] = useState<string | null>(null);
+  const typing = useTyping({ name: parameter.name, onJudge, onSettle: trial.settle, onWord, onSay });
   const { attended, attend } = useAttended();
   const description = useId();
   const drag = useRef<{ at: number; from: number; moved: boolean; last: number } | null>(null);
@@ -49,10 +55,11 @@ export function ParameterIndex({ parameter, borders, place, onTry, onSet, onSay,
   };
   const onKeyDown = (event: KeyboardEvent) => {
     const direction = DIRECTIONS[event.key];
-    if (event.key === "Escape") abandon();
+    if (direction !== undefined && event.altKey && event.shiftKey) editing?.move(parameter.name, direction);
+    else if (event.key === "Escape") abandon();
     else if (event.key === "Enter" && trial.tried !== null) trial.settle(sourceOf(trial.tried));
-    else if (event.key === "Enter" || event.key === " ") setTyped(parameter.source);
-    else if (/^[\d.+-]$/.test(event.key) && !event.ctrlKey && !event.metaKey && !event.altKey) setTyped(event.key);
+    else if (event.key === "Enter" || event.key === " ") typing.open(parameter.source);
+    else if (/^[\d.+-]$/.test(event.key) && !event.ctrlKey && !event.metaKey && !event.altKey) typing.open(event.key);
     else if (direction !== undefined && movable) {
       const fineness = event.ctrlKey ? 10 : event.altKey ? 0.1 : 1;
       const next = stepped(value, scale?.step ?? freeStep(value, parameter.step), direction, fineness, scale);
@@ -85,7 +92,7 @@ export function ParameterIndex({ parameter, borders, place, onTry, onSet, onSay,
     drag.current = null;
     if (begun === null) return;
     if (begun.moved) trial.settle(sourceOf(begun.last));
-    else setTyped(parameter.source);
+    else typing.open(parameter.source);
   };
 
   const label = parameter.note === "" ? parameter.name : `${parameter.name}, ${parameter.note}`;
@@ -96,7 +103,7 @@ export function ParameterIndex({ parameter, borders, place, onTry, onSet, onSay,
     <div ref={attend} className="hl-par" style={{ "--strand": strandColour(place) } as CSSProperties}>
       <div className="hl-par-value">
         <Runs runs={[{ run: "math", tex: parameter.symbol }]} macros={NO_MACROS} /> ={" "}
-        {typed === null ? (
+        {typing.typed === null ? (
           <span
             role="spinbutton"
             tabIndex={0}
@@ -105,7 +112,7 @@ export function ParameterIndex({ parameter, borders, place, onTry, onSet, onSay,
             aria-valuenow={value ?? 0}
             aria-valuemin={parameter.min ?? undefined}
             aria-valuemax={parameter.max ?? undefined}
-            aria-describedby={words === "" ? undefined : description}
+            aria-describedby={description}
             aria-valuetext={parameter.unit === "" ? shown : `${shown} ${parameter.unit}`}
             data-parameter={parameter.name}
             onKeyDown={onKeyDown}
@@ -118,21 +125,19 @@ export function ParameterIndex({ parameter, borders, place, onTry, onSet, onSay,
           </span>
         ) : (
           <ParameterField
+            name={parameter.name}
             label={label}
-            first={typed}
-            onEnter={(source) => {
-              setTyped(null);
-              trial.settle(source);
-            }}
-            onEscape={() => setTyped(null)}
+            first={typing.typed}
+            fault={typing.fault}
+            onWrite={typing.write}
+            onEnter={typing.enter}
+            onEscape={typing.close}
           />
         )}
         {parameter.unit === "" ? null : <span className="hl-par-unit"> {parameter.unit}</span>}
         {was === null ? null : <span className="hl-par-was"> was {wasShown}</span>}
       </div>
-      <div className="hl-par-note">
-        {parameter.plain ? parameter.note : `${parameter.note} = ${parameter.source}`.replace(/^ = /, "")}
-      </div>
+      <ParameterNote parameter={parameter} onChange={editing === null ? null : () => editing.change(parameter.name)} />
       {scale === null || value === null ? null : (
         <ParameterScale
           scale={scale}
@@ -150,11 +155,9 @@ export function ParameterIndex({ parameter, borders, place, onTry, onSet, onSay,
           onPointerCancel={abandon}
         />
       )}
-      {words === "" ? null : (
-        <span id={description} className="hl-said">
-          {words}
-        </span>
-      )}
+      <span id={description} className="hl-said">
+        {words === "" ? `${parameter.hangs}.` : `${parameter.hangs}. ${words}`}
+      </span>
     </div>
   );
 }

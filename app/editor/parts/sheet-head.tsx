@@ -1,6 +1,9 @@
+import { useMemo } from "react";
 import { Command, CommandLink, RunningHead } from "../../ui/index.ts";
-import type { StripName } from "../keys/types.ts";
+import type { SheetAtHand, StripName } from "../keys/types.ts";
 import type { Desk } from "../live/desk.ts";
+import { RuleEntry } from "../rule/rule-entry.tsx";
+import { ruleEditing, typedFault } from "../rule/rule-editing.ts";
 import { ClosedNotice } from "./closed-notice.tsx";
 import { ParameterRule } from "./parameter-rule.tsx";
 import { Runs } from "./runs.tsx";
@@ -74,11 +77,19 @@ function People({ desk }: { readonly desk: Desk }) {
   return people.length === 0 ? null : <span className="head-name">{listed(people)} here</span>;
 }
 
+interface RuleProps {
+  readonly desk: Desk;
+  readonly text: string;
+  /** null until the text is on the sheet. */
+  readonly sheet: SheetAtHand | null;
+}
+
 /** The rule with the paper's parameters. */
-export function SheetRule({ desk, text }: { readonly desk: Desk; readonly text: string }) {
+export function SheetRule({ desk, text, sheet }: RuleProps) {
   const read = useDeskView(desk, ({ model }) => model !== null);
   const parameters = useDeskView(desk, ({ model }) => model?.parameters ?? NO_PARAMETERS);
   const borders = useDeskView(desk, (view) => view.borders);
+  const editing = useMemo(() => ruleEditing(sheet), [sheet]);
   if (!read) return <RulePlace text={text} />;
   return (
     <ParameterRule
@@ -87,7 +98,11 @@ export function SheetRule({ desk, text }: { readonly desk: Desk; readonly text: 
       onSay={desk.say}
       onTry={(name, source) => desk.tryParameter(name, source)}
       onSet={(name, source) => desk.setParameter(name, source)}
-    />
+      onJudge={async (name, source) => (sheet === null ? "" : typedFault(sheet, name, source))}
+      editing={editing}
+    >
+      {sheet === null ? null : <RuleEntry sheet={sheet} />}
+    </ParameterRule>
   );
 }
 

@@ -28,7 +28,7 @@ export default function Sheet(props: SheetProps) {
       {desk === null ? null : (
         <>
           <SheetHead desk={desk} props={props} onCommand={(open) => atHand?.strips.set({ open })} />
-          <SheetRule desk={desk} text={props.first.text} />
+          <SheetRule desk={desk} text={props.first.text} sheet={atHand} />
           {strands === null ? null : <Heads desk={desk} strands={strands} />}
           <SheetNotices desk={desk} props={props} />
           <SheetVoice desk={desk} />

@@ -44,6 +44,7 @@ export function sheetAtHand(text: string, { writes = true, computing = true } = 
     cellCommands: { ...host.commands, ...asked },
     bibliographyNow: () => "",
     edit: (change: Parameters<EditorView["dispatch"]>[0]) => view.dispatch(change),
+    editParameters: (change: Parameters<EditorView["dispatch"]>[0]) => view.dispatch(change),
     ...asked,
   };
   const sheet: SheetAtHand = {
@@ -51,7 +52,7 @@ export function sheetAtHand(text: string, { writes = true, computing = true } = 
     desk: desk as unknown as Desk,
     view,
     strands: null,
-    strips: createStore<Strips>({ open: null, composing: false, binding: FIRST_BINDING }),
+    strips: createStore<Strips>({ open: null, about: null, composing: false, binding: FIRST_BINDING }),
     writes,
     paperId: "p",
     signedIn: true,

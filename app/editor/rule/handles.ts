@@ -1,0 +1,31 @@
+/** How long a handle is waited for, in ms: the text has to be read before the rule shows what was changed. */
+const PATIENCE_MS = 2000;
+
+/** The value of a parameter on the rule, which takes the keys; null: it does not stand there. */
+export function handleOf(name: string): HTMLElement | null {
+  const handles = document.querySelectorAll<HTMLElement>(".hl-rule [data-parameter]");
+  return [...handles].find(({ dataset }) => dataset.parameter === name) ?? null;
+}
+
+/** The parameter whose value has the keys; null: none has. */
+export function heldParameter(): string | null {
+  const held = document.activeElement;
+  return held instanceof HTMLElement ? (held.dataset.parameter ?? null) : null;
+}
+
+/**
+ * Gives the keys to a parameter's value, as soon as it stands on the rule, and again when it loses them by being moved
+ * there; not when the keys have gone elsewhere meanwhile.
+ */
+export function focusHandle(name: string): void {
+  const begun = performance.now();
+  const look = () => {
+    const held = document.activeElement;
+    const handle = handleOf(name);
+    const free = held === null || held === document.body || held === handle;
+    if (!free || performance.now() - begun > PATIENCE_MS) return;
+    if (handle !== null && held !== handle) handle.focus();
+    requestAnimationFrame(look);
+  };
+  look();
+}
