@@ -31,6 +31,8 @@ export interface KindDocumentation {
 export interface OfferedCell {
   /** Its name, or how that begins where it is taken; "" where the kind is best without one. */
   readonly name: string;
+  /** What it is, in a few words: "the law of the number absorbed". */
+  readonly line: string;
   /** Further words by which one may ask for it. */
   readonly words: string;
   /**

@@ -25,6 +25,7 @@ export const CHECK_DOCUMENTATION: KindDocumentation = {
   example: "that: K.mean < 0.05\nbecause: So few reach the shore that none is the usual case.",
   offered: {
     name: "bound",
+    line: "whether a comparison holds",
     words: "compare inequality less than holds agree",
     body: "that: ‹«number» < «above»›\nbecause: why it should hold",
   },

@@ -36,6 +36,7 @@ export const COUNTS_DOCUMENTATION: KindDocumentation = {
   example: "of: larvae\nstart: 1\nup_to: 200",
   offered: {
     name: "K",
+    line: "the law of the number absorbed",
     words: "absorbed law distribution number many probability stems mean variance moments",
     body: "of: «process»\nstart: ‹«start»›\nup_to: 100\ncaption: The law of $K$, the number absorbed.",
   },

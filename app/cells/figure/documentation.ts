@@ -60,6 +60,7 @@ export const FIGURE_DOCUMENTATION: KindDocumentation = {
   example: "over: {x_1: 0 to 4}\ncurves:\n  near: exp(-x_1)\n  far: larvae.survival(x_1)\nlevels: [1/2]",
   offered: {
     name: "curves",
+    line: "curves of formulas and of cells",
     words: "plot plate graph curve compare draw",
     body: "over: {«dummy»: «from» to «to»}\ncurves:\n  «column»: ‹«curve»›\ncaption: The values of `«curve»`.",
   },

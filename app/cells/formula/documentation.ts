@@ -13,6 +13,7 @@ export const FORMULA_DOCUMENTATION: KindDocumentation = {
   example: "excess: mu - sqrt(2*beta)\ntwice: 2*excess",
   offered: {
     name: "derived",
+    line: "numbers from other numbers",
     words: "calculate quantity expression quotient ratio number",
     body: "«key»: ‹«number»/2›",
   },

@@ -33,6 +33,7 @@ export const GENERATING_FUNCTION_DOCUMENTATION: KindDocumentation = {
   example: "of: larvae\nstart: [1/2, 1, 2]",
   offered: {
     name: "g",
+    line: "E s^K for one or more starts",
     words: "series powers radius s0",
     body: "of: «process»\nstart: ‹«start»›\ncaption: The generating function of $K$, up to $s_0$ where it ends.",
   },

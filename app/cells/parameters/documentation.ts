@@ -22,6 +22,7 @@ export const PARAMETERS_DOCUMENTATION: KindDocumentation = {
   example: "mu: {value: 2, min: 1.45, max: 4, step: 0.05, note: drift away from the barrier}\nbeta: 1",
   offered: {
     name: "",
+    line: "numbers on the rule above",
     words: "parameter rule scale drag slider constant",
     body: "‹«new»›: {value: 1, min: 0, max: 2, step: 0.05, note: what it is}",
   },

@@ -27,6 +27,7 @@ export const PORTRAIT_DOCUMENTATION: KindDocumentation = {
   example: "of: larvae",
   offered: {
     name: "plane",
+    line: "the phase plane",
     words: "phase plane trajectory orbit orbits",
     body: "of: ‹«process»›\ncaption: All profiles of «process» lie on one trajectory of the phase plane.",
   },

@@ -35,6 +35,7 @@ export const PROCESS_DOCUMENTATION: KindDocumentation = {
   example: "drift: 2\nrate: 1\noffspring: binary",
   offered: {
     name: "family",
+    line: "drift, branching, a barrier at 0",
     words: "branching diffusion drift rate offspring particles motion",
     body: "drift: ‹«drift»›\nrate: «rate»\noffspring: binary",
   },

@@ -36,6 +36,7 @@ export const PROFILE_DOCUMENTATION: KindDocumentation = {
   example: "of: larvae\ns: [0, 1/2, 2, s0]",
   offered: {
     name: "w",
+    line: "w(x, s) along the half-line",
     words: "curves wave solution barrier s0",
     body: "of: «process»\ns: ‹[0, 1/2, s0]›\ncaption: The profiles $w(x,s)$ of «process» for some $s$ up to $s_0$.",
   },

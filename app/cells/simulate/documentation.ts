@@ -46,6 +46,7 @@ export const SIMULATE_DOCUMENTATION: KindDocumentation = {
   example: "of: larvae\nstart: 1\nreplicates: 20000",
   offered: {
     name: "S",
+    line: "families drawn by chance",
     words: "simulate chance random draw replicates drawn",
     body: "of: «process»\nstart: ‹«start»›\nreplicates: 20000\ncaption: The law of $K$ by simulation.",
   },

@@ -30,6 +30,7 @@ export const SOLVE_DOCUMENTATION: KindDocumentation = {
   example: "vary: mu\nbetween: 1.45 to 4\nwhere: K.s0 - 3",
   offered: {
     name: "level",
+    line: "where a formula becomes 0",
     words: "solve zero equation where becomes inverse",
     body: "vary: «varied»\nbetween: «low» to «high»\nwhere: «measured» - ‹«near»›",
   },

@@ -47,6 +47,7 @@ export const SWEEP_DOCUMENTATION: KindDocumentation = {
   example: "over: {mu_1: 1 to 3}\npoints: 20\nrecord:\n  square: mu_1^2",
   offered: {
     name: "moves",
+    line: "a result against a parameter",
     words: "moves changes against depends along vary varying parameter",
     body: "over: {‹«varied»›: «low» to «high»}\nrecord:\n  «column»: «measured»\ncaption: How `«measured»` moves with $«symbol»$.",
   },

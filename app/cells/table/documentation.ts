@@ -28,6 +28,7 @@ export const TABLE_DOCUMENTATION: KindDocumentation = {
     "rows: {n: 1 to 4}\ncolumns:\n  exact: K(n)\n  share: {formula: K(n)/(1 - K(0)), head: share, digits: 3, as: percent}",
   offered: {
     name: "rows",
+    line: "formulas in rows",
     words: "rows columns values list",
     body: "rows: {«dummy»: «from» to «few»}\ncolumns:\n  «column»: ‹«curve»›\ncaption: The values of `«curve»`.",
   },

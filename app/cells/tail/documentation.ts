@@ -32,6 +32,7 @@ export const TAIL_DOCUMENTATION: KindDocumentation = {
   example: "of: larvae\nstart: 1\nup_to: 1000",
   offered: {
     name: "T",
+    line: "that law for large n",
     words: "asymptotic asymptotics large n constant exponent decay",
     body: "of: «process»\nstart: ‹«start»›\nup_to: 1000\ncaption: The law of $K$ for large $n$.",
   },

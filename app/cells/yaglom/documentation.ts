@@ -24,6 +24,7 @@ export const YAGLOM_DOCUMENTATION: KindDocumentation = {
   example: "of: larvae\nup_to: 60",
   offered: {
     name: "Y",
+    line: "from far away, given that any is absorbed",
     words: "yaglom limit conditional given absorbed far start",
     body: "of: «process»\nup_to: ‹60›\ncaption: The law of $K$ given that any is absorbed, for a far start.",
   },

@@ -19,6 +19,7 @@ function cellOffer(kind: KindWords, asked: Asked, knowledge: CaseKnowledge): Off
     id: `cell ${kind.name}`,
     compartment: "cells",
     title: kind.label,
+    line: offered.line,
     words: kind.meaning,
     here: hereWords(ground),
     value: null,
@@ -57,7 +58,7 @@ function score(kind: KindWords, { words }: Asked, ground: Ground): number {
   if (words.length === 0) return 1;
   const fields: readonly Field[] = [
     { words: `${kind.label} ${kind.name}`, weight: LABEL },
-    { words: kind.offered.words, weight: SYNONYM },
+    { words: `${kind.offered.words} ${kind.offered.line}`, weight: SYNONYM },
     { words: kind.meaning, weight: SUMMARY },
   ];
   const body = withoutMarks(fillPlaces(kind.offered.body, ground));

@@ -4,8 +4,9 @@ import { citationOffers, numberOffers, parameterOffers, referenceOffers } from "
 import { surroundingOffers } from "./surroundings.ts";
 import { type CaseKnowledge, COMPARTMENTS, type Compartment, type CompartmentName, type Offer } from "./types.ts";
 
-/** How many offers a compartment shows of what a paper has. */
-const MOST_SHOWN = 8;
+/** How many offers of what a paper has are shown: numbers, and the other compartments together. */
+const MOST_NUMBERS = 12;
+const MOST_OTHERS = 12;
 
 const CONTENTS: Readonly<Record<CompartmentName, { title: string; keepsPlaces: boolean; offers: typeof cellOffers }>> =
   {
@@ -24,12 +25,17 @@ const CONTENTS: Readonly<Record<CompartmentName, { title: string; keepsPlaces: b
  */
 export function offers(query: string, knowledge: CaseKnowledge): readonly Compartment[] {
   const asked = askedFor(query);
-  return COMPARTMENTS.map((name) => {
+  const found = COMPARTMENTS.map((name) => {
     const { title, keepsPlaces, offers: all } = CONTENTS[name];
-    const found = all(asked, knowledge);
-    if (keepsPlaces) return { name, title, offers: found, more: 0 };
-    const wanted = found.filter(({ score }) => score > 0).sort((a, b) => b.score - a.score);
-    return { name, title, offers: wanted.slice(0, MOST_SHOWN), more: Math.max(0, wanted.length - MOST_SHOWN) };
+    const whole = all(asked, knowledge);
+    const list = keepsPlaces ? whole : whole.filter(({ score }) => score > 0).sort((a, b) => b.score - a.score);
+    return { name, title, list, keepsPlaces };
+  });
+  const others = found.filter(({ name, list, keepsPlaces }) => !keepsPlaces && name !== "numbers" && list.length > 0);
+  return found.map(({ name, title, list, keepsPlaces }) => {
+    const most = name === "numbers" ? MOST_NUMBERS : Math.floor(MOST_OTHERS / Math.max(1, others.length));
+    const shown = keepsPlaces ? list : list.slice(0, most);
+    return { name, title, offers: shown, more: list.length - shown.length };
   });
 }
 

@@ -43,10 +43,10 @@ const PROSE: readonly Surrounding[] = [
 /** Environments, sections, equations and footnotes. */
 export function surroundingOffers(asked: Asked, knowledge: CaseKnowledge): Offer[] {
   const environments = knowledge.words.environments.map(
-    ({ name, meaning }): Surrounding => ({
+    ({ name }): Surrounding => ({
       name,
       title: name.charAt(0).toUpperCase() + name.slice(1),
-      words: meaning,
+      words: name === "proof" ? "an argument" : "numbered in its section",
       synonyms: name === "proof" ? "argument" : "statement environment surroundings",
       outermost: true,
       text: (label) =>
@@ -66,6 +66,7 @@ function surroundingOffer(one: Surrounding, asked: Asked, knowledge: CaseKnowled
     id: `surroundings ${one.name}`,
     compartment: "surroundings",
     title: one.title,
+    line: one.words,
     words: one.words,
     here: "",
     value: null,
@@ -83,7 +84,8 @@ function footnoteOffer(asked: Asked, knowledge: CaseKnowledge): Offer {
     id: "surroundings footnote",
     compartment: "surroundings",
     title: "Footnote",
-    words: "a mark here, the note below the paragraph",
+    line: "a mark here, its words below",
+    words: "a mark here, its words below the paragraph",
     here: "",
     value: null,
     setting: { set: "footnote", label: takeName("note", namesTaken(knowledge)) },

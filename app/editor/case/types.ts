@@ -37,7 +37,9 @@ export interface Offer {
   readonly id: string;
   readonly compartment: CompartmentName;
   readonly title: string;
-  /** A line on it, with mathematics in dollars. */
+  /** A few words beside the title, with mathematics in dollars. */
+  readonly line: string;
+  /** All that is to be said of it, likewise. */
   readonly words: string;
   /** What it would be here: "of larvae", "K.mean against mu"; "" where there is nothing to say. */
   readonly here: string;

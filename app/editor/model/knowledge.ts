@@ -35,7 +35,7 @@ export interface KindWords extends Word {
   readonly keys: readonly KeyWord[];
   readonly parts: readonly string[];
   /** How the case sets a cell of the kind. */
-  readonly offered: { readonly name: string; readonly words: string; readonly body: string };
+  readonly offered: { readonly name: string; readonly line: string; readonly words: string; readonly body: string };
 }
 
 /** What one paper has named. */
