@@ -112,6 +112,14 @@ export const SHEET_COMMANDS: readonly SheetCommand[] = [
     act: ({ desk, view }) => said(followBack(view), desk, "No strand was followed."),
   },
   {
+    id: "case",
+    group: "Text",
+    words: "Open the case",
+    letter: "c",
+    writing: true,
+    act: opens("case"),
+  },
+  {
     id: "quote",
     group: "Text",
     words: "Quote a value",

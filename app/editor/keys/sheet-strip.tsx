@@ -15,6 +15,7 @@ interface Props {
 const reading = () => import("../finding/reading-strips.ts");
 const OutlineStrip = lazy(async () => ({ default: (await reading()).OutlineStrip }));
 const RenameStrip = lazy(async () => ({ default: (await reading()).RenameStrip }));
+const CaseStrip = lazy(async () => ({ default: (await import("../case/case-strip.tsx")).CaseStrip }));
 const FETCHING = <p className="hl-strip-words">Reading the paper</p>;
 
 /** What opens above the tail line; a parameter's entry opens beneath the rule. */
@@ -26,6 +27,7 @@ const TITLES: Readonly<Record<TailStrip, string>> = {
   rename: "Rename",
   outline: "Outline",
   errata: "Errata",
+  case: "The case",
 };
 
 /** What stands above the tail line: the strip that is open, and word of the composing key while it waits. */
@@ -65,6 +67,12 @@ function Body({ open, sheet, personId }: Props & { readonly open: TailStrip }) {
       return (
         <Suspense fallback={FETCHING}>
           <RenameStrip sheet={sheet} />
+        </Suspense>
+      );
+    case "case":
+      return (
+        <Suspense fallback={FETCHING}>
+          <CaseStrip sheet={sheet} />
         </Suspense>
       );
     case "commands":
