@@ -1,6 +1,8 @@
 /** Cells: the plan of a paper, keys, the kinds of cell there are, results, and what becomes of them. */
 export type { AnswerBorder, AnswerRange } from "./answer-range.ts";
 export { answerRange, answerRangeSteps } from "./answer-range.ts";
+export type { AxesSaid, AxisSaid } from "./axes-editing.ts";
+export { axesEdits, axesSaid, NO_AXES_SAID } from "./axes-editing.ts";
 export { canonicalJson, sha256 } from "./canonical.ts";
 export { causeWords } from "./causes.ts";
 export type { ComputeHooks } from "./compute.ts";
@@ -20,7 +22,7 @@ export { removesParameter } from "./parameters-editing/remove.ts";
 export type { CellPart, SplitCell } from "./parts.ts";
 export { beginCell, computePart, mergeParts } from "./parts.ts";
 export { planPaper } from "./plan.ts";
-export { captionOf, PRESENTATION_KEYS } from "./presentation.ts";
+export { axisEnd, captionOf, PRESENTATION_KEYS } from "./presentation.ts";
 export type { Provenance } from "./provenance.ts";
 export { durationWords, provenance } from "./provenance.ts";
 export { figureReadings } from "./readings.ts";

@@ -192,12 +192,13 @@ function entriesOf(map: YamlMap | null, key: string): ReadonlyMap<string, Yaml> 
 function rangeOf(node: Yaml | undefined, parameters: Scope): readonly [number, number] | null {
   if (node?.yaml !== "scalar") return null;
   const ends = node.text.split(/\s+to\s+/);
-  const [from, to] = ends.map((source) => numberIn(source, parameters));
+  const [from, to] = ends.map((source) => axisEnd(source, parameters));
   if (ends.length !== 2 || typeof from !== "number" || typeof to !== "number") return null;
   return from < to ? [from, to] : null;
 }
 
-function numberIn(source: string, parameters: Scope): number | null {
+/** The number that an end of an axis is written as: a formula, which may read parameters. null: it comes to none. */
+export function axisEnd(source: string, parameters: Scope): number | null {
   const parsed = parsedFormula(source);
   if (!parsed.ok) return null;
   const formula: Formula = parsed.formula;

@@ -26,6 +26,8 @@ export interface Axis {
   readonly scale: "linear" | "log";
   /** Chosen range; null: from the data. */
   readonly range: readonly [number, number] | null;
+  /** Scale and range as they are without the paper's own choice; left out where it made none. */
+  readonly otherwise?: Pick<Axis, "scale" | "range">;
 }
 
 export interface Series {

@@ -66,7 +66,7 @@ function xAxis(
   const axes = cells.flatMap((cell) => cell.axes?.x ?? []);
   const scale = over === null && axes.length > 0 && axes.every((axis) => axis.scale === "log") ? "log" : "linear";
   const label = over === null ? (axes[0]?.label ?? "") : symbolOf(over);
-  return labelledAxis(label, scale, { ...x, range: x.range ?? interval });
+  return labelledAxis(label, scale, x, interval);
 }
 
 /** The vertical label that all cells drawn share; curves of formulas are named at their ends. */

@@ -1,4 +1,4 @@
-import type { Paper, YamlEntry } from "../../paper/index.ts";
+import type { Paper } from "../../paper/index.ts";
 import type { TextEdit } from "../text-edits.ts";
 import type { PlannedParameter } from "../types.ts";
 import {
@@ -10,7 +10,7 @@ import {
   placeOf,
 } from "./entry.ts";
 import { faultOf, type PaperAfter, type ParameterProblem, paperAfter } from "./judge.ts";
-import { addedEntry, aroundOf, indentOf, lineEnd, removedEntry, type YamlMap } from "./map-edits.ts";
+import { aroundOf, changedEntries, indentOf, lineEnd } from "./map-edits.ts";
 import { endOf, scalarEdit, scalarText } from "./scalar.ts";
 
 /** An edit of a paper's parameters: in rising order, to be made as one. */
@@ -65,54 +65,10 @@ function askedChanges({ entry }: ParameterPlace, changes: FieldChanges): Readonl
 function editsOf(text: string, place: ParameterPlace, asked: ReadonlyMap<ParameterField, string>): TextEdit[] {
   const { entry, body } = place;
   if (asked.size === 0) return [];
-  if (entry.value.yaml === "map") return editsOfMap(text, entry.value, asked);
+  if (entry.value.yaml === "map") return changedEntries(text, entry.value, asked);
   const value = asked.get("value");
   if (asked.size === 1 && value !== undefined) return [scalarEdit(text, entry.value, value, aroundOf(text, body))];
   return asMap(text, place, { ...fieldsOf(entry), ...Object.fromEntries(asked) });
-}
-
-function editsOfMap(text: string, map: YamlMap, asked: ReadonlyMap<ParameterField, string>): TextEdit[] {
-  const edits: TextEdit[] = [];
-  const added: string[] = [];
-  const around = aroundOf(text, map);
-  for (const [field, words] of asked) {
-    const entry = map.entries.find(({ key }) => key === field);
-    if (entry === undefined) added.push(...(words === "" ? [] : [`${field}: ${scalarText(words, around)}`]));
-    else if (words !== "") edits.push(scalarEdit(text, entry.value, words, around));
-  }
-  const removed = map.entries.filter(({ key }) => isField(key) && asked.get(key) === "");
-  edits.push(...removals(text, map, removed));
-  const left = map.entries.filter((entry) => !removed.includes(entry));
-  if (added.length > 0) edits.push(...additions(text, { ...map, entries: left }, added));
-  return edits.sort((a, b) => a.from - b.from || a.to - b.to);
-}
-
-/** Entries are taken out one after the other, from the last: what stands between two that go is named once. */
-function removals(text: string, map: YamlMap, removed: readonly YamlEntry[]): TextEdit[] {
-  const edits: TextEdit[] = [];
-  let left = map.entries;
-  for (const entry of [...removed].reverse()) {
-    edits.push(...removedEntry(text, { ...map, entries: left }, entry));
-    left = left.filter((each) => each !== entry);
-  }
-  return edits;
-}
-
-function additions(text: string, map: YamlMap, added: readonly string[]): TextEdit[] {
-  const first = added[0] ?? "";
-  const edit = addedEntry(text, map, first);
-  const between = edit.insert.slice(0, edit.insert.length - first.length);
-  return [
-    {
-      ...edit,
-      insert:
-        edit.insert +
-        added
-          .slice(1)
-          .map((entry) => between + entry)
-          .join(""),
-    },
-  ];
 }
 
 /** A parameter that was a value alone, with more said of it: in braces, or in lines where its neighbours are. */
@@ -169,8 +125,4 @@ function notAsAsked(
   const read = fieldsOf(place.entry);
   const field = [...asked].find(([field, words]) => read[field].replace(/\s+/g, " ") !== words)?.[0];
   return field === undefined ? null : { problem: "This cannot be written here as it stands.", field };
-}
-
-function isField(key: string): key is ParameterField {
-  return PARAMETER_FIELDS.some((field) => field === key);
 }

@@ -1,6 +1,6 @@
 import type { Yaml, YamlEntry } from "../../paper/index.ts";
 import type { TextEdit } from "../text-edits.ts";
-import { type Around, endOf } from "./scalar.ts";
+import { type Around, endOf, scalarEdit, scalarText } from "./scalar.ts";
 
 /** A map of a cell's body, in braces or with an entry a line. */
 export type YamlMap = Extract<Yaml, { yaml: "map" }>;
@@ -41,6 +41,68 @@ export function removedEntry(text: string, map: YamlMap, entry: YamlEntry): read
   const between = text.slice(from, entry.keyFrom);
   const comma = from + between.indexOf(",");
   return between.includes("#") && comma >= from ? [cut(comma, comma + 1), cut(entry.keyFrom, to)] : [cut(from, to)];
+}
+
+/** What an entry is to say: a text, or YAML that is written as it stands, a list in brackets for one. */
+export type EntryAsked = string | { readonly yaml: string };
+
+/**
+ * The edits by which entries of a map say something else, in rising order; what is not asked for stays as it is written.
+ * @param asked what they are to say by key; "" takes an entry away
+ */
+export function changedEntries(text: string, map: YamlMap, asked: ReadonlyMap<string, EntryAsked>): TextEdit[] {
+  const edits: TextEdit[] = [];
+  const added: string[] = [];
+  const around = aroundOf(text, map);
+  for (const [field, words] of asked) {
+    const entry = map.entries.find(({ key }) => key === field);
+    if (entry === undefined) added.push(...(words === "" ? [] : [`${field}: ${writtenAs(words, around)}`]));
+    else if (typeof words !== "string") edits.push(verbatimEdit(text, entry.value, words.yaml));
+    else if (words !== "") edits.push(scalarEdit(text, entry.value, words, around));
+  }
+  const removed = map.entries.filter(({ key }) => asked.get(key) === "");
+  edits.push(...removals(text, map, removed));
+  const left = map.entries.filter((entry) => !removed.includes(entry));
+  if (added.length > 0) edits.push(...additions(text, { ...map, entries: left }, added));
+  return edits.sort((a, b) => a.from - b.from || a.to - b.to);
+}
+
+function writtenAs(asked: EntryAsked, around: Around): string {
+  return typeof asked === "string" ? scalarText(asked, around) : asked.yaml;
+}
+
+function verbatimEdit(text: string, value: Yaml, yaml: string): TextEdit {
+  const to = endOf(text, value);
+  const gap = text.charAt(value.from - 1) === ":" ? " " : "";
+  return { from: value.from, to, insert: gap + yaml };
+}
+
+/** Entries are taken out one after the other, from the last: what stands between two that go is named once. */
+function removals(text: string, map: YamlMap, removed: readonly YamlEntry[]): TextEdit[] {
+  const edits: TextEdit[] = [];
+  let left = map.entries;
+  for (const entry of [...removed].reverse()) {
+    edits.push(...removedEntry(text, { ...map, entries: left }, entry));
+    left = left.filter((each) => each !== entry);
+  }
+  return edits;
+}
+
+function additions(text: string, map: YamlMap, added: readonly string[]): TextEdit[] {
+  const first = added[0] ?? "";
+  const edit = addedEntry(text, map, first);
+  const between = edit.insert.slice(0, edit.insert.length - first.length);
+  return [
+    {
+      ...edit,
+      insert:
+        edit.insert +
+        added
+          .slice(1)
+          .map((entry) => between + entry)
+          .join(""),
+    },
+  ];
 }
 
 /** The whole lines of an entry in a body with an entry a line, with comments directly above it. */
