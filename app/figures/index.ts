@@ -1,4 +1,5 @@
 /** Figures: one description, from which the page's SVG, the print's pgfplots and the CSV are made. */
+export { axisEnds } from "./axis-ends.ts";
 export { type Crossing, crossings, levelCrossings } from "./crossings.ts";
 export { figureToCsv, tableToCsv } from "./csv.ts";
 export { FigureReading } from "./figure-reading.tsx";

@@ -69,7 +69,7 @@ function noAxes(sheet: SheetAtHand): string {
   const face = cellAtHand(sheet);
   const panels = face === null ? undefined : figureOf(sheet, face)?.panels;
   return face !== null && (panels?.length ?? 0) > 0
-    ? `Each panel of ${face.title} has the axes of its own cell: set them there.`
+    ? `${face.title} has several pairs of axes: write \`axes\` in the working that each belongs to.`
     : noFigure(sheet);
 }
 

@@ -1,6 +1,7 @@
 import { lazy, Suspense } from "react";
 import { ErrataList } from "../finding/errata-list.tsx";
 import { FindStrip } from "../finding/find-strip.tsx";
+import { useAxesStrip } from "../plates/use-axes-strip.ts";
 import { bindingWords } from "./binding.ts";
 import { CommandList } from "./command-list.tsx";
 import { Strip } from "./strip.tsx";
@@ -16,6 +17,7 @@ const reading = () => import("../finding/reading-strips.ts");
 const OutlineStrip = lazy(async () => ({ default: (await reading()).OutlineStrip }));
 const RenameStrip = lazy(async () => ({ default: (await reading()).RenameStrip }));
 const CaseStrip = lazy(async () => ({ default: (await import("../case/case-strip.tsx")).CaseStrip }));
+const AxesStrip = lazy(async () => ({ default: (await import("../plates/axes-strip.tsx")).AxesStrip }));
 const FETCHING = <p className="hl-strip-words">Reading the paper</p>;
 
 /** What opens above the tail line; a parameter's entry opens beneath the rule. */
@@ -27,11 +29,13 @@ const TITLES: Readonly<Record<TailStrip, string>> = {
   rename: "Rename",
   outline: "Outline",
   errata: "Errata",
+  axes: "Axes",
   case: "The case",
 };
 
 /** What stands above the tail line: the strip that is open, and word of the composing key while it waits. */
 export function SheetStrip({ sheet, personId }: Props) {
+  useAxesStrip(sheet);
   const open = useStrips(sheet.strips, (strips) => strips.open);
   const composing = useStrips(sheet.strips, (strips) => strips.composing);
   const binding = useStrips(sheet.strips, (strips) => strips.binding);
@@ -73,6 +77,12 @@ function Body({ open, sheet, personId }: Props & { readonly open: TailStrip }) {
       return (
         <Suspense fallback={FETCHING}>
           <CaseStrip sheet={sheet} />
+        </Suspense>
+      );
+    case "axes":
+      return (
+        <Suspense fallback={FETCHING}>
+          <AxesStrip sheet={sheet} />
         </Suspense>
       );
     case "commands":

@@ -1,7 +1,7 @@
 import { lazy, memo, Suspense, useCallback, useMemo, useState } from "react";
 import { type Figure, FigurePlate } from "../../figures/index.ts";
 import type { SheetHost } from "../text/host.ts";
-import type { AxisTried } from "./types.ts";
+import type { AxisTried, PlatesView } from "./types.ts";
 import { usePlates } from "./use-plates.ts";
 
 /** What a plate is read with: fetched when the first one is. */
@@ -27,7 +27,7 @@ export const SheetFigure = memo(({ figure, slot, host }: Props) => {
   const [measured, setMeasured] = useState(0);
   const [pointed, setPointed] = useState<Pointed | null>(null);
   const read = usePlates(host.plates, (view) => view.read === slot);
-  const tried = usePlates(host.plates, (view) => (view.tried?.slot === slot ? view.tried : null));
+  const tried = usePlates(host.plates, (view) => triedOn(view, slot, figure));
   const drawn = useMemo(
     () => (tried === null ? figure : { ...figure, x: axisAs(figure.x, tried.x), y: axisAs(figure.y, tried.y) }),
     [figure, tried],
@@ -65,6 +65,11 @@ export const SheetFigure = memo(({ figure, slot, host }: Props) => {
     </div>
   );
 });
+
+/** While axes are being set they are tried on whatever figure their cell has; after that, until it has another. */
+function triedOn({ tried, axesOf }: PlatesView, slot: string, figure: Figure): PlatesView["tried"] {
+  return tried?.slot === slot && (axesOf === slot || tried.figure === figure) ? tried : null;
+}
 
 function axisAs(axis: Figure["x"], { range, scale }: AxisTried): Figure["x"] {
   return { ...axis, range, scale };

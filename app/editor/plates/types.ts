@@ -1,7 +1,17 @@
+import type { Figure } from "../../figures/index.ts";
+
 /** How an axis is to be: a range in its own units, null for the computed one, and its scale. */
 export interface AxisTried {
   readonly range: readonly [number, number] | null;
   readonly scale: "linear" | "log";
+}
+
+/** Axes tried on a figure of a cell. */
+export interface AxesTried {
+  readonly slot: string;
+  readonly figure: Figure;
+  readonly x: AxisTried;
+  readonly y: AxisTried;
 }
 
 /** Something that was to be copied and is offered as a file. */
@@ -20,7 +30,7 @@ export interface PlatesView {
   readonly read: string | null;
   /** The cell whose axes are being set, and how they are tried. */
   readonly axesOf: string | null;
-  readonly tried: { readonly slot: string; readonly x: AxisTried; readonly y: AxisTried } | null;
+  readonly tried: AxesTried | null;
   readonly offered: FileOffered | null;
 }
 
