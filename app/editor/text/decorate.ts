@@ -4,6 +4,7 @@ import type { CellFace, Content, Piece } from "../model/types.ts";
 import { CellWidget } from "./cell-widget.tsx";
 import { wholeLines } from "./places.ts";
 import { SPACE, type WidgetStore } from "./widgets.ts";
+import { WorkingHead } from "./working-head.ts";
 
 /** What decorating needs of the answer: the widgets kept from the one before, and the cells' faces. */
 export interface Workshop {
@@ -44,7 +45,7 @@ const DRAWINGS: { readonly [Name in Piece["piece"]]: Drawing<PieceOf<Name>> } = 
             ),
           ]
         : [];
-      return [...lines(doc, from, to, "hl-source-line"), ...preview];
+      return [...lines(doc, from, to, "hl-source-line"), ...ownSize(doc, from, to), ...preview];
     },
   },
   dressed: {
@@ -83,8 +84,10 @@ const DRAWINGS: { readonly [Name in Piece["piece"]]: Drawing<PieceOf<Name>> } = 
     opened(piece, from, to, doc, { faces }) {
       const face = faces.get(piece.slot);
       if (face === undefined) return [];
-      const plate = Decoration.widget({ widget: new CellWidget(face, true), block: true, side: -1 });
-      return [plate.range(doc.lineAt(from).from), ...working(doc, from, to)];
+      const top = doc.lineAt(from).from;
+      const plate = Decoration.widget({ widget: new CellWidget(face, true), block: true, side: -2 });
+      const head = Decoration.widget({ widget: new WorkingHead(face.title, piece.slot), block: true, side: -1 });
+      return [plate.range(top), head.range(top), ...working(doc, from, to)];
     },
   },
   join: {
@@ -149,11 +152,27 @@ function lines(doc: Text, from: number, to: number, className: string, of?: Piec
   }
 }
 
+/**
+ * Marks the text of lines that are smaller than the prose. The editor guesses how high the lines out of sight are from
+ * one short line of plain text that it finds on the page, and must not find one of these.
+ */
+function ownSize(doc: Text, from: number, to: number): Marks {
+  const made: Marks = [];
+  const last = doc.lineAt(to).number;
+  for (let number = doc.lineAt(from).number; number <= last; number += 1) {
+    const line = doc.line(number);
+    if (line.length > 0) made.push(OWN_SIZE.range(line.from, line.to));
+  }
+  return made;
+}
+
+const OWN_SIZE = Decoration.mark({ class: "hl-own-size" });
+
 /** The lines of an open working, numbered from its first, without its fences' weight; kind, keys and remarks told apart. */
 function working(doc: Text, from: number, to: number): Marks {
   const first = doc.lineAt(from).number;
   const last = doc.lineAt(to).number;
-  const made: Marks = [];
+  const made: Marks = ownSize(doc, from, to);
   for (let number = first; number <= last; number += 1) {
     const line = doc.line(number);
     const place = number === first ? " hl-working-first" : number === last ? " hl-working-last" : "";

@@ -5,6 +5,7 @@ import { yCollab, yUndoManagerKeymap } from "y-codemirror.next";
 import type { Awareness } from "y-protocols/awareness";
 import type * as Y from "yjs";
 import { meaningGloss, pairs, pasting, suggestionList } from "../writing/index.ts";
+import { arrowsEnter } from "./entering.ts";
 import { foundField, foundNews } from "./found.ts";
 import { glossField } from "./glosses.ts";
 import { type SheetHost, sheetHost } from "./host.ts";
@@ -12,6 +13,7 @@ import { lineNumbers } from "./line-numbers.ts";
 import { enter, lineBreak } from "./paragraphs.ts";
 import { remoteCarets } from "./remote-carets.ts";
 import { setAttention, setPressed, sheetField } from "./sheet-field.ts";
+import { leaveWorking, workingPlaces } from "./working-place.ts";
 
 export interface EditorOptions {
   readonly parent: HTMLElement;
@@ -34,16 +36,14 @@ export function createSheetEditor(options: EditorOptions): EditorView {
         ground(options.nonce, host.writes, "Text of the paper"),
         sheetHost.of(host),
         host.writes ? [suggestionList, meaningGloss, pairs, pasting] : [],
-        keymap.of([
-          { key: "Enter", run: enter },
-          { key: "Shift-Enter", run: lineBreak },
-        ]),
+        keymap.of([{ key: "Enter", run: enter }, { key: "Shift-Enter", run: lineBreak }, leaveWorking, ...arrowsEnter]),
         keymap.of(yUndoManagerKeymap),
         keymap.of(defaultKeymap),
         yCollab(text, null, { undoManager: undo }),
         foundField,
         foundNews,
         sheetField,
+        workingPlaces,
         glossField,
         lineNumbers,
         gutters({ fixed: false }),

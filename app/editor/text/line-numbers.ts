@@ -2,6 +2,7 @@ import type { BlockInfo, EditorView } from "@codemirror/view";
 import { GutterMarker, gutter } from "@codemirror/view";
 import { glossField } from "./glosses.ts";
 import { sheetField } from "./sheet-field.ts";
+import { openSlotAt } from "./working-place.ts";
 
 /** Every how many source lines one is numbered in the margin. */
 const EVERY = 5;
@@ -51,6 +52,8 @@ function markerOf(view: EditorView, block: BlockInfo): GutterMarker | null {
   let begin = first;
   while (begin > 1 && doc.line(begin - 1).text.trim() === "") begin -= 1;
   const mark = view.state.field(glossField).marks.get(first) ?? "";
-  const numbered = Math.floor(last / EVERY) > Math.floor((begin - 1) / EVERY);
+  // The lines of an open working are numbered by themselves, from its first.
+  const numbered =
+    Math.floor(last / EVERY) > Math.floor((begin - 1) / EVERY) && openSlotAt(view.state, block.from) === null;
   return numbered || mark !== "" ? new LineNumber(numbered ? String(first) : "", mark) : null;
 }

@@ -34,10 +34,27 @@ export function turnWorking(view: EditorView, slot: string, open: boolean, write
   view.dispatch({ effects: showWorking.of({ slot, open: open && !writes }) });
   if (!writes) return;
   const { doc } = view.state;
-  const after = Math.min(doc.length, place.to + 1);
-  view.dispatch({ selection: { anchor: open ? doc.lineAt(place.from).to + 1 : Math.min(doc.length, after + 1) } });
+  const anchor = open ? doc.lineAt(place.from).to + 1 : placeBeyond(view, place);
+  view.dispatch({ selection: { anchor: anchor ?? 0 } });
   if (open) view.focus();
-  else if (after >= doc.length) view.contentDOM.blur();
+  else if (anchor === null) view.contentDOM.blur();
+}
+
+/**
+ * Where the text goes on after a cell: the paragraph after it, or the blank line before the next cell; after the last
+ * one, the line before it. null: the cell is the whole text.
+ */
+function placeBeyond({ state }: EditorView, cell: { readonly from: number; readonly to: number }): number | null {
+  const { doc } = state;
+  if (cell.to >= doc.length) return cell.from > 0 ? cell.from - 1 : null;
+  const next = doc.lineAt(cell.to + 1);
+  if (next.length > 0 || next.number === doc.lines) return next.from;
+  const paragraph = next.to + 1;
+  let cellFollows = false;
+  state.field(sheetField).places.between(paragraph, paragraph, (_from, _to, { piece }) => {
+    if (piece.piece === "cell") cellFollows = true;
+  });
+  return cellFollows ? next.from : paragraph;
 }
 
 /** The page may scroll and draw a plate anew before it can be gone to: so many frames are waited for it. */

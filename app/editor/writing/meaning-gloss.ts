@@ -2,6 +2,7 @@ import { completionStatus } from "@codemirror/autocomplete";
 import { type Extension, StateEffect, StateField } from "@codemirror/state";
 import { type EditorView, keymap, showTooltip, type Tooltip, ViewPlugin, type ViewUpdate } from "@codemirror/view";
 import { sheetField } from "../text/sheet-field.ts";
+import { openSlotAt } from "../text/working-place.ts";
 import { type Meaning, meaningAt } from "./meaning.ts";
 import { wordsWithMath } from "./set-words.ts";
 
@@ -79,10 +80,20 @@ function glossOf({ from, term, words }: Meaning): Tooltip {
   };
 }
 
-/** Beside its line where there is a margin; else at its word. */
-function placeOf(view: EditorView, pos: number): { left: number; right: number; top: number; bottom: number } {
+type Box = { readonly left: number; readonly right: number; readonly top: number; readonly bottom: number };
+
+/** Beside its line where there is a margin, beneath a working that stands there; else at its word. */
+function placeOf(view: EditorView, pos: number): Box {
   const at = view.coordsAtPos(pos) ?? { left: 0, right: 0, top: 0, bottom: 0 };
   if (window.innerWidth < WIDE_PX) return at;
+  if (openSlotAt(view.state, pos) !== null) return lastLineAround(view, pos) ?? at;
   const left = view.contentDOM.getBoundingClientRect().right + MARGIN_PX;
   return { left, right: left, top: at.top, bottom: at.top };
+}
+
+/** The place of the last line of the working around a place, where it is on the page. */
+function lastLineAround(view: EditorView, pos: number): Box | null {
+  const { node } = view.domAtPos(pos);
+  const cell = (node instanceof Element ? node : node.parentElement)?.closest(".hl-open-cell");
+  return cell?.querySelector(".hl-working-last")?.getBoundingClientRect() ?? null;
 }
