@@ -17,7 +17,9 @@ export function parameterFaces(plan: Plan, standings: readonly Standing[], hangi
   return plan.parameters.map((parameter, place) => {
     const { value } = parameter;
     const number = value.type === "number" ? toDouble(value.quantity) : null;
-    const was = formerValue(parameter.name, standings);
+    const former = formerValue(parameter.name, standings);
+    // While it is tried elsewhere than on the rule, what is out of date is so for the trial alone.
+    const was = former?.value === number ? null : former;
     return {
       name: parameter.name,
       symbol: parameter.symbol,

@@ -15,7 +15,12 @@ export function paperNow({ desk, view }: Reading): { readonly paper: Paper; read
 export function valueFault(sheet: Reading, name: string, source: string): string {
   const { paper, bibliography } = paperNow(sheet);
   const edit = changesParameter(paper, bibliography, name, { value: source });
-  return "problem" in edit ? edit.problem : "";
+  return "problem" in edit ? plainWords(edit.problem) : "";
+}
+
+/** A problem's words without the marks that set names apart in the text's own glosses. */
+export function plainWords(problem: string): string {
+  return problem.replace(/`([^`]*)`/g, "$1");
 }
 
 /** Lets a parameter stand one place earlier or later: one edit of the text. What is said of it follows by itself. */
@@ -23,7 +28,7 @@ export function moveOnRule(sheet: Reading, name: string, by: -1 | 1): void {
   const { paper, bibliography } = paperNow(sheet);
   const edit = movesParameter(paper, bibliography, name, by);
   if (!made(sheet, edit)) {
-    sheet.desk.tell(edit.problem);
+    sheet.desk.tell(plainWords(edit.problem));
     return;
   }
   const held = document.activeElement;

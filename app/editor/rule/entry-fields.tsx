@@ -16,8 +16,8 @@ interface Line {
 const LINES: readonly Line[] = [
   { field: "unit", label: "Unit", hint: "" },
   { field: "symbol", label: "Symbol", hint: "TeX" },
-  { field: "min", label: "From", hint: "" },
-  { field: "max", label: "To", hint: "" },
+  { field: "min", label: "Scale from", hint: "" },
+  { field: "max", label: "Scale to", hint: "" },
   { field: "step", label: "Step", hint: "" },
   { field: "se", label: "Standard error", hint: "" },
   { field: "note", label: "Note", hint: "" },

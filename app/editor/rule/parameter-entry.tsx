@@ -3,7 +3,7 @@ import { removesParameter, type StillRead } from "../../cells/index.ts";
 import { Command } from "../../ui/index.ts";
 import type { SheetAtHand } from "../keys/types.ts";
 import { useDeskView } from "../parts/use-desk-view.ts";
-import { made, moveOnRule, paperNow } from "./edit-rule.ts";
+import { made, moveOnRule, paperNow, plainWords } from "./edit-rule.ts";
 import { EntryFields } from "./entry-fields.tsx";
 import { focusHandle } from "./handles.ts";
 import { Readers } from "./readers.tsx";
@@ -42,7 +42,7 @@ export function ParameterEntry({ sheet, name }: Props) {
     const { paper, bibliography } = paperNow(sheet);
     const edit = removesParameter(paper, bibliography, name);
     setStillRead("readers" in edit ? edit : null);
-    setRefused("problem" in edit ? edit.problem : "");
+    setRefused("problem" in edit ? plainWords(edit.problem) : "");
     if ("readers" in edit || !made(sheet, edit)) return;
     close();
     desk.tell(`${name} is removed; one step to undo.`);

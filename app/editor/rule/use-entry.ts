@@ -13,7 +13,7 @@ import {
 import { toDouble } from "../../formulas/index.ts";
 import type { SheetAtHand } from "../keys/types.ts";
 import { isPlainNumber, shownValue } from "../model/scale.ts";
-import { made, paperNow } from "./edit-rule.ts";
+import { made, paperNow, plainWords } from "./edit-rule.ts";
 
 /** How long typing rests before the paper is read with it, in ms. */
 const REST_MS = 250;
@@ -79,7 +79,7 @@ export function useEntry(sheet: SheetAtHand, name: string | null): Entry | null 
   return {
     name: name ?? newName,
     fields,
-    problem: seen !== null && "problem" in seen ? seen : null,
+    problem: seen !== null && "problem" in seen ? { ...seen, problem: plainWords(seen.problem) } : null,
     comesTo: comesTo(seen, fields.value),
     setName: setNewName,
     set: (field, words) => setFields((before) => ({ ...before, [field]: words })),
