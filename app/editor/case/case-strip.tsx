@@ -1,6 +1,6 @@
 import "./case.css";
 import "./case-narrow.css";
-import { type KeyboardEvent, useMemo, useRef, useState } from "react";
+import { type KeyboardEvent, useEffect, useMemo, useRef, useState } from "react";
 import type { SheetAtHand } from "../keys/types.ts";
 import { useDeskView } from "../parts/use-desk-view.ts";
 import { counted } from "../parts/words.ts";
@@ -26,6 +26,10 @@ export function CaseStrip({ sheet }: { readonly sheet: SheetAtHand }) {
   const wanted = wantedOffers(compartments);
   const active = wanted.find(({ id }) => id === pointed) ?? bestOffer(query, compartments);
   useSlot(view, active);
+  const activeId = active?.id ?? "";
+  useEffect(() => {
+    if (activeId !== "") document.getElementById(offerElementId(activeId))?.scrollIntoView?.({ block: "nearest" });
+  }, [activeId]);
   const set = (offer: Offer) => setOffer(sheet, offer);
   const press = (event: KeyboardEvent<HTMLInputElement>) => {
     if (event.key === "Enter") {
@@ -42,7 +46,6 @@ export function CaseStrip({ sheet }: { readonly sheet: SheetAtHand }) {
     const next = wanted[nextBox(wanted.map(boxOf), at, event.key as Arrow)];
     if (next === undefined) return;
     setPointed(next.id);
-    document.getElementById(offerElementId(next.id))?.scrollIntoView?.({ block: "nearest" });
   };
   return (
     <div className="hl-case">

@@ -13,6 +13,9 @@ interface Props {
 
 export const LIST_ID = "hl-case-list";
 
+/** So many compartments hold boxes; the others are lists. */
+const PLACED = 2;
+
 /** The element of an offer, for the field that chooses among them. */
 export function offerElementId(id: string): string {
   return `hl-case-${encodeURIComponent(id).replaceAll("%", "_")}`;
@@ -22,9 +25,14 @@ export function offerElementId(id: string): string {
 export function Compartments({ compartments, ...props }: Props) {
   return (
     <div className="hl-case-lay" id={LIST_ID} role="listbox" aria-label="What can be set">
-      {compartments.map((compartment) => (
+      {compartments.slice(0, PLACED).map((compartment) => (
         <CompartmentOf key={compartment.name} compartment={compartment} {...props} />
       ))}
+      <div className="hl-case-lists" role="presentation">
+        {compartments.slice(PLACED).map((compartment) => (
+          <CompartmentOf key={compartment.name} compartment={compartment} {...props} />
+        ))}
+      </div>
     </div>
   );
 }

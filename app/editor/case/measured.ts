@@ -4,7 +4,7 @@ import type { Asked } from "./asked.ts";
 import type { CaseKnowledge } from "./types.ts";
 
 /** Of a paper's results, those that one mostly wants to see move come first. */
-const PREFERRED = ["mean", "s0", "far_decay", "decay", "constant"];
+export const PREFERRED: readonly string[] = ["mean", "s0", "far_decay", "decay", "constant"];
 
 /** A number among the paper's results: the one that is asked for, else one that is well worth asking for. */
 export function numberWanted({ words }: Asked, knowledge: CaseKnowledge): { cell: string; member: string } | null {

@@ -1,4 +1,3 @@
-import { RESERVED_NAMES } from "../../formulas/index.ts";
 import type { CaseKnowledge } from "./types.ts";
 
 const CELL = /^ {0,3}(`{3,}|~{3,})(.*)\n([\s\S]*?)(?:^ {0,3}\1|$(?![\s\S]))/gm;
@@ -22,9 +21,9 @@ export function namesTaken(knowledge: CaseKnowledge): Set<string> {
 }
 
 /** Names that a column, a key or a new variable must not have, and others. */
-export function namesHidden({ names }: CaseKnowledge, others: Iterable<string>): Set<string> {
-  const own = [...names.parameters, ...names.cells].map(({ name }) => name);
-  return new Set([...RESERVED_NAMES, ...own, ...others]);
+export function namesHidden({ names, words }: CaseKnowledge, others: Iterable<string>): Set<string> {
+  const own = [...names.parameters, ...names.cells, ...words.functions].map(({ name }) => name);
+  return new Set([...own, ...others]);
 }
 
 /** A name that begins like `base` and is free: K, then K2, K3, … It is taken from then on. */

@@ -4,9 +4,9 @@ import { citationOffers, numberOffers, parameterOffers, referenceOffers } from "
 import { surroundingOffers } from "./surroundings.ts";
 import { type CaseKnowledge, COMPARTMENTS, type Compartment, type CompartmentName, type Offer } from "./types.ts";
 
-/** How many offers of what a paper has are shown: numbers, and the other compartments together. */
+/** How many offers of what a paper has are shown: numbers, and each of the other compartments. */
 const MOST_NUMBERS = 12;
-const MOST_OTHERS = 12;
+const MOST_OTHERS = 4;
 
 const CONTENTS: Readonly<Record<CompartmentName, { title: string; keepsPlaces: boolean; offers: typeof cellOffers }>> =
   {
@@ -25,17 +25,13 @@ const CONTENTS: Readonly<Record<CompartmentName, { title: string; keepsPlaces: b
  */
 export function offers(query: string, knowledge: CaseKnowledge): readonly Compartment[] {
   const asked = askedFor(query);
-  const found = COMPARTMENTS.map((name) => {
+  return COMPARTMENTS.map((name) => {
     const { title, keepsPlaces, offers: all } = CONTENTS[name];
-    const whole = all(asked, knowledge);
-    const list = keepsPlaces ? whole : whole.filter(({ score }) => score > 0).sort((a, b) => b.score - a.score);
-    return { name, title, list, keepsPlaces };
-  });
-  const others = found.filter(({ name, list, keepsPlaces }) => !keepsPlaces && name !== "numbers" && list.length > 0);
-  return found.map(({ name, title, list, keepsPlaces }) => {
-    const most = name === "numbers" ? MOST_NUMBERS : Math.floor(MOST_OTHERS / Math.max(1, others.length));
-    const shown = keepsPlaces ? list : list.slice(0, most);
-    return { name, title, offers: shown, more: list.length - shown.length };
+    const found = all(asked, knowledge);
+    if (keepsPlaces) return { name, title, offers: found, more: 0 };
+    const wanted = found.filter(({ score }) => score > 0).sort((a, b) => b.score - a.score);
+    const shown = wanted.slice(0, name === "numbers" ? MOST_NUMBERS : MOST_OTHERS);
+    return { name, title, offers: shown, more: wanted.length - shown.length };
   });
 }
 

@@ -1,5 +1,6 @@
 import type { CellWords } from "../model/knowledge.ts";
 import { type Asked, answers } from "./asked.ts";
+import { PREFERRED } from "./measured.ts";
 import type { CaseKnowledge, Offer } from "./types.ts";
 
 const [NAME, NEAR, FAR, SORT] = [5, 2, 1, 0.5];
@@ -62,6 +63,7 @@ function numberOffer(
   asked: Asked,
   { values }: CaseKnowledge,
 ): Offer {
+  const isPreferred = PREFERRED.includes(formula.slice(cell.name.length + 1));
   const open = formula.indexOf("(");
   const head = open < 0 ? formula : formula.slice(0, open);
   return {
@@ -77,13 +79,15 @@ function numberOffer(
       formula,
       select: open < 0 ? null : { from: open + 1, to: formula.length - 1 },
     },
-    score: answers(asked, [
-      { words: head, weight: NAME },
-      { words: head.replaceAll(".", " "), weight: NAME - 1 },
-      { words: cell.title, weight: NEAR },
-      { words: meaning, weight: FAR },
-      { words: "number value quote", weight: SORT },
-    ]),
+    score:
+      (asked.words.length === 0 && isPreferred ? FAR : 0) +
+      answers(asked, [
+        { words: head, weight: NAME },
+        { words: head.replaceAll(".", " "), weight: NAME - 1 },
+        { words: cell.title, weight: NEAR },
+        { words: meaning, weight: FAR },
+        { words: "number value quote", weight: SORT },
+      ]),
   };
 }
 

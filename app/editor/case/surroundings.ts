@@ -17,7 +17,7 @@ const PROSE: readonly Surrounding[] = [
   {
     name: "section",
     title: "Section",
-    words: "a heading, numbered",
+    words: "a numbered heading",
     synonyms: "heading chapter title",
     outermost: true,
     text: (label) => `## ‹Heading› {#${label}}`,
@@ -25,7 +25,7 @@ const PROSE: readonly Surrounding[] = [
   {
     name: "subsection",
     title: "Subsection",
-    words: "a heading within a section",
+    words: "a heading below it",
     synonyms: "heading",
     outermost: true,
     text: (label) => `### ‹Heading› {#${label}}`,
@@ -33,12 +33,25 @@ const PROSE: readonly Surrounding[] = [
   {
     name: "equation",
     title: "Equation",
-    words: "on its own line, numbered",
+    words: "displayed, numbered",
     synonyms: "display formula mathematics tex",
     outermost: false,
     text: (label) => `$$\n‹a = b› \\label{${label}}\n$$`,
   },
 ];
+
+const ENVIRONMENT_WORDS: Readonly<Record<string, string>> = {
+  definition: "what a word means",
+  assumption: "what is taken for granted",
+  theorem: "a main result",
+  lemma: "a step on the way",
+  proposition: "a result",
+  corollary: "what follows",
+  conjecture: "not proved yet",
+  remark: "an aside",
+  example: "a case of it",
+  proof: "an argument",
+};
 
 /** Environments, sections, equations and footnotes. */
 export function surroundingOffers(asked: Asked, knowledge: CaseKnowledge): Offer[] {
@@ -46,16 +59,15 @@ export function surroundingOffers(asked: Asked, knowledge: CaseKnowledge): Offer
     ({ name }): Surrounding => ({
       name,
       title: name.charAt(0).toUpperCase() + name.slice(1),
-      words: name === "proof" ? "an argument" : "numbered in its section",
+      words: ENVIRONMENT_WORDS[name] ?? "numbered in its section",
       synonyms: name === "proof" ? "argument" : "statement environment surroundings",
       outermost: true,
       text: (label) =>
         name === "proof" ? ":::proof\n‹The argument.›\n:::" : `:::${name}[Title]{#${label}}\n‹The statement.›\n:::`,
     }),
   );
-  return [...PROSE, ...environments]
-    .map((one) => surroundingOffer(one, asked, knowledge))
-    .concat(footnoteOffer(asked, knowledge));
+  const made = (some: readonly Surrounding[]) => some.map((one) => surroundingOffer(one, asked, knowledge));
+  return [...made(PROSE), footnoteOffer(asked, knowledge), ...made(environments)];
 }
 
 const [TITLE, SYNONYM, MEANING] = [5, 3, 1];
@@ -84,7 +96,7 @@ function footnoteOffer(asked: Asked, knowledge: CaseKnowledge): Offer {
     id: "surroundings footnote",
     compartment: "surroundings",
     title: "Footnote",
-    line: "a mark here, its words below",
+    line: "words below",
     words: "a mark here, its words below the paragraph",
     here: "",
     value: null,
