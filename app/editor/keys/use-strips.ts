@@ -40,7 +40,23 @@ export function useSheetAtHand({ desk, strands, ready, writes, paperId, personId
     [desk, view, strands, strips, writes, paperId, personId, navigate],
   );
   useComposingKey(sheet);
+  useRenaming(sheet);
   return sheet;
+}
+
+/** A command of the text that bears a name to be changed opens the strip for it. */
+function useRenaming(sheet: SheetAtHand | null): void {
+  useEffect(() => {
+    if (sheet === null) return;
+    const { dom } = sheet.view;
+    const open = ({ target }: MouseEvent) => {
+      const about =
+        target instanceof Element ? target.closest<HTMLElement>("[data-rename]")?.dataset.rename : undefined;
+      if (about !== undefined) sheet.strips.set({ open: "rename", about });
+    };
+    dom.addEventListener("click", open);
+    return () => dom.removeEventListener("click", open);
+  }, [sheet]);
 }
 
 function useComposingKey(sheet: SheetAtHand | null): void {

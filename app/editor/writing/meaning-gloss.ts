@@ -1,6 +1,7 @@
 import { completionStatus } from "@codemirror/autocomplete";
 import { type Extension, StateEffect, StateField } from "@codemirror/state";
 import { type EditorView, keymap, showTooltip, type Tooltip, ViewPlugin, type ViewUpdate } from "@codemirror/view";
+import { sheetHost } from "../text/host.ts";
 import { sheetField } from "../text/sheet-field.ts";
 import { openSlotAt } from "../text/working-place.ts";
 import { type Meaning, meaningAt } from "./meaning.ts";
@@ -63,7 +64,7 @@ function leave(view: EditorView): boolean {
   return true;
 }
 
-function glossOf({ from, term, words }: Meaning): Tooltip {
+function glossOf({ from, term, words, names }: Meaning): Tooltip {
   return {
     pos: from,
     above: window.innerWidth < WIDE_PX,
@@ -75,12 +76,25 @@ function glossOf({ from, term, words }: Meaning): Tooltip {
       name.textContent = term;
       dom.append(name);
       if (words !== "") dom.append(" ", wordsWithMath(words, view.state.field(sheetField).model?.macros ?? {}));
+      if (names !== null && view.state.facet(sheetHost)?.writes === true) dom.append(" ", renameCommand(view, names));
       return { dom, getCoords: (pos) => placeOf(view, pos) };
     },
   };
 }
 
 type Box = { readonly left: number; readonly right: number; readonly top: number; readonly bottom: number };
+
+/** Leads on to the strip that renames: what opens strips hears of it by the name that it bears. */
+function renameCommand(view: EditorView, name: string): HTMLElement {
+  const command = document.createElement("button");
+  command.type = "button";
+  command.className = "command hl-small";
+  command.dataset.rename = name;
+  command.textContent = "Rename";
+  command.setAttribute("aria-label", `Rename ${name}`);
+  command.addEventListener("click", () => leave(view));
+  return command;
+}
 
 /** Beside its line where there is a margin, beneath a working that stands there; else at its word. */
 function placeOf(view: EditorView, pos: number): Box {

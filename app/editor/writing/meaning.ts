@@ -10,6 +10,8 @@ export interface Meaning {
   readonly term: string;
   /** With mathematics in dollars. */
   readonly words: string;
+  /** The parameter, cell or label that it names and that may be given another name; null: it names none. */
+  readonly names: string | null;
 }
 
 /**
@@ -39,10 +41,10 @@ function pointerAt(line: string, at: number, offset: number, { names }: Knowledg
   const span = { from: begin + key.index, to: begin + key.index + key[0].length };
   if (directive === "ref") {
     const label = names.labels.find((each) => each.label === key[0]);
-    return label === undefined ? null : { ...span, term: capital(label.text), words: label.about };
+    return label === undefined ? null : { ...span, term: capital(label.text), words: label.about, names: label.label };
   }
   const entry = names.citations.find(({ name }) => name === key[0]);
-  return entry === undefined ? null : { ...span, term: entry.name, words: entry.meaning };
+  return entry === undefined ? null : { ...span, term: entry.name, words: entry.meaning, names: null };
 }
 
 function numberAt(line: string, at: number, offset: number, knowledge: Knowledge): Meaning | null {
@@ -61,7 +63,7 @@ function workingAt(text: string, line: string, at: number, offset: number, knowl
     const to = at + fence[0].length;
     return kind === undefined || offset < from || offset > to
       ? null
-      : { from, to, term: kind.label, words: kind.meaning };
+      : { from, to, term: kind.label, words: kind.meaning, names: null };
   }
   const cell = cellAround(text, offset);
   const kind = words.kinds.find(({ name }) => name === cell?.kind);
@@ -74,7 +76,7 @@ function workingAt(text: string, line: string, at: number, offset: number, knowl
   const key = offset < from || entry[1] !== "" ? undefined : keys.find(({ name }) => name === entry[2]);
   return key === undefined
     ? nameAt(line, at, offset, knowledge)
-    : { from, to, term: key.name, words: `${key.meaning}${remarkOn(key.required, key.fallback)}` };
+    : { from, to, term: key.name, words: `${key.meaning}${remarkOn(key.required, key.fallback)}`, names: null };
 }
 
 /** A name of a formula, or one of the keys within braces. */
@@ -92,22 +94,22 @@ function nameAt(
   const after = source.slice(span.to - at);
   const key = keys.find(({ name }) => name === term);
   if (key !== undefined && after.startsWith(":"))
-    return { ...span, words: `${key.meaning}${remarkOn(key.required, key.fallback)}` };
+    return { ...span, words: `${key.meaning}${remarkOn(key.required, key.fallback)}`, names: null };
   const [name = "", member] = term.split(".");
   const cell = names.cells.find((each) => each.name === name);
   const called = cell?.callables.find((each) => each.member === (member ?? ""));
   if (cell !== undefined && called !== undefined && after.startsWith("(")) {
-    return { ...span, term: called.form, words: called.meaning };
+    return { ...span, term: called.form, words: called.meaning, names: name };
   }
   if (cell !== undefined && member !== undefined) {
     const value = cell.values.find((each) => each.name === member);
-    return value === undefined ? null : { ...span, words: value.meaning };
+    return value === undefined ? null : { ...span, words: value.meaning, names: name };
   }
-  if (cell !== undefined) return { ...span, words: cell.title };
+  if (cell !== undefined) return { ...span, words: cell.title, names: name };
   const parameter = names.parameters.find((each) => each.name === name);
-  if (parameter !== undefined) return { ...span, words: parameter.meaning };
+  if (parameter !== undefined) return { ...span, words: parameter.meaning, names: name };
   const used = words.functions.find((each) => each.name === name && after.startsWith("("));
-  return used === undefined ? null : { ...span, term: used.form, words: used.meaning };
+  return used === undefined ? null : { ...span, term: used.form, words: used.meaning, names: null };
 }
 
 /** The match that a place lies in or touches. */

@@ -51,6 +51,19 @@ describe("What a word means", () => {
     ]);
   });
 
+  test("what bears a name of the paper's own may be renamed, and nothing else", () => {
+    const named = [
+      ":value[m|u]",
+      ":value[K.me|an]",
+      "$\\value{|K(3)}$",
+      "See :ref[kp|p].",
+      "```counts L\nof: larv|ae\n```",
+    ];
+    expect(named.map((text) => at(text)?.names)).toEqual(["mu", "K", "K", "kpp", "larvae"]);
+    const given = ["```cou|nts K\n```", "```counts K\nof|: larvae", ":value[sq|rt(2)]", "By :cite[kesten1978|]"];
+    expect(given.map((text) => at(text)?.names)).toEqual([null, null, null, null]);
+  });
+
   test("the target of a reference, and a citation's entry", () => {
     expect(at("See :ref[K|].")).toMatchObject({ term: "Figure 1", words: "The law of $K$." });
     expect(at("By :ref[kp|p]")?.term).toBe("Equation (1)");
