@@ -68,7 +68,7 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
   const symbols = new Map(drawing.plan.parameters.map(({ name, symbol }) => [name, symbol]));
   const printed = valuesIn(drawing.plan);
   const now = new Date();
-  return tellings.map((telling) => {
+  const faceOf = (telling: CellTelling): CellFace => {
     const { planned, shown, work, state, result, previewed } = telling;
     const node = drawing.nodes.get(planned.slot);
     const titleOfId = (id: string) => drawing.titles.get(id) ?? id;
@@ -106,7 +106,50 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
       needs: waited === undefined ? null : { title: titleOfId(waited.id), slot: waited.slot },
       viewSign: result === undefined ? "" : viewSign(result, planned, drawing.plan),
     };
+  };
+  return tellings.map((telling) => {
+    try {
+      return faceOf(telling);
+    } catch (error) {
+      return faultFace(telling, drawing, error);
+    }
   });
+}
+
+/** One cell whose face cannot be made says so in its place: it must not keep the others, and the text, from the page. */
+function faultFace({ planned, result, shown }: CellTelling, { nodes, titles }: Drawing, error: unknown): CellFace {
+  const message = (error instanceof Error ? error.message : String(error)).replace(/\.$/, "");
+  const title = titles.get(planned.id) ?? planned.id;
+  return {
+    id: planned.id,
+    slot: planned.slot,
+    kind: planned.kind,
+    name: planned.cell.name,
+    from: planned.cell.span.from,
+    to: planned.cell.span.to,
+    line: planned.line,
+    title,
+    parts: (nodes.get(planned.slot)?.parts ?? []).map(({ part, noun, number }) => ({
+      part,
+      title: `${noun} ${number}`,
+    })),
+    caption: [],
+    state: "failed",
+    words: [{ run: "text", text: `${title} cannot be told: ${message}. Recompute it, or edit its working.` }],
+    provenance: [],
+    finding: null,
+    progress: null,
+    failureLine: null,
+    seconds: null,
+    hasResult: result !== undefined || shown !== undefined,
+    sound: planned.key !== null,
+    key: planned.key,
+    strands: [],
+    hangs: "",
+    changed: [],
+    needs: null,
+    viewSign: "",
+  };
 }
 
 /** Values of parameters as the rule shows them, with the decimals of their steps. */

@@ -15,6 +15,8 @@ export interface NumberFaces {
   tex(number: BoundNumber): string;
 }
 
+type Evaluated = ReturnType<typeof evaluateNumber>;
+
 interface Known {
   readonly face: NumberFace;
   readonly tex: string;
@@ -47,7 +49,7 @@ function faceOf(
   strands: ReadonlyMap<string, number>,
   tried: ReadonlySet<string>,
 ): Known {
-  const { value, printed, needs, problem, ...read } = evaluateNumber(number, plan, results);
+  const { value, printed, needs, problem, ...read } = evaluated(number, plan, results);
   const through = needs.flatMap((id) => plan.byId.get(id)?.parameters ?? []);
   const hung = new Set([...read.parameters, ...through]);
   const parameters = plan.parameters.flatMap(({ name }) => (hung.has(name) ? [name] : []));
@@ -77,8 +79,18 @@ function faceOf(
   return { face, tex: MARKED.has(state) ? `{${tex}}^{\\dagger}` : printed === null ? `${tex}^{\\ddagger}` : tex };
 }
 
+/** A result that cannot be read must not keep the other numbers from the page. */
+function evaluated(number: BoundNumber, plan: Plan, results: ReadonlyMap<string, CellResult>): Evaluated {
+  try {
+    return evaluateNumber(number, plan, results);
+  } catch (error) {
+    const problem = `it cannot be told: ${error instanceof Error ? error.message : String(error)}`;
+    return { value: { type: "refused", reason: problem }, printed: null, needs: [], parameters: [], problem };
+  }
+}
+
 /** What stands for a value that is not a number: a verdict, a word. */
-function textOf(value: ReturnType<typeof evaluateNumber>["value"]): string {
+function textOf(value: Evaluated["value"]): string {
   if (value.type === "text") return value.text;
   if (value.type === "truth") return value.holds === null ? "undecided" : value.holds ? "holds" : "fails";
   return "";
