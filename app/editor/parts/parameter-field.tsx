@@ -11,10 +11,11 @@ interface Props {
   onWrite(): void;
   onEnter(source: string): void;
   onEscape(): void;
+  onLeave(): void;
 }
 
 /** Where a parameter's value is typed. Enter sets it, Esc and leaving put it back. */
-export function ParameterField({ name, label, first, fault, onWrite, onEnter, onEscape }: Props) {
+export function ParameterField({ name, label, first, fault, onWrite, onEnter, onEscape, onLeave }: Props) {
   const [source, setSource] = useState(first);
   const description = useId();
   const field = useRef<HTMLInputElement>(null);
@@ -42,7 +43,7 @@ export function ParameterField({ name, label, first, fault, onWrite, onEnter, on
           setSource(event.target.value);
           onWrite();
         }}
-        onBlur={onEscape}
+        onBlur={onLeave}
         onKeyDown={(event) => {
           if (event.key === "Enter" && source.trim() !== "") onEnter(source.trim());
           else if (event.key === "Escape" || event.key === "Enter") onEscape();

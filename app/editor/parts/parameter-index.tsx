@@ -131,7 +131,8 @@ export function ParameterIndex({ parameter, borders, place, editing, onTry, onSe
             fault={typing.fault}
             onWrite={typing.write}
             onEnter={typing.enter}
-            onEscape={typing.close}
+            onEscape={() => typing.close()}
+            onLeave={() => typing.close("left")}
           />
         )}
         {parameter.unit === "" ? null : <span className="hl-par-unit"> {parameter.unit}</span>}

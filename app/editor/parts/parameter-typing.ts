@@ -1,5 +1,6 @@
 import { useEffect, useRef, useState } from "react";
 import { isPlainNumber } from "../model/scale.ts";
+import { focusHandle } from "../rule/handles.ts";
 import type { RuleWord } from "./rule-word.ts";
 
 interface Typing {
@@ -11,7 +12,8 @@ interface Typing {
   enter(source: string): void;
   /** Something else is written: what was said of the last is gone. */
   write(): void;
-  close(): void;
+  /** Puts back. The keys go to the value again, unless it was `left` for something else. */
+  close(left?: "left"): void;
 }
 
 interface Given {
@@ -45,15 +47,22 @@ export function useTyping({ name, onJudge, onSettle, onWord, onSay }: Given): Ty
     typed,
     fault,
     open: begin,
-    close: () => begin(null),
+    close(left) {
+      begin(null);
+      if (left === undefined) focusHandle(name);
+    },
     write() {
       turn.current += 1;
       setFault("");
     },
     enter(source) {
-      if (isPlainNumber(source)) {
+      const stand = () => {
         begin(null);
         onSettle(source);
+        focusHandle(name);
+      };
+      if (isPlainNumber(source)) {
+        stand();
         return;
       }
       turn.current += 1;
@@ -61,11 +70,8 @@ export function useTyping({ name, onJudge, onSettle, onWord, onSay }: Given): Ty
       void onJudge(name, source).then((found) => {
         if (asked !== turn.current) return;
         setFault(found);
-        if (found !== "") onSay(found);
-        else {
-          begin(null);
-          onSettle(source);
-        }
+        if (found === "") stand();
+        else onSay(found);
       });
     },
   };

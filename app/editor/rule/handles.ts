@@ -15,17 +15,24 @@ export function heldParameter(): string | null {
 
 /**
  * Gives the keys to a parameter's value, as soon as it stands on the rule, and again when it loses them by being moved
- * there; not when the keys have gone elsewhere meanwhile.
+ * there; not when they have gone elsewhere than the rule, nor after another key or press.
  */
 export function focusHandle(name: string): void {
+  const ended = new AbortController();
+  const end = () => ended.abort();
+  for (const pressed of ["keydown", "pointerdown"] as const)
+    window.addEventListener(pressed, end, { capture: true, signal: ended.signal });
   const begun = performance.now();
   const look = () => {
-    const held = document.activeElement;
+    if (performance.now() - begun > PATIENCE_MS || !isFree(document.activeElement)) end();
+    if (ended.signal.aborted) return;
     const handle = handleOf(name);
-    const free = held === null || held === document.body || held === handle;
-    if (!free || performance.now() - begun > PATIENCE_MS) return;
-    if (handle !== null && held !== handle) handle.focus();
+    if (handle !== null && document.activeElement !== handle) handle.focus();
     requestAnimationFrame(look);
   };
-  look();
+  requestAnimationFrame(look);
+}
+
+function isFree(held: Element | null): boolean {
+  return held === null || held === document.body || held.closest(".hl-rule") !== null;
 }
