@@ -1,7 +1,7 @@
 import { requirePaper } from "../access/index.server.ts";
 import { may } from "../access/index.ts";
 import { servicesContext } from "../context.ts";
-import { SheetPage } from "../editor/index.ts";
+import { SheetPage, type Starts } from "../editor/index.ts";
 import { useNonce } from "../ui/index.ts";
 import type { Route } from "./+types/paper";
 
@@ -25,9 +25,14 @@ export default function Sheet({ loaderData }: Route.ComponentProps) {
   return (
     <>
       <title>{`${loaderData.title} · Halfline`}</title>
-      <SheetPage {...loaderData} nonce={nonce} />
+      <SheetPage {...loaderData} nonce={nonce} loadStarts={loadStarts} />
     </>
   );
+}
+
+async function loadStarts(): Promise<Starts> {
+  const { layStart, STARTS } = await import("./parts/lay-start.ts");
+  return { all: STARTS, lay: layStart };
 }
 
 /** The live sheet tells of the paper by itself: an action elsewhere on the page does not fetch the text again. */

@@ -1,5 +1,6 @@
 import { expect, test } from "vitest";
 import { planPaper } from "../../app/cells/index.ts";
+import { hasEmptyBody } from "../../app/editor/first/empty-body.ts";
 import { readPaper } from "../../app/paper/index.ts";
 import { copyOf, emptyPaper, UNTITLED } from "../../app/routes/parts/new-paper.ts";
 
@@ -12,7 +13,7 @@ test.each(["Inês Valadão", 'O"Brien: #1 {x}', "- *odd*\\name's", "佐藤"])(
     const plan = planPaper(paper);
     expect(plan.problems).toEqual([]);
     expect(plan.parameters.map(({ name: parameter }) => parameter)).toEqual(["beta"]);
-    expect(paper.numbers).toHaveLength(1);
+    expect(hasEmptyBody({ length: 0, toString: () => emptyPaper(name) })).toBe(true);
   },
 );
 

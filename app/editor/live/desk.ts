@@ -4,7 +4,7 @@ import type { ValueNow } from "../model/messages.ts";
 import { yamlScalar } from "../model/scale.ts";
 import type { SheetModel } from "../model/types.ts";
 import { createSheetEditor, createSourceEditor } from "../text/editor.ts";
-import { type CellCommands, hostAtRest, type SheetHost } from "../text/host.ts";
+import { type CellCommands, hostAtRest, type Offer, type SheetHost } from "../text/host.ts";
 import { focusPlate, goToLine, goToPlace, lineInAddress, showPlace, turnWorking } from "../text/moving.ts";
 import { findPlace } from "../text/places.ts";
 import { sheetField } from "../text/sheet-field.ts";
@@ -59,7 +59,8 @@ export class Desk {
       commands: this.commands(),
       plateOf: (id) => `/papers/${options.paperId}/plates/${encodeURIComponent(id)}`,
       writes: options.writes,
-      tell: (words) => this.tell(words),
+      tell: (words, offer) => this.tell(words, offer),
+      edit: (change, bibtex) => this.edit(change, bibtex),
       ...hostAtRest(),
     };
     this.fetcher = new ResultFetcher(this.requests, (results) => this.reading?.tellResults(results));
@@ -144,8 +145,9 @@ export class Desk {
     return this.host.commands;
   }
 
-  /** One edit of the text, and one step to undo. */
-  edit(change: TransactionSpec): void {
+  /** One edit of the text, and one step to undo; entries for the bibliography may come with it. */
+  edit(change: TransactionSpec, bibtex = ""): void {
+    if (bibtex !== "") this.session.bibliography.insert(0, bibtex);
     this.session.undo.text.stopCapturing();
     this.view?.dispatch({ userEvent: "input", ...change });
     this.session.undo.text.stopCapturing();
@@ -156,8 +158,8 @@ export class Desk {
     (await this.reading?.values(formulas)) ?? [];
 
   /** Says something in the tail line for a while, and to those who listen. */
-  tell(words: string): void {
-    const notice = { words, amiss: false };
+  tell(words: string, offer?: Offer): void {
+    const notice = { words, amiss: false, ...(offer === undefined ? {} : { offer }) };
     this.store.set({ notice });
     setTimeout(() => this.store.get().notice === notice && this.store.set({ notice: null }), TOLD_MS);
     this.announcer.say(words);

@@ -1,4 +1,5 @@
 import { lazy, Suspense, useEffect, useRef, useState } from "react";
+import type { Starts } from "../first/starts.ts";
 import type { DeskOptions } from "../live/desk.ts";
 import { ReaderAhead } from "../live/reader-ahead.ts";
 import "katex/dist/katex.min.css";
@@ -10,6 +11,8 @@ export interface SheetPageProps extends Omit<DeskOptions, "takeReader"> {
   /** Said on the page of one who may try but not keep: a way to sign in, or "". */
   readonly signIn: string;
   readonly nonce: string;
+  /** Fetches what an empty paper can be begun from. */
+  loadStarts(): Promise<Starts>;
 }
 
 export type SheetProps = SheetPageProps & Pick<DeskOptions, "takeReader">;

@@ -1,5 +1,16 @@
-import { type RefObject, useEffect, useLayoutEffect, useRef, useState, useSyncExternalStore } from "react";
+import {
+  lazy,
+  type RefObject,
+  Suspense,
+  useEffect,
+  useLayoutEffect,
+  useRef,
+  useState,
+  useSyncExternalStore,
+} from "react";
+import { hasEmptyBody } from "../first/empty-body.ts";
 import { SheetStrip } from "../keys/sheet-strip.tsx";
+import type { SheetAtHand } from "../keys/types.ts";
 import { useSheetAtHand } from "../keys/use-strips.ts";
 import { Desk } from "../live/desk.ts";
 import { NumberSlip } from "../strands/number-slip.tsx";
@@ -38,6 +49,9 @@ export default function Sheet(props: SheetProps) {
         {desk === null || strands === null ? null : <SheetStrands desk={desk} watch={strands} />}
         {desk === null ? null : <Preface desk={desk} props={props} place={place} />}
         <div ref={place} className="hl-text hl-untyped" />
+        {desk === null || atHand === null || !props.writes ? null : (
+          <WhileEmpty desk={desk} sheet={atHand} props={props} />
+        )}
         {desk === null ? null : <BibliographyPlace desk={desk} />}
       </main>
       {desk === null ? null : (
@@ -92,6 +106,17 @@ function Preface({ desk, props, place }: PartProps & { readonly place: RefObject
       <PlainText title={props.title} text={props.first.text} />
     </div>
   );
+}
+
+const EmptyPaper = lazy(async () => ({ default: (await import("../first/empty-paper.tsx")).EmptyPaper }));
+
+function WhileEmpty({ desk, sheet, props }: PartProps & { readonly sheet: SheetAtHand }) {
+  const empty = useDeskView(desk, ({ model }) => model !== null && hasEmptyBody(sheet.view.state.doc));
+  return empty ? (
+    <Suspense fallback={null}>
+      <EmptyPaper sheet={sheet} author={props.person?.name ?? ""} loadStarts={props.loadStarts} />
+    </Suspense>
+  ) : null;
 }
 
 function Heads({ desk, strands }: { readonly desk: Desk; readonly strands: StrandWatch }) {

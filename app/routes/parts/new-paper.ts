@@ -2,7 +2,7 @@ import { isMap, isScalar, parseDocument } from "yaml";
 
 export const UNTITLED = "Untitled paper";
 
-/** The text of an empty paper: a title, its author, one parameter, and a sentence to begin from. */
+/** The text of an empty paper: a title, its author and one parameter. The sheet itself says where to write. */
 export function emptyPaper(author: string): string {
   return `---
 title: ${UNTITLED}
@@ -14,7 +14,6 @@ authors:
 beta: {value: 1, min: 0, max: 4, step: 0.05, symbol: \\beta, note: branching rate}
 \`\`\`
 
-Write here. A number in a sentence, such as $\\beta = \\value{beta}$, follows its parameter above.
 `;
 }
 

@@ -26,6 +26,7 @@ export function sheetAtHand(text: string, { writes = true, computing = true } = 
     }),
   });
   const store = createStore({ ...FIRST_VIEW, ready: true });
+  const reader = new SheetReader();
   const asked = {
     recompute: vi.fn(),
     letStand: vi.fn(),
@@ -43,6 +44,7 @@ export function sheetAtHand(text: string, { writes = true, computing = true } = 
     view,
     cellCommands: { ...host.commands, ...asked },
     bibliographyNow: () => "",
+    valuesNow: async (formulas: readonly string[]) => reader.values(formulas),
     edit: (change: Parameters<EditorView["dispatch"]>[0]) => view.dispatch(change),
     editParameters: (change: Parameters<EditorView["dispatch"]>[0]) => view.dispatch(change),
     ...asked,
@@ -66,12 +68,11 @@ export function sheetAtHand(text: string, { writes = true, computing = true } = 
     });
     store.set({ model });
   };
-  apply(read(text, computing));
+  apply(read(reader, text, computing));
   return { sheet, view, asked, store, apply, end: () => view.destroy() };
 }
 
-function read(text: string, computing: boolean): SheetModel {
-  const reader = new SheetReader();
+function read(reader: SheetReader, text: string, computing: boolean): SheetModel {
   reader.hear(tellText(text));
   if (computing) {
     const { shown, results } = computed(text);
