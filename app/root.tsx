@@ -1,4 +1,4 @@
-import type { ReactNode } from "react";
+import { type ReactNode, useEffect } from "react";
 import {
   isRouteErrorResponse,
   Links,
@@ -29,6 +29,12 @@ export async function loader({ request, context }: Route.LoaderArgs) {
 export function Layout({ children }: { readonly children: ReactNode }) {
   const nonce = useNonce();
   const data = useRouteLoaderData<typeof loader>("root");
+  // A page may have turned itself light or dark since; what is loaded anew holds from then on.
+  useEffect(() => {
+    const { dataset } = document.documentElement;
+    if (data?.theme) dataset.theme = data.theme;
+    else delete dataset.theme;
+  }, [data]);
   return (
     <html lang="en" data-theme={data?.theme ?? undefined}>
       <head>

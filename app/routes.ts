@@ -8,6 +8,7 @@ export default [
   route("sign-out", "routes/sign-out.ts"),
   route("shelf", "routes/shelf.tsx"),
   route("settings", "routes/settings.tsx"),
+  route("theme", "routes/theme.ts"),
   route("specimen", "routes/specimen.ts"),
   route("manual", "routes/manual.tsx"),
 

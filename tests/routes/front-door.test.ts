@@ -260,3 +260,13 @@ test("a fault of the inside shows its page, without words or stack of the inside
     await knex.destroy();
   }
 });
+
+test("whether pages are light or dark is kept for anyone, and other words are not", async () => {
+  const guest = new Browser();
+  const ask = (theme: string) => guest.ask(`${server.url}/theme`, form({ theme }));
+  expect((await ask("dark")).status).toBe(204);
+  expect(await (await guest.open(`${server.url}/`)).text()).toMatch(/<html[^>]* data-theme="dark"/);
+  expect((await ask("light")).status).toBe(204);
+  expect(await (await guest.open(`${server.url}/`)).text()).toMatch(/<html[^>]* data-theme="light"/);
+  expect((await ask('dark" onload="')).status).toBe(400);
+});

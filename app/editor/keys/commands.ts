@@ -5,6 +5,7 @@ import { goToErratum } from "./errata-walk.ts";
 import { FIGURE_COMMANDS } from "./figure-commands.ts";
 import { quoteRefused, quoteValue } from "./quote.ts";
 import { RULE_COMMANDS } from "./rule-commands.ts";
+import { turnTheme } from "./theme.ts";
 import type { CommandGroup, SheetAtHand, SheetCommand } from "./types.ts";
 
 /** In the order of the list. A new command of the sheet is one entry here. */
@@ -33,8 +34,7 @@ export const SHEET_COMMANDS: readonly SheetCommand[] = [
     group: "Places",
     words: "Light or dark",
     letter: null,
-    unavailable: signedOut,
-    act: (sheet) => sheet.leaveFor("/settings"),
+    act: ({ desk }) => void turnTheme((words) => desk.tell(words)),
   },
   {
     id: "title-page",
