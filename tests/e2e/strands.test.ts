@@ -139,6 +139,72 @@ test("a changed parameter's branches break, and ties of what is out of date are 
   }
 });
 
+/** Writes at the end of the text, as one edit. */
+async function writeAtEnd({ page }: Visitor, words: string): Promise<void> {
+  await page.locator(".hl-text .cm-content").focus();
+  await page.keyboard.press("Control+End");
+  await page.keyboard.insertText(words);
+}
+
+test("what is said of a parameter is edited beneath the rule, and others see it", async () => {
+  const { page } = ines;
+  await page.getByRole("button", { name: /: change mu$/ }).click();
+  await page.getByLabel("Scale from").fill("2*gama");
+  await soon(() => page.locator(".hl-entry [aria-invalid]").count()).toBe(1);
+  await page.getByLabel("Scale from").fill("1.2");
+  await page.keyboard.press("Enter");
+  await soon(() => other.parameter("mu").getAttribute("aria-valuemin")).toBe("1.2");
+  await soon(() => page.evaluate(() => document.activeElement?.getAttribute("data-parameter"))).toBe("mu");
+  expect(await page.locator(".hl-entry").count()).toBe(0);
+});
+
+test("a drift dragged across the border where a cell loses its answer says so at once, and Esc puts back", async () => {
+  const { page } = ines;
+  // Given absorption there is a limit law only where absorption of all is certain to be finite: above √(2β) = 1.414.
+  await writeAtEnd(ines, "\n\n```yaglom limit\nof: larvae\n```\n");
+  const mu = sheet.parameter("mu");
+  const described = () =>
+    mu.evaluate((value) => document.getElementById(value.getAttribute("aria-describedby") ?? "")?.textContent);
+  await soon(described).toMatch(/ hang from it\. Below mu = 1\.414.* has no answer there\.$/);
+  await mu.scrollIntoViewIfNeeded();
+  const box = await page.locator(".hl-par", { has: mu }).locator(".hl-par-scale").boundingBox();
+  if (box === null) throw new Error("The drift has no scale.");
+  const at = (share: number): [number, number] => [box.x + share * box.width, box.y + box.height / 2];
+  await page.mouse.move(...at((1.6 - 1.2) / 2.8));
+  await page.mouse.down();
+  await page.mouse.move(...at((1.5 - 1.2) / 2.8));
+  await soon(() => mu.textContent()).toBe("1.50");
+  expect(await page.locator(".hl-rule-word.hl-amiss").count()).toBe(0);
+  await page.mouse.move(...at((1.3 - 1.2) / 2.8));
+  // Within the frame of the hand, before anything is computed.
+  expect(await page.locator(".hl-rule-word.hl-amiss").textContent()).toMatch(/^‡ Below .* has no answer there\.$/);
+  await soon(() => page.locator("[role=status]").allTextContents()).toContainEqual(
+    expect.stringMatching(/^Below mu = 1\.414.* has no answer there\.$/),
+  );
+  await page.keyboard.press("Escape");
+  await page.mouse.up();
+  await soon(() => mu.textContent()).toBe("1.60");
+  await soon(() => page.locator(".hl-rule-word.hl-amiss").count()).toBe(0);
+  await page.mouse.move(1300, 700);
+});
+
+test("parameters change places by the keys, which they keep, and all is undone step by step", async () => {
+  const { page } = ines;
+  const order = (each: SheetOnPage) =>
+    each.page.locator(".hl-rule [data-parameter]").evaluateAll((all) => all.map((one) => one.dataset.parameter));
+  const before = await order(sheet);
+  await sheet.parameter("mu").focus();
+  await page.keyboard.press("Alt+Shift+ArrowRight");
+  await soon(() => order(other)).toEqual([before[1], "mu", ...before.slice(2)]);
+  await soon(() => page.evaluate(() => document.activeElement?.getAttribute("data-parameter"))).toBe("mu");
+  await page.locator(".hl-text .cm-content").focus();
+  for (let step = 0; step < 3; step += 1) await page.keyboard.press("Control+z");
+  await soon(() => order(other)).toEqual(before);
+  await soon(() => other.parameter("mu").getAttribute("aria-valuemin")).toBe("1.45");
+  await soon(() => other.tail.textContent()).toContain("Errata none");
+  await page.evaluate(() => window.scrollTo(0, 0));
+});
+
 test("marks and strands can be put away, which is kept", async () => {
   const command = ines.page.getByRole("button", { name: /^Marks and strands:/ });
   await command.click();
@@ -171,6 +237,17 @@ test("on a narrow page a tapped number raises a slip, and stays as it is set", a
   expect((await new AxeBuilder({ page }).withTags(RULES).analyze()).violations).toEqual([]);
   await page.keyboard.press("Escape");
   await soon(() => slip.count()).toBe(0);
+});
+
+test("there a parameter's entry comes from below", async () => {
+  const { page } = tormod;
+  await page.getByRole("button", { name: /: change mu$/ }).click();
+  await page.getByLabel("Value", { exact: true }).waitFor();
+  const entry = page.locator(".hl-entry");
+  await soon(() => entry.evaluate((place) => Math.round(place.getBoundingClientRect().bottom))).toBe(844);
+  expect((await new AxeBuilder({ page }).withTags(RULES).analyze()).violations).toEqual([]);
+  await page.keyboard.press("Escape");
+  await soon(() => entry.count()).toBe(0);
 });
 
 test("no page complained", () => {
