@@ -1,6 +1,6 @@
 // @vitest-environment jsdom
 import { type ChangeSet, EditorSelection, EditorState, type Text } from "@codemirror/state";
-import { EditorView } from "@codemirror/view";
+import { type DecorationSet, EditorView } from "@codemirror/view";
 import fc from "fast-check";
 import { afterEach, beforeAll, describe, expect, test, vi } from "vitest";
 import { KINDS } from "../../app/cells/index.ts";
@@ -55,9 +55,12 @@ function apply(
 /** What is drawn, by place and what it is; in any order, since layers of marks at one place are in none. */
 function drawn(view: EditorView): string[] {
   const found: string[] = [];
-  view.state.field(sheetField).shown.between(0, view.state.doc.length, (from, to, { spec }) => {
-    found.push(`${from}-${to} ${spec.class ?? spec.widget?.constructor.name ?? "hidden"}${spec.block ? " block" : ""}`);
-  });
+  for (const layer of Object.values(view.state.field(sheetField).shown) as DecorationSet[])
+    layer.between(0, view.state.doc.length, (from, to, { spec }) => {
+      found.push(
+        `${from}-${to} ${spec.class ?? spec.widget?.constructor.name ?? "hidden"}${spec.block ? " block" : ""}`,
+      );
+    });
   return found.sort();
 }
 

@@ -8,11 +8,12 @@ import {
   StateField,
   type Text,
 } from "@codemirror/state";
-import { Decoration, type DecorationSet, EditorView } from "@codemirror/view";
+import { type Decoration, type DecorationSet, EditorView } from "@codemirror/view";
 import type { CellFace, Piece, SheetModel } from "../model/types.ts";
 import { sameLook } from "./cell-widget.tsx";
 import { BLANK, closedDecorations, openedDecorations, type Workshop } from "./decorate.ts";
 import { foundField } from "./found.ts";
+import { eachLayer, inLayers, inView, type Layers, NO_LAYERS } from "./layers.ts";
 import { afterDelta } from "./piece-list.ts";
 import { hiding, type Place, placesOf, touched } from "./places.ts";
 import { WidgetStore } from "./widgets.ts";
@@ -36,10 +37,10 @@ interface Sheet {
   readonly workshop: Workshop;
   readonly places: RangeSet<Place>;
   /** Drawn while nothing is open. */
-  readonly closed: DecorationSet;
+  readonly closed: Layers;
   readonly opened: ReadonlySet<Piece>;
   /** Drawn now. */
-  readonly shown: DecorationSet;
+  readonly shown: Layers;
   readonly workings: ReadonlySet<string>;
   readonly attention: boolean;
   readonly pressed: boolean;
@@ -62,9 +63,9 @@ export const sheetField = StateField.define<Sheet>({
     met: NOTHING,
     workshop: { store: new WidgetStore(), faces: new Map() },
     places: RangeSet.empty,
-    closed: Decoration.none,
+    closed: NO_LAYERS,
     opened: NOTHING,
-    shown: Decoration.none,
+    shown: NO_LAYERS,
     workings: new Set(),
     attention: false,
     pressed: false,
@@ -74,8 +75,9 @@ export const sheetField = StateField.define<Sheet>({
     if (transaction.docChanged) {
       met = withMet(met, places, transaction.changes);
       places = places.map(transaction.changes);
-      const moved = withoutEmptied(closed.map(transaction.changes), transaction.changes);
-      closed = withoutFilledBlanks(moved, transaction.changes, transaction.newDoc);
+      closed = eachLayer(closed, (set) => withoutEmptied(set.map(transaction.changes), transaction.changes));
+      const marks = withoutFilledBlanks(closed.marks, transaction.changes, transaction.newDoc);
+      if (marks !== closed.marks) closed = { ...closed, marks };
     }
     for (const effect of transaction.effects) {
       if (effect.is(applyModel)) {
@@ -91,16 +93,15 @@ export const sheetField = StateField.define<Sheet>({
         model = effect.value.model;
         workshop = { store: workshop.store, faces };
         ({ number, pieces } = list);
-        const marks = withoutEmptied(
-          Decoration.set(closedDecorations(list.fresh, doc, workshop), true).map(since),
-          since,
-        );
+        const made = inLayers(closedDecorations(list.fresh, doc, workshop), doc);
+        const layers = eachLayer(made, (set) => withoutEmptied(set.map(since), since));
         const drawn = RangeSet.of(placesOf(list.fresh, doc.length), true);
         // What is drawn late has been met already by what changed since it was asked for.
         met = withMet(NOTHING, drawn, since);
         const fresh = drawn.map(since);
         const bounds = boundsOf(places, list.gone);
-        closed = merged(closed, (mark) => list.gone.has(mark.spec.of), marks, bounds, transaction.newDoc);
+        const isGone = (mark: Decoration) => list.gone.has(mark.spec.of);
+        closed = eachLayer(closed, (set, name) => merged(set, isGone, layers[name], bounds, transaction.newDoc));
         places = merged(places, (place) => list.gone.has(place.piece), fresh, bounds, transaction.newDoc);
       } else if (effect.is(showWorking)) {
         const next = new Set(workings);
@@ -117,7 +118,12 @@ export const sheetField = StateField.define<Sheet>({
     if (closed === before.closed && same(opened, before.opened)) return { ...next, opened, shown: before.shown };
     return { ...next, opened, shown: withOpened(next, opened, transaction.state.doc) };
   },
-  provide: (field) => EditorView.decorations.from(field, (sheet) => sheet.shown),
+  // What replaces comes first, so that the dress of words goes around it.
+  provide: (field) => [
+    inView(({ state }) => state.field(field).shown.inline),
+    EditorView.decorations.from(field, ({ shown }) => shown.blocks),
+    EditorView.decorations.from(field, ({ shown }) => shown.marks),
+  ],
 });
 
 /** Without the marks whose words a change has taken away. Only where it took some can there be such. */
@@ -242,23 +248,21 @@ function same(a: ReadonlySet<Piece>, b: ReadonlySet<Piece>): boolean {
   return true;
 }
 
-function withOpened(sheet: Omit<Sheet, "opened" | "shown">, opened: ReadonlySet<Piece>, doc: Text): DecorationSet {
+function withOpened(sheet: Omit<Sheet, "opened" | "shown">, opened: ReadonlySet<Piece>, doc: Text): Layers {
   if (opened.size === 0) return sheet.closed;
   let [filterFrom, filterTo, left] = [doc.length, 0, opened.size];
-  const marks: ReturnType<typeof openedDecorations> = [];
+  const made: ReturnType<typeof openedDecorations> = [];
   for (const cursor = sheet.places.iter(); cursor.value !== null && left > 0; cursor.next()) {
     const { piece } = cursor.value;
     if (!opened.has(piece)) continue;
     left -= 1;
     filterFrom = Math.min(filterFrom, doc.lineAt(cursor.from).from);
     filterTo = Math.max(filterTo, doc.lineAt(cursor.to).to);
-    marks.push(...openedDecorations(piece, cursor.from, cursor.to, doc, sheet.workshop));
+    made.push(...openedDecorations(piece, cursor.from, cursor.to, doc, sheet.workshop));
   }
-  return sheet.closed.update({
-    filter: (_from, _to, value) => !opened.has(value.spec.piece),
-    filterFrom,
-    filterTo,
-    add: marks,
-    sort: true,
+  const layers = inLayers(made, doc);
+  return eachLayer(sheet.closed, (set, name) => {
+    const stays = (_from: number, _to: number, mark: Decoration) => !opened.has(mark.spec.piece);
+    return merged(without(set, filterFrom, filterTo, stays), () => false, layers[name], null, doc);
   });
 }
