@@ -4,6 +4,7 @@ import { EditorView } from "@codemirror/view";
 import { afterEach, beforeAll, beforeEach, expect, test, vi } from "vitest";
 import { type Reader, Reading } from "../../app/editor/live/reading.ts";
 import type { FromWorker, TextEdit, Told, ToWorker } from "../../app/editor/model/messages.ts";
+import { SheetPacker } from "../../app/editor/model/packing.ts";
 import type { SheetModel } from "../../app/editor/model/types.ts";
 import { SheetReader } from "../../app/editor/reading/sheet-reader.ts";
 import { glossField } from "../../app/editor/text/glosses.ts";
@@ -18,6 +19,8 @@ class SlowReader implements Reader {
   private waiting = 0;
   /** The texts that it was given, whole or as edits of the one before. */
   private readonly given: string[] = [];
+  private readonly packer = new SheetPacker();
+  private have = 0;
   ended = false;
 
   postMessage({ message, have }: Told): void {
@@ -28,6 +31,7 @@ class SlowReader implements Reader {
       const apply = (text: string, { from, to, insert }: TextEdit) => text.slice(0, from) + insert + text.slice(to);
       this.given.push(edits.reduce(apply, this.given.at(-1) ?? ""));
     }
+    this.have = have;
     this.reader.hear(message, have);
     this.waiting += 1;
   }
@@ -36,7 +40,7 @@ class SlowReader implements Reader {
     const data: FromWorker = {
       tell: "sheet",
       answers: this.waiting,
-      model: { ...this.reader.sheet(), ...change },
+      model: { ...this.packer.pack(this.reader.sheet(), this.have), ...change },
       seconds: 0,
     };
     this.waiting = 0;
@@ -114,6 +118,38 @@ test("a late answer is set where its text has gone in the meantime", () => {
   const { reader, view } = begin("So $x$ it is.");
   view.dispatch({ changes: { from: 0, insert: "Well. " } });
   reader.answer();
+  expect(mathAt(view)).toBe("$x$");
+});
+
+test("an answer that brings nothing changes nothing in the view, and the next one builds on it", () => {
+  const { reader, view, models, type } = begin("So $x$ it is.");
+  reader.answer();
+  const before = view.state.field(sheetField);
+  type(" And so on");
+  reader.answer();
+  expect(models).toHaveLength(2);
+  expect(view.state.field(sheetField).number).toBe(before.number);
+  expect(view.state.field(sheetField).pieces).toBe(before.pieces);
+  type(" to $y$.");
+  reader.answer();
+  const { number, pieces } = view.state.field(sheetField);
+  expect(number).toBe(3);
+  // Only what is new was told, on top of the answer that was not drawn.
+  expect(models.at(-1)?.pieces).toMatchObject({ base: 2, head: before.pieces.length });
+  expect(pieces.slice(0, before.pieces.length)).toEqual(before.pieces);
+  expect(pieces.at(-1)).toMatchObject({ piece: "set", content: { tex: "y" } });
+  expect(view.contentDOM.querySelectorAll(".hl-math")).toHaveLength(2);
+});
+
+test("what was met by a change is drawn again, though its answer brings nothing new", () => {
+  const { reader, view } = begin("So $x$ it is.");
+  reader.answer();
+  view.dispatch({ changes: { from: 4, insert: "x" } });
+  view.dispatch({ changes: { from: 4, to: 5 } });
+  vi.advanceTimersByTime(50);
+  expect(view.state.field(sheetField).met.size).toBe(1);
+  reader.answer();
+  expect(view.state.field(sheetField).met.size).toBe(0);
   expect(mathAt(view)).toBe("$x$");
 });
 

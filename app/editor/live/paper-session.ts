@@ -7,6 +7,7 @@ import { BIBLIOGRAPHY_NAME, SHOWN_NAMES, SOCKET_PATHS, TEXT_NAME } from "../prot
 import { type Connection, closingOf } from "./connection.ts";
 import { JoinedChanges } from "./joined-changes.ts";
 import { followNetwork } from "./network.ts";
+import { gatherOthersWords } from "./others-words.ts";
 import { forgetPrivateCopy } from "./private-copies.ts";
 import { openPrivateCopy } from "./private-copy.ts";
 
@@ -113,6 +114,7 @@ function joinText(options: SessionOptions, person: { readonly id: string }, doc:
     connect: false,
   });
   const unwatch = watchKept(provider, options.onKept);
+  const ungather = gatherOthersWords(provider);
   const unfollow = followNetwork(provider);
   const names = namesByClient(awareness);
   let everLive = false;
@@ -165,6 +167,7 @@ function joinText(options: SessionOptions, person: { readonly id: string }, doc:
     again: () => provider.connect(),
     stop() {
       unwatch();
+      ungather();
       unfollow();
       clearTimeout(telling);
       provider.destroy();

@@ -3,7 +3,7 @@ import * as Y from "yjs";
 import { privateCopyName } from "./private-copies.ts";
 
 /** Updates are stored together at most so long after the first of them [ms]: one write for a burst of letters. */
-const GATHER_MS = 300;
+const GATHER_MS = 1000;
 
 /** The text's copy in this browser, which keeps what the server has not heard of yet. */
 export interface PrivateCopy {

@@ -5,9 +5,10 @@ import type { Borders } from "../model/borders.ts";
 import type { FromWorker, TextEdit, Told, ToWorker, ValueNow } from "../model/messages.ts";
 import { unpackSheet } from "../model/packing.ts";
 import type { SheetModel } from "../model/types.ts";
-import { setProblems } from "../text/glosses.ts";
+import { glossField, setProblems } from "../text/glosses.ts";
 import { applyModel, sheetField } from "../text/sheet-field.ts";
 import type { ShownRecords } from "./paper-session.ts";
+import { showsTheSame } from "./same-sheet.ts";
 
 /** The part of a Worker that reading needs; a test gives its own. */
 export interface Reader {
@@ -39,6 +40,8 @@ export class Reading {
   private stale = false;
   private asked: { doc: Text; since: ChangeSet };
   private model: SheetModel | null = null;
+  /** The pieces on the sheet, of the answer `drawn`, are those of the later answer `heard` as well. */
+  private same = { drawn: 0, heard: 0 };
   private timer: ReturnType<typeof setTimeout> | undefined;
   private rest: ReturnType<typeof setTimeout> | undefined;
   private typedAt = 0;
@@ -141,16 +144,35 @@ export class Reading {
 
   private send(message: ToWorker): void {
     this.open += 1;
-    this.reader.postMessage({ message, have: this.view.state.field(sheetField).number });
+    this.reader.postMessage({ message, have: this.have() });
+  }
+
+  /** Number of the newest answer whose pieces are on the sheet. */
+  private have(): number {
+    const { number } = this.view.state.field(sheetField);
+    return number === this.same.drawn ? this.same.heard : number;
+  }
+
+  /** Puts an answer on the sheet, unless it brings nothing: a change of the view costs as much as a key. */
+  private draw(model: SheetModel, before: SheetModel | null): void {
+    const { number, met } = this.view.state.field(sheetField);
+    const onHave = model.pieces.base === this.have();
+    if (onHave && met.size === 0 && showsTheSame(before, model)) {
+      this.same = { drawn: number, heard: model.pieces.number };
+      return;
+    }
+    const pieces = onHave ? { ...model.pieces, base: number } : model.pieces;
+    this.view.dispatch({ effects: applyModel.of({ model: { ...model, pieces }, ...this.asked }) });
   }
 
   private hear(message: FromWorker): void {
     this.open -= message.answers;
     if (message.tell === "sheet" && message.model.version === this.version) {
-      const model = unpackSheet(this.model, message.model);
+      const before = this.model;
+      const model = unpackSheet(before, message.model);
       this.model = model;
       this.onModel(model);
-      this.view.dispatch({ effects: applyModel.of({ model, ...this.asked }) });
+      this.draw(model, before);
       this.showProblems(model);
     } else if (message.tell === "borders") {
       this.onBorders(message.borders);
@@ -174,6 +196,7 @@ export class Reading {
   /** Faults wait until the writing rests: a word half written is not a fault. */
   private showProblems(model: SheetModel): void {
     clearTimeout(this.rest);
+    if (model.problems.length === 0 && this.view.state.field(glossField).problems.length === 0) return;
     const wait = Math.max(0, this.typedAt + REST_MS - Date.now());
     const { asked } = this;
     const show = () => {

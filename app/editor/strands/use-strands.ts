@@ -1,5 +1,6 @@
 import { type RefObject, useEffect, useState, useSyncExternalStore } from "react";
 import type { Desk } from "../live/desk.ts";
+import { showsTheSame } from "../live/same-sheet.ts";
 import { type StrandsView, StrandWatch } from "./watch.ts";
 
 const NOTHING = () => {};
@@ -23,7 +24,7 @@ export function useStrandWatch(
     let seen = desk.store.get().model;
     const endWatch = desk.store.watch(() => {
       const { model } = desk.store.get();
-      if (model !== seen) begun.ask();
+      if (model !== seen && model !== null && !showsTheSame(seen, model)) begun.ask();
       seen = model;
     });
     setWatch(begun);

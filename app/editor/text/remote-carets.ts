@@ -45,7 +45,11 @@ class RemoteCarets {
   update(update: ViewUpdate): void {
     if (update.docChanged || update.selectionSet || update.focusChanged) this.tellOwnSoon(update.view);
     const redraw = update.docChanged || update.transactions.some((each) => each.annotation(moved) === true);
-    if (redraw) this.decorations = this.draw(update.state.doc);
+    if (!redraw) return;
+    this.decorations = this.draw(update.state.doc);
+    // Drawn with the words that came with them.
+    if (this.redrawing !== null) cancelAnimationFrame(this.redrawing);
+    this.redrawing = null;
   }
 
   destroy(): void {

@@ -16,6 +16,8 @@ import { type Suggestion, suggestionsAt } from "./suggest.ts";
 
 /** How long the writing rests before suggestions are looked for, in ms: never within a keystroke's own frame. */
 const REST_MS = 120;
+/** In plain prose it is settled that nothing is suggested when the writing has rested so much longer, in ms. */
+const SETTLED_MS = 200;
 /** Shown at once; the arrows lead on to the next so many. So nothing scrolls that the keyboard could not reach. */
 const MOST_SHOWN = 8;
 
@@ -39,7 +41,7 @@ export const suggestionList: Extension = [
   inFullSight,
   EditorState.phrases.of({ Completions: "Suggestions" }),
   autocompletion({
-    override: [suggest],
+    override: [(context) => suggest(context) ?? nothing(context)],
     icons: false,
     defaultKeymap: false,
     activateOnTypingDelay: REST_MS,
@@ -66,6 +68,22 @@ function suggest({ state, pos, explicit }: CompletionContext): CompletionResult 
     }),
     validFor: (word) => WORD.test(word) && wanted(word),
   };
+}
+
+/**
+ * That nothing is suggested is an answer as well, and each answer costs as much as a key: while one goes on writing
+ * there is none.
+ */
+function nothing(context: CompletionContext): Promise<null> | null {
+  if (context.explicit) return null;
+  return new Promise((resolve) => {
+    const timer = setTimeout(() => resolve(null), SETTLED_MS);
+    const end = () => {
+      clearTimeout(timer);
+      resolve(null);
+    };
+    context.addEventListener("abort", end, { onDocChange: true });
+  });
 }
 
 const WORD = /^\\?[\w:.-]*$/;
