@@ -11,6 +11,7 @@ import { glossField } from "./glosses.ts";
 import { type SheetHost, sheetHost } from "./host.ts";
 import { lineNumbers } from "./line-numbers.ts";
 import { enter, lineBreak } from "./paragraphs.ts";
+import { closedInPrint } from "./print.ts";
 import { remoteCarets } from "./remote-carets.ts";
 import { setAttention, setPressed, sheetField } from "./sheet-field.ts";
 import { leaveWorking, workingPlaces } from "./working-place.ts";
@@ -48,6 +49,7 @@ export function createSheetEditor(options: EditorOptions): EditorView {
         lineNumbers,
         gutters({ fixed: false }),
         attention,
+        closedInPrint,
         remoteCarets(text, awareness),
         EditorView.updateListener.of(options.onUpdate),
       ],
