@@ -56,6 +56,23 @@ function setFormula(tex: string, display: boolean, macros: Readonly<Record<strin
   }
 }
 
+/** The first macro of a formula that nobody has defined, with its backslash; null: there is none. */
+export function unknownMacro(tex: string, macros: Readonly<Record<string, string>>): string | null {
+  if (tex.length > LONGEST_TEX) return null;
+  try {
+    katex.renderToString(tex, {
+      throwOnError: true,
+      strict: "ignore",
+      maxExpand: MOST_EXPANSIONS,
+      macros: { ...macros },
+    });
+    return null;
+  } catch (error) {
+    const reason = error instanceof Error ? error.message : String(error);
+    return /Undefined control sequence: (\\[A-Za-z]+)/.exec(reason)?.[1] ?? null;
+  }
+}
+
 /** What KaTeX says of its place ("at position 3: …") repeats the source, which stands beside it. */
 function reasonOf(error: unknown): string {
   const message = error instanceof Error ? error.message : String(error);

@@ -16,6 +16,7 @@ export function silentHost(): SheetHost {
     plateOf: (id) => `/papers/p/plates/${id}`,
     writes: true,
     tell: nothing,
+    edit: nothing,
     ...hostAtRest(),
   };
 }

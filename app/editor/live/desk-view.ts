@@ -1,6 +1,7 @@
 import type { Kept } from "../kept.ts";
 import type { Borders } from "../model/borders.ts";
 import type { CellFace, SheetModel } from "../model/types.ts";
+import type { Offer } from "../text/host.ts";
 import type { Connection } from "./connection.ts";
 
 /** What the parts around the text watch. */
@@ -10,7 +11,7 @@ export interface DeskView {
   readonly kept: Kept;
   readonly people: readonly string[];
   /** A refusal, or word of a joining; null when there is nothing to say. */
-  readonly notice: { readonly words: string; readonly amiss: boolean } | null;
+  readonly notice: { readonly words: string; readonly amiss: boolean; readonly offer?: Offer } | null;
   readonly heard: string;
   /** Where along the parameters cells answer otherwise, as far as it is known. */
   readonly borders: Borders;
@@ -37,3 +38,6 @@ export const FIRST_VIEW: DeskView = {
   borders: {},
   ready: false,
 };
+
+/** How long the tail line says what was done, and how long it offers a command with it, in ms. */
+export const TOLD_MS = { words: 12_000, offer: 60_000 } as const;

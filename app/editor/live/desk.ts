@@ -10,7 +10,7 @@ import { findPlace } from "../text/places.ts";
 import { sheetField } from "../text/sheet-field.ts";
 import { Announcer } from "./announcer.ts";
 import type { Connection } from "./connection.ts";
-import { type DeskView, FIRST_VIEW, TO_RECOMPUTE } from "./desk-view.ts";
+import { type DeskView, FIRST_VIEW, TO_RECOMPUTE, TOLD_MS } from "./desk-view.ts";
 import { openSession, type PaperSession, type SessionOptions, type ShownRecords } from "./paper-session.ts";
 import { forgetPrivateCopies } from "./private-copies.ts";
 import { Reading } from "./reading.ts";
@@ -24,9 +24,6 @@ export interface DeskOptions extends Pick<SessionOptions, "paperId" | "person" |
   /** Gives the worker that reads the text; it is ended with the desk. */
   takeReader(): Worker;
 }
-
-/** How long the tail line says what was done, in ms. */
-const TOLD_MS = 12_000;
 
 /** Everything that belongs to one open paper: its session, its text on the sheet, its reading, and the commands. */
 export class Desk {
@@ -161,7 +158,8 @@ export class Desk {
   tell(words: string, offer?: Offer): void {
     const notice = { words, amiss: false, ...(offer === undefined ? {} : { offer }) };
     this.store.set({ notice });
-    setTimeout(() => this.store.get().notice === notice && this.store.set({ notice: null }), TOLD_MS);
+    const rest = TOLD_MS[offer === undefined ? "words" : "offer"];
+    setTimeout(() => this.store.get().notice === notice && this.store.set({ notice: null }), rest);
     this.announcer.say(words);
   }
 

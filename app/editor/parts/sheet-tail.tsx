@@ -36,7 +36,13 @@ function KeptWords({ desk, writes }: Pick<Props, "desk" | "writes">) {
 
 function Notice({ desk }: Pick<Props, "desk">) {
   const notice = useDeskView(desk, (view) => view.notice);
-  return notice === null ? null : <span className={notice.amiss ? "hl-amiss" : ""}>{notice.words} </span>;
+  if (notice === null) return null;
+  const { words, amiss, offer } = notice;
+  return (
+    <span className={amiss ? "hl-amiss" : ""}>
+      {words} {offer === undefined ? null : <Command onClick={offer.act}>{offer.name}</Command>}{" "}
+    </span>
+  );
 }
 
 /** "All changes kept, 14:32": said only when the server has committed all that was written here. */

@@ -1,4 +1,4 @@
-import { Facet } from "@codemirror/state";
+import { Facet, type TransactionSpec } from "@codemirror/state";
 import { createStore, type Store } from "../live/store.ts";
 import type { CellFace, ShownView } from "../model/types.ts";
 import { PLATES_AT_REST, type PlatesView } from "../plates/types.ts";
@@ -14,6 +14,12 @@ export interface CellCommands {
   goToLine(line: number): void;
 }
 
+/** A command offered with what is said. */
+export interface Offer {
+  readonly name: string;
+  act(): void;
+}
+
 /** What the typeset pieces of the text need from the page around them. */
 export interface SheetHost {
   readonly commands: CellCommands;
@@ -26,8 +32,10 @@ export interface SheetHost {
   readonly views: Map<string, ShownView>;
   /** What becomes of the plates on this page alone. */
   readonly plates: Store<PlatesView>;
-  /** Says something in the tail line, and to those who listen. */
-  tell(words: string): void;
+  /** Says something in the tail line, with a command that is offered, and to those who listen. */
+  tell(words: string, offer?: Offer): void;
+  /** One edit of the text, and one step to undo; entries for the bibliography may come with it. */
+  edit(change: TransactionSpec, bibtex?: string): void;
   /** Of the text [px]; plates are drawn to it. */
   columnWidth: number;
 }

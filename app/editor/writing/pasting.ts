@@ -1,5 +1,6 @@
 import { type EditorState, type Extension, StateEffect, StateField } from "@codemirror/state";
 import { EditorView, showTooltip, type Tooltip } from "@codemirror/view";
+import { breaks, pasteEntries, pasteLatex } from "./pasting-latex.ts";
 import { cellAround, inMath } from "./place.ts";
 import { gridOfPage, gridOfTabs, tableText } from "./table-text.ts";
 
@@ -26,7 +27,7 @@ const pastedField = StateField.define<Tooltip | null>({
   provide: (field) => showTooltip.from(field),
 });
 
-/** Tables from other programs become tables of the paper; the notice beneath offers them as they came. */
+/** Tables and LaTeX from elsewhere become the paper's; both can be had as they came. */
 export const pasting: Extension = [
   pastedField,
   EditorView.domEventHandlers({
@@ -34,18 +35,34 @@ export const pasting: Extension = [
       const data = event.clipboardData;
       if (data === null || view.state.readOnly) return false;
       const plain = data.getData("text/plain");
-      if (plain === "" && [...data.files].some(({ type }) => type.startsWith("image/"))) {
-        tell(view, "Images cannot be put into a paper yet: a picture made elsewhere has no place to be kept.");
+      if (plain === "" && holdsImage(data)) {
+        tell(view, NO_IMAGES);
         return true;
       }
       if (!takesTables(view.state)) return false;
       const grid = gridOfPage(data.getData("text/html")) ?? gridOfTabs(plain);
-      if (grid === null) return false;
+      if (grid === null) {
+        const text = plain.replace(/\r\n?/g, "\n");
+        return pasteEntries(view, text) || pasteLatex(view, text);
+      }
       putTable(view, tableText(grid), plain, `${grid.length} rows and ${grid[0]?.length} columns`);
+      return true;
+    },
+    drop(event, view) {
+      if (event.dataTransfer === null || view.state.readOnly || !holdsImage(event.dataTransfer)) return false;
+      tell(view, NO_IMAGES);
+      event.preventDefault();
       return true;
     },
   }),
 ];
+
+const NO_IMAGES =
+  "Images cannot be put into a paper yet: a picture made elsewhere has no place to be kept. It is still where it came from; figures are drawn by cells, and tables can be pasted.";
+
+function holdsImage({ files }: DataTransfer): boolean {
+  return [...files].some(({ type }) => type.startsWith("image/"));
+}
 
 /** In prose; a working, mathematics and the front matter take what comes as it is. */
 function takesTables(state: EditorState): boolean {
@@ -68,11 +85,6 @@ function putTable(view: EditorView, table: string, plain: string, size: string):
     scrollIntoView: true,
     effects: setPasted.of({ from, to: end, words: `Pasted as a table of ${size}.`, plain }),
   });
-}
-
-/** Line breaks for a blank line beside what stands there; none at an end of the text. */
-function breaks(beside: string, there: RegExp): string {
-  return beside === "" ? "" : "\n".repeat(2 - (there.exec(beside)?.[0].length ?? 0));
 }
 
 function tell(view: EditorView, words: string): void {
