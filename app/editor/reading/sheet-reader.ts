@@ -20,7 +20,7 @@ import { frontFace, frontPieces } from "./front-face.ts";
 import { LANGUAGE_WORDS, namesOf } from "./knowledge.ts";
 import { type CellStanding, numberFaces } from "./number-faces.ts";
 import { parameterFaces, parameterPieces } from "./parameter-faces.ts";
-import { byPlace, PieceStore } from "./piece-store.ts";
+import { byPlace, editBetween, PieceStore } from "./piece-store.ts";
 import { collectPieces } from "./pieces.ts";
 import { bibliographyFaces, problemFaces } from "./problem-faces.ts";
 import { ResultStore } from "./result-store.ts";
@@ -62,14 +62,14 @@ export class SheetReader {
     this.have = have;
     switch (message.tell) {
       case "text":
-        this.hearText(message.version, message.text, message.bibliography);
+        this.hearText(message.version, message.text, message.bibliography, [editBetween(this.text, message.text)]);
         return;
       case "ahead":
-        this.hearText(0, message.text, message.bibliography);
+        this.hearText(0, message.text, message.bibliography, []);
         this.paper ??= readPaper(message.text, message.bibliography);
         return;
       case "edits":
-        this.hearText(message.version, edited(this.text, message.edits), message.bibliography);
+        this.hearText(message.version, edited(this.text, message.edits), message.bibliography, message.edits);
         return;
       case "shown":
         this.shown = {
@@ -90,8 +90,9 @@ export class SheetReader {
     }
   }
 
-  private hearText(version: number, text: string, bibliography: string): void {
+  private hearText(version: number, text: string, bibliography: string, edits: readonly TextEdit[]): void {
     this.version = version;
+    this.pieces.move(edits);
     if (text === this.text && bibliography === this.bibliography) return;
     this.text = text;
     this.bibliography = bibliography;
