@@ -73,6 +73,12 @@ export function unknownMacro(tex: string, macros: Readonly<Record<string, string
   }
 }
 
+/** Why a formula cannot be set; "" when it can. */
+export function mathFault(tex: string, macros: Readonly<Record<string, string>>): string {
+  const reason = /class="math-unset" title="([^"]*)"/.exec(renderMath(tex, false, macros))?.[1] ?? "";
+  return reason.replaceAll("&quot;", '"').replaceAll("&lt;", "<").replaceAll("&gt;", ">").replaceAll("&amp;", "&");
+}
+
 /** What KaTeX says of its place ("at position 3: …") repeats the source, which stands beside it. */
 function reasonOf(error: unknown): string {
   const message = error instanceof Error ? error.message : String(error);

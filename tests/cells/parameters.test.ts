@@ -21,6 +21,9 @@ describe("parameters", () => {
     const [a] = planOf(quoted).parameters;
     expect(a?.source).toBe("1 + 1");
     expect(quoted.slice(a?.from, a?.to)).toBe("'1 + 1'");
+    const folded = cell("parameters", "b:\n  value: |\n    1 + 1\n  note: sum");
+    const [b] = planOf(folded).parameters;
+    expect([b?.source.trim(), folded.slice(b?.from, b?.to)]).toEqual(["1 + 1", "|\n    1 + 1"]);
   });
 
   test("without a symbol stand by their names, Greek letters in Greek", () => {

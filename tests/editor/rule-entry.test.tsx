@@ -160,6 +160,21 @@ describe("an entry", () => {
     expect(at.asked.tell).toHaveBeenLastCalledWith("L is a parameter now; one step to undo.");
   });
 
+  test("shows how a symbol is set, and refuses one that cannot be", () => {
+    open("beta");
+    write("Symbol", "\\beta_{");
+    rest();
+    expect(fault("Symbol")).toContain("cannot be set");
+    enter();
+    expect(text()).toBe(TEXT);
+    write("Symbol", "b_{\\infty}");
+    rest();
+    expect(fault("Symbol")).toBe("");
+    expect(place.querySelector(".hl-entry-symbol .katex")).not.toBeNull();
+    enter();
+    expect(text()).toContain("beta: {value: 1, symbol: 'b_{\\infty}'} # rate");
+  });
+
   test("of one that is gone says so", () => {
     open("gone");
     expect(place.textContent).toBe("gone is not a parameter of this paper any more.");

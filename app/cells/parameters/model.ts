@@ -2,6 +2,7 @@ import type { Formula, Value } from "../../formulas/index.ts";
 import type { YamlEntry } from "../../paper/index.ts";
 import type { Body } from "../body.ts";
 import type { KindOf } from "../kind.ts";
+import { endOf } from "../parameters-editing/scalar.ts";
 import { PARAMETERS_DOCUMENTATION } from "./documentation.ts";
 import { defaultSymbol } from "./symbol.ts";
 
@@ -90,7 +91,7 @@ function declaredParameter(body: Body, entry: YamlEntry): DeclaredParameter | nu
     se: number("se") ?? ZERO,
     source: node.yaml === "scalar" ? node.text : "",
     from: node.from,
-    to: node.to,
+    to: endOf(body.text, node),
     line: node.line,
     min: number("min"),
     max: number("max"),

@@ -34,6 +34,16 @@ export function CommandList({ sheet, personId }: Props) {
           </div>
         ))}
       </div>
+      <p className="hl-strip-words hl-rule-keys">
+        On the rule: <kbd>←</kbd> <kbd>→</kbd> one tick, with <kbd>Alt</kbd> a tenth, with <kbd>Ctrl</kbd> ten; digits
+        type a value or a formula, <kbd>Enter</kbd> sets it, <kbd>Esc</kbd> puts back
+        {sheet.writes ? (
+          <>
+            ; <kbd>Alt</kbd> <kbd>Shift</kbd> <kbd>←</kbd> <kbd>→</kbd> let the parameter stand earlier or later
+          </>
+        ) : null}
+        .
+      </p>
     </>
   );
 }

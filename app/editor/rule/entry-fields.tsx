@@ -1,30 +1,33 @@
 import type { ParameterField } from "../../cells/index.ts";
 import { Field } from "../../ui/index.ts";
+import { mathFault } from "../../ui/math.ts";
+import { Runs } from "../parts/runs.tsx";
 import type { Entry } from "./use-entry.ts";
 
 interface Props {
   readonly entry: Entry;
+  /** TeX macros of the front matter. */
+  readonly macros: Readonly<Record<string, string>>;
   readonly isNew: boolean;
 }
 
 interface Line {
   readonly field: ParameterField;
   readonly label: string;
-  readonly hint: string;
 }
 
 const LINES: readonly Line[] = [
-  { field: "unit", label: "Unit", hint: "" },
-  { field: "symbol", label: "Symbol", hint: "TeX" },
-  { field: "min", label: "Scale from", hint: "" },
-  { field: "max", label: "Scale to", hint: "" },
-  { field: "step", label: "Step", hint: "" },
-  { field: "se", label: "Standard error", hint: "" },
-  { field: "note", label: "Note", hint: "" },
+  { field: "unit", label: "Unit" },
+  { field: "symbol", label: "Symbol" },
+  { field: "min", label: "Scale from" },
+  { field: "max", label: "Scale to" },
+  { field: "step", label: "Step" },
+  { field: "se", label: "Standard error" },
+  { field: "note", label: "Note" },
 ];
 
 /** The fields of an entry, each with what stands against it. */
-export function EntryFields({ entry, isNew }: Props) {
+export function EntryFields({ entry, macros, isNew }: Props) {
   const fault = (field: ParameterField | "name") =>
     entry.problem?.field === field ? `‡ ${entry.problem.problem}` : null;
   return (
@@ -53,11 +56,11 @@ export function EntryFields({ entry, isNew }: Props) {
           {...PLAIN}
         />
       </div>
-      {LINES.map(({ field, label, hint }) => (
+      {LINES.map(({ field, label }) => (
         <div key={field} className={`hl-entry-${field}`}>
           <Field
             label={label}
-            hint={hint}
+            hint={field === "symbol" ? <SymbolHint tex={entry.fields.symbol.trim()} macros={macros} /> : undefined}
             fault={fault(field)}
             value={entry.fields[field]}
             onChange={({ target }) => entry.set(field, target.value)}
@@ -66,6 +69,16 @@ export function EntryFields({ entry, isNew }: Props) {
         </div>
       ))}
     </div>
+  );
+}
+
+/** How a symbol is set, as long as it can be. */
+function SymbolHint({ tex, macros }: { readonly tex: string } & Pick<Props, "macros">) {
+  if (tex === "" || mathFault(tex, macros) !== "") return "TeX";
+  return (
+    <>
+      TeX, set as <Runs runs={[{ run: "math", tex }]} macros={macros} />
+    </>
   );
 }
 

@@ -19,6 +19,7 @@ interface Props {
 export function ParameterEntry({ sheet, name }: Props) {
   const { desk } = sheet;
   const entry = useEntry(sheet, name);
+  const macros = useDeskView(desk, ({ model }) => model?.macros ?? NO_MACROS);
   const form = useRef<HTMLFormElement>(null);
   const [stillRead, setStillRead] = useState<StillRead | null>(null);
   const [refused, setRefused] = useState("");
@@ -49,7 +50,7 @@ export function ParameterEntry({ sheet, name }: Props) {
   };
   return (
     <form ref={form} className="hl-entry-form" onSubmit={settle} noValidate>
-      <EntryFields entry={entry} isNew={name === null} />
+      <EntryFields entry={entry} macros={macros} isNew={name === null} />
       {entry.problem?.field === null ? <Amiss>{entry.problem.problem}</Amiss> : null}
       {name === null ? null : <Hanging sheet={sheet} name={name} />}
       {stillRead === null || name === null ? null : <Readers sheet={sheet} name={name} stillRead={stillRead} />}
@@ -68,6 +69,8 @@ export function ParameterEntry({ sheet, name }: Props) {
     </form>
   );
 }
+
+const NO_MACROS: Readonly<Record<string, string>> = {};
 
 function Amiss({ children }: { readonly children: ReactNode }) {
   return (

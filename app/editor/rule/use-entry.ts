@@ -11,6 +11,7 @@ import {
   parameterFields,
 } from "../../cells/index.ts";
 import { toDouble } from "../../formulas/index.ts";
+import { mathFault } from "../../ui/math.ts";
 import type { SheetAtHand } from "../keys/types.ts";
 import { isPlainNumber, shownValue } from "../model/scale.ts";
 import { made, paperNow, plainWords } from "./edit-rule.ts";
@@ -50,6 +51,8 @@ export function useEntry(sheet: SheetAtHand, name: string | null): Entry | null 
   const edit = useMemo(
     () => (): ParameterEdit | ParameterProblem => {
       const { paper, bibliography } = paperNow(sheet);
+      const unset = mathFault(fields.symbol, paper.front.macros);
+      if (unset !== "") return { problem: unset, field: "symbol" };
       if (name === null) return addsParameter(paper, bibliography, newName, fields);
       return changesParameter(paper, bibliography, name, changesOf(base ?? NOTHING, fields));
     },
