@@ -1,6 +1,6 @@
 import { type Figure, FigurePlate, labelText, type TableData } from "../figures/index.ts";
 import type { CellNode, PrintedPart } from "../paper/index.ts";
-import { cellTitle, provenanceLine, type SetCell } from "../print/index.ts";
+import { cellTitle, provenanceParts, type SetCell } from "../print/index.ts";
 import { NumberText } from "../ui/index.ts";
 import { Formula, Inline, Words } from "./inline.tsx";
 import { anchor, type Setting } from "./setting.ts";
@@ -106,8 +106,24 @@ export function Caption({ node, part, set, first, setting }: CaptionProps) {
           <span className="g-dagger">† Out of date.</span> <Words words={set.note.words} setting={setting} />
         </p>
       ) : null}
-      {first && provenanceLine(set) !== "" ? <p className="g-provenance">{provenanceLine(set)}</p> : null}
+      {first ? <ProvenanceLine set={set} /> : null}
     </>
+  );
+}
+
+/** The moment stands in UTC; a page writes it in the reader's own time (`useLocalTimes`). */
+function ProvenanceLine({ set }: { readonly set: SetCell }) {
+  const { before, moment } = provenanceParts(set);
+  if (before === "") return null;
+  return (
+    <p className="g-provenance">
+      {before}
+      {moment === null ? null : (
+        <time dateTime={moment.iso} data-local="">
+          {moment.words}
+        </time>
+      )}
+    </p>
   );
 }
 

@@ -3,7 +3,7 @@ import "../figures/figure-reading.css";
 import "../galley/galley.css";
 import "./plate.css";
 import { type CurveReadings, type Figure, FigurePlate, FigureReading } from "../figures/index.ts";
-import { CommandLink, RunningHead, TailLine } from "../ui/index.ts";
+import { CommandLink, RunningHead, TailLine, useLocalTimes } from "../ui/index.ts";
 import { ourMarkup } from "../ui/markup.ts";
 import { PlateBeside } from "./beside.tsx";
 import type { PlateFace } from "./plate.ts";
@@ -23,6 +23,7 @@ const NARROW = 358;
 export function PlatePage({ paperId, paperTitle, face }: Props) {
   const { title, line, figure, markup } = face;
   const sheet = `/papers/${paperId}`;
+  useLocalTimes();
   return (
     <>
       <RunningHead

@@ -201,10 +201,23 @@ const MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "
  * The provenance line: "Slit contour, 310 nodes; D = 0.5; halfline 1; 4 ms · Inês, 1 Dec 2026, 14:31 UTC". In UTC, since
  * neither the server nor a printed page knows the reader's own time.
  */
-export function provenanceLine({ provenance: known }: SetCell): string {
-  if (!known || known.words === "") return "";
-  const who = [known.by, known.at === null ? "" : utcWords(known.at)].filter((part) => part).join(", ");
-  return who === "" ? known.words : `${known.words} · ${who}`;
+export function provenanceLine(set: SetCell): string {
+  const { before, moment } = provenanceParts(set);
+  return `${before}${moment?.words ?? ""}`;
+}
+
+/** The provenance line up to its moment, and the moment by itself: as ISO 8601, and in words of UTC. */
+export interface ProvenanceParts {
+  readonly before: string;
+  readonly moment: { readonly iso: string; readonly words: string } | null;
+}
+
+export function provenanceParts({ provenance: known }: SetCell): ProvenanceParts {
+  if (!known || known.words === "") return { before: "", moment: null };
+  const words = known.at === null ? "" : utcWords(known.at);
+  const by = known.by ?? "";
+  const before = `${known.words}${by === "" && words === "" ? "" : ` · ${by}`}${by !== "" && words !== "" ? ", " : ""}`;
+  return { before, moment: known.at === null || words === "" ? null : { iso: known.at, words } };
 }
 
 function utcWords(iso: string): string {

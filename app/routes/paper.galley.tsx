@@ -4,7 +4,7 @@ import { requirePaper } from "../access/index.server.ts";
 import { servicesContext } from "../context.ts";
 import { renderGalley } from "../galley/index.ts";
 import { doubtsOf, setPaper } from "../print/index.ts";
-import { CommandLink, RunningHead, TailLine } from "../ui/index.ts";
+import { CommandLink, RunningHead, TailLine, useLocalTimes } from "../ui/index.ts";
 import { ourMarkup } from "../ui/markup.ts";
 import type { Route } from "./+types/paper.galley";
 import { latexAsAsked, readPrinted } from "./parts/printed.server.ts";
@@ -29,6 +29,7 @@ export async function loader({ request, context, params }: Route.LoaderArgs) {
 export default function Galley({ loaderData }: Route.ComponentProps) {
   const { id, title, authors, lines, galley, doubts, problems } = loaderData;
   const sheet = `/papers/${id}`;
+  useLocalTimes();
   return (
     <>
       <title>{`Galley of ${title} · Halfline`}</title>

@@ -3,6 +3,7 @@ export { Button, Command, CommandLink } from "./command.tsx";
 export { Dialog } from "./dialog.tsx";
 export { Choice, Field } from "./field.tsx";
 export { RunningHead, TailLine } from "./frame.tsx";
+export { localMoment, useLocalTimes } from "./local-times.ts";
 export { Mark } from "./mark.tsx";
 export { NonceProvider, useNonce } from "./nonce.tsx";
 export { NumberText } from "./number-text.tsx";

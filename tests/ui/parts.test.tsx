@@ -1,7 +1,15 @@
 import { renderToStaticMarkup } from "react-dom/server";
 import { MemoryRouter } from "react-router";
 import { expect, test } from "vitest";
-import { BRANCHING_CAPTION, BranchingPicture, Choice, Field, momentInWords, RunningHead } from "../../app/ui/index.ts";
+import {
+  BRANCHING_CAPTION,
+  BranchingPicture,
+  Choice,
+  Field,
+  localMoment,
+  momentInWords,
+  RunningHead,
+} from "../../app/ui/index.ts";
 
 test("the picture of the first page counts the arrivals that it draws", () => {
   const svg = renderToStaticMarkup(<BranchingPicture />);
@@ -50,4 +58,12 @@ test("days are those of the reader's place", () => {
   const [moment, now] = [new Date("2026-03-01T23:30:00Z"), new Date("2026-03-02T10:00:00Z")];
   expect(momentInWords(moment, now, "Europe/Oslo")).toBe("at 00:30");
   expect(momentInWords(moment, now, "America/Bogota")).toBe("yesterday");
+});
+
+test("a moment is written in the time of the reader's place", () => {
+  const moment = "2026-12-01T23:31:00.000Z";
+  expect(localMoment(moment, "UTC")).toBe("1 Dec 2026, 23:31");
+  // Oslo is an hour ahead in winter: a new day there. (IANA time zone database.)
+  expect(localMoment(moment, "Europe/Oslo")).toBe("2 Dec 2026, 00:31");
+  expect(localMoment("never", "UTC")).toBe("never");
 });

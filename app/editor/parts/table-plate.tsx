@@ -1,4 +1,4 @@
-import type { TableColumn, TableData } from "../../figures/index.ts";
+import { labelText, type TableColumn, type TableData } from "../../figures/index.ts";
 import { NumberText } from "../../ui/index.ts";
 import { Runs } from "./runs.tsx";
 
@@ -43,7 +43,15 @@ function reachable(place: HTMLElement | null): void {
   if (place !== null) place.tabIndex = 0;
 }
 
+/** A head that is a formula is also said in words, since a head of MathML alone is silent to some readers. */
 function Head({ column, macros }: { readonly column: TableColumn } & Pick<TablePlateProps, "macros">) {
   if (!column.tex) return column.head;
-  return <Runs runs={[{ run: "math", tex: column.head }]} macros={macros} />;
+  return (
+    <>
+      <span className="hl-said">{labelText(column.head)}</span>
+      <span aria-hidden="true">
+        <Runs runs={[{ run: "math", tex: column.head }]} macros={macros} />
+      </span>
+    </>
+  );
 }
