@@ -40,10 +40,15 @@ export interface KindWords extends Word {
 
 /** What one paper has named. */
 export interface PaperNames {
-  readonly parameters: readonly Word[];
+  readonly parameters: readonly ParameterWord[];
   readonly cells: readonly CellWords[];
   readonly labels: readonly LabelWords[];
   readonly citations: readonly Word[];
+}
+
+export interface ParameterWord extends Word {
+  /** TeX */
+  readonly symbol: string;
 }
 
 export interface CellWords {

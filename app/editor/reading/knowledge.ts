@@ -46,7 +46,11 @@ export function namesOf(paper: Paper, plan: Plan, titles: ReadonlyMap<string, st
 
 function readNames(paper: Paper, plan: Plan, titles: ReadonlyMap<string, string>): PaperNames {
   return {
-    parameters: plan.parameters.map((parameter) => ({ name: parameter.name, meaning: parameterMeaning(parameter) })),
+    parameters: plan.parameters.map((parameter) => ({
+      name: parameter.name,
+      symbol: parameter.symbol,
+      meaning: parameterMeaning(parameter),
+    })),
     cells: plan.cells.flatMap((planned) => {
       const { name } = planned.cell;
       return name === null || planned.kind === "parameters" ? [] : [cellWords(name, planned, titles)];

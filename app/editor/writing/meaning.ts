@@ -1,5 +1,5 @@
 import type { Knowledge } from "../model/knowledge.ts";
-import { cellAround } from "./place.ts";
+import { cellAround, inMath } from "./place.ts";
 import { remarkOn } from "./suggest.ts";
 
 /** What is said of what stands under the caret. */
@@ -25,6 +25,7 @@ export function meaningAt(text: string, offset: number, knowledge: Knowledge): M
   return (
     pointerAt(line, lineFrom, offset, knowledge) ??
     numberAt(line, lineFrom, offset, knowledge) ??
+    symbolAt(text, line, lineFrom, offset, knowledge) ??
     workingAt(text, line, lineFrom, offset, knowledge)
   );
 }
@@ -52,6 +53,22 @@ function numberAt(line: string, at: number, offset: number, knowledge: Knowledge
   if (found === null) return null;
   const formula = found.match[1] ?? "";
   return nameAt(formula, found.from + found.match[0].length - formula.length, offset, knowledge);
+}
+
+/** A parameter by its symbol in mathematics: a plain letter may be a variable there, and is not taken for one. */
+function symbolAt(text: string, line: string, at: number, offset: number, { names }: Knowledge): Meaning | null {
+  const found = around(line, at, offset, /(?:\\[A-Za-z]+|[A-Za-z])(?:_(?:\{[^{}\n]*\}|[A-Za-z\d]))?/g);
+  if (found === null || !inMath(text.slice(Math.max(0, text.lastIndexOf("\n\n", offset - 1)), found.from))) return null;
+  const [tex] = found.match;
+  const parameter = names.parameters.find(({ symbol }) => /[\\_]/.test(symbol) && braced(symbol) === braced(tex));
+  if (parameter === undefined) return null;
+  const { name, meaning } = parameter;
+  return { from: found.from, to: found.from + tex.length, term: name, words: meaning, names: name };
+}
+
+/** `x_0` is `x_{0}`. */
+function braced(tex: string): string {
+  return tex.replace(/_([A-Za-z\d])/g, "_{$1}").trim();
 }
 
 function workingAt(text: string, line: string, at: number, offset: number, knowledge: Knowledge): Meaning | null {

@@ -64,6 +64,30 @@ describe("What a word means", () => {
     expect(given.map((text) => at(text)?.names)).toEqual([null, null, null, null]);
   });
 
+  test("a parameter by its symbol in mathematics; a letter may be a variable, and words are words", () => {
+    const text =
+      "```parameters\nmu: 1\nx_0: {value: 2, note: start}\nb: {value: 3, symbol: '\\beta_{\\max}'}\nN: 4\n```\n";
+    reader.hear(tellText(text));
+    const names = reader.sheet().names;
+    const term = (marked: string) => {
+      const offset = marked.indexOf("|");
+      return meaningAt(marked.replace("|", ""), offset, { words: knowledge.words, names })?.term ?? null;
+    };
+    expect(["At $\\m|u$.", "$$\ne^{-\\mu x|_0}", "$|x_{0}$", "$2\\beta_{\\m|ax}$"].map(term)).toEqual([
+      "mu",
+      "x_0",
+      "x_0",
+      "b",
+    ]);
+    expect(["At $N|$.", "At \\m|u.", "x|_0", "$\\mu_|1$", "$x$ x_|0"].map(term)).toEqual([
+      null,
+      null,
+      null,
+      null,
+      null,
+    ]);
+  });
+
   test("the target of a reference, and a citation's entry", () => {
     expect(at("See :ref[K|].")).toMatchObject({ term: "Figure 1", words: "The law of $K$." });
     expect(at("By :ref[kp|p]")?.term).toBe("Equation (1)");
