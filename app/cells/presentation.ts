@@ -31,6 +31,8 @@ export interface Presentation {
   readonly labels: ReadonlyMap<string, string>;
   /** TeX of a name: a parameter's own symbol, or as its letters say. */
   symbolOf(name: string): string;
+  /** Whether a name is that of a parameter, which varies what it enters; any other is a variable of the cell's own. */
+  isParameter(name: string): boolean;
   /** What the data of another cell look like, with that cell's own looks as they are now: for kinds that draw other cells. */
   viewOf(id: string, kind: string, data: unknown): DrawnView;
 }
@@ -133,7 +135,8 @@ export function presentationOf(
   });
   const symbolOf = (name: string) => symbols.get(name) ?? defaultSymbol(name);
   const words = new Map([...labels].flatMap(([name, node]) => (node.yaml === "scalar" ? [[name, node.text]] : [])));
-  return { name: cell.name, x: look("x"), y: look("y"), body: cell.body, labels: words, symbolOf, viewOf };
+  const isParameter = (name: string) => symbols.has(name);
+  return { name: cell.name, x: look("x"), y: look("y"), body: cell.body, labels: words, symbolOf, isParameter, viewOf };
 }
 
 /** A cell's caption, Markdown with math and values, and where it stands in the paper; null when it has none. */

@@ -1,10 +1,18 @@
 import type { Figure, PointGroup, Series, TableColumn, TableData, TableEntry } from "../figures/index.ts";
-import { pointGroups } from "../figures/index.ts";
+import { pointGroups, quoteOf } from "../figures/index.ts";
 import type { PrintOptions, Quantity, Value } from "../formulas/index.ts";
 import { approximate, decimalText, exact, printNumber, scaled } from "../formulas/index.ts";
 
-/** A value as a table prints it. Refused and missing values are gaps; why is said in the remarks. */
-export function tableEntry(value: Value, options: PrintOptions = {}): TableEntry {
+/**
+ * A value as a table prints it. Refused and missing values are gaps; why is said in the remarks.
+ * @param quote the formula by which a sentence quotes it, "" where it has none
+ */
+export function tableEntry(value: Value, options: PrintOptions = {}, quote = ""): TableEntry {
+  const entry = printedEntry(value, options);
+  return quote === "" || entry.text === "" ? entry : { ...entry, quote };
+}
+
+function printedEntry(value: Value, options: PrintOptions): TableEntry {
   if (value.type === "number") {
     const printed = printNumber(value.quantity, options);
     const full = decimalText(value.quantity);
@@ -65,7 +73,9 @@ function pointEntries(series: Series, i: number | null): TableEntry[] {
   const end = high?.[i];
   const value = y[i];
   const error = typeof end === "number" && typeof value === "number" ? Math.abs(end - value) : 0;
-  return [numberEntry(value, log10y?.[i], error)];
+  const entry = numberEntry(value, log10y?.[i], error);
+  const quote = quoteOf(series, i);
+  return [quote === "" || entry.text === "" ? entry : { ...entry, quote }];
 }
 
 /** A plotted number; one below the double's range comes as its log10, whose own rounding is its error. */

@@ -4,6 +4,7 @@ export { type Crossing, crossings, levelCrossings } from "./crossings.ts";
 export { figureToCsv, tableToCsv } from "./csv.ts";
 export { FigureReading } from "./figure-reading.tsx";
 export { isWords, type LabelRun, labelRuns, labelText } from "./label.ts";
+export { figureWithoutMacros } from "./label-macros.ts";
 export { type FigureLayout, layoutFigure, panelLetter } from "./layout.ts";
 export type { Theme } from "./palette.ts";
 export { figureToPgfplots, type PgfplotsFigure, type PgfplotsOptions } from "./pgfplots.ts";
@@ -11,6 +12,7 @@ export { FigurePlate, type FigurePlateProps } from "./plate.tsx";
 export type { PlateSize } from "./plot-layout.ts";
 export { type PointColumn, type PointGroup, pointGroups } from "./point-groups.ts";
 export { type PlacedCurve, type PlacedPoint, type PlacedPoints, placePoints } from "./point-places.ts";
+export { quoteOf } from "./quotes.ts";
 export { thinBandRemark } from "./thin-bands.ts";
 export type {
   Axis,

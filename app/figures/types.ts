@@ -64,6 +64,8 @@ export interface Series {
   readonly arrow?: boolean;
   /** Points of the series that bear a dot, or a label of their own. */
   readonly dots?: readonly Dot[];
+  /** The formula of a point's height, # for its place along the axis: "K(#)"; or one for each point, "" for none. */
+  readonly quote?: string | readonly string[];
 }
 
 /** A single point of a series, set apart: the end of a curve at a jump, a fixed point. */
@@ -134,4 +136,6 @@ export interface TableEntry {
   /** For CSV and JSON: mantissa·10^e as decimal text at full precision, or the text. */
   readonly full: string;
   readonly error: string;
+  /** The formula by which a sentence quotes it: "K(3)". */
+  readonly quote?: string;
 }

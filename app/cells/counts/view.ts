@@ -14,24 +14,29 @@ import type { CountsData } from "./model.ts";
 export function viewCounts(data: CountsData, presentation: Presentation): CellView {
   const plotted = plottedCounts(data.law.upTo);
   const remarks = plotted.length > data.law.upTo ? [] : [`Of n = 0 to ${data.law.upTo}, ${plotted.length} are drawn.`];
-  const name = presentation.name ?? "K";
+  const { name } = presentation;
   const figure: Figure = {
     alternative: alternative(data),
     x: labelledAxis("n", "linear", presentation.x),
     y: labelledAxis("P(K=n)", "log", presentation.y),
-    series: [stems(data, plotted, name)],
+    series: [stems(data, plotted, name, "K")],
     levels: [],
     remarks,
   };
   return {
     figure,
-    table: countsTable(data, tabulatedCounts(data.law.upTo), true),
-    points: countsTable(data, plotted, false),
+    table: countsTable(data, tabulatedCounts(data.law.upTo), name, true),
+    points: countsTable(data, plotted, name, false),
   };
 }
 
-/** A law as stems, each with its error. */
-export function stems(data: Pick<CountsData, "law">, plotted: readonly number[], name: string): Series {
+/** A law as stems, each with its error. `name` is that of the cell; `letter` what is counted. */
+export function stems(
+  data: Pick<CountsData, "law">,
+  plotted: readonly number[],
+  name: string | null,
+  letter: string,
+): Series {
   const kept = plotted.flatMap((n) => {
     const probability = probabilityAt(data.law, n);
     return probability === undefined ? [] : [{ n, probability }];
@@ -39,7 +44,7 @@ export function stems(data: Pick<CountsData, "law">, plotted: readonly number[],
   const bound = (sign: 1 | -1) =>
     kept.map(({ probability: { mantissa, exponent, error } }) => (mantissa + sign * error) * 2 ** exponent);
   return {
-    name: `${name}(n)`,
+    name: `${name ?? letter}(n)`,
     label: "",
     labelAt: "end",
     mark: "stems",
@@ -49,13 +54,15 @@ export function stems(data: Pick<CountsData, "law">, plotted: readonly number[],
     log10y: kept.map(({ probability }) => log10Probability(probability)),
     low: bound(-1),
     high: bound(1),
+    ...(name === null ? {} : { quote: `${name}(#)` }),
   };
 }
 
-/** Rows of a law; `letter` is what is counted. */
+/** Rows of a law; `name` is that of the cell, `letter` what is counted. */
 export function countsTable(
   data: Pick<CountsData, "law" | "beyond">,
   rows: readonly number[],
+  name: string | null,
   withAbove: boolean,
   letter = "K",
 ): TableData {
@@ -67,7 +74,13 @@ export function countsTable(
     const shown = [probabilityAt(data.law, n), ...(above === null ? [] : [above.get(n)])];
     return [
       tableEntry(exactValue(n)),
-      ...shown.map((p) => tableEntry(p === undefined ? { type: "none" } : scaledValue(p))),
+      ...shown.map((p, column) =>
+        tableEntry(
+          p === undefined ? { type: "none" } : scaledValue(p),
+          {},
+          name === null ? "" : `${name}${column === 0 ? "" : ".above"}(${n})`,
+        ),
+      ),
     ];
   });
   return { columns: above === null ? columns.slice(0, 2) : columns, rows: entries, remarks: [] };

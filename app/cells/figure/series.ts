@@ -1,7 +1,7 @@
 import type { Series } from "../../figures/index.ts";
 import type { DrawnView, Presentation } from "../presentation.ts";
 import { sweepSeries } from "../sweep/series.ts";
-import { labelOf } from "./labels.ts";
+import { bodyNode, labelOf } from "./labels.ts";
 import type { FigureData } from "./model.ts";
 import type { Sample } from "./sample.ts";
 import { bandEnd } from "./sample.ts";
@@ -32,7 +32,16 @@ function formulaSeries(data: FigureData, name: string, presentation: Presentatio
   const series = foundSeries(sampleWith(data, name), name, presentation);
   if (series === null) return [];
   const ends = belongsToCurve(data, name) ? bandEnds(data, name, presentation) : null;
-  return [{ ...series, name, label: labelOf(name, presentation), ...(ends ?? {}) }];
+  const quote = quoteAt(data, name, presentation);
+  const quoted = quote === null ? {} : { quote };
+  return [{ ...series, name, label: labelOf(name, presentation), ...(ends ?? {}), ...quoted }];
+}
+
+/** A curve's formula with # for its variable; null where it varies a parameter, and no formula gives one point. */
+function quoteAt({ over }: FigureData, name: string, presentation: Presentation): string | null {
+  const node = bodyNode(presentation, "curves", name);
+  if (over === null || node?.yaml !== "scalar" || presentation.isParameter(over)) return null;
+  return node.text.trim().replace(new RegExp(`(?<![\\w.])${over}(?!\\w)`, "g"), "#");
 }
 
 /** A cell's own curves: under the curve's name where it is one, under their own behind it where they are several. */

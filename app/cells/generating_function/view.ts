@@ -14,7 +14,10 @@ export function viewGeneratingFunction(data: GeneratingFunctionData, presentatio
     alternative: alternative(data),
     x: labelledAxis("s", "linear", presentation.x),
     y: labelledAxis("E_x[s^K]", "linear", presentation.y),
-    series: data.curves.map((curve, index) => seriesOf(curve, index, data.s, end)),
+    series: data.curves.map((curve, index) => ({
+      ...seriesOf(curve, index, data.s, end),
+      ...(presentation.name === null ? {} : { quote: `${presentation.name}(#, ${curve.start})` }),
+    })),
     levels: [],
     verticals: verticalsOf(data, end),
     remarks: gaps(data),

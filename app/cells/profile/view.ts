@@ -10,7 +10,10 @@ import type { ProfileCurve, ProfileData } from "./model.ts";
 /** Curves of w(x, s), labelled by their starting values; the one from s0 is the principal, the limit (1, or q where the drift is not away) a dotted level. */
 export function viewProfile(data: ProfileData, presentation: Presentation): CellView {
   const limit = profileConstants(data.trajectory).limit.value;
-  const series = data.curves.map((curve, index) => seriesOf(curve, index, data.x, limit));
+  const series = data.curves.map((curve, index) => ({
+    ...seriesOf(curve, index, data.x, limit),
+    ...(presentation.name === null ? {} : { quote: quoteAt(presentation.name, curve) }),
+  }));
   const drawsLimit = data.curves.some((curve) => curve.s === limit);
   const figure: Figure = {
     alternative: alternative(data),
@@ -46,6 +49,12 @@ function seriesOf(curve: ProfileCurve, index: number, x: readonly number[], limi
     low: bound(-1),
     high: bound(1),
   };
+}
+
+/** The curve as a formula: w(#) from s = 0, w(#, 1/2), from the turning value w(#, w.s0). */
+function quoteAt(name: string, { s, turning }: ProfileCurve): string {
+  if (s === 0) return `${name}(#)`;
+  return `${name}(#, ${turning ? `${name}.s0` : String(s)})`;
 }
 
 /** Halves, thirds and quarters as fractions: they are what one types. */

@@ -40,13 +40,15 @@ export function viewSimulate(data: SimulateData, presentation: Presentation): Ce
         y: plotted.map((n) => hitsOf(data, n) / data.plan.replicates),
         low: intervals.map(({ low }) => low),
         high: intervals.map(({ high }) => high),
+        ...(presentation.name === null ? {} : { quote: `${presentation.name}(#)` }),
       },
     ],
     levels: [],
     remarks,
   };
+  const { name } = presentation;
   const tabulated = tabulatedCounts(below.at(-1) ?? 0);
-  return { figure, table: shareTable(data, tabulated, remarks), points: shareTable(data, plotted, []) };
+  return { figure, table: shareTable(data, tabulated, name, remarks), points: shareTable(data, plotted, name, []) };
 }
 
 /** All that occurred, or those up to 40 and beyond them evenly spaced ones in log n. */
@@ -65,7 +67,13 @@ function thinned(occurred: readonly number[]): readonly number[] {
   return kept;
 }
 
-function shareTable(data: SimulateData, rows: readonly number[], remarks: readonly string[]): TableData {
+function shareTable(
+  data: SimulateData,
+  rows: readonly number[],
+  name: string | null,
+  remarks: readonly string[],
+): TableData {
+  const quote = (member: string, n: number) => (name === null ? "" : `${name}${member}(${n})`);
   return {
     columns: [
       { name: "n", head: "n", tex: true },
@@ -78,10 +86,10 @@ function shareTable(data: SimulateData, rows: readonly number[], remarks: readon
       const { low, high } = intervalOf(data, n);
       return [
         tableEntry(exactValue(n)),
-        tableEntry(exactValue(hitsOf(data, n))),
-        tableEntry(numberValue(shareOf(data, n))),
-        tableEntry(numberValue(exact(low)), { digits: END_DIGITS }),
-        tableEntry(numberValue(exact(high)), { digits: END_DIGITS }),
+        tableEntry(exactValue(hitsOf(data, n)), {}, quote(".hits", n)),
+        tableEntry(numberValue(shareOf(data, n)), {}, quote("", n)),
+        tableEntry(numberValue(exact(low)), { digits: END_DIGITS }, quote(".low", n)),
+        tableEntry(numberValue(exact(high)), { digits: END_DIGITS }, quote(".high", n)),
       ];
     }),
     remarks,

@@ -14,6 +14,8 @@ const VISIBLE_SHARE = 1e-3;
 interface Drawn {
   readonly x: number;
   readonly value: Value | null;
+  /** Of the point in its curve, as it was found; null for a gap. */
+  readonly index: number | null;
 }
 
 /** One curve of one quantity, in order of x, broken between its pieces, its ends at a jump dotted: a ring where not attained. */
@@ -43,15 +45,21 @@ export function sweepSeries(
   };
 }
 
+/** What a sentence quotes each point of a drawn curve by: points are counted over all curves, as they were found. */
+export function sweepQuotes(data: SweepData, curve: SweepCurve, name: string, cell: string): readonly string[] {
+  const before = data.curves.slice(0, data.curves.indexOf(curve)).reduce((sum, { x }) => sum + x.length, 0);
+  return inOrder(curve, name).map(({ index }) => (index === null ? "" : `${cell}.${name}(${before + index + 1})`));
+}
+
 function inOrder(curve: SweepCurve, name: string): Drawn[] {
   const order = [...curve.x.keys()].sort((a, b) => (curve.x[a] ?? 0) - (curve.x[b] ?? 0));
   return order.flatMap((index, place): Drawn[] => {
     const x = curve.x[index] ?? Number.NaN;
-    const here: Drawn = { x, value: curve.recorded[index]?.[name] ?? null };
+    const here: Drawn = { x, value: curve.recorded[index]?.[name] ?? null, index };
     const next = order[place + 1];
     if (next === undefined || curve.piece[next] === curve.piece[index]) return [here];
     const nextX = curve.x[next] ?? x;
-    return [here, { x: x + (nextX - x) / 2, value: null }];
+    return [here, { x: x + (nextX - x) / 2, value: null, index: null }];
   });
 }
 

@@ -8,7 +8,7 @@ import { alternativeOf } from "./alternative.ts";
 import { drawnInLogs } from "./heights.ts";
 import type { SweepData } from "./model.ts";
 import { sweepRemarks } from "./remarks.ts";
-import { sweepSeries } from "./series.ts";
+import { sweepQuotes, sweepSeries } from "./series.ts";
 
 /** More jumps than these are told in the caption only. */
 const MOST_VERTICALS = 4;
@@ -45,7 +45,10 @@ function figureOf(data: SweepData, name: string, presentation: Presentation, isP
     alternative: alternativeOf(data, name, presentation),
     x: labelledAxis(symbol, data.scale === "log" ? "log" : "linear", presentation.x),
     y: labelledAxis(presentation.symbolOf(name), inLogs ? "log" : "linear", y),
-    series: data.curves.map((curve, index) => sweepSeries(data, curve, name, index, presentation)),
+    series: data.curves.map((curve, index) => ({
+      ...sweepSeries(data, curve, name, index, presentation),
+      ...(presentation.name === null ? {} : { quote: sweepQuotes(data, curve, name, presentation.name) }),
+    })),
     levels: [],
     verticals: jumpVerticals(data, symbol),
     remarks: [],
@@ -62,13 +65,16 @@ function jumpVerticals(data: SweepData, symbol: string): Vertical[] {
 function pointsOf(data: SweepData, presentation: Presentation): TableData {
   const { over, vary, record } = data;
   const names = [...(vary === null ? [] : [vary]), over, ...record];
-  const rows = data.curves.flatMap(({ at, x, recorded }) =>
-    x.map((place, index) => [
-      ...(vary === null || at === null ? [] : [tableEntry(exactValue(at))]),
-      tableEntry(exactValue(place)),
-      ...record.map((name) => tableEntry(recorded[index]?.[name] ?? { type: "none" })),
-    ]),
-  );
+  const cell = presentation.name;
+  const all = data.curves.flatMap(({ at, x, recorded }) => x.map((place, i) => ({ at, place, recorded: recorded[i] })));
+  const rows = all.map(({ at, place, recorded }, i) => {
+    const quote = (name: string) => (cell === null ? "" : `${cell}.${name}(${i + 1})`);
+    return [
+      ...(vary === null || at === null ? [] : [tableEntry(exactValue(at), {}, quote(vary))]),
+      tableEntry(exactValue(place), {}, quote(over)),
+      ...record.map((name) => tableEntry(recorded?.[name] ?? { type: "none" }, {}, quote(name))),
+    ];
+  });
   return {
     columns: names.map((name) => ({ name, head: presentation.symbolOf(name), tex: true })),
     rows,

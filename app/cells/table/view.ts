@@ -19,10 +19,14 @@ export function viewTable(data: TableCellData, presentation: Presentation): Cell
     ...rowNames.map((name): TableColumn => ({ name, head: presentation.symbolOf(name), tex: true })),
     ...names.map((name) => headOf(name, looks.get(name)?.head ?? null)),
   ];
+  const cell = presentation.name;
+  const quote = (column: string, row: number) => (cell === null ? "" : `${cell}.${column}(${row + 1})`);
   const count = Math.max(0, ...Object.values(data.columns).map((values) => values.length));
   const rows = Array.from({ length: count }, (_, row) => [
-    ...rowNames.map((name) => tableEntry(data.rows[name]?.[row] ?? GAP)),
-    ...names.map((name) => tableEntry(data.columns[name]?.[row] ?? GAP, looks.get(name)?.options ?? {})),
+    ...rowNames.map((name) => tableEntry(data.rows[name]?.[row] ?? GAP, {}, quote(name, row))),
+    ...names.map((name) =>
+      tableEntry(data.columns[name]?.[row] ?? GAP, looks.get(name)?.options ?? {}, quote(name, row)),
+    ),
   ]);
   const table: TableData = { columns, rows, remarks: reasonsForGaps(data, names, rowNames, presentation) };
   return { figure: null, table, points: null };

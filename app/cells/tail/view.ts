@@ -14,7 +14,8 @@ import { powerFigure } from "./power-view.ts";
 /** Exact over asymptotic against n: what one term of the law is good for, and from which n on. */
 export function viewTail(data: TailData, presentation: Presentation): CellView {
   const compared = data.compared.filter(({ exact }) => exact !== null);
-  if (data.law.kind !== "square-root") return { ...tables(data), figure: powerFigure(data, compared, presentation) };
+  if (data.law.kind !== "square-root")
+    return { ...tables(data, presentation.name), figure: powerFigure(data, compared, presentation) };
   const ratios = compared.map((comparison) => numberOf(ratioOf(comparison, data.missing)));
   const remarks = data.missing === null ? [] : [data.missing];
   const figure: Figure = {
@@ -37,17 +38,18 @@ export function viewTail(data: TailData, presentation: Presentation): CellView {
     levels: [{ label: "1", y: 1 }],
     remarks,
   };
-  return { ...tables(data), figure };
+  return { ...tables(data, presentation.name), figure };
 }
 
-function tables(data: TailData): Omit<CellView, "figure"> {
+function tables(data: TailData, name: string | null): Omit<CellView, "figure"> {
   const tabulated = new Set(tabulatedCounts(data.upTo));
   return {
     table: tailTable(
       data,
       data.compared.filter(({ n }) => tabulated.has(n)),
+      name,
     ),
-    points: tailTable(data, data.compared),
+    points: tailTable(data, data.compared, name),
   };
 }
 
@@ -63,11 +65,12 @@ export function drawnTail({ compared }: TailData, presentation: Presentation): r
       x: compared.map(({ n }) => n),
       y: compared.map(({ law }) => doubleProbability(law)),
       log10y: compared.map(({ law }) => log10Probability(law)),
+      ...(presentation.name === null ? {} : { quote: `${presentation.name}(#)` }),
     },
   ];
 }
 
-function tailTable(data: TailData, rows: readonly Comparison[]): TableData {
+function tailTable(data: TailData, rows: readonly Comparison[], name: string | null): TableData {
   return {
     columns: [
       { name: "n", head: "n", tex: true },
@@ -78,7 +81,7 @@ function tailTable(data: TailData, rows: readonly Comparison[]): TableData {
     rows: rows.map((row) => [
       tableEntry(exactValue(row.n)),
       tableEntry(row.exact === null ? refusedValue("") : scaledValue(row.exact)),
-      tableEntry(scaledValue(row.law)),
+      tableEntry(scaledValue(row.law), {}, name === null ? "" : `${name}(${row.n})`),
       tableEntry(ratioOf(row, data.missing)),
     ]),
     remarks: data.missing === null ? [] : [data.missing],

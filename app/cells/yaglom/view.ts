@@ -21,15 +21,16 @@ export function viewYaglom(data: YaglomData, presentation: Presentation): CellVi
     alternative: alternative(data),
     x: labelledAxis("n", "linear", presentation.x),
     y: labelledAxis("P(Y=n)", "log", presentation.y),
-    series: [
-      stems(data, plotted, `${presentation.name ?? "Y"}(n)`),
-      ...("refused" in tail ? [] : [tailSeries(tail, plotted)]),
-    ],
+    series: [stems(data, plotted, presentation.name, "Y"), ...("refused" in tail ? [] : [tailSeries(tail, plotted)])],
     levels: [],
     remarks: [...thinned, ...missing],
   };
   const rows = tabulatedCounts(law.upTo).filter((n) => n >= 1);
-  return { figure, table: countsTable(data, rows, true, "Y"), points: pointsOf(data, plotted) };
+  return {
+    figure,
+    table: countsTable(data, rows, presentation.name, true, "Y"),
+    points: pointsOf(data, plotted, presentation.name),
+  };
 }
 
 function tailSeries(tail: TailLaw, plotted: readonly number[]): Series {
@@ -47,8 +48,8 @@ function tailSeries(tail: TailLaw, plotted: readonly number[]): Series {
 }
 
 /** What is drawn, in numbers: the law and the law of large n beside it. */
-function pointsOf(data: YaglomData, plotted: readonly number[]): TableData {
-  const { columns, rows, remarks } = countsTable(data, plotted, false, "Y");
+function pointsOf(data: YaglomData, plotted: readonly number[], name: string | null): TableData {
+  const { columns, rows, remarks } = countsTable(data, plotted, name, false, "Y");
   const { tail } = data;
   if ("refused" in tail) return { columns, rows, remarks };
   return {
