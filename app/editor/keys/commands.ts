@@ -1,3 +1,4 @@
+import { foldRefused, noSections, turnEverySection, turnSectionAtCaret } from "../folding/fold-acts.ts";
 import { TO_RECOMPUTE } from "../live/desk-view.ts";
 import { followBack, followStrand } from "../strands/follow.ts";
 import { cellAtHand, isWorkingOpen } from "./cell-at-hand.ts";
@@ -118,6 +119,22 @@ export const SHEET_COMMANDS: readonly SheetCommand[] = [
     letter: "c",
     writing: true,
     act: opens("case"),
+  },
+  {
+    id: "fold",
+    group: "Text",
+    words: "Fold or unfold the section",
+    letter: "h",
+    unavailable: ({ view }) => foldRefused(view),
+    act: ({ view }) => turnSectionAtCaret(view),
+  },
+  {
+    id: "fold-all",
+    group: "Text",
+    words: "Fold or unfold every section",
+    letter: "H",
+    unavailable: ({ view }) => noSections(view),
+    act: ({ view }) => turnEverySection(view),
   },
   {
     id: "quote",

@@ -9,6 +9,7 @@ import {
   useSyncExternalStore,
 } from "react";
 import { hasEmptyBody } from "../first/empty-body.ts";
+import { keepFolds } from "../folding/kept-folds.ts";
 import { SheetStrip } from "../keys/sheet-strip.tsx";
 import type { SheetAtHand } from "../keys/types.ts";
 import { useSheetAtHand } from "../keys/use-strips.ts";
@@ -34,6 +35,7 @@ export default function Sheet(props: SheetProps) {
   const strands = useStrandWatch(desk, sheet, personId);
   const ready = useReady(desk);
   const atHand = useSheetAtHand({ desk, strands, ready, writes: props.writes, paperId: props.paperId, personId });
+  useKeptFolds(atHand, personId);
   return (
     <div className="hl-sheet" ref={sheet}>
       {desk === null ? null : (
@@ -65,6 +67,11 @@ export default function Sheet(props: SheetProps) {
       )}
     </div>
   );
+}
+
+/** What a person has folded in this paper on this machine. */
+function useKeptFolds(sheet: SheetAtHand | null, personId: string | null): void {
+  useEffect(() => (sheet === null ? undefined : keepFolds(sheet.view, sheet.paperId, personId)), [sheet, personId]);
 }
 
 /** Opens the desk when the place is on the page, and ends it with the page. */

@@ -74,6 +74,14 @@ function readCells(content: HTMLElement, origin: DOMRect): Places["cells"] {
     const [top, bottom] = [box.top - origin.top, box.bottom - origin.top];
     cells.set(cell.dataset.slot ?? "", { top, bottom, caption: caption.top - origin.top + 11 });
   }
+  // What hangs in a folded section hangs at its line.
+  for (const fold of content.querySelectorAll<HTMLElement>(".hl-fold[data-slots]")) {
+    const box = fold.getBoundingClientRect();
+    const [top, bottom] = [box.top - origin.top, box.bottom - origin.top];
+    for (const slot of (fold.dataset.slots ?? "").split(" ")) {
+      if (slot !== "") cells.set(slot, { top, bottom, caption: (top + bottom) / 2 });
+    }
+  }
   return cells;
 }
 

@@ -4,6 +4,7 @@ import { drawSelection, EditorView, gutters, keymap, type ViewUpdate } from "@co
 import { yCollab, yUndoManagerKeymap } from "y-codemirror.next";
 import type { Awareness } from "y-protocols/awareness";
 import type * as Y from "yjs";
+import { folding } from "../folding/folding.ts";
 import { meaningGloss, pairs, pasting, suggestionList } from "../writing/index.ts";
 import { arrowsEnter } from "./entering.ts";
 import { foundField, foundNews } from "./found.ts";
@@ -45,6 +46,7 @@ export function createSheetEditor(options: EditorOptions): EditorView {
         foundNews,
         sheetField,
         workingPlaces,
+        folding,
         glossField,
         lineNumbers,
         gutters({ fixed: false }),

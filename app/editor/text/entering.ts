@@ -1,5 +1,6 @@
 import { EditorSelection } from "@codemirror/state";
 import type { EditorView, KeyBinding } from "@codemirror/view";
+import { isFolded } from "../folding/fold-field.ts";
 import { sheetField } from "./sheet-field.ts";
 
 /**
@@ -33,7 +34,7 @@ function enteredLine({ state }: EditorView, head: number, next: number, down: bo
   let found: number | null = null;
   places.between(from, to, (pieceFrom, pieceTo, { piece }) => {
     const isBlock = piece.piece === "cell" || (piece.piece === "set" && piece.block);
-    if (!isBlock || opened.has(piece) || pieceFrom < from || pieceTo > to) return;
+    if (!isBlock || opened.has(piece) || pieceFrom < from || pieceTo > to || isFolded(state, pieceFrom)) return;
     if (found === null || !down) found = state.doc.lineAt(down ? pieceFrom : pieceTo).from;
   });
   return found;
