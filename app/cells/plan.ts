@@ -48,6 +48,7 @@ export function planPaper(paper: Paper, options: { readonly overrides?: Readonly
     cells,
     byId: new Map(cells.map((cell) => [cell.id, cell])),
     problems: withoutRepeats(problems, paper.problems),
+    macros: paper.front.macros,
   };
 }
 

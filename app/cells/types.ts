@@ -13,6 +13,8 @@ export interface Plan {
   readonly cells: readonly PlannedCell[];
   readonly byId: ReadonlyMap<string, PlannedCell>;
   readonly problems: readonly Problem[];
+  /** TeX macros of the front matter, for the labels of figures. */
+  readonly macros: Readonly<Record<string, string>>;
 }
 
 export interface PlannedParameter {

@@ -1,4 +1,4 @@
-import { thinBandRemark } from "../figures/index.ts";
+import { figureWithoutMacros, thinBandRemark } from "../figures/index.ts";
 import type { Cell } from "../paper/index.ts";
 import { paperScope } from "./numbers.ts";
 import type { DrawnView, Presentation } from "./presentation.ts";
@@ -20,7 +20,13 @@ export function viewCell(
 ): CellView {
   const kind = KINDS.get(result.kind);
   if (kind === undefined || result.kind !== planned.kind) return NOTHING;
-  return withThinBandsSaid(kind.view(result.data, looksOf(planned.cell, plan)));
+  return withThinBandsSaid(labelled(kind.view(result.data, looksOf(planned.cell, plan)), plan));
+}
+
+/** The paper's own macros are unfolded in labels, which are read by a small part of TeX that knows none. */
+function labelled(view: CellView, { macros }: Plan): CellView {
+  const figure = view.figure && figureWithoutMacros(view.figure, macros);
+  return figure === view.figure ? view : { ...view, figure };
 }
 
 /** A band that is too thin to be drawn is said in the caption. */

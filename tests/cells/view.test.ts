@@ -142,3 +142,17 @@ test("views read nothing but the result: axes may change while the result is an 
   if (old === undefined) throw new Error("K was computed.");
   expect(viewCell(plannedCell(plan, "K"), old, plan, new Map()).figure?.y.scale).toBe("linear");
 });
+
+test("the paper's macros are unfolded in a figure's labels, its panels' and its inset's", () => {
+  const front = "---\nmacros: {\\E: '\\mathbb{E}', \\W: w_{#1}}\n---\n\n";
+  const text = `${cell("profile w", "of: larvae", "s: [0]", "labels: {y: \\W{s}}")}${cell("figure F", "panels: [w]", "labels: {w: \\E K}")}`;
+  const { plan, results } = computed(front + LARVAE + text);
+  const figureOf = (id: string) => {
+    const result = results.get(id);
+    if (result === undefined) throw new Error(JSON.stringify(plan.problems));
+    return viewCell(plannedCell(plan, id), result, plan, results).figure;
+  };
+  expect(figureOf("w")?.y.label).toBe("w_{s}");
+  const panel = figureOf("F")?.panels?.[0];
+  expect([panel?.title, panel?.figure.y.label]).toEqual(["\\mathbb{E} K", "w_{s}"]);
+});

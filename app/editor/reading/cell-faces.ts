@@ -158,10 +158,10 @@ function valuesIn(plan: Plan): (name: string, words: string) => string {
   return (name, words) => (isPlainNumber(words) ? shownValue(Number(words), words, steps.get(name) ?? null) : words);
 }
 
-/** A view depends on the result, on how the working wants it drawn, and on the parameters' symbols. */
+/** A view depends on the result, on how the working wants it drawn, on the parameters' symbols and the paper's macros. */
 function viewSign(result: CellResult, planned: PlannedCell, plan: Plan): string {
   const symbols = plan.parameters.map(({ name, symbol, source }) => `${name} ${symbol} ${source}`).join(";");
-  return `${result.key}\n${JSON.stringify(planned.cell.body, withoutPlaces)}\n${symbols}`;
+  return `${result.key}\n${JSON.stringify(planned.cell.body, withoutPlaces)}\n${symbols}\n${JSON.stringify(plan.macros)}`;
 }
 
 /** Where an entry stands does not change how it is drawn. */
