@@ -58,7 +58,7 @@ function runOf(scene: Scene, cell: SceneCell, ties: TieLines, lighting: Lighting
   if (!cell.quoted) return null;
   const { top, bottom, frame } = scene;
   const lines = ties.cords.get(cell.slot) ?? [];
-  const ringAt = cell.box === null ? null : entriesOf(cell.box, cell.strands.length, true).ring;
+  const ringAt = cell.box === null ? null : entriesOf(cell.box, (cell.enters ?? cell.strands).length, true).ring;
   const all = [...lines.map(({ y }) => y), ...(ringAt === null ? [] : [ringAt])];
   const inView = (y: number) => y >= top && y <= bottom;
   const ys = all.filter(inView);

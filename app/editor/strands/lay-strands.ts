@@ -51,11 +51,12 @@ function hangings(scene: Scene, ties: TieLines): Hanging[][] {
   const made: Hanging[][] = scene.strands.map(() => []);
   for (const cell of scene.cells) {
     if (cell.box === null) continue;
-    const { ys, tight, small } = entriesOf(cell.box, cell.strands.length, cell.quoted);
+    const enters = cell.enters ?? cell.strands;
+    const { ys, tight, small } = entriesOf(cell.box, enters.length, cell.quoted);
     const end = frame.size === "narrow" ? frame.edge : frame.edge - 8;
     const middle = ((ys[0] ?? 0) + (ys.at(-1) ?? 0)) / 2;
-    const row = Math.min(end, ROW_END - LETTER_WIDTH * cell.strands.length - TO_LETTER);
-    cell.strands.forEach((place, k) => {
+    const row = Math.min(end, ROW_END - LETTER_WIDTH * enters.length - TO_LETTER);
+    enters.forEach((place, k) => {
       const x = tight && frame.letters ? row : end;
       const y = ys[k] ?? middle;
       made[place]?.push({

@@ -78,9 +78,8 @@ function readCells(content: HTMLElement, origin: DOMRect): Places["cells"] {
   for (const fold of content.querySelectorAll<HTMLElement>(".hl-fold[data-slots]")) {
     const box = fold.getBoundingClientRect();
     const [top, bottom] = [box.top - origin.top, box.bottom - origin.top];
-    for (const slot of (fold.dataset.slots ?? "").split(" ")) {
-      if (slot !== "") cells.set(slot, { top, bottom, caption: (top + bottom) / 2 });
-    }
+    const shared = { top, bottom, caption: (top + bottom) / 2 };
+    for (const slot of (fold.dataset.slots ?? "").split(" ")) if (slot !== "") cells.set(slot, shared);
   }
   return cells;
 }
@@ -169,6 +168,7 @@ export interface Hung {
 /** The cells of a scene: those on the page, and those that something on the page quotes. */
 export function sceneCells(places: Places, { model, reach, drawn }: Hung): SceneCell[] {
   const quoted = new Set(places.quotes.flatMap(({ cells }) => cells));
+  const strandsAt = strandsByBox(places, model);
   return model.cells.flatMap((face) => {
     const box = places.cells.get(face.slot) ?? null;
     if (box === null && !quoted.has(face.slot)) return [];
@@ -180,6 +180,7 @@ export function sceneCells(places: Places, { model, reach, drawn }: Hung): Scene
         slot: face.slot,
         state: face.state,
         strands: face.strands,
+        ...strandsAt(face.slot, box),
         changed: face.changed,
         done: doneOf(face),
         box,
@@ -189,6 +190,21 @@ export function sceneCells(places: Places, { model, reach, drawn }: Hung): Scene
       },
     ];
   });
+}
+
+/** Cells of one folded section have one box: what enters any of them enters at the first. */
+function strandsByBox(places: Places, model: SheetModel) {
+  const sharing = new Map<unknown, CellFace[]>();
+  for (const face of model.cells) {
+    const box = places.cells.get(face.slot);
+    if (box !== undefined) sharing.set(box, [...(sharing.get(box) ?? []), face]);
+  }
+  return (slot: string, box: SceneCell["box"]): Pick<SceneCell, "enters"> => {
+    const faces = sharing.get(box) ?? [];
+    if (faces.length < 2) return {};
+    const all = [...new Set(faces.flatMap(({ strands }) => strands))].sort((a, b) => a - b);
+    return { enters: faces[0]?.slot === slot ? all : [] };
+  };
 }
 
 function doneOf({ state, progress }: CellFace): number | null {

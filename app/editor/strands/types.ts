@@ -41,6 +41,8 @@ export interface SceneCell {
   readonly slot: string;
   readonly state: CellStateName;
   readonly strands: readonly number[];
+  /** What is drawn entering it, where that is not `strands`: all that enters a folded section does so at its first cell. */
+  readonly enters?: readonly number[];
   readonly changed: readonly number[];
   /** Share of the work that is done, from 0 to 1; null when there is none under way. */
   readonly done: number | null;
