@@ -13,6 +13,7 @@ export type { PlateSize } from "./plot-layout.ts";
 export { type PointColumn, type PointGroup, pointGroups } from "./point-groups.ts";
 export { type PlacedCurve, type PlacedPoint, type PlacedPoints, placePoints } from "./point-places.ts";
 export { quoteOf } from "./quotes.ts";
+export { type Curve, nearestPoint, type PointAsked, type ReadPoint } from "./readable-curves.ts";
 export { thinBandRemark } from "./thin-bands.ts";
 export type {
   Axis,

@@ -31,7 +31,8 @@ export function EmptyPaper({ sheet, author, loadStarts }: Props) {
     const laid = starts?.lay(id, now, author) ?? null;
     if (laid === null) return desk.tell("There is something on the sheet by now; a start would take it away.");
     desk.edit({ changes: { from: 0, to: now.length, insert: laid.text }, selection: { anchor: 0 } }, laid.bibliography);
-    desk.tell(`Begun from ${words}; Undo takes it back. Recompute all computes it.`);
+    desk.tell(`Begun from ${words}, and being computed; Undo takes it back.`);
+    whenRead(sheet, () => desk.recomputeAll());
   };
   return (
     <div className="hl-empty-paper">
@@ -53,6 +54,17 @@ export function EmptyPaper({ sheet, author, loadStarts }: Props) {
       )}
     </div>
   );
+}
+
+/** Does something once what stands on the sheet now is read. */
+function whenRead({ desk }: SheetAtHand, act: () => void): void {
+  const before = desk.store.get().model;
+  const stop = desk.store.watch(() => {
+    const { model } = desk.store.get();
+    if (model === null || model.cells.length <= (before?.cells.length ?? 0)) return;
+    stop();
+    act();
+  });
 }
 
 /** Puts the caret on a line of its own at the end of the text. */

@@ -4,7 +4,6 @@ import { followBack, followStrand } from "../strands/follow.ts";
 import { cellAtHand, isWorkingOpen } from "./cell-at-hand.ts";
 import { goToErratum } from "./errata-walk.ts";
 import { FIGURE_COMMANDS } from "./figure-commands.ts";
-import { quoteRefused, quoteValue } from "./quote.ts";
 import { RULE_COMMANDS } from "./rule-commands.ts";
 import { turnTheme } from "./theme.ts";
 import type { CommandGroup, SheetAtHand, SheetCommand } from "./types.ts";
@@ -142,8 +141,7 @@ export const SHEET_COMMANDS: readonly SheetCommand[] = [
     words: "Quote a value",
     letter: "q",
     writing: true,
-    unavailable: ({ view }) => quoteRefused(view),
-    act: ({ desk, view }) => quoteValue(desk, view),
+    act: opens("quote"),
   },
   {
     id: "rename",

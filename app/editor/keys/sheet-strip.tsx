@@ -18,6 +18,7 @@ const OutlineStrip = lazy(async () => ({ default: (await reading()).OutlineStrip
 const RenameStrip = lazy(async () => ({ default: (await reading()).RenameStrip }));
 const CaseStrip = lazy(async () => ({ default: (await import("../case/case-strip.tsx")).CaseStrip }));
 const AxesStrip = lazy(async () => ({ default: (await import("../plates/axes-strip.tsx")).AxesStrip }));
+const QuoteStrip = lazy(async () => ({ default: (await import("../quoting/quote-strip.tsx")).QuoteStrip }));
 const FETCHING = <p className="hl-strip-words">Reading the paper</p>;
 
 /** What opens above the tail line; a parameter's entry opens beneath the rule. */
@@ -31,6 +32,7 @@ const TITLES: Readonly<Record<TailStrip, string>> = {
   errata: "Errata",
   axes: "Axes",
   case: "The case",
+  quote: "Quote a value",
 };
 
 /** What stands above the tail line: the strip that is open, and word of the composing key while it waits. */
@@ -71,6 +73,12 @@ function Body({ open, sheet, personId }: Props & { readonly open: TailStrip }) {
       return (
         <Suspense fallback={FETCHING}>
           <RenameStrip sheet={sheet} />
+        </Suspense>
+      );
+    case "quote":
+      return (
+        <Suspense fallback={FETCHING}>
+          <QuoteStrip sheet={sheet} />
         </Suspense>
       );
     case "case":

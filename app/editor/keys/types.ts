@@ -5,7 +5,7 @@ import type { StrandWatch } from "../strands/watch.ts";
 import type { Binding } from "./binding.ts";
 
 /** What may stand between rules above the tail line, or beneath the parameter rule; one at a time. */
-export type StripName = "commands" | "find" | "rename" | "outline" | "errata" | "axes" | "case" | "parameter";
+export type StripName = "commands" | "find" | "rename" | "outline" | "errata" | "axes" | "case" | "quote" | "parameter";
 
 /** What the strip shows and what the composing key waits for. */
 export interface Strips {

@@ -54,6 +54,11 @@ test("a start is laid into it as one edit, and says how to go on", async () => {
   await page.press("a sweep");
   expect(at.view.state.doc.toString()).toBe(startingPoint("sweep").text(AUTHOR));
   expect(at.asked.tell).toHaveBeenCalledWith(expect.stringContaining("Begun from a sweep"));
+  expect(at.asked.recomputeAll).not.toHaveBeenCalled();
+  await act(async () => at.apply(at.readAgain()));
+  expect(at.asked.recomputeAll).toHaveBeenCalledTimes(1);
+  await act(async () => at.apply(at.readAgain()));
+  expect(at.asked.recomputeAll).toHaveBeenCalledTimes(1);
 });
 
 test("what was written meanwhile is not taken away", async () => {

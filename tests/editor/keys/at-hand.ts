@@ -36,6 +36,7 @@ export function sheetAtHand(text: string, { writes = true, computing = true } = 
     tell: vi.fn<(words: string) => void>(),
     say: vi.fn<(words: string) => void>(),
     goTo: vi.fn<(position: number) => void>(),
+    show: vi.fn<(position: number) => void>(),
     showPlate: vi.fn<(position: number) => void>(),
     leaveFor: vi.fn<(address: string) => void>(),
   };
@@ -69,7 +70,12 @@ export function sheetAtHand(text: string, { writes = true, computing = true } = 
     store.set({ model });
   };
   apply(read(reader, text, computing));
-  return { sheet, view, asked, store, apply, end: () => view.destroy() };
+  /** What the worker says of the text as it is by now. */
+  const readAgain = () => {
+    reader.hear(tellText(view.state.doc.toString(), 2));
+    return reader.sheet();
+  };
+  return { sheet, view, asked, store, apply, readAgain, end: () => view.destroy() };
 }
 
 function read(reader: SheetReader, text: string, computing: boolean): SheetModel {

@@ -4,6 +4,7 @@ import { bindingOf, bindingWords, FIRST_BINDING, keepBinding, readBinding } from
 import { commandOf, commandsFor, SHEET_COMMANDS } from "../../../app/editor/keys/commands.ts";
 import { pressComposing, pressEscape } from "../../../app/editor/keys/composing.ts";
 import { erratumFrom } from "../../../app/editor/keys/errata-walk.ts";
+import { quoteRefused, quoteValue } from "../../../app/editor/keys/quote.ts";
 import type { Erratum } from "../../../app/editor/model/types.ts";
 import { likeABrowser } from "../dom.ts";
 import { SAMPLE } from "../sample.ts";
@@ -107,18 +108,20 @@ describe("the composing key", () => {
     expect(at.asked.showWorking).toHaveBeenCalledExactlyOnceWith("K");
   });
 
-  test("a value is quoted in prose and within a formula in the way of each, and not in a working", () => {
+  test("a value is quoted by pointing; its formula may be written, in prose and in mathematics in the way of each", () => {
     caretIn("The mean");
     compose("q");
+    expect(at.sheet.strips.get().open).toBe("quote");
+    expect(at.view.state.doc.toString()).toBe(SAMPLE);
+    quoteValue(at.sheet.desk, at.view);
     expect(at.view.state.doc.toString()).toContain("Th:value[]e mean");
     expect(at.view.state.sliceDoc(0, at.view.state.selection.main.head).endsWith("Th:value[")).toBe(true);
     at.view.dispatch({ selection: { anchor: at.view.state.doc.toString().indexOf("\\E[K]") + 2 } });
-    compose("q");
+    quoteValue(at.sheet.desk, at.view);
     expect(at.view.state.doc.toString()).toContain("\\E\\value{}[K]");
-    const before = at.view.state.doc.toString();
-    at.view.dispatch({ selection: { anchor: before.indexOf("up_to: 6") } });
-    compose("q");
-    expect(at.view.state.doc.toString()).toBe(before);
+    expect(quoteRefused(at.view)).toBe("");
+    at.view.dispatch({ selection: { anchor: at.view.state.doc.toString().indexOf("up_to: 6") } });
+    expect(quoteRefused(at.view)).not.toBe("");
   });
 
   test("Esc puts the strip away; with none open it brings Cancel under the keys", () => {
