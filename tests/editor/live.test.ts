@@ -1,5 +1,5 @@
 import { afterEach, beforeEach, describe, expect, test, vi } from "vitest";
-import type { CellResult } from "../../app/cells/index.ts";
+import type { CellResult, ShownCell } from "../../app/cells/index.ts";
 import { Announcer } from "../../app/editor/live/announcer.ts";
 import { requestsOf } from "../../app/editor/live/requests.ts";
 import { ResultFetcher } from "../../app/editor/live/result-fetcher.ts";
@@ -150,6 +150,38 @@ describe("results", () => {
     await vi.advanceTimersByTimeAsync(100);
     expect(got).toEqual(["a"]);
     fetcher.end();
+  });
+});
+
+describe("what a paper shows at first", () => {
+  test("is handed over together while it is waited for, and passed on when it comes late", async () => {
+    const got: string[] = [];
+    let answer: (found: readonly CellResult[]) => void = () => {};
+    const results = vi.fn(() => new Promise<readonly CellResult[]>((resolve) => (answer = resolve)));
+    const fetcher = new ResultFetcher({ results }, (found) => got.push(...found.map(({ key }) => key)));
+    const result = (key: string) => ({ key }) as CellResult;
+    const shown = (...keys: string[]) => Object.fromEntries(keys.map((key) => [key, { key } as ShownCell]));
+    const inTime = fetcher.first(shown("a", "b"));
+    await vi.advanceTimersByTimeAsync(100);
+    answer([result("a"), result("b")]);
+    expect((await inTime).map(({ key }) => key)).toEqual(["a", "b"]);
+    expect(got).toEqual([]);
+    const late = fetcher.first(shown("c"));
+    await vi.advanceTimersByTimeAsync(2000);
+    expect(await late).toEqual([]);
+    answer([result("c")]);
+    await vi.advanceTimersByTimeAsync(0);
+    expect(got).toEqual(["c"]);
+    fetcher.end();
+  });
+
+  test("is nothing where nothing is shown, and nobody is asked", async () => {
+    const results = vi.fn(async () => []);
+    const fetcher = new ResultFetcher({ results }, () => {});
+    const first = fetcher.first({});
+    await vi.advanceTimersByTimeAsync(0);
+    expect(await first).toEqual([]);
+    expect(results).not.toHaveBeenCalled();
   });
 });
 

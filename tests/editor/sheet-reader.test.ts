@@ -107,6 +107,19 @@ describe("states", () => {
     expect(reader.sheet().views).toEqual({});
   });
 
+  test("of a view crosses to the page what is printed, the points of a figure only when they are", () => {
+    const told = (show: string) => {
+      const text = SAMPLE.replace("up_to: 6", `up_to: 6\nshow: ${show}`);
+      reader = new SheetReader();
+      reader.hear(tellText(text));
+      showAll(text);
+      return reader.sheet().views.K?.view;
+    };
+    expect(told("figure")).toMatchObject({ figure: { x: {} }, table: { rows: [] }, points: null });
+    expect(told("[figure, table]")?.table?.rows).toHaveLength(7);
+    expect(told("[figure, points]")?.points?.rows.length).toBeGreaterThan(0);
+  });
+
   test("a parameter that changes makes out of date what hangs from it, and the rule remembers", () => {
     reader.hear(tellText(SAMPLE));
     showAll(SAMPLE);

@@ -1,11 +1,13 @@
 import type { TransactionSpec } from "@codemirror/state";
 import type { EditorView } from "@codemirror/view";
+import type { CellResult } from "../../cells/index.ts";
 import type { ValueNow } from "../model/messages.ts";
 import { yamlScalar } from "../model/scale.ts";
 import type { SheetModel } from "../model/types.ts";
 import { createSheetEditor, createSourceEditor } from "../text/editor.ts";
-import { type CellCommands, hostAtRest, type Offer, type SheetHost } from "../text/host.ts";
-import { focusPlate, goToLine, goToPlace, lineInAddress, showPlace, turnWorking } from "../text/moving.ts";
+import { type CellCommands, hostAtRest, type Offer, type SheetHost, takeSheet } from "../text/host.ts";
+import { fetchMathFonts } from "../text/math-fonts.ts";
+import { focusPlate, goToAddress, goToLine, goToPlace, showPlace, turnWorking } from "../text/moving.ts";
 import { findPlace } from "../text/places.ts";
 import { sheetField } from "../text/sheet-field.ts";
 import { Announcer } from "./announcer.ts";
@@ -34,6 +36,7 @@ export class Desk {
   private readonly announcer = new Announcer((heard) => this.store.set({ heard }));
   private readonly requests;
   private readonly fetcher: ResultFetcher;
+  private readonly first: Promise<readonly CellResult[]>;
   /** The text on the sheet, once it is here. */
   view: EditorView | null = null;
   private reading: Reading | null = null;
@@ -61,6 +64,7 @@ export class Desk {
       ...hostAtRest(),
     };
     this.fetcher = new ResultFetcher(this.requests, (results) => this.reading?.tellResults(results));
+    this.first = this.fetcher.first(this.shown.cells, fetchMathFonts());
     if (options.person !== null) void forgetPrivateCopies(options.person.id);
     this.session = openSession({
       ...options,
@@ -86,6 +90,7 @@ export class Desk {
     this.fetcher.end();
     this.reading?.end();
     this.view?.destroy();
+    this.view = null;
     this.session.end();
   }
 
@@ -210,47 +215,42 @@ export class Desk {
       nonce: this.nonce,
       onUpdate: (update) => this.reading?.onUpdate(update),
     });
+    this.store.set({ ready: true });
+    void this.first.then((results) => this.view !== null && this.read(this.view, results));
+  }
+
+  private read(view: EditorView, results: readonly CellResult[]): void {
     this.reading = new Reading(
-      this.view,
+      view,
       this.options.takeReader(),
       () => this.bibliographyNow(),
       (model) => this.onModel(model),
       (borders) => this.store.set({ borders }),
     );
     this.reading.tellShown(this.shown);
-    this.store.set({ ready: true });
+    if (results.length > 0) this.reading.tellResults(results);
   }
 
   private onConnection(connection: Connection): void {
     const before = this.store.get().connection.state;
     this.store.set({ connection });
     if (connection.state === before) return;
-    if (connection.state === "live") this.fetcher.tryAgain();
+    if (connection.state === "live" && before === "away") this.fetcher.tryAgain();
     if (connection.state === "away" && before === "live")
       this.announcer.say("No connection. Your words are kept on this machine.");
   }
 
   private onModel(model: SheetModel): void {
-    this.host.macros = model.macros;
+    takeSheet(this.host, model);
     this.host.columnWidth = this.view?.contentDOM.clientWidth || this.host.columnWidth;
-    for (const [slot, view] of Object.entries(model.views)) {
-      if (view === null) this.host.views.delete(slot);
-      else this.host.views.set(slot, view);
-    }
-    if (this.store.get().model === null) this.goToAddress();
+    if (this.store.get().model === null && this.view !== null) goToAddress(this.view);
     this.store.set({ model });
-    this.fetcher.want(model.wanted);
+    void this.fetcher.want(model.wanted);
     if (!model.preview) this.announcer.hearCells(model.cells);
     if (this.wantsKept && !model.preview) {
       this.wantsKept = false;
       void this.showKept(model);
     }
-  }
-
-  /** A line named in the page's address, as `#line-37`, is where one wants to be. */
-  private goToAddress(): void {
-    const line = lineInAddress(window.location.hash);
-    if (line !== null) requestAnimationFrame(() => this.host.commands.goToLine(line));
   }
 
   /** Results kept under the new keys appear without being asked for; all else waits. */

@@ -1,5 +1,8 @@
 import type { Told } from "../model/messages.ts";
 
+/** Begun with the first sheet's scripts, while the page is still being taken hold of: reading it in takes its time. */
+let begun: Worker | null = typeof document !== "undefined" && typeof Worker !== "undefined" ? newWorker() : null;
+
 /**
  * The page's worker, begun before the live sheet is here: it reads the text that the server sent with the page while
  * the sheet's own scripts are still on their way, so that the first question finds the text read.
@@ -27,5 +30,11 @@ export class ReaderAhead {
 }
 
 function openWorker(): Worker {
+  const worker = begun ?? newWorker();
+  begun = null;
+  return worker;
+}
+
+function newWorker(): Worker {
   return new Worker(new URL("../reading/paper.worker.ts", import.meta.url), { type: "module" });
 }

@@ -22,15 +22,19 @@ export function requestsOf(paperId: string): Requests {
     cancel: (cells) => post(`${place}/cancel`, { cells }),
     letStand: (cell, text) => post(`${place}/stand`, { cell, text }),
     async results(keys) {
-      const found: CellResult[] = [];
-      for (let from = 0; from < keys.length; from += KEYS_AT_ONCE) {
-        const asked = keys.slice(from, from + KEYS_AT_ONCE).join(",");
-        const response = await fetch(`${place}/results?keys=${asked}`, { headers: { accept: "application/json" } });
-        if (!response.ok) throw new Error(wordsOf(response.status));
-        const results: Readonly<Record<string, CellResult>> = await response.json();
-        found.push(...Object.values(results));
-      }
-      return found;
+      const parts = Array.from({ length: Math.ceil(keys.length / KEYS_AT_ONCE) }, (_, at) =>
+        keys.slice(at * KEYS_AT_ONCE, (at + 1) * KEYS_AT_ONCE),
+      );
+      const found = await Promise.all(
+        parts.map(async (asked) => {
+          const address = `${place}/results?keys=${asked.join(",")}`;
+          const response = await fetch(address, { headers: { accept: "application/json" } });
+          if (!response.ok) throw new Error(wordsOf(response.status));
+          const results: Readonly<Record<string, CellResult>> = await response.json();
+          return Object.values(results);
+        }),
+      );
+      return found.flat();
     },
   };
 }

@@ -19,12 +19,25 @@ export class ViewStore {
       const planned = plan.byId.get(face.id);
       const result = results.get(face.id);
       const drawn = planned !== undefined && result !== undefined && face.parts.length > 0;
-      views[face.slot] = drawn ? viewOf(face.viewSign, () => viewCell(planned, result, plan, results)) : null;
+      const make = () => printedOf(viewCell(planned, result, plan, results), face.parts);
+      views[face.slot] = drawn ? viewOf(face.viewSign, make) : null;
     }
     for (const slot of this.sent.keys()) if (!now.has(slot)) views[slot] = null;
     this.sent = now;
     return views;
   }
+}
+
+/** Rows that the sheet does not print, most often a figure's points as a table, are many: they are not even made. */
+function printedOf(view: CellView, parts: CellFace["parts"]): CellView {
+  const prints = (name: "table" | "points") => parts.some(({ part }) => part === name);
+  const { figure, table } = view;
+  return {
+    figure,
+    // What a table remarks stands beneath the plate of its figure, too.
+    table: table === null || prints("table") ? table : { ...table, rows: [] },
+    points: prints("points") ? view.points : null,
+  };
 }
 
 /** One cell that cannot be drawn must not keep the others, and the text, from the page. */

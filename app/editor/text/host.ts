@@ -1,6 +1,6 @@
 import { Facet, type TransactionSpec } from "@codemirror/state";
 import { createStore, type Store } from "../live/store.ts";
-import type { CellFace, ShownView } from "../model/types.ts";
+import type { CellFace, SheetModel, ShownView } from "../model/types.ts";
 import { PLATES_AT_REST, type PlatesView } from "../plates/types.ts";
 
 /** What a person may ask of a cell on the sheet. */
@@ -38,6 +38,15 @@ export interface SheetHost {
   edit(change: TransactionSpec, bibtex?: string): void;
   /** Of the text [px]; plates are drawn to it. */
   columnWidth: number;
+}
+
+/** Takes in the macros of an answer, and the views that it told anew; null: its cell has none any more. */
+export function takeSheet(host: SheetHost, { macros, views }: Pick<SheetModel, "macros" | "views">): void {
+  host.macros = macros;
+  for (const [slot, view] of Object.entries(views)) {
+    if (view === null) host.views.delete(slot);
+    else host.views.set(slot, view);
+  }
 }
 
 /** What the page knows before its first answer. */

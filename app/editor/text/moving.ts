@@ -18,10 +18,10 @@ export function goToLine(view: EditorView, line: number): void {
   goToPlace(view, view.state.doc.line(Math.min(Math.max(1, line), view.state.doc.lines)).to);
 }
 
-/** The line named in the page's address, as `#line-37`; null: none is. */
-export function lineInAddress(hash: string): number | null {
-  const named = /^#line-(\d+)$/.exec(hash)?.[1];
-  return named === undefined ? null : Number(named);
+/** A line named in the page's address, as `#line-37`, is where one wants to be. */
+export function goToAddress(view: EditorView): void {
+  const named = /^#line-(\d+)$/.exec(window.location.hash)?.[1];
+  if (named !== undefined) requestAnimationFrame(() => goToLine(view, Number(named)));
 }
 
 /** Opens a working with the caret in it, for one who writes; or puts it away with the caret after it. */
