@@ -81,7 +81,8 @@ describe("counts", () => {
   test("stems on a logarithmic axis; axes and labels are the body's", () => {
     const figure = figureIn(COUNTS, "K");
     expect(figure.y).toEqual({ label: "p_n", scale: "log", range: null });
-    expect(figure.x).toEqual({ label: "n", scale: "linear", range: [0, 50] });
+    const otherwise = { scale: "linear", range: null };
+    expect(figure.x).toEqual({ label: "n", scale: "linear", range: [0, 50], otherwise });
     expect(figure.series[0]).toMatchObject({ mark: "stems", x: Array.from({ length: 201 }, (_, n) => n) });
   });
 
@@ -144,12 +145,12 @@ test("views read nothing but the result: axes may change while the result is an 
 });
 
 test("the paper's macros are unfolded in a figure's labels, its panels' and its inset's", () => {
-  const front = "---\nmacros: {\\E: '\\mathbb{E}', \\W: w_{#1}}\n---\n\n";
-  const text = `${cell("profile w", "of: larvae", "s: [0]", "labels: {y: \\W{s}}")}${cell("figure F", "panels: [w]", "labels: {w: \\E K}")}`;
-  const { plan, results } = computed(front + LARVAE + text);
+  const front = "---\nmacros: {\\E: '\\mathbb{E}', \\W: 'w_{#1}'}\n---\n\n";
+  const text = `${cell("profile w", "of: larvae", "s: [0]", "labels: {y: '\\W{s}'}")}${cell("figure F", "panels: [w]", "labels: {w: \\E K}")}`;
+  const { plan, results, outcomes } = computed(front + LARVAE + text);
   const figureOf = (id: string) => {
     const result = results.get(id);
-    if (result === undefined) throw new Error(JSON.stringify(plan.problems));
+    if (result === undefined) throw new Error(JSON.stringify([plan.problems, outcomes.get(id)]));
     return viewCell(plannedCell(plan, id), result, plan, results).figure;
   };
   expect(figureOf("w")?.y.label).toBe("w_{s}");
