@@ -4,6 +4,7 @@ import type { SheetAtHand } from "../keys/types.ts";
 import { counted } from "../parts/words.ts";
 import { type Found, foundField, watchFound } from "../text/found.ts";
 import { MOST_MATCHES, type Sought } from "../text/sought.ts";
+import { InBibtex } from "./in-bibtex.tsx";
 import { endSearch, goToMatch, replaceAll, replaceHere, seek } from "./walk-found.ts";
 
 const FIRST: Sought = { words: "", matchCase: false, wholeWords: false, isPattern: false };
@@ -73,6 +74,7 @@ export function FindStrip({ sheet }: { readonly sheet: SheetAtHand }) {
         <Command type="submit">Next</Command>
         <Command onClick={() => step(-1)}>Previous</Command>
         <span className={found.fault === "" ? "hl-strip-count" : "hl-amiss"}>{words}</span>
+        <InBibtex sheet={sheet} sought={sought} />
       </div>
       <div className="hl-find-line">
         <Tick name="Match case" on={sought.matchCase} onTurn={(matchCase) => setSought({ ...sought, matchCase })} />

@@ -5,13 +5,20 @@ import type { Converted } from "./writer.ts";
 
 /** How many names are told one by one. */
 const NAMED = 3;
+/** How many kinds of things are counted one by one, the most frequent first. */
+const KINDS = 4;
 
 /**
  * What a conversion did, what it left as it was, and which macros of its formulas the paper does not know.
  * @param macros those of the paper's front matter
  */
 export function conversionWords(conversion: Conversion, macros: Readonly<Record<string, string>>): string {
-  const things = [...conversion.counts].map(([what, count]) => counted(count, what, MANY[what]));
+  const counts = [...conversion.counts].sort(([, a], [, b]) => b - a);
+  const more = counts.slice(KINDS).reduce((sum, [, count]) => sum + count, 0);
+  const things = [
+    ...counts.slice(0, KINDS).map(([what, count]) => counted(count, what, MANY[what])),
+    ...(more === 0 ? [] : [counted(more, "other thing")]),
+  ];
   const one = conversion.counts.size === 1 && [...conversion.counts.values()][0] === 1;
   const unknown = [...new Set(conversion.formulas.flatMap((tex) => unknownMacro(tex, macros) ?? []))];
   return [

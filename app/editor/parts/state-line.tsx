@@ -34,7 +34,7 @@ export function StateLine({ face, open, host }: Props) {
     <div className={`hl-state hl-state-${face.state}`}>
       {face.progress === null ? null : <Bar {...face.progress} />}
       {lead === "" ? null : <b className="hl-lead">{lead} </b>}
-      {saidBelow ? <span className="hl-state-words">Its working is at fault, see below.</span> : null}
+      {saidBelow ? <span className="hl-state-words">Its working is at fault, as is said there.</span> : null}
       {telling ? <Runs className="hl-state-words" runs={face.words} macros={host.macros} /> : null}
       {face.finding === null ? null : <Said finding={face.finding} />}
       {face.state === "current" || face.state === "preview" ? (

@@ -62,9 +62,32 @@ function run(given: Run, macros: Macros): Node {
 
 function math(tex: string, display: boolean, macros: Macros, numbers: readonly NumberFace[] = []): HTMLElement {
   const made = element("span", display ? "hl-math hl-math-display" : "hl-math");
-  made.innerHTML = renderMath(tex, display, macros);
+  made.innerHTML = renderMath(display ? withClauses(tex) : tex, display, macros);
+  if (display) holdClauses(made);
   noteQuotes(made, numbers);
   return made;
+}
+
+/** The wide spaces of a display part its clauses: after them it may break. */
+function withClauses(tex: string): string {
+  return tex.replace(/\\q?quad(?![A-Za-z])/g, "$&\\allowbreak ");
+}
+
+/** A display breaks between its clauses first, and within one only where that by itself is wider than the column. */
+function holdClauses(display: HTMLElement): void {
+  for (const html of display.querySelectorAll(".katex-html")) {
+    const bases = [...html.children].filter((child) => child.classList.contains("base"));
+    if (!bases.some((base) => base.querySelector(":scope > .allowbreak") !== null)) continue;
+    let clause: HTMLElement | null = null;
+    for (const base of bases) {
+      if (clause === null) {
+        clause = element("span", "hl-clause");
+        base.before(clause);
+      }
+      clause.append(base);
+      if (base.querySelector(":scope > .allowbreak") !== null) clause = null;
+    }
+  }
 }
 
 const MARKS: Readonly<Record<NumberFace["state"], string>> = {

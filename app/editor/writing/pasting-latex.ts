@@ -67,7 +67,8 @@ async function convertPasted(view: EditorView, host: SheetHost, plain: string): 
     name: "Keep as pasted",
     act() {
       const now = placeOf(view, insert);
-      if (now === null) host.tell("It has been changed since; undo gives back what was pasted.");
+      if (now === null && placeOf(view, plain) !== null) host.tell("It stands as it was pasted.");
+      else if (now === null) host.tell("It has been changed since; undo gives back what was pasted.");
       else replace(view, host, now, insert, plain);
       view.focus();
     },

@@ -11,6 +11,7 @@ import {
 import { EditorState, type Extension, Prec } from "@codemirror/state";
 import { EditorView, keymap, showTooltip } from "@codemirror/view";
 import { sheetField } from "../text/sheet-field.ts";
+import { openSlotAt } from "../text/working-place.ts";
 import { wordsWithMath } from "./set-words.ts";
 import { type Suggestion, suggestionsAt } from "./suggest.ts";
 
@@ -46,7 +47,8 @@ export const suggestionList: Extension = [
     defaultKeymap: false,
     activateOnTypingDelay: REST_MS,
     maxRenderedOptions: MOST_SHOWN,
-    tooltipClass: () => "hl-suggestions",
+    tooltipClass: (state) =>
+      openSlotAt(state, state.selection.main.head) === null ? "hl-suggestions" : "hl-suggestions hl-suggestions-aside",
     addToOptions: [{ render: meaningOf, position: 80 }],
   }),
   Prec.highest(keymap.of([...completionKeymap, { key: "Tab", run: acceptCompletion }])),
