@@ -264,6 +264,20 @@ describe("a parameter removed", () => {
     expect(removed("```parameters\n{a: 1, b: 2}\n```\n", "b")).toBe("```parameters\n{a: 1}\n```\n");
   });
 
+  test("after it was added gives back the text as it was, to the sign", () => {
+    const words = fc.string({ unit: "grapheme", maxLength: 8 });
+    fc.assert(
+      fc.property(
+        fc.constantFrom("growth", "z9", "A_b"),
+        fc.record({ value: fc.constantFrom("1", "2*mu", "max(1, mu)"), note: words, unit: words }),
+        (name, fields) => {
+          expect(removed(added(TEXT, name, fields), name)).toBe(TEXT);
+        },
+      ),
+      { numRuns: 40 },
+    );
+  });
+
   test("is not removed while something reads it, which is told", () => {
     expect(removesParameter(readPaper(TEXT, ""), "", "mu")).toEqual({
       readers: [
