@@ -51,7 +51,6 @@ class SpaceWidget extends WidgetType {
   }
   override toDOM(): HTMLElement {
     const made = document.createElement("span");
-    made.className = "hl-join";
     made.textContent = " ";
     return made;
   }
