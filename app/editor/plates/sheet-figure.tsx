@@ -7,6 +7,9 @@ import { usePlates } from "./use-plates.ts";
 /** What a plate is read with: fetched when the first one is. */
 const ReadFigure = lazy(async () => ({ default: (await import("./read-figure.tsx")).ReadFigure }));
 
+/** What passes beneath the pointer while the page scrolls is not read [ms]. */
+const REST_MS = 120;
+
 interface Props {
   readonly figure: Figure;
   readonly slot: string;
@@ -36,12 +39,20 @@ export const SheetFigure = memo(({ figure, slot, host }: Props) => {
     if (place === null) return;
     const observer = new ResizeObserver(() => setMeasured(Math.round(place.clientWidth)));
     observer.observe(place);
-    const enter = ({ clientX, clientY }: PointerEvent) => setPointed({ clientX, clientY });
+    let resting: ReturnType<typeof setTimeout> | undefined;
+    const enter = ({ clientX, clientY, pointerType }: PointerEvent) => {
+      resting = setTimeout(() => setPointed({ clientX, clientY }), pointerType === "touch" ? 0 : REST_MS);
+    };
     // A finger that is lifted leaves as well; what it asked for stays to be read.
-    const leave = ({ pointerType }: PointerEvent) => pointerType !== "touch" && setPointed(null);
+    const leave = ({ pointerType }: PointerEvent) => {
+      if (pointerType === "touch") return;
+      clearTimeout(resting);
+      setPointed(null);
+    };
     place.addEventListener("pointerenter", enter);
     place.addEventListener("pointerleave", leave);
     return () => {
+      clearTimeout(resting);
       observer.disconnect();
       place.removeEventListener("pointerenter", enter);
       place.removeEventListener("pointerleave", leave);

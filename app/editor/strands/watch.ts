@@ -55,6 +55,7 @@ export class StrandWatch {
   private sign = "";
   private ticking = false;
   private soon: ReturnType<typeof setTimeout> | undefined;
+  private next: ReturnType<typeof setTimeout> | undefined;
   private firstAsked: number | null = null;
   /** Of the text when it was last measured [px]. */
   private height = 0;
@@ -110,6 +111,14 @@ export class StrandWatch {
     });
   }
 
+  /** Asks when what is being done is done. */
+  private askNext(): void {
+    this.next ??= setTimeout(() => {
+      this.next = undefined;
+      this.ask();
+    });
+  }
+
   /** Asks when nothing has changed for a moment, or after a few moments of changes. */
   askSoon(): void {
     const now = Date.now();
@@ -129,6 +138,7 @@ export class StrandWatch {
   end(): void {
     this.ended = true;
     clearTimeout(this.soon);
+    clearTimeout(this.next);
     this.lights.end();
     for (const end of this.ends) end();
   }
@@ -143,7 +153,9 @@ export class StrandWatch {
     const height = update.docChanged ? this.height : this.view.contentHeight;
     const grown = Math.abs(height - this.height) > 1;
     this.height = height;
-    if (grown || update.viewportChanged || (update.selectionSet && !update.docChanged)) this.ask();
+    if (grown || (update.selectionSet && !update.docChanged)) this.ask();
+    // Lines far above or below were drawn, which takes its time: strands are drawn wider than the view, and follow then.
+    else if (update.viewportChanged) this.askNext();
     else if (update.docChanged || sheetChanged || update.geometryChanged) this.askSoon();
   }
 
