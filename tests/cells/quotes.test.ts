@@ -114,6 +114,12 @@ describe("what is quoted by pointing", () => {
     );
   });
 
+  test("an entry of a table is quoted by its column's formula, and by its row where a parameter is varied", () => {
+    const formulas = (id: string) => quotesOf(viewOf(id).table).map(([formula]) => formula);
+    expect(formulas("against").slice(6, 9)).toEqual(["K(3)", "T(3)", "K(3)/T(3)"]);
+    expect(formulas("currents").slice(4, 6)).toEqual(["currents.decay(2)", "currents.arrives(2)"]);
+  });
+
   test("where a parameter is varied, or the cell has no name, there is none", () => {
     expect(seriesOf(viewOf("moved").figure).map((series) => series.quote)).toEqual([undefined]);
     const unnamed = plan.cells.find(({ kind, cell }) => kind === "counts" && cell.name === null);

@@ -70,8 +70,8 @@ function pointsOf(data: SweepData, presentation: Presentation): TableData {
   const rows = all.map(({ at, place, recorded }, i) => {
     const quote = (name: string) => (cell === null ? "" : `${cell}.${name}(${i + 1})`);
     return [
-      ...(vary === null || at === null ? [] : [tableEntry(exactValue(at), {}, quote(vary))]),
-      tableEntry(exactValue(place), {}, quote(over)),
+      ...(vary === null || at === null ? [] : [tableEntry(exactValue(at))]),
+      tableEntry(exactValue(place)),
       ...record.map((name) => tableEntry(recorded?.[name] ?? { type: "none" }, {}, quote(name))),
     ];
   });

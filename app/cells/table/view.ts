@@ -6,6 +6,7 @@ import type { Presentation } from "../presentation.ts";
 import { tableEntry } from "../table-parts.ts";
 import type { CellView } from "../types.ts";
 import type { TableCellData } from "./model.ts";
+import { entryQuote } from "./quote.ts";
 
 const MOST_REASONS = 4;
 
@@ -19,13 +20,15 @@ export function viewTable(data: TableCellData, presentation: Presentation): Cell
     ...rowNames.map((name): TableColumn => ({ name, head: presentation.symbolOf(name), tex: true })),
     ...names.map((name) => headOf(name, looks.get(name)?.head ?? null)),
   ];
-  const cell = presentation.name;
-  const quote = (column: string, row: number) => (cell === null ? "" : `${cell}.${column}(${row + 1})`);
   const count = Math.max(0, ...Object.values(data.columns).map((values) => values.length));
   const rows = Array.from({ length: count }, (_, row) => [
-    ...rowNames.map((name) => tableEntry(data.rows[name]?.[row] ?? GAP, {}, quote(name, row))),
+    ...rowNames.map((name) => tableEntry(data.rows[name]?.[row] ?? GAP)),
     ...names.map((name) =>
-      tableEntry(data.columns[name]?.[row] ?? GAP, looks.get(name)?.options ?? {}, quote(name, row)),
+      tableEntry(
+        data.columns[name]?.[row] ?? GAP,
+        looks.get(name)?.options ?? {},
+        entryQuote(data, name, row, presentation),
+      ),
     ),
   ]);
   const table: TableData = { columns, rows, remarks: reasonsForGaps(data, names, rowNames, presentation) };

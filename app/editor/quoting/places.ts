@@ -84,9 +84,10 @@ function entryPlaces(grid: HTMLElement, table: TableData, slot: string, origin: 
     [...row.cells].flatMap((cell, c): EntryPlace[] => {
       const entry = table.rows[r]?.[c];
       if (entry?.quote === undefined) return [];
-      const { left, top, width, height } = cell.getBoundingClientRect();
+      const whole = cell.getBoundingClientRect();
       // A wide table scrolls by itself: what is out of its sight cannot be pointed at.
-      if (left + width / 2 < shown.left || left + width / 2 > shown.right) return [];
+      const [left, right] = [Math.max(whole.left, shown.left), Math.min(whole.right, shown.right)];
+      if (right - left < whole.width / 2) return [];
       return [
         {
           place: "entry",
@@ -94,9 +95,9 @@ function entryPlaces(grid: HTMLElement, table: TableData, slot: string, origin: 
           formula: entry.quote,
           text: `${entry.text}${entry.unsupported}`,
           left: left - origin.left,
-          top: top - origin.top,
-          width,
-          height,
+          top: whole.top - origin.top,
+          width: right - left,
+          height: whole.height,
         },
       ];
     }),

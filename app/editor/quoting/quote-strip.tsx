@@ -147,13 +147,12 @@ function useKeysToNearest({ view }: SheetAtHand, places: readonly QuotePlace[]):
     const column = columnOf(view);
     if (given.current || places.length === 0 || column === null) return;
     given.current = true;
-    const middle = window.innerHeight / 2 - column.getBoundingClientRect().top;
-    const far = places.map(({ top, height }) => Math.abs(top + height / 2 - middle));
-    const nearest = places[far.indexOf(Math.min(...far))];
-    const inSight = nearest !== undefined && Math.min(...far) < window.innerHeight / 2;
-    const made = column.querySelectorAll<HTMLElement>(".hl-quote-layer > *")[inSight ? places.indexOf(nearest) : -1];
+    const caret = view.coordsAtPos(view.state.selection.main.head)?.top ?? window.innerHeight / 2;
+    const from = caret - column.getBoundingClientRect().top;
+    const far = places.map(({ top, height }) => Math.abs(top + height / 2 - from));
+    const made = column.querySelectorAll<HTMLElement>(".hl-quote-layer > *")[far.indexOf(Math.min(...far))];
     const target = made?.matches("button") === true ? made : made?.querySelector<HTMLElement>("[role=slider]");
-    target?.focus({ preventScroll: true });
+    target?.focus();
   }, [view, places]);
 }
 
