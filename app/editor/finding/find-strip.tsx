@@ -61,6 +61,8 @@ export function FindStrip({ sheet }: { readonly sheet: SheetAtHand }) {
             data-first
             className="hl-strip-field"
             value={sought.words}
+            // What was chosen in the text is looked for at once, and typing takes its place.
+            onFocus={({ target }) => target.select()}
             onChange={({ target }) => setSought({ ...sought, words: target.value })}
             onKeyDown={(event) => {
               if (event.key !== "Enter" || !event.shiftKey) return;
