@@ -41,6 +41,8 @@ export function reachFor(index: number): number {
 const NODES_PER_TURN = 0.55;
 const NODES_AT_MOST = 40_000;
 const BACK_STEP = 1 / 16;
+/** The circle's width over the leg's end, at least. */
+const BEYOND_LEG = 1.05;
 /** Largest index for which the panels of the leg have more nodes. */
 const STEEPEST = 64;
 
@@ -58,14 +60,14 @@ export function traceCut(
   shape: CutShape,
 ): CutContour | null {
   const end = Math.PI / reader.base.period;
-  const first = outermost(node, node.legEdge - farthest - shape.margin);
+  const first = outermost(node, node.knownEdge - farthest - shape.margin, Math.expm1(shape.width / BEYOND_LEG));
   if (first === null) return null;
   const { place, r } = first;
   const start = Math.log1p(r);
   // the integrand rises like τ^{2d + 1} before s^−n takes it down
   const panelNodes = shape.panelNodes + Math.ceil(Math.min(node.index, STEEPEST));
   const leg = legRule({ width: start, tilt: 0, panelNodes, finest: shape.finest });
-  const laid = layWay(start, Math.max(shape.width, 1.05 * start), end, shape, reachFor(node.index));
+  const laid = layWay(start, end, shape, reachFor(node.index));
   if (laid.length > NODES_AT_MOST) return null;
   const c = emptyContour(leg.tau.length, laid.length);
   const walker: NodePlace = { ...place };
@@ -81,18 +83,19 @@ export function traceCut(
     c.yRe[i + 1] = walker.re;
     c.yExtra[i + 1] = walker.extra;
   }
-  const fromPath = followWay(reader, node, place, laid, c);
-  return fromPath === null || !closes(reader, c, Math.max(shape.width, 1.05 * start), end) ? null : { ...c, fromPath };
+  const way = followWay(reader, node, place, laid, c);
+  return way === null || !closes(reader, c, way.path, shape.width) ? null : { ...c, fromPath: way.fromPath };
 }
 
-/** The outermost place on the cut at or before Re y = `edge` that lies before w(x, ·) turns. */
-function outermost(node: NodeReader, edge: number): { place: NodePlace; r: number } | null {
+/** The outermost place on the cut at or before Re y = `edge`, and at or before s − 1 = `most`, that lies before w(x, ·) turns. */
+function outermost(node: NodeReader, edge: number, most: number): { place: NodePlace; r: number } | null {
   const at = pointValue();
   for (let y = edge; y > edge - 8; y -= BACK_STEP) {
     node.evaluate({ re: y, extra: 0, halves: 1 }, at);
     if (!(at.re < 0 && at.slopeRe < 0.4 * at.re)) continue;
-    const place = node.turn(-at.re);
-    if (place !== null) return { place, r: -at.re };
+    const r = Math.min(-at.re, most);
+    const place = node.turn(r);
+    if (place !== null) return { place, r };
   }
   return null;
 }
@@ -114,7 +117,7 @@ function emptyContour(legNodes: number, arcNodes: number): Omit<CutContour, "fro
 }
 
 /** Nodes from the end of the leg obliquely out to `width`, then round to θ = end. */
-function layWay(start: number, width: number, end: number, { slope, panelNodes }: CutShape, reach: number): Laid[] {
+function layWay(start: number, end: number, { slope, width, panelNodes }: CutShape, reach: number): Laid[] {
   const corner = Math.min(end / 2, (width - start) / slope);
   const steep = (width - start) / corner;
   const laid: Laid[] = [];
@@ -146,14 +149,14 @@ function layWay(start: number, width: number, end: number, { slope, panelNodes }
 const LARGEST_RULE = 400;
 
 /** Solves for the nodes one after another: in the series of the node while it reaches, then on the trajectory.
- *  @returns the number of the first node that is beyond the series, or null where Newton's method fails. */
+ *  @returns the number of the first node that is beyond the series, and the path there; null where Newton's method fails. */
 function followWay(
   reader: TrajectoryReader,
   node: NodeReader,
   from: NodePlace,
   laid: readonly Laid[],
   c: Omit<CutContour, "fromPath">,
-): number | null {
+): { fromPath: number; path: Continuation | null } | null {
   const { base } = reader;
   const q = base.scale[0];
   const offset = 1 - q * base.centre;
@@ -170,7 +173,7 @@ function followWay(
     const im = -Math.exp(a) * Math.sin(b);
     if (path === null) {
       const known = { ...place };
-      if (node.solve(place, re, im) && place.re <= node.edge) {
+      if (node.solve(place, re, im) && place.re <= node.knownEdge) {
         c.yRe[j] = place.re;
         c.yExtra[j] = place.extra;
         continue;
@@ -183,15 +186,22 @@ function followWay(
     c.xiRe[j] = path.xiRe;
     c.xiIm[j] = path.xiIm;
   }
-  return fromPath;
+  return { fromPath, path };
 }
 
-/** At θ = end, s·e^{−iθ} is real and so must ξ + i·end be: the path has come round on the right sheet. */
-function closes(reader: TrajectoryReader, c: Omit<CutContour, "fromPath">, width: number, end: number): boolean {
+/** At θ = π/period, s·e^{−iθ} is real and so must ξ + i·π/period be: the path has come round on the right sheet. */
+function closes(
+  reader: TrajectoryReader,
+  c: Omit<CutContour, "fromPath">,
+  followed: Continuation | null,
+  width: number,
+): boolean {
   const { centre, period, scale } = reader.base;
+  const end = Math.PI / period;
   const last = c.logRe.length - 1;
-  const path = new Continuation(reader, c.xiRe[last] as number);
-  path.place(c.xiRe[last] as number, c.xiIm[last] as number);
+  // all the way within the series: ξ of the last node is not far from the real trajectory
+  const path = followed ?? new Continuation(reader, c.xiRe[last] as number);
+  if (followed === null) path.place(c.xiRe[last] as number, c.xiIm[last] as number);
   const size = Math.exp(width) / scale[0];
   const closed = period === 1 ? path.solve(centre + size, 0) : path.solve(-size * Math.cos(end), -size * Math.sin(end));
   return closed && Math.abs(path.xiIm + end) < CLOSING_TOLERANCE;

@@ -36,7 +36,7 @@ export function cutValues(reader: TrajectoryReader, node: NodeReader, c: CutCont
   for (let j = 1; j < count; j += 1) {
     const inSeries = j < c.fromPath;
     const place = placeAt(c, j);
-    if (inSeries && place.re + way <= node.edge) {
+    if (inSeries && place.re + way <= node.knownEdge) {
       node.evaluate({ ...place, re: place.re + way }, at);
       re[j] = (at.re - offset) / q;
       im[j] = at.im / q;
@@ -69,7 +69,7 @@ export function cutDifferences(
   const at = pointValue();
   for (let j = 1; j < count; j += 1) {
     const place = placeAt(c, j);
-    if (j < c.fromPath && place.re + way <= node.edge) {
+    if (j < c.fromPath && place.re + way <= node.knownEdge) {
       node.evaluateDifference(place, way, at);
       re[j] = at.re / q;
       im[j] = (j > c.legNodes ? at.im : imaginaryOnLeg(node, place, way)) / q;

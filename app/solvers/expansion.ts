@@ -1,7 +1,6 @@
 import { type ComplexSeries, type Composer, complexComposer, complexSeries, type Register } from "./complex-series.ts";
 import type { Branching } from "./offspring.ts";
 import type { Trajectory } from "./types.ts";
-import { SLOW_RATIO } from "./walk.ts";
 
 /** A Taylor polynomial of u about a complex ξ, in double precision. */
 export interface Expansion extends ComplexSeries {
@@ -18,6 +17,9 @@ const LAST_TERM = 2 ** -55;
 /** Share of the damping's own scale that one expansion covers. */
 const DAMPING_SHARE = 4;
 
+/** Slow over fast rate below which the slow motion is tried first: in double precision it is told from the trajectory's by nothing at a
+ *  weaker damping than in walk.ts, and where its rounds do not settle, the equation itself is expanded. */
+const SLOW_RATIO = -300;
 /** Rounds of the slow motion, and what ends them; see walk.ts. */
 const SLOW_ROUNDS = 80;
 const SLOW_GAIN = 0.7;

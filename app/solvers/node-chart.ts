@@ -124,18 +124,23 @@ export function chartValue(chart: NodeChart, zeta: Pair, eta: Pair): { u: Pair; 
   return { u, slope: add(multiply(zeta, byZeta), multiply(fast, byEta)) };
 }
 
-/** Size of the terms of the highest grades at (|ζ|, |η|), relative to u: what the cut leaves out. */
-export function chartRest(chart: NodeChart, zeta: number, eta: number): number {
+/** Size of the terms of the highest grades at (|ζ|, |η|), which is what the cut leaves out: of all of them relative to u, and of
+ *  those with a power of η relative to the first of these, since beside the cut only they have an imaginary part. */
+export function chartRest(chart: NodeChart, zeta: number, eta: number): { whole: number; fast: number } {
   const { series } = chart;
-  let rest = 0;
-  let first = 0;
-  series.rows.forEach((row, j) => {
+  const rests = series.rows.map((row, j) => {
     const last = series.order - j * series.weight;
+    let rest = 0;
     for (let i = Math.max(0, last - GRADES_MEASURED); i <= last; i += 1)
       rest += Math.abs(row.high[i] as number) * zeta ** i * eta ** j;
+    return rest;
   });
-  first = toNumber(series.at(1, 0)) * zeta + toNumber(series.at(0, 1)) * eta;
-  return rest / first;
+  const fastFirst = toNumber(series.at(0, 1)) * eta;
+  const fast = rests.slice(1).reduce((sum, rest) => sum + rest, 0);
+  return {
+    whole: ((rests[0] ?? 0) + fast) / (toNumber(series.at(1, 0)) * zeta + fastFirst),
+    fast: fast === 0 ? 0 : fast / fastFirst,
+  };
 }
 
 const GRADES_MEASURED = 3;

@@ -28,18 +28,24 @@ const SOLVED = 2 ** -92;
 /** Errors of the walk, relative to u, at most; and what comparing in doubles leaves. */
 export const PATH_ERROR = 2 ** -76;
 const ROUNDED = 2 ** -60;
+/** Relative difference of ζ at a knot from what it comes to from the knot before. */
+const CARRIED = 2 ** -20;
 /** Room for the trajectory's own error in the comparison of two knots. */
 const COMPARED = 4;
 
-/** Finds (ζ, η) at the outermost knot that the series reaches, from the innermost outwards.
+/** Finds (ζ, η) at the outermost knot that the series reaches, from the innermost outwards, as long as ζ grows as λ_s x does:
+ *  beyond its reach the series may still take the values of the knot, elsewhere.
  *  @param knots on the trajectory, of decreasing u
+ *  @param rate d(λ_s x)/dξ
  *  @throws SolverError "not_converged" where no knot is within its reach, or Newton's method fails. */
-export function passThrough(chart: NodeChart, knots: readonly NodeKnot[]): Passed {
+export function passThrough(chart: NodeChart, knots: readonly NodeKnot[], rate: Pair): Passed {
   let found: Met | null = null;
   let previous: Met | null = null;
   for (const knot of [...knots].reverse()) {
-    const at = solve(chart, knot, found === null ? linear(chart, knot) : carried(chart, found, knot));
-    if (at === null || !(chartRest(chart, Math.abs(toNumber(at.zeta)), Math.abs(toNumber(at.eta))) < REST)) break;
+    const expected = found === null ? null : carried(chart, found, knot, rate);
+    const at = solve(chart, knot, expected ?? linear(chart, knot));
+    if (expected !== null && at !== null && !(apart(at.zeta, expected.zeta) < CARRIED)) break;
+    if (at === null || !(chartRest(chart, Math.abs(toNumber(at.zeta)), Math.abs(toNumber(at.eta))).whole < REST)) break;
     previous = found;
     found = { knot, ...at };
   }
@@ -67,13 +73,18 @@ function linear(chart: NodeChart, { u, slope }: NodeKnot): { zeta: Pair; eta: Pa
 }
 
 /** (ζ, η) moved along the flow from one knot to another. */
-function carried(chart: NodeChart, from: Met, to: NodeKnot): { zeta: Pair; eta: Pair } {
-  // on the way to larger u; λ_s x is not known here but through u, which is ζ to leading order
-  const factor = divide(to.u, from.knot.u);
-  const way = Math.log(factor[0]);
+function carried(chart: NodeChart, from: Met, to: NodeKnot, rate: Pair): { zeta: Pair; eta: Pair } {
+  const way = multiply(subtract(to.xi, from.knot.xi), rate);
   // what is lost in rounding must not be carried on at the fast rate
   const known = Math.abs(from.eta[0]) > PATH_ERROR * Math.abs(from.zeta[0]);
-  return { zeta: multiply(from.zeta, factor), eta: known ? moveEta(chart, from.zeta, from.eta, pair(way)) : ZERO };
+  return {
+    zeta: multiply(from.zeta, exponential(way)),
+    eta: known ? moveEta(chart, from.zeta, from.eta, way) : ZERO,
+  };
+}
+
+function apart(a: Pair, b: Pair): number {
+  return Math.abs(toNumber(divide(subtract(a, b), b)));
 }
 
 /** η after λ_s x has grown by `way`. */

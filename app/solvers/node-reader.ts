@@ -13,8 +13,9 @@ export interface NodePlace {
   readonly halves: 0 | 1;
 }
 
-/** What the series may leave out in double precision, relative to u. */
+/** What the series may leave out in double precision, relative to u, and to what the cut sees of it alone. */
 const REST = 2 ** -56;
+const FAST_REST = 2 ** -50;
 const NEWTON_ROUNDS = 40;
 /** Steps on the way from s < 1 round to s > 1. */
 const TURN_STEPS = 24;
@@ -69,7 +70,8 @@ export class NodeReader {
     const fits = (y: number) => {
       const stretch = (Math.abs(y) + Math.PI) * Math.exp(Math.abs(gap) * Math.abs(y));
       const eta = Math.exp(index * y) * (Math.abs(this.eta) + Math.abs(this.resonant) * stretch);
-      return chartRest(chart, this.zeta * Math.exp(y), eta) < REST;
+      const { whole, fast } = chartRest(chart, this.zeta * Math.exp(y), eta);
+      return whole < REST && fast < FAST_REST;
     };
     while (!fits(edge)) edge -= EDGE_STEP;
     while (edge < 4 && fits(edge + EDGE_STEP)) edge += EDGE_STEP;
@@ -81,8 +83,8 @@ export class NodeReader {
     return this.passage.etaError >= 1;
   }
 
-  /** Where the leg beside the cut ends at most: at the edge of the series, or where what is lost would be felt in double precision. */
-  get legEdge(): number {
+  /** Largest Re y at which the series is right in double precision: its edge, or where what is lost of the singularity would be felt. */
+  get knownEdge(): number {
     return this.lost ? Math.min(this.edge, Math.log(REST / (LOST_FACTOR * PATH_ERROR)) / this.index) : this.edge;
   }
 

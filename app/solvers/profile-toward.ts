@@ -35,7 +35,7 @@ export function readNearOne(t: Trajectory, x: number, s: number): NearOne | Refu
   const way = node.slow * x;
   const moved = perPlace + way * (slowSpread + inputUnit(x) + 3 * ROUNDING) + Math.min(1, way) * shiftSpread;
   const there = y + way;
-  if (there <= node.edge) {
+  if (there <= node.knownEdge) {
     node.evaluate({ re: there, extra: 0, halves: 0 }, at);
     const { re, slopeRe } = at;
     const slope = () => {

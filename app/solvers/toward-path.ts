@@ -38,8 +38,8 @@ export interface TowardPath {
   readonly passed: Passed;
 }
 
-/** How near to w = 1 the walk goes, as a share of 1 − q: the chart's series is met on the way. */
-const INNERMOST = 1 / 32;
+/** How near to w = 1 the walk goes, as a share of 1 − q: the chart's series is met on the way, at several knots. */
+const INNERMOST = 2 ** -10;
 const OUTERMOST = 3 / 4;
 
 /** λ_s = (−drift − √discriminant)/(2 D) and d = λ_b/λ_s, without cancellation.
@@ -88,7 +88,7 @@ export function followToward(model: ProcessModel, linear: Linearised, settings: 
     },
   );
   const chart = nodeChart(linear.law, index);
-  const passed = passThrough(chart, near);
+  const passed = passThrough(chart, near, divide(slow, normalised.decay));
   return {
     saddle,
     normalised,
