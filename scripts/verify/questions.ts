@@ -12,7 +12,7 @@ import {
 import { type Decimal, decimalNear, type ExactModel, toFixed } from "./exact-model.ts";
 import { aboutLaw } from "./law-questions.ts";
 import { type Asked, type Question, scaledAnswer } from "./question.ts";
-import { type ExactStarts, ReferenceAnswers } from "./reference-answers.ts";
+import { type ExactStarts, ReferenceAnswers, recursionBits } from "./reference-answers.ts";
 
 /** Bits that the reference spends at most on the smallest probability: more n for laws that fall slowly. */
 const MOST_BITS = 900;
@@ -37,7 +37,7 @@ export function questionsAbout(
   const distance = () => decimalNear((0.02 * 400 ** random()) / decay[0], 1 + Math.floor(17 * random()), random);
   const x = distance();
   const starts = randomStarts(x, distance, random);
-  const bits = last * perTerm + 3 * decay[0] * x.double + powerBits(model, last);
+  const bits = recursionBits(last, perTerm, t.ratio[0]) + 3 * decay[0] * x.double + powerBits(model, last);
   const reference = new ReferenceAnswers(exact, Math.min(bits, 2500));
   const asked = { t, exact, reference, random };
   return [

@@ -20,6 +20,16 @@ const JUDGED = 90;
 /** Powers of t kept in the expansion at s0. */
 const SINGULAR_ORDER = 41;
 
+/** Bits that a recursion for the law loses up to n. A deviation grows as if it met a singularity (1 − w/s*)^ratio at the fixed point
+ *  s* that the trajectory leaves, whose coefficients are binomial(n + |ratio|, n) s*^−n where the ratio is negative.
+ *  @param perTerm log2 of the law's own radius of convergence over s*
+ *  @param ratio the rate at which deviations from the trajectory leave s*, over its own */
+export function recursionBits(n: number, perTerm: number, ratio: number): number {
+  let bits = n * perTerm;
+  if (ratio < 0) for (let k = 1; k <= n; k += 1) bits += Math.log2((k - ratio) / k);
+  return bits;
+}
+
 /** Answers in many digits about one model, by methods that share nothing with the solvers: recursions in s, see flow.ts. */
 export class ReferenceAnswers {
   readonly f: Fixed;
@@ -123,8 +133,8 @@ export class ReferenceAnswers {
   private judgeable(value: bigint, n: number): Real | null {
     const { f, trajectory } = this;
     const top = this.s0 ?? f.one;
-    const growth =
-      trajectory.point === 0n ? 0 : n * Math.max(0, Math.log2(f.toNumber(f.divide(top, trajectory.point))));
+    const perTerm = trajectory.point === 0n ? 0 : Math.max(0, Math.log2(f.toNumber(f.divide(top, trajectory.point))));
+    const growth = recursionBits(n, perTerm, f.toNumber(trajectory.damping) - 1);
     return value !== 0n && lengthOf(value) < growth + JUDGED ? null : this.real(value);
   }
 

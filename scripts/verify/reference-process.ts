@@ -78,6 +78,8 @@ export class ReferenceTrajectory {
   readonly f: Fixed;
   readonly constants: Constants;
   readonly decay: bigint;
+  /** drift/(D decay): 1 + the other rate at that point over this one */
+  readonly damping: bigint;
   /** the fixed point it leaves */
   readonly point: bigint;
   readonly below: Branch;
@@ -95,9 +97,10 @@ export class ReferenceTrajectory {
     this.decay = decay;
     const order = Math.ceil(ORDER_SHARE * f.bits);
     const unit = f.multiply(constants.diffusion, f.multiply(decay, decay));
+    this.damping = f.divide(constants.drift, f.multiply(constants.diffusion, decay));
     const equation: Equation = {
       law: constants.law,
-      damping: f.divide(constants.drift, f.multiply(constants.diffusion, decay)),
+      damping: this.damping,
       strength: f.divide(constants.rate, unit),
     };
     this.series = originSeries(f, equation, point, order);
