@@ -116,7 +116,7 @@ function bodyPlace(text: string, offset: number, lineFrom: number, cell: CellAro
   const under = indent === 0 ? null : keyAbove(text.slice(cell.bodyFrom, lineFrom), indent);
   const key = /^\s*([A-Za-z_]\w*)?$/.exec(before);
   if (key !== null) {
-    const taken = keysOf(bodyAround(text, cell.bodyFrom), under === null ? 0 : indent, offset - cell.bodyFrom);
+    const taken = keysBeside(bodyAround(text, cell.bodyFrom), indent, lineFrom - cell.bodyFrom);
     return { place: "key", from: offset - (key[1] ?? "").length, cell, under, taken };
   }
   const entry = /^\s*(?:-\s+)?([A-Za-z_]\w*):\s+(.*)$/.exec(before);
@@ -130,7 +130,8 @@ function bodyPlace(text: string, offset: number, lineFrom: number, cell: CellAro
   const [, name = "", written = ""] = entry;
   const flow = /(?:^|[^[({]*)\{(?:[^{}]*,\s*)?([A-Za-z_]*)$/.exec(written);
   if (flow !== null) {
-    const taken = [...written.matchAll(/([A-Za-z_]\w*):/g)].map((found) => found[1] ?? "");
+    const rest = /^[^\n}]*/.exec(text.slice(offset))?.[0] ?? "";
+    const taken = [...`${written} ${rest}`.matchAll(/([A-Za-z_]\w*):/g)].map((found) => found[1] ?? "");
     return { place: "key", from: offset - (flow[1] ?? "").length, cell, under: name, taken };
   }
   const inner = /[{,]\s*([A-Za-z_]\w*):\s+([^,{}]*)$/.exec(written);
@@ -155,10 +156,21 @@ function bodyAround(text: string, from: number): string {
   return end === -1 ? text.slice(from) : text.slice(from, from + end);
 }
 
-/** Keys at an indentation, but for that of the line at `except`. */
-function keysOf(body: string, indent: number, except: number): string[] {
-  return [...body.matchAll(/^([ \t]*)([A-Za-z_]\w*):/gm)]
-    .filter((found) => (found[1] ?? "").length === indent)
-    .filter((found) => found.index > except || body.slice(found.index, except).includes("\n"))
-    .map((found) => found[2] ?? "");
+/** Keys of the map in which a line of a body stands, but for that of the line itself. */
+function keysBeside(body: string, indent: number, lineFrom: number): string[] {
+  const above = body.slice(0, lineFrom).split("\n").slice(0, -1).reverse();
+  const below = body.slice(lineFrom).split("\n").slice(1);
+  return [...keysTo(above, indent), ...keysTo(below, indent)];
+}
+
+/** Keys at an indentation, to the first line that is indented less. */
+function keysTo(lines: readonly string[], indent: number): string[] {
+  const keys: string[] = [];
+  for (const line of lines) {
+    const own = /^[ \t]*/.exec(line)?.[0].length ?? 0;
+    if (line.trim() !== "" && own < indent) break;
+    const key = /^[ \t]*([A-Za-z_]\w*):/.exec(line)?.[1];
+    if (own === indent && key !== undefined) keys.push(key);
+  }
+  return keys;
 }

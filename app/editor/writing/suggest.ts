@@ -1,5 +1,6 @@
 import type { CellWords, KeyWord, Knowledge, Word } from "../model/knowledge.ts";
-import { type CellAround, placeAt, type WritingPlace } from "./place.ts";
+import { dummiesAt } from "./dummies.ts";
+import { type CellAround, cellAround, placeAt, type WritingPlace } from "./place.ts";
 import { TEX_ENVIRONMENTS, TEX_WORDS } from "./tex-words.ts";
 
 /** What may be written. */
@@ -30,7 +31,7 @@ type Found = Omit<Suggestions, "eager">;
 export function suggestionsAt(text: string, offset: number, knowledge: Knowledge): Suggestions | null {
   const place = placeAt(text, offset);
   if (place === null) return null;
-  const found = suggestionsIn(place, knowledge);
+  const found = suggestionsIn(place, knowledge, () => dummiesAt(text, offset, cellAround(text, offset), knowledge));
   if (found === null || found.list.length === 0) return null;
   return { ...found, eager: EAGER.has(place.place) || text[found.from - 1] === "." };
 }
@@ -44,7 +45,10 @@ const EAGER: ReadonlySet<WritingPlace["place"]> = new Set<WritingPlace["place"]>
   "texEnvironment",
 ]);
 
-function suggestionsIn(place: WritingPlace, knowledge: Knowledge): Found | null {
+/** Names of the place's own; null where one is being given just there. */
+type Dummies = () => readonly Word[] | null;
+
+function suggestionsIn(place: WritingPlace, knowledge: Knowledge, dummies: Dummies): Found | null {
   const { words, names } = knowledge;
   const { from } = place;
   switch (place.place) {
@@ -53,9 +57,9 @@ function suggestionsIn(place: WritingPlace, knowledge: Knowledge): Found | null 
     case "key":
       return { from, list: keysAt(place, knowledge).map(keySuggestion) };
     case "value":
-      return valuesAt(place, knowledge);
+      return valuesAt(place, knowledge, dummies);
     case "formula":
-      return inFormula(place.written, from, knowledge);
+      return inFormula(place.written, from, knowledge, dummies);
     case "attributes":
       return { from, list: place.of === "cite" ? CITATION_ATTRIBUTES : words.numberAttributes.map(attribute) };
     case "environment":
@@ -169,7 +173,11 @@ const WORDS_OF: Readonly<Record<string, readonly Word[]>> = {
 const PROSE: ReadonlySet<string> = new Set(["caption", "because", "note", "unit", "head", "file"]);
 const TEX: ReadonlySet<string> = new Set(["symbol"]);
 
-function valuesAt(place: Extract<WritingPlace, { place: "value" }>, knowledge: Knowledge): Found | null {
+function valuesAt(
+  place: Extract<WritingPlace, { place: "value" }>,
+  knowledge: Knowledge,
+  dummies: Dummies,
+): Found | null {
   const { key, under, written, cell } = place;
   if (PROSE.has(key)) return null;
   if (TEX.has(key) || under === "labels") return texIn(written, place.from);
@@ -186,7 +194,7 @@ function valuesAt(place: Extract<WritingPlace, { place: "value" }>, knowledge: K
     return whole ? { from, list: listed.map(({ name, meaning }) => plain(name, meaning)) } : null;
   }
   if (key === "of") return { from, list: cellsFor(cell, knowledge).map(({ name, title }) => plain(name, title)) };
-  return inFormula(written, place.from, knowledge);
+  return inFormula(written, place.from, knowledge, dummies);
 }
 
 const PARTS: Readonly<Record<string, string>> = {
@@ -207,7 +215,7 @@ function texIn(written: string, from: number): Found | null {
 }
 
 /** Names, functions and members, by the word before the caret. */
-function inFormula(written: string, from: number, { words, names }: Knowledge): Found | null {
+function inFormula(written: string, from: number, { words, names }: Knowledge, dummies: Dummies): Found | null {
   const member = /(?<![\w.])([A-Za-z]\w*)\.(\w*)$/.exec(written);
   if (member !== null) {
     const cell = names.cells.find(({ name }) => name === member[1]);
@@ -222,6 +230,8 @@ function inFormula(written: string, from: number, { words, names }: Knowledge): 
   const word = /(?<![\w.])[A-Za-z]\w*$/.exec(written)?.[0] ?? "";
   // A number, a finished word or a bracket stands before the caret: nothing begins there.
   if (word === "" && /[\w.)\]}]\s*$/.test(written)) return null;
+  const own = dummies();
+  if (own === null) return null;
   const start = from + written.length - word.length;
   const cells = names.cells.map((cell) => {
     const own = cell.callables.find((each) => each.member === "");
@@ -233,6 +243,7 @@ function inFormula(written: string, from: number, { words, names }: Knowledge): 
   return {
     from: start,
     list: [
+      ...own.map(({ name, meaning }) => plain(name, meaning)),
       ...names.parameters.map(({ name, meaning }) => plain(name, meaning)),
       ...cells,
       ...functions,

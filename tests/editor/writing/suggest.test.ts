@@ -94,6 +94,55 @@ describe("What may be written", () => {
     expect(at(":value[K(|)]")?.labels).toContain("mu");
   });
 
+  test("in a formula, first the names of its own", () => {
+    const own = (marked: string) => {
+      const all = at(marked)?.list ?? [];
+      const first = all.findIndex(({ label }) => label === "mu");
+      return all.slice(0, first).map(({ label, meaning }) => `${label}: ${meaning}`);
+    };
+    expect(own(":value[sum(K(|), m, 0, 5)]")).toEqual(["m: the variable of sum"]);
+    expect(own(":value[integral(2*|, x, 0, 1)]")).toEqual(["x: the variable of integral"]);
+    expect(own(":value[sum(integral(|, x, 0, n), n, 0, 5)]")).toEqual([
+      "x: the variable of integral",
+      "n: the variable of sum",
+    ]);
+    // The variable is not written yet: the letter of the definition.
+    expect(own("```check c\nthat: sum(K(|")).toEqual(["n: the variable of sum"]);
+    // Beyond the body of the sum its variable means nothing.
+    expect(own(":value[sum(K(m), m, 0, |)]")).toEqual([]);
+    expect(own(":value[sum(K(m), m, 0, 5) + |]")).toEqual([]);
+    expect(own("```table t\nrows: {j: 1 to 3}\ncolumns:\n  a: K(|)\n```")).toEqual(["j: named by rows"]);
+    expect(own("```sweep s\nover:\n  y: 0 to 1\nvary: {mu: [1, 2]}\nrecord: {a: |}\n```")).toEqual([
+      "y: named by over",
+    ]);
+    expect(own("```formula f\none: 1\ntwo: 2*|\nthree: 3\n```")).toEqual(["one: named above"]);
+    expect(own("```parameters\na: 1\nb: 2*|\n```")).toEqual([]);
+  });
+
+  test("nothing where a variable is being named", () => {
+    expect(at(":value[sum(K(n), |")).toBeNull();
+    expect(at(":value[sum(K(n), m|, 0, 5)]")).toBeNull();
+    expect(at(":value[choose(5, m|)]")?.labels).toContain("mu");
+  });
+
+  test("keys that its own map has are not offered again, those of another map are", () => {
+    expect(at("```parameters\nmu: {value: 2, m|, max: 3, note: a}\n```")?.labels).toEqual([
+      "min",
+      "step",
+      "symbol",
+      "unit",
+      "se",
+    ]);
+    expect(at("```counts K\naxes:\n  x: 0 to 1\n  |\nlabels:\n  y: p\n```")?.labels).toEqual(["y", "log", "linear"]);
+    expect(at("```counts K\n|\nof: larvae\nstart: 1\n```")?.labels).toEqual([
+      "up_to",
+      "caption",
+      "show",
+      "axes",
+      "labels",
+    ]);
+  });
+
   test("in braces, attributes", () => {
     expect(at(":value[K.mean]{|}")?.labels).toContain("digits=6");
     expect(at(":value[K.mean]{digits=6 a|}")).toMatchObject({ word: "a" });
