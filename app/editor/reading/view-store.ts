@@ -19,8 +19,9 @@ export class ViewStore {
       const planned = plan.byId.get(face.id);
       const result = results.get(face.id);
       const drawn = planned !== undefined && result !== undefined && face.parts.length > 0;
-      const make = () => printedOf(viewCell(planned, result, plan, results), face.parts);
-      views[face.slot] = drawn ? viewOf(face.viewSign, make) : null;
+      views[face.slot] = drawn
+        ? viewOf(face.viewSign, () => printedOf(viewCell(planned, result, plan, results), face.parts))
+        : null;
     }
     for (const slot of this.sent.keys()) if (!now.has(slot)) views[slot] = null;
     this.sent = now;
