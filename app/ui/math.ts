@@ -21,30 +21,41 @@ const kept = new Map<string, string>();
  * @param tex TeX without dollars; numbers already put in, labels taken out (`mathTex` of app/paper)
  * @param display set as a display, else in a line
  * @param macros TeX macros of the paper's front matter: `{"\\E": "\\mathbb{E}"}`
+ * @param classes what `\htmlClass` may name, put in by our own hand; it may name nothing when left out
  * @returns safe HTML; what cannot be set comes back as its source with ‡ and the reason
  */
-export function renderMath(tex: string, display: boolean, macros: Readonly<Record<string, string>> = {}): string {
-  const key = `${display ? "D" : "I"}${JSON.stringify(macros)}${tex}`;
+export function renderMath(
+  tex: string,
+  display: boolean,
+  macros: Readonly<Record<string, string>> = {},
+  classes: RegExp | null = null,
+): string {
+  const key = `${display ? "D" : "I"}${classes?.source ?? ""}${JSON.stringify(macros)}${tex}`;
   const known = kept.get(key);
   if (known !== undefined) {
     kept.delete(key);
     kept.set(key, known);
     return known;
   }
-  const html = setFormula(tex, display, macros);
+  const html = setFormula(tex, display, macros, classes);
   kept.set(key, html);
   if (kept.size > KEPT_FORMULAS) kept.delete(kept.keys().next().value ?? "");
   return html;
 }
 
-function setFormula(tex: string, display: boolean, macros: Readonly<Record<string, string>>): string {
+function setFormula(
+  tex: string,
+  display: boolean,
+  macros: Readonly<Record<string, string>>,
+  classes: RegExp | null,
+): string {
   if (tex.length > LONGEST_TEX)
     return unset(tex.slice(0, 40), `The formula has ${tex.length} characters; ${LONGEST_TEX} can be set.`);
   try {
     return katex.renderToString(tex, {
       displayMode: display,
       throwOnError: true,
-      trust: false,
+      trust: classes === null ? false : (asked) => asked.command === "\\htmlClass" && classes.test(asked.class),
       strict: "ignore",
       maxExpand: MOST_EXPANSIONS,
       maxSize: LARGEST_SIZE_EM,
@@ -52,7 +63,7 @@ function setFormula(tex: string, display: boolean, macros: Readonly<Record<strin
       macros: { ...macros },
     });
   } catch (error) {
-    return unset(tex, reasonOf(error));
+    return unset(classes === null ? tex : tex.replace(/\\htmlClass\{[^{}]*\}/g, ""), reasonOf(error));
   }
 }
 

@@ -162,6 +162,8 @@ test("axes are tried on the sheet, refused at their field, written into the work
   const working = async () => (await page.locator(".hl-working").allInnerTexts()).join("\n").trim();
   await soon(working).toBe(WORKING.replace("up_to: 30", "up_to: 30\naxes: {x: 10 to 20}"));
   await page.keyboard.press("Control+z");
+  // The caret is where it was before, and the working closed with it.
+  await plate.getByRole("button", { name: "Show working, Figure 1" }).click();
   await soon(working).toBe(WORKING);
 });
 

@@ -78,7 +78,8 @@ describe("pieces", () => {
       if (piece.content.content === "pointer") return [piece.content.text];
       return piece.content.content === "display" ? [`${piece.content.tex} (${piece.content.number})`] : [];
     });
-    expect(texts).toEqual(["equation (1)", "Figure 1", "w'' + \\mu w' = {1.6} (1)", "[1]"]);
+    const bound = "\\htmlClass{hl-bound hl-bound-current hl-first-1 hl-second-1}{1.6}";
+    expect(texts).toEqual(["equation (1)", "Figure 1", `w'' + \\mu w' = {${bound}} (1)`, "[1]"]);
   });
 });
 

@@ -35,6 +35,20 @@ describe("formulas as HTML", () => {
     expect(markup).not.toContain(forbidden);
   });
 
+  it("gives classes that are named for it, and no others", () => {
+    const own = /^ours(?: ours-[a-z]+)?$/;
+    expect(renderMath("\\htmlClass{ours ours-x}{12}", false, {}, own)).toContain('class="enclosing ours ours-x"');
+    for (const tex of [
+      "\\htmlClass{theirs}{12}",
+      "\\htmlClass{ours x}{12}",
+      "\\htmlStyle{color: red}{1}",
+      "\\href{https://x.example}{1}",
+    ])
+      expect(renderMath(tex, false, {}, own).replace(/<annotation[\s\S]*?<\/annotation>/g, "")).not.toMatch(
+        /class="enclosing|style="color: red|<a /,
+      );
+  });
+
   it("stops a macro that unfolds for ever, in bounded time", () => {
     const begun = performance.now();
     expect(renderMath("\\def\\a{\\a\\a}\\a", false)).toContain("unfolds without end");

@@ -1,5 +1,6 @@
 import { type CellResult, evaluateNumber, type Plan } from "../../cells/index.ts";
 import type { BoundNumber } from "../../paper/index.ts";
+import { boundClasses } from "../model/bound-classes.ts";
 import type { CellStateName, NumberFace, NumberState } from "../model/types.ts";
 
 /** What is known of a cell where a number is set: its state and what it is called. */
@@ -75,7 +76,8 @@ function faceOf(
     strands: parameters.flatMap((name) => strands.get(name) ?? []),
     said,
   };
-  const tex = printed?.tex ?? `\\text{${face.known === "" ? "no value" : face.known}}`;
+  const set = printed?.tex ?? `\\text{${face.known === "" ? "no value" : face.known}}`;
+  const tex = `\\htmlClass{${boundClasses(face)}}{${set}}`;
   return { face, tex: MARKED.has(state) ? `{${tex}}^{\\dagger}` : printed === null ? `${tex}^{\\ddagger}` : tex };
 }
 

@@ -1,10 +1,10 @@
 import type { Nodes, Parent } from "mdast";
-import { citationText, mathTex, type Paper } from "../../paper/index.ts";
+import { citationText, type Paper } from "../../paper/index.ts";
 import type { Content, Piece } from "../model/types.ts";
 import { type Collecting, lineEnd, lineStart, placeOf, text, words } from "./collecting.ts";
 import { environmentPieces } from "./environment-pieces.ts";
 import type { NumberFaces } from "./number-faces.ts";
-import { boundIn, referenceText, runsOf } from "./runs.ts";
+import { boundIn, boundTex, referenceText, runsOf } from "./runs.ts";
 
 type NodeOf<Name extends Nodes["type"]> = Extract<Nodes, { type: Name }>;
 type Drawers = { readonly [Name in Nodes["type"]]?: (node: NodeOf<Name>, into: Collecting) => void };
@@ -62,12 +62,12 @@ const DRAWERS: Drawers = {
     }
   },
   inlineMath(node, into) {
-    set(node, into, { content: "math", tex: mathTex(node, into.numbers.tex), ...boundIn(node, into.numbers) });
+    set(node, into, { content: "math", tex: boundTex(node, into.numbers), ...boundIn(node, into.numbers) });
   },
   math(node, into) {
     const content = {
       content: "display",
-      tex: mathTex(node, into.numbers.tex),
+      tex: boundTex(node, into.numbers),
       number: node.data?.number ?? "",
       ...boundIn(node, into.numbers),
     } as const;

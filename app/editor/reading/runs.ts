@@ -1,5 +1,6 @@
 import type { PhrasingContent } from "mdast";
 import { type BibliographyEntry, bibliographyItem, citationText, mathTex, type Target } from "../../paper/index.ts";
+import { withoutClasses } from "../model/bound-classes.ts";
 import type { NumberFace, Run } from "../model/types.ts";
 import type { NumberFaces } from "./number-faces.ts";
 
@@ -22,7 +23,7 @@ function runOf(node: PhrasingContent, numbers: NumberFaces): Run[] {
     case "inlineCode":
       return [{ run: "code", text: node.value }];
     case "inlineMath":
-      return [{ run: "math", tex: mathTex(node, numbers.tex), ...boundIn(node, numbers) }];
+      return [{ run: "math", tex: boundTex(node, numbers), ...boundIn(node, numbers) }];
     case "emphasis":
     case "strong":
       return [{ run: node.type, runs: runsOf(node.children, numbers) }];
@@ -46,6 +47,12 @@ function runOf(node: PhrasingContent, numbers: NumberFaces): Run[] {
     default:
       return [];
   }
+}
+
+/** The TeX of a formula with its numbers put in. */
+export function boundTex(node: MathNode, numbers: NumberFaces): string {
+  const isBound = (node.data?.numbers ?? []).length > 0;
+  return mathTex(isBound ? { ...node, value: withoutClasses(node.value) } : node, numbers.tex);
 }
 
 /** The numbers that are bound in a formula; nothing where there are none. */

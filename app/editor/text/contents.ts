@@ -1,4 +1,5 @@
 import { renderMath } from "../../ui/math.ts";
+import { BOUND_CLASSES, withoutClasses } from "../model/bound-classes.ts";
 import type { Content, FrontFace, NumberFace, Run } from "../model/types.ts";
 import { noteQuotes } from "../strands/quoted.ts";
 import { element } from "./element.ts";
@@ -62,7 +63,8 @@ function run(given: Run, macros: Macros): Node {
 
 function math(tex: string, display: boolean, macros: Macros, numbers: readonly NumberFace[] = []): HTMLElement {
   const made = element("span", display ? "hl-math hl-math-display" : "hl-math");
-  made.innerHTML = renderMath(display ? withClauses(tex) : tex, display, macros);
+  const set = numbers.length === 0 ? renderMath : renderBound;
+  made.innerHTML = set(display ? withClauses(tex) : tex, display, macros);
   if (display) holdClauses(made);
   noteQuotes(made, numbers);
   return made;
@@ -88,6 +90,12 @@ function holdClauses(display: HTMLElement): void {
       if (base.querySelector(":scope > .allowbreak") !== null) clause = null;
     }
   }
+}
+
+/** A formula with bound numbers in it, each with its underline. A macro of the paper's own must not give classes either. */
+function renderBound(tex: string, display: boolean, macros: Macros): string {
+  const sound = Object.entries(macros).map(([name, body]) => [name, withoutClasses(body)]);
+  return renderMath(tex, display, Object.fromEntries(sound), BOUND_CLASSES);
 }
 
 const MARKS: Readonly<Record<NumberFace["state"], string>> = {
