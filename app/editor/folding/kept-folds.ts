@@ -13,6 +13,7 @@ export function keepFolds(view: EditorView, paperId: string, personId: string | 
   let ended = false;
   let restored = false;
   const restore = (): void => {
+    if (ended || restored) return;
     restored = true;
     const wanted = new Set(readKept(key));
     const { doc, selection } = view.state;
@@ -33,10 +34,15 @@ export function keepFolds(view: EditorView, paperId: string, personId: string | 
   const watch = EditorView.updateListener.of(({ state, startState }) => {
     if (ended) return;
     const now = state.field(foldField);
-    if (!restored && now.headings.length > 0) queueMicrotask(() => !ended && restore());
+    if (!restored && now.headings.length > 0) queueMicrotask(restore);
     else if (restored && now.folded !== startState.field(foldField).folded) keep();
   });
-  view.dispatch({ effects: StateEffect.appendConfig.of(watch) });
+  // React may come here from within a change of the view, which takes no other meanwhile.
+  queueMicrotask(() => {
+    if (ended) return;
+    view.dispatch({ effects: StateEffect.appendConfig.of(watch) });
+    if (view.state.field(foldField).headings.length > 0) restore();
+  });
   return () => {
     ended = true;
   };
