@@ -2,6 +2,7 @@ import { type KeyboardEvent, type PointerEvent, useEffect, useLayoutEffect, useM
 import { type PlacedPoint, placePoints } from "./point-places.ts";
 import { type Curve, nearestPoint, type PointAsked, readableCurves } from "./readable-curves.ts";
 import type { CurveReadings, Figure } from "./types.ts";
+import { walkedTo } from "./walking.ts";
 
 interface Props {
   readonly figure: Figure;
@@ -107,10 +108,9 @@ function CurveSlider({ curve, at, placeOf, onAsk, onLeave }: SliderProps) {
       onLeave("escape");
       return;
     }
-    const to = STEPS[event.key]?.(here, curve.points.length - 1);
-    if (to === undefined) return;
+    const next = walkedTo(event.key, here, curve.points.length);
+    if (next === null) return;
     event.preventDefault();
-    const next = Math.min(Math.max(to, 0), curve.points.length - 1);
     setLast(next);
     onAsk(next);
   };
@@ -135,17 +135,3 @@ function CurveSlider({ curve, at, placeOf, onAsk, onLeave }: SliderProps) {
     />
   );
 }
-
-/** Points that Page Up and Page Down pass over. */
-const LEAP = 10;
-
-const STEPS: Readonly<Record<string, (at: number, last: number) => number>> = {
-  ArrowRight: (at) => at + 1,
-  ArrowLeft: (at) => at - 1,
-  ArrowUp: (at) => at + 1,
-  ArrowDown: (at) => at - 1,
-  PageUp: (at) => at + LEAP,
-  PageDown: (at) => at - LEAP,
-  Home: () => 0,
-  End: (_, last) => last,
-};

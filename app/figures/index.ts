@@ -30,3 +30,4 @@ export type {
   TableEntry,
   Vertical,
 } from "./types.ts";
+export { walkedTo } from "./walking.ts";

@@ -1,6 +1,6 @@
 import type { Browser, Page } from "playwright-core";
 import { afterAll, beforeAll, expect, inject, test } from "vitest";
-import { openBrowser, signedIn, type Visitor } from "./people.ts";
+import { bothAuthors, openBrowser, type Visitor } from "./people.ts";
 import { SheetOnPage } from "./sheet.ts";
 
 /** What becomes of the words on this machine: without network, without access, and after signing out. */
@@ -14,10 +14,7 @@ let paper: string;
 
 beforeAll(async () => {
   browser = await openBrowser();
-  [ines, tormod] = await Promise.all([
-    signedIn(browser, application, "Inês Valadão"),
-    signedIn(browser, application, "Tormod Hagelund"),
-  ]);
+  ({ ines, tormod } = await bothAuthors(browser, application));
   paper = await begunPaper(ines.page);
   await ines.page.goto(`${paper}/title-page`);
   await ines.page.getByLabel(/^Add by the name/).fill("tormod-hagelund");

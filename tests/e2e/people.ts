@@ -41,3 +41,17 @@ export async function signedIn(browser: Browser, application: string, name: stri
   await page.waitForURL("**/shelf");
   return someone;
 }
+
+/** The two authors of the specimen paper, each in a window of their own. */
+export interface Authors {
+  readonly ines: Visitor;
+  readonly tormod: Visitor;
+}
+
+export async function bothAuthors(browser: Browser, application: string): Promise<Authors> {
+  const [ines, tormod] = await Promise.all([
+    signedIn(browser, application, "Inês Valadão"),
+    signedIn(browser, application, "Tormod Hagelund"),
+  ]);
+  return { ines, tormod };
+}

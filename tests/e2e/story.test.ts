@@ -4,7 +4,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import type { Browser, Locator } from "playwright-core";
 import { afterAll, beforeAll, expect, inject, test } from "vitest";
-import { openBrowser, signedIn, type Visitor } from "./people.ts";
+import { bothAuthors, openBrowser, type Visitor } from "./people.ts";
 import { SheetOnPage } from "./sheet.ts";
 
 /**
@@ -36,10 +36,7 @@ let other: SheetOnPage;
 
 beforeAll(async () => {
   browser = await openBrowser();
-  [ines, tormod] = await Promise.all([
-    signedIn(browser, application, "Inês Valadão"),
-    signedIn(browser, application, "Tormod Hagelund"),
-  ]);
+  ({ ines, tormod } = await bothAuthors(browser, application));
   sheet = new SheetOnPage(ines.page);
   other = new SheetOnPage(tormod.page);
 });

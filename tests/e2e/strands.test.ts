@@ -2,7 +2,7 @@ import AxeBuilder from "@axe-core/playwright";
 import type { Browser, Page } from "playwright-core";
 import { afterAll, beforeAll, expect, inject, test } from "vitest";
 import { RULES } from "./axe-rules.ts";
-import { openBrowser, signedIn, type Visitor } from "./people.ts";
+import { bothAuthors, openBrowser, type Visitor } from "./people.ts";
 import { SheetOnPage } from "./sheet.ts";
 
 /** Strands on a real page: where they are tied, what is lit, and that they stay right while two people write. */
@@ -16,10 +16,7 @@ let other: SheetOnPage;
 
 beforeAll(async () => {
   browser = await openBrowser();
-  [ines, tormod] = await Promise.all([
-    signedIn(browser, application, "Inês Valadão"),
-    signedIn(browser, application, "Tormod Hagelund"),
-  ]);
+  ({ ines, tormod } = await bothAuthors(browser, application));
   sheet = new SheetOnPage(ines.page);
   other = new SheetOnPage(tormod.page);
   for (const { page } of [ines, tormod]) {

@@ -1,5 +1,5 @@
 import { type KeyboardEvent, type PointerEvent, useState } from "react";
-import { type Curve, nearestPoint } from "../../figures/index.ts";
+import { type Curve, nearestPoint, walkedTo } from "../../figures/index.ts";
 import { type Arrow, nextBox } from "../case/arrows.ts";
 import type { EntryPlace, FigurePlace, QuotePlace } from "./places.ts";
 
@@ -121,10 +121,9 @@ function CurvePlace({ curve: { name, points }, scale, title, onPoint, onChoose }
       onChoose(here.text);
       return;
     }
-    const to = STEPS[event.key]?.(at, points.length - 1);
-    if (to === undefined) return;
+    const next = walkedTo(event.key, at, points.length);
+    if (next === null) return;
     event.preventDefault();
-    const next = Math.min(Math.max(to, 0), points.length - 1);
     setAt(next);
     onPoint(next);
   };
@@ -144,17 +143,3 @@ function CurvePlace({ curve: { name, points }, scale, title, onPoint, onChoose }
     />
   );
 }
-
-/** Points that Page Up and Page Down pass over. */
-const LEAP = 10;
-
-const STEPS: Readonly<Record<string, (at: number, last: number) => number>> = {
-  ArrowRight: (at) => at + 1,
-  ArrowLeft: (at) => at - 1,
-  ArrowUp: (at) => at + 1,
-  ArrowDown: (at) => at - 1,
-  PageUp: (at) => at + LEAP,
-  PageDown: (at) => at - LEAP,
-  Home: () => 0,
-  End: (_, last) => last,
-};
