@@ -1,5 +1,5 @@
 import type { CellResult, Plan, ShownPaper } from "../cells/index.ts";
-import { type Author, type FrontMatter, type Paper, plainText, readInline } from "../paper/index.ts";
+import { type Author, type FrontMatter, type Paper, plainText, readInline, UNTITLED } from "../paper/index.ts";
 import { setPaper } from "../print/index.ts";
 import { bibliographyTex } from "./bibliography.ts";
 import { writeBlocks } from "./blocks.ts";
@@ -105,7 +105,7 @@ function writeFront(front: FrontMatter, printing: Printing, out: LatexWriter): v
     out.write("}");
     out.startLine();
   };
-  inline("title", front.title.trim() === "" ? "Untitled" : front.title);
+  inline("title", front.title.trim() === "" ? UNTITLED : front.title);
   for (const author of front.authors) writeAuthor(author, printing, out, line);
   if (front.keywords.length > 0) inline("keywords", front.keywords.join(", "));
   if (front.msc.length > 0) out.line(`\\subjclass[2020]{${printing.text(front.msc.join(", "), line)}}`);

@@ -1,7 +1,14 @@
 import type { RootContent } from "mdast";
 import type { CellResult, Plan, ShownPaper } from "../cells/index.ts";
 import { layoutFigure } from "../figures/index.ts";
-import { type BibliographyEntry, bibliographyItem, type FrontMatter, type Paper, readInline } from "../paper/index.ts";
+import {
+  type BibliographyEntry,
+  bibliographyItem,
+  type FrontMatter,
+  type Paper,
+  readInline,
+  UNTITLED,
+} from "../paper/index.ts";
 import { setPaper } from "../print/index.ts";
 import { ProseBlocks } from "./blocks.tsx";
 import { Formula, Inline, Words } from "./inline.tsx";
@@ -83,7 +90,7 @@ function Front({ front, setting }: { readonly front: FrontMatter; readonly setti
   const inline = (text: string) => <Inline nodes={readInline(text, 0, setting.set.paper)} setting={setting} />;
   return (
     <div className="g-front">
-      <h1>{front.title.trim() === "" ? "Untitled" : inline(front.title)}</h1>
+      <h1>{front.title.trim() === "" ? UNTITLED : inline(front.title)}</h1>
       {front.authors.length > 0 ? (
         <ul className="g-authors">
           {front.authors.map((author) => (

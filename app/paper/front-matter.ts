@@ -7,6 +7,9 @@ import { parseBlocks } from "./syntax/index.ts";
 import type { Author, FrontMatter, Span, Yaml, YamlEntry } from "./types.ts";
 import { readYaml } from "./yaml-tree.ts";
 
+/** What a paper is called that has no title: on the shelf, on its pages and in print. */
+export const UNTITLED = "Untitled paper";
+
 type Scalar = Extract<Yaml, { yaml: "scalar" }>;
 
 const keys = ["title", "authors", "abstract", "keywords", "msc", "macros"];

@@ -1,5 +1,6 @@
 export { bibliographyItem, citationText } from "./bibliography/index.ts";
 export { ENVIRONMENTS } from "./environments.ts";
+export { UNTITLED } from "./front-matter.ts";
 export { readInline } from "./inline.ts";
 export { Lines, lineAt } from "./lines.ts";
 export { mathTex } from "./math.ts";

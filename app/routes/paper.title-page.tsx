@@ -54,7 +54,7 @@ export default function TitlePage({ loaderData, actionData }: Route.ComponentPro
         }
       />
       <main className="title-page">
-        <FrontMatterBlock front={front} title={title} abstract={abstract} />
+        <FrontMatterBlock front={front} name={name} title={title} abstract={abstract} />
         {writes ? (
           <p className="front-hint">
             This stands at the head of the sheet, between the lines of three hyphens, and is changed there.

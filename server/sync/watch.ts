@@ -1,7 +1,7 @@
 import type { ParameterChange } from "../../app/cells/index.ts";
 import { planPaper } from "../../app/cells/index.ts";
 import { BIBLIOGRAPHY_NAME, TEXT_NAME } from "../../app/editor/protocol.ts";
-import { readPaper } from "../../app/paper/index.ts";
+import { readPaper, UNTITLED } from "../../app/paper/index.ts";
 import type { Author, Commit, Room } from "./room.ts";
 
 /** A burst of typing is over after this; then a parameter's change is told with the value from before the burst. */
@@ -94,7 +94,8 @@ export class TextWatch {
     if (watched.describing) clearTimeout(watched.describing);
     watched.describing = null;
     const { front } = readPaper(frontMatter(textOf(room)), "");
-    const words = { title: front.title, authors: front.authors.map(({ name }) => name).join(", ") };
+    const title = front.title.trim() === "" ? UNTITLED : front.title;
+    const words = { title, authors: front.authors.map(({ name }) => name).join(", ") };
     this.#options.describe(room.paperId, words).catch((error) => this.#options.onProblem(error, "description"));
   }
 }

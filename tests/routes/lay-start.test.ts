@@ -1,8 +1,8 @@
 import { describe, expect, test } from "vitest";
 import { planPaper } from "../../app/cells/index.ts";
-import { readPaper } from "../../app/paper/index.ts";
+import { readPaper, UNTITLED } from "../../app/paper/index.ts";
 import { layStart, STARTS } from "../../app/routes/parts/lay-start.ts";
-import { emptyPaper, UNTITLED } from "../../app/routes/parts/new-paper.ts";
+import { emptyPaper } from "../../app/routes/parts/new-paper.ts";
 import { startingPoint } from "../../app/routes/parts/starts.ts";
 
 const AUTHOR = "Tormod O'Hagelund";

@@ -1,8 +1,8 @@
 import { expect, test } from "vitest";
 import { planPaper } from "../../app/cells/index.ts";
 import { hasEmptyBody } from "../../app/editor/first/empty-body.ts";
-import { readPaper } from "../../app/paper/index.ts";
-import { copyOf, emptyPaper, UNTITLED } from "../../app/routes/parts/new-paper.ts";
+import { readPaper, UNTITLED } from "../../app/paper/index.ts";
+import { copyOf, emptyPaper } from "../../app/routes/parts/new-paper.ts";
 
 test.each(["Inês Valadão", 'O"Brien: #1 {x}', "- *odd*\\name's", "佐藤"])(
   "the empty paper of %s reads and plans without a fault",

@@ -111,4 +111,7 @@ test("the shelf's title and authors follow the text", async () => {
   const page = await open(ines);
   retype(page, "the shore", "it");
   await until(async () => (await described())?.title === "Reaching it", "the new title");
+  // A link to it needs words.
+  retype(page, "title: Reaching it", "title: ''");
+  await until(async () => (await described())?.title === "Untitled paper", "a name for what has no title");
 });

@@ -113,7 +113,6 @@ export interface FrontFace {
   /** null: the paper has no front matter. */
   readonly from: number | null;
   readonly to: number;
-  readonly plainTitle: string;
   readonly title: readonly Run[];
   readonly authors: readonly { readonly name: string; readonly affiliation: string }[];
   readonly abstract: readonly Run[];

@@ -68,7 +68,7 @@ export function SheetHead({ desk, props, onCommand }: Props & { onCommand(open: 
 function SheetTitle({ desk, title }: { readonly desk: Desk; readonly title: string }) {
   const front = useDeskView(desk, ({ model }) => model?.front ?? null);
   const macros = useDeskView(desk, ({ model }) => model?.macros ?? null);
-  if (front === null || macros === null || front.plainTitle === "") return title;
+  if (front === null || macros === null) return title;
   return <Runs runs={front.title} macros={macros} />;
 }
 

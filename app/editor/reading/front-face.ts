@@ -1,4 +1,4 @@
-import { type Paper, readInline } from "../../paper/index.ts";
+import { type Paper, readInline, UNTITLED } from "../../paper/index.ts";
 import type { FrontFace, Piece } from "../model/types.ts";
 import type { NumberFaces } from "./number-faces.ts";
 import { runsOf } from "./runs.ts";
@@ -11,8 +11,7 @@ export function frontFace(paper: Paper, numbers: NumberFaces): FrontFace {
   return {
     from,
     to: front.span?.to ?? 0,
-    plainTitle: front.title,
-    title: inline(front.title),
+    title: inline(front.title.trim() === "" ? UNTITLED : front.title),
     authors: front.authors.map(({ name, affiliation }) => ({ name, affiliation: affiliation ?? "" })),
     abstract: inline(front.abstract),
     keywords: front.keywords,

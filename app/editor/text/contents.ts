@@ -185,7 +185,7 @@ function title(front: FrontFace, macros: Macros): HTMLElement {
     ]),
   );
   return element("div", "hl-title-block", [
-    element("h1", "hl-title", front.plainTitle === "" ? ["Untitled"] : [runs(front.title, macros)]),
+    element("h1", "hl-title", [runs(front.title, macros)]),
     ...(authors.length === 0 ? [] : [element("div", "hl-authors", authors)]),
     ...(front.abstract.length === 0 ? [] : [element("div", "hl-abstract", [runs(front.abstract, macros)])]),
   ]);

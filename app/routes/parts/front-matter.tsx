@@ -5,10 +5,13 @@ import type { Phrase } from "./phrases.server.ts";
 /** The paper's front matter as it will be printed: title, authors, abstract, keywords. */
 export function FrontMatterBlock({
   front,
+  name,
   title,
   abstract,
 }: {
   readonly front: Pick<FrontMatter, "authors" | "keywords" | "msc">;
+  /** What the paper is called where its title says nothing. */
+  readonly name: string;
   readonly title: readonly Phrase[];
   /** A paragraph each. */
   readonly abstract: readonly (readonly Phrase[])[];
@@ -16,7 +19,7 @@ export function FrontMatterBlock({
   const { authors, keywords, msc } = front;
   return (
     <header className="front">
-      <h1>{title.length > 0 ? <Phrases phrases={title} /> : "Untitled paper"}</h1>
+      <h1>{title.length > 0 ? <Phrases phrases={title} /> : name}</h1>
       <ul className="front-authors">
         {authors.map((author) => (
           <li key={`${author.name} ${author.orcid ?? author.affiliation ?? ""}`}>

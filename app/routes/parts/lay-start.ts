@@ -1,4 +1,5 @@
-import { emptyPaper, UNTITLED } from "./new-paper.ts";
+import { UNTITLED } from "../../paper/index.ts";
+import { emptyPaper } from "./new-paper.ts";
 import { STARTING_POINTS, startingPoint } from "./starts.ts";
 
 export const STARTS = STARTING_POINTS.map(({ id, words }) => ({ id, words }));

@@ -1,6 +1,5 @@
 import { isMap, isScalar, parseDocument } from "yaml";
-
-export const UNTITLED = "Untitled paper";
+import { UNTITLED } from "../../paper/index.ts";
 
 /** The text of an empty paper: a title, its author and one parameter. The sheet itself says where to write. */
 export function emptyPaper(author: string): string {
