@@ -75,15 +75,7 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
     const cost = planned.cost === null ? "" : costWords(planned.cost);
     const waited = state.waitsFor[0] === undefined ? undefined : drawing.plan.byId.get(state.waitsFor[0]);
     return {
-      id: planned.id,
-      slot: planned.slot,
-      kind: planned.kind,
-      name: planned.cell.name,
-      from: planned.cell.span.from,
-      to: planned.cell.span.to,
-      line: planned.line,
-      title: titleOfId(planned.id),
-      parts: (node?.parts ?? []).map(({ part, noun, number }) => ({ part, title: `${noun} ${number}` })),
+      ...cellInPaper(planned, drawing),
       caption: node === undefined ? [] : runsOf(node.caption, drawing.numbers),
       state: previewed ? "preview" : state.state,
       words: previewed
@@ -116,10 +108,9 @@ export function cellFaces(tellings: readonly CellTelling[], drawing: Drawing): C
   });
 }
 
-/** One cell whose face cannot be made says so in its place: it must not keep the others, and the text, from the page. */
-function faultFace({ planned, result, shown }: CellTelling, { nodes, titles }: Drawing, error: unknown): CellFace {
-  const message = (error instanceof Error ? error.message : String(error)).replace(/\.$/, "");
-  const title = titles.get(planned.id) ?? planned.id;
+/** What a cell is called and where it stands, whatever becomes of its result. */
+function cellInPaper(planned: PlannedCell, { nodes, titles }: Drawing) {
+  const parts = nodes.get(planned.slot)?.parts ?? [];
   return {
     id: planned.id,
     slot: planned.slot,
@@ -128,14 +119,20 @@ function faultFace({ planned, result, shown }: CellTelling, { nodes, titles }: D
     from: planned.cell.span.from,
     to: planned.cell.span.to,
     line: planned.line,
-    title,
-    parts: (nodes.get(planned.slot)?.parts ?? []).map(({ part, noun, number }) => ({
-      part,
-      title: `${noun} ${number}`,
-    })),
+    title: titles.get(planned.id) ?? planned.id,
+    parts: parts.map(({ part, noun, number }) => ({ part, title: `${noun} ${number}` })),
+  };
+}
+
+/** One cell whose face cannot be made says so in its place: it must not keep the others, and the text, from the page. */
+function faultFace({ planned, result, shown }: CellTelling, drawing: Drawing, error: unknown): CellFace {
+  const message = (error instanceof Error ? error.message : String(error)).replace(/\.$/, "");
+  const inPaper = cellInPaper(planned, drawing);
+  return {
+    ...inPaper,
     caption: [],
     state: "failed",
-    words: [{ run: "text", text: `${title} cannot be told: ${message}. Recompute it, or edit its working.` }],
+    words: [{ run: "text", text: `${inPaper.title} cannot be told: ${message}. Recompute it, or edit its working.` }],
     provenance: [],
     finding: null,
     progress: null,
